@@ -1,0 +1,34 @@
+/**
+ * Sparse matrices in compressed columns, and what every factorisation here offers. Knows no electricity.
+ *
+ * A pattern is analysed once; its values are refactored often. Nothing allocates after analysis.
+ */
+
+/** Where the entries of an n by n matrix stand. Row indices rise within a column; the diagonal entry is always present. */
+export interface Pattern {
+  readonly size: number;
+  /** Length size + 1: column j holds the entries columnStarts[j] to columnStarts[j + 1] - 1. */
+  readonly columnStarts: Int32Array;
+  /** Length columnStarts[size]. A symmetric matrix keeps its upper triangle only: row <= column. */
+  readonly rowIndices: Int32Array;
+}
+
+/** What a numeric factorisation found. */
+export interface FactorReport {
+  /** False when a pivot is zero, not finite, or below 1e-14 of the largest entry of its column: the matrix is singular to working precision. */
+  readonly regular: boolean;
+  /** Number of negative pivots: 0 says that a symmetric matrix is positive definite (Sylvester's law of inertia). */
+  readonly negativePivots: number;
+  /** Column of the original matrix whose pivot failed, or -1. */
+  readonly failedColumn: number;
+}
+
+/** A factorisation of one pattern. `values` always runs parallel to the pattern's `rowIndices`. */
+export interface Factorisation {
+  readonly pattern: Pattern;
+  refactor(values: Float64Array): FactorReport;
+  /** Solves A x = b with the last factors; `x` may be `b` itself. Both have length size. */
+  solve(b: Float64Array, x: Float64Array): void;
+  /** Solves the transposed system; for a symmetric matrix the same as `solve`. */
+  solveTransposed(b: Float64Array, x: Float64Array): void;
+}
