@@ -1,0 +1,21 @@
+/** Vectors lent out for the length of one call, so that solving many times allocates nothing. */
+
+function lender(): (size: number) => Float64Array {
+  let vector = new Float64Array(0);
+  return (size) => {
+    if (vector.length < size) vector = new Float64Array(Math.max(size, 2 * vector.length));
+    return vector;
+  };
+}
+
+/** Each name belongs to one function alone; contents are whatever the last call left. */
+export const scratch = {
+  /** `residual`: |A| |x| + |b|. */
+  magnitude: lender(),
+  /** `solveRefined`: residual, then correction. */
+  remainder: lender(),
+  /** `solveRefined`: the best solution so far. */
+  best: lender(),
+  /** `solveRefined`: a right-hand side that shares its array with x. */
+  rightHandSide: lender(),
+};
