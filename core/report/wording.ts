@@ -1,0 +1,103 @@
+/** The words that the report uses for kinds, states, statuses and severities: one place, so that one thing has one name on paper. */
+import type { Severity } from '../checks/finding.ts';
+import type { Chemistry, Metal, Origin, PartKind, Run, Stranding } from '../job/part.ts';
+import type { BatteryModel } from '../network/answer.ts';
+import type { Status } from '../tables/status.ts';
+
+export const STATUS_WORDS: Readonly<Record<Status, string>> = {
+  published: 'published',
+  'common-practice': 'common practice, no source',
+  'from-memory': 'from memory — confirm against the text',
+};
+
+export const SEVERITY_WORDS: Readonly<Record<Severity, { readonly word: string; readonly meaning: string }>> = {
+  stop: { word: 'STOP', meaning: 'do not energise until this is put right' },
+  fix: { word: 'FIX', meaning: 'outside the chosen practice; put right' },
+  look: { word: 'LOOK', meaning: 'a person has to judge this' },
+  note: { word: 'NOTE', meaning: 'for information' },
+};
+/** Worst first. */
+export const SEVERITIES: readonly Severity[] = ['stop', 'fix', 'look', 'note'];
+
+export const ORIGIN_WORDS: Readonly<Record<Origin, string>> = {
+  measured: 'measured',
+  label: 'label',
+  default: 'default',
+  guess: 'guess',
+};
+
+export const KIND_WORDS: Readonly<Record<PartKind, string>> = {
+  string: 'battery string',
+  cable: 'cable',
+  pair: 'out-and-back run',
+  busbar: 'busbar',
+  fuse: 'fuse',
+  breaker: 'breaker',
+  switch: 'switch',
+  shunt: 'shunt',
+  joint: 'joint',
+  diode: 'diode',
+  load: 'load',
+  inverter: 'inverter',
+  array: 'solar array',
+  controller: 'solar controller',
+  charger: 'charger',
+  converter: 'DC converter',
+  bond: 'bond',
+};
+
+export const CHEMISTRY_WORDS: Readonly<Record<Chemistry, string>> = {
+  flooded: 'lead-acid, flooded',
+  agm: 'lead-acid, AGM',
+  gel: 'lead-acid, gel',
+  lfp: 'lithium iron phosphate',
+  nmc: 'lithium NMC',
+  nicd: 'nickel-cadmium',
+};
+export const METAL_WORDS: Readonly<Record<Metal, string>> = {
+  copper: 'copper',
+  'tinned-copper': 'tinned copper',
+  aluminium: 'aluminium',
+};
+export const STRANDING_WORDS: Readonly<Record<Stranding, string>> = {
+  solid: 'solid',
+  stranded: 'stranded',
+  flexible: 'flexible',
+};
+export const RUN_WORDS: Readonly<Record<Run, string>> = {
+  'free-air': 'free air',
+  conduit: 'conduit',
+  bundle: 'bundle',
+  'engine-space': 'engine space',
+  buried: 'buried',
+};
+export const MODEL_WORDS: Readonly<Record<BatteryModel, string>> = {
+  slow: 'battery resistance over minutes',
+  fast: 'battery resistance in the first second',
+};
+
+/** `join(['a', 'b', 'c'])` → `a, b and c`. */
+export function join(words: readonly string[]): string {
+  if (words.length < 2) return words.join('');
+  return `${words.slice(0, -1).join(', ')} and ${words.at(-1)}`;
+}
+
+/** `count(1, 'finding')` → `1 finding`; `count(2, 'finding')` → `2 findings`. */
+export function count(number: number, noun: string): string {
+  return `${number} ${noun}${number === 1 ? '' : 's'}`;
+}
+
+/** A rule's or state's name in plain words: `fuse-over-cable` → `Fuse over cable`. */
+export function sentenceCase(name: string): string {
+  const words = name.replaceAll(/[-_]+/g, ' ').trim();
+  return words.charAt(0).toUpperCase() + words.slice(1);
+}
+
+/** Camel-case field names of the job as words, unit suffix left off: `insulationDegC` → `insulation`. */
+export function fieldWords(field: string): string {
+  const bare = field.replace(/(?:DegC|PerDegC|Ohm|Mv|Mm2|KWhPerM2Day|WPerM2|Ah|Wh|Years|Deg)$|(?<=[a-z])[AVWMS]$/, '');
+  return bare
+    .replaceAll(/([a-z0-9])([A-Z])/g, '$1 $2')
+    .replaceAll('.', ', ')
+    .toLowerCase();
+}
