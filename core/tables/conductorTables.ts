@@ -122,6 +122,8 @@ export interface ConductorTables {
   /** Diameter of one wire of a flexible conductor, where nothing else is known. */
   readonly flexibleWireMm: Figure;
   readonly awgFormula: Basis;
+  /** What the nominal area of a metric size rests on. */
+  readonly metricNominal: Basis;
   /** In rising area. */
   readonly metricResistance: readonly MetricResistanceRow[];
   /** In rising area, solid before stranded. */
