@@ -10,6 +10,7 @@ export type IssueCode =
   | 'not-json'
   | 'too-large'
   | 'too-deep'
+  | 'too-many'
   | 'wrong-format'
   | 'wrong-version'
   | 'unknown-field'
@@ -20,6 +21,7 @@ export type IssueCode =
   | 'out-of-range'
   | 'not-in-list'
   | 'duplicate-id'
+  | 'duplicate-field'
   | 'unknown-reference'
   | 'contradiction';
 

@@ -119,6 +119,8 @@ export interface CheckedJob {
   readonly preparedFor: string | undefined;
   readonly preparedBy: string | undefined;
   readonly practice: Practice;
+  /** True where the job names no practice and `practice` is only assumed: enough to solve with, not to judge by. */
+  readonly practiceAssumed?: boolean;
   readonly practiceEdition: string | undefined;
   readonly site: Site;
   readonly junctions: ReadonlyMap<JunctionId, JunctionNote>;
@@ -144,11 +146,18 @@ export function caseById(job: CheckedJob, id: string): OperatingCase | undefined
 }
 
 function atRest(job: CheckedJob): OperatingCase {
-  const changed = new Map<PartId, Part>();
-  for (const part of job.parts) {
-    if (part.kind === 'load' || part.kind === 'inverter' || part.kind === 'charger' || part.kind === 'converter') {
-      changed.set(part.id, { ...part, on: false });
-    }
-  }
+  const changed = atRestChanges(job.parts);
   return { id: 'at-rest', label: 'At rest', ambientDegC: undefined, irradianceWPerM2: 0, surge: undefined, changed };
+}
+
+/** The parts that differ from the drawing when the system rests: loads, inverters, chargers and converters off. */
+export function atRestChanges(parts: readonly Part[]): ReadonlyMap<PartId, Part> {
+  const changed = new Map<PartId, Part>();
+  for (const part of parts) if ('on' in part) changed.set(part.id, { ...part, on: false });
+  return changed;
+}
+
+/** The same job judged by another practice. */
+export function withPractice(job: CheckedJob, practice: Practice): CheckedJob {
+  return { ...job, practice, practiceAssumed: false };
 }

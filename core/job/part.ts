@@ -8,6 +8,8 @@
  * two-ended kinds positive from `from` to `to`.
  */
 
+import type { ConductorSize } from '../units/conductorSize.ts';
+
 /** Identity of a part: unique in a job. */
 export type PartId = string & { readonly __brand: 'PartId' };
 /** Identity of a junction: a named point where conductors meet. */
@@ -16,16 +18,7 @@ export type JunctionId = string & { readonly __brand: 'JunctionId' };
 /** Where a figure comes from. A field given without an origin is a `label` figure; a field not given is a `default`. */
 export type Origin = 'measured' | 'label' | 'default' | 'guess';
 
-/** A conductor size. The five kinds never convert silently; `core/conductor` says what each means in copper. */
-export type ConductorSize =
-  | { readonly system: 'mm2'; readonly areaMm2: number }
-  /** `gauge` is n of the AWG formula: 10 for 10 AWG, 0 for 1/0, -1 for 2/0, -3 for 4/0. */
-  | { readonly system: 'awg'; readonly gauge: number }
-  | { readonly system: 'kcmil'; readonly areaKcmil: number }
-  /** SAE gauge, `gauge` as for AWG; its wire is 3 to 11 % smaller than AWG of the same number. */
-  | { readonly system: 'sae'; readonly gauge: number }
-  /** "auto" cable sold by the outside diameter over the insulation, in millimetres. */
-  | { readonly system: 'auto'; readonly outsideDiameterMm: number };
+export type { ConductorSize };
 
 export type Chemistry = 'flooded' | 'agm' | 'gel' | 'lfp' | 'nmc' | 'nicd';
 export type Metal = 'copper' | 'tinned-copper' | 'aluminium';
@@ -45,6 +38,8 @@ interface PartBase {
   readonly range: ReadonlyMap<string, readonly [number, number]>;
   /** Names of the fields that the job itself gave (before defaults). */
   readonly given: ReadonlySet<string>;
+  /** `x-…` fields of the part, carried along untouched. */
+  readonly extra?: ReadonlyMap<string, unknown>;
 }
 interface Poles {
   readonly plus: JunctionId;
@@ -98,7 +93,7 @@ export interface ConductorFields {
   /** The two terminations of one conductor together; contract default 0. */
   readonly endOhm: number;
   readonly sheathed: boolean | undefined;
-  /** Measured resistance of one conductor without its terminations; overrides the tables. */
+  /** Measured resistance of the run as it lies (its parallel conductors together), terminations excluded; overrides the tables. */
   readonly resistanceOhm: number | undefined;
 }
 
@@ -279,7 +274,13 @@ export function originOf(part: Part, field: string): Origin {
 /** The two cables that an out-and-back run stands for: `<id>.plus` out from source to load, `<id>.minus` back. */
 export function cablesOfPair(pair: PairPart): readonly [CablePart, CablePart] {
   const { kind: _kind, from, to, minusSize, minusLengthM, ...conductor } = pair;
-  const plus: CablePart = { ...conductor, kind: 'cable', id: `${pair.id}.plus` as PartId, from: from.plus, to: to.plus };
+  const plus: CablePart = {
+    ...conductor,
+    kind: 'cable',
+    id: `${pair.id}.plus` as PartId,
+    from: from.plus,
+    to: to.plus,
+  };
   const minus: CablePart = {
     ...conductor,
     kind: 'cable',
