@@ -1,6 +1,5 @@
 /** What a solve answers, for one operating case. */
-import type { JunctionId, PartId } from '../job/part.ts';
-import type { Origin } from '../job/part.ts';
+import type { JunctionId, Origin, PartId } from '../job/part.ts';
 import type { Basis } from '../tables/status.ts';
 
 /** Battery resistance over minutes (`slow`, sharing and drops) or in the first second (`fast`, faults and surges). */

@@ -1,0 +1,270 @@
+/**
+ * Nodal analysis of a circuit whose valve states are fixed: Newton's method on the balance of currents.
+ *
+ * Unknowns U, one a group of tied junctions. Residual r(U) = sum of the currents that leave each group; its derivative is the
+ * symmetric nodal conductance matrix. Constant-power loads make r convex in their volts, so Newton started from the volts
+ * without them descends monotonically to the highest solution, the one a real system takes; a positive definite matrix there
+ * (no negative pivot) certifies that it is that branch.
+ */
+import { analyseSymmetric } from '../linear/analyseSymmetric.ts';
+import type { Factorisation } from '../linear/matrix.ts';
+import { patternFromEntries } from '../linear/patternFromEntries.ts';
+import { openCircuitV } from '../solar/arrayCurve.ts';
+import type { Circuit } from './circuit.ts';
+import { Coupling } from './coupling.ts';
+import type { Element } from './element.ts';
+import { evaluate, Law } from './element.ts';
+import type { Reduction } from './ties.ts';
+
+/** The circuit with fixed states, assembled; solved in place by `solve`. */
+export class Assembled {
+  readonly circuit: Circuit;
+  readonly reduction: Reduction;
+  readonly coupling: Coupling;
+  /** Elements in force, and for each the unknown at either end (-1 where known). */
+  readonly active: readonly Element[];
+  /** Volts of each junction. */
+  readonly volts: Float64Array;
+  readonly factorisation: Factorisation;
+  readonly values: Float64Array;
+  private readonly power: readonly Element[];
+  private readonly slots: Int32Array; // three a stamped element: from-from, to-to, from-to; -1 where absent
+  private readonly stamped: readonly Element[];
+  private readonly r: Float64Array;
+  private readonly step: Float64Array;
+  iterations = 0;
+
+  constructor(circuit: Circuit, reduction: Reduction) {
+    this.circuit = circuit;
+    this.reduction = reduction;
+    this.active = circuit.elements.filter(
+      (element) => element.law !== Law.none && element.law !== Law.tie && reduction.node[element.from]! > -2,
+    );
+    this.coupling = new Coupling(circuit, reduction, this.active);
+    this.power = this.active.filter((element) => element.law === Law.power);
+    this.volts = new Float64Array(circuit.junctions.length);
+    const assembly = assemble(reduction, this.active);
+    this.stamped = assembly.stamped;
+    this.slots = assembly.slots;
+    this.factorisation = analyseSymmetric(assembly.pattern);
+    this.values = new Float64Array(assembly.pattern.columnStarts[reduction.size]!);
+    this.r = new Float64Array(reduction.size);
+    this.step = new Float64Array(reduction.size);
+  }
+
+  /** Volts without constant-power loads, the start of every solve. */
+  solveUnloaded(): boolean {
+    for (const element of this.active) evaluate(element, firstGuessV(element));
+    this.coupling.reset();
+    this.volts.fill(0);
+    this.place(this.volts);
+    for (let pass = 0; pass < 100; pass++) {
+      // Norton form: the linearised currents at the present guess, as if the volts were zero.
+      const change = this.linearStep(pass === 0);
+      if (change === null) return false;
+      if (change <= 1e-10 * scaleOf(this.volts)) return true;
+      this.evaluateAll(0);
+    }
+    return true;
+  }
+
+  /**
+   * Newton from the present volts with every constant-power and constant-current sink at `share` (0 to 1) of its figure.
+   * Returns false where it does not settle on the high-voltage branch.
+   */
+  solve(share: number): boolean {
+    let best = Number.POSITIVE_INFINITY;
+    let stalled = 0;
+    for (let pass = 0; pass < 80; pass++) {
+      this.evaluateAll(share);
+      const moved = this.coupling.update(share);
+      const { norm, floor } = this.residual();
+      if (norm <= floor && moved <= 1e-14) return this.isHighBranch();
+      if (norm >= 0.5 * best && norm <= 64 * floor && moved <= 1e-12 && ++stalled >= 2) return this.isHighBranch();
+      best = Math.min(best, norm);
+      if (!this.newtonStep()) return false;
+    }
+    return false;
+  }
+
+  /** Refactors at the present slopes; true when no pivot is negative. */
+  isHighBranch(): boolean {
+    this.fillValues();
+    const report = this.factorisation.refactor(this.values);
+    return report.regular && report.negativePivots === 0;
+  }
+
+  /** Re-evaluates every element at the present volts. */
+  evaluateAll(share: number): void {
+    const { volts } = this;
+    for (const element of this.active) {
+      evaluate(element, volts[element.from]! - volts[element.to]!);
+      if (share !== 1 && isSink(element)) {
+        element.i *= share;
+        element.slope *= share;
+      }
+    }
+  }
+
+  /** Solves J x = b for the present factors, in terms of unknowns. */
+  solveLinear(b: Float64Array, x: Float64Array): void {
+    this.factorisation.solve(b, x);
+  }
+
+  /** Sets the volts of every junction from the unknowns' change `d` times `t`. */
+  private move(d: Float64Array, t: number): void {
+    const { node } = this.reduction;
+    for (let j = 0; j < node.length; j++) if (node[j]! >= 0) this.volts[j]! += t * d[node[j]!]!;
+  }
+
+  private place(volts: Float64Array): void {
+    const { offset, node } = this.reduction;
+    for (let j = 0; j < node.length; j++) volts[j] = offset[j]!;
+  }
+
+  /** Largest remainder over all unknowns, and the size below which it is rounding. */
+  private residual(): { norm: number; floor: number } {
+    const { node } = this.reduction;
+    const { r, volts } = this;
+    r.fill(0);
+    let floor = 1e-18;
+    for (const { from, to, i, slope } of this.active) {
+      const p = node[from]!;
+      const q = node[to]!;
+      if (p >= 0) r[p]! += i;
+      if (q >= 0) r[q]! -= i;
+      // A difference of volts is known to about one unit in the last place of the volts themselves.
+      const rounding = EPSILON * (Math.abs(i) + Math.abs(slope) * (Math.abs(volts[from]!) + Math.abs(volts[to]!)));
+      if (rounding > floor) floor = rounding;
+    }
+    let norm = 0;
+    for (let k = 0; k < r.length; k++) norm = Math.max(norm, Math.abs(r[k]!));
+    return { norm: Number.isNaN(norm) ? Number.POSITIVE_INFINITY : norm, floor };
+  }
+
+  private newtonStep(): boolean {
+    this.fillValues();
+    const report = this.factorisation.refactor(this.values);
+    if (!report.regular || report.negativePivots > 0) return false;
+    const { r, step } = this;
+    for (let k = 0; k < r.length; k++) r[k] = -r[k]!;
+    this.factorisation.solve(r, step);
+    this.iterations++;
+    this.move(step, this.longestStep(step));
+    return true;
+  }
+
+  /** The share of a step that keeps every constant-power element above a tenth of its present volts. */
+  private longestStep(step: Float64Array): number {
+    const { node } = this.reduction;
+    let t = 1;
+    for (const { from, to, law, v } of this.active) {
+      if (law !== Law.power && law !== Law.powerSource) continue;
+      const p = node[from]!;
+      const q = node[to]!;
+      const change = (p >= 0 ? step[p]! : 0) - (q >= 0 ? step[q]! : 0);
+      if (v > 0 && v + t * change < 0.1 * v) t = (-0.9 * v) / change;
+    }
+    return t;
+  }
+
+  /** One linear solve in Norton form; returns the largest change of volts, or null when singular. */
+  private linearStep(first: boolean): number | null {
+    const { node, offset, size } = this.reduction;
+    const b = this.r;
+    b.fill(0);
+    this.values.fill(0);
+    for (const element of this.active) {
+      if (isSink(element)) continue;
+      const p = node[element.from]!;
+      const q = node[element.to]!;
+      // i(v) ~ i0 + g (v - v0), and v = (U_p - U_q) + (offset_from - offset_to).
+      const known = element.i + element.slope * (offset[element.from]! - offset[element.to]! - element.v);
+      if (p >= 0) b[p]! -= known;
+      if (q >= 0) b[q]! += known;
+    }
+    this.fillValues(true);
+    const report = this.factorisation.refactor(this.values);
+    if (!report.regular) return null;
+    this.factorisation.solve(b, this.step);
+    this.iterations++;
+    let change = first ? Number.POSITIVE_INFINITY : 0;
+    for (let j = 0; j < node.length; j++) {
+      if (node[j]! < 0) continue;
+      const volts = this.step[node[j]!]! + offset[j]!;
+      change = Math.max(change, Math.abs(volts - this.volts[j]!));
+      this.volts[j] = volts;
+    }
+    return size === 0 ? 0 : change;
+  }
+
+  private fillValues(unloaded = false): void {
+    const { values, stamped, slots } = this;
+    values.fill(0);
+    for (let k = 0; k < stamped.length; k++) {
+      const element = stamped[k]!;
+      if (unloaded && element.law === Law.power) continue;
+      const g = element.slope;
+      const pp = slots[3 * k]!;
+      const qq = slots[3 * k + 1]!;
+      const pq = slots[3 * k + 2]!;
+      if (pp >= 0) values[pp]! += g;
+      if (qq >= 0) values[qq]! += g;
+      if (pq >= 0) values[pq]! -= g;
+    }
+  }
+
+  /** Constant-power elements, for continuation and for naming a collapse. */
+  powerElements(): readonly Element[] {
+    return this.power;
+  }
+}
+
+const EPSILON = 2 ** -52;
+
+/** Constant power or current taken; a source limited to a current is no sink. */
+function isSink(element: Element): boolean {
+  return element.law === Law.power || (element.law === Law.current && element.a > 0);
+}
+
+/** Where an element's law is first linearised: where it conducts as it will in use. */
+function firstGuessV(element: Element): number {
+  if (element.law === Law.array) return openCircuitV(element.curve!);
+  if (element.law === Law.powerSource) return element.b;
+  if (element.law === Law.power) return 1;
+  return 0;
+}
+
+function scaleOf(volts: Float64Array): number {
+  let scale = 1e-3;
+  for (let j = 0; j < volts.length; j++) scale = Math.max(scale, Math.abs(volts[j]!));
+  return scale;
+}
+
+function assemble(reduction: Reduction, active: readonly Element[]) {
+  const { node, size } = reduction;
+  const stamped: Element[] = [];
+  const rows: number[] = [];
+  const columns: number[] = [];
+  const places: number[] = [];
+  const entry = (row: number, column: number): void => {
+    places.push(rows.length);
+    rows.push(row);
+    columns.push(column);
+  };
+  for (const element of active) {
+    if (element.law === Law.current) continue;
+    const p = node[element.from]!;
+    const q = node[element.to]!;
+    if (p === q) continue;
+    stamped.push(element);
+    if (p >= 0) entry(p, p);
+    else places.push(-1);
+    if (q >= 0) entry(q, q);
+    else places.push(-1);
+    if (p >= 0 && q >= 0) entry(p, q);
+    else places.push(-1);
+  }
+  const { pattern, slots } = patternFromEntries(size, rows, columns, { symmetric: true });
+  return { stamped, pattern, slots: Int32Array.from(places, (place) => (place < 0 ? -1 : slots[place]!)) };
+}

@@ -1,0 +1,224 @@
+/**
+ * Finds valve states that agree with the solution they lead to: a bounded complementarity problem, solved by block principal
+ * pivoting (Júdice and Pires): change every valve that disagrees at once; when that stops helping, change only the first
+ * (Murty's least-index rule), which cannot cycle on networks of resistances.
+ */
+import { Defect } from '../job/issue.ts';
+import { maximumPower } from '../solar/arrayCurve.ts';
+import type { Circuit } from './circuit.ts';
+import type { Element } from './element.ts';
+import { Law } from './element.ts';
+import type { GraphView } from './graph.ts';
+import { Assembled } from './newton.ts';
+import { reduce } from './ties.ts';
+import { trackMaximumPower } from './track.ts';
+import type { Valve, ValveState } from './valve.ts';
+import { enter } from './valve.ts';
+
+export type Settled =
+  | { readonly ok: true; readonly assembled: Assembled }
+  | { readonly ok: false; readonly assembled: Assembled | null };
+
+/** Starting states: diodes conduct, sources hold their volts, trackers track, joiners join. Dead valves stay off. */
+export function startStates(circuit: Circuit, graph: GraphView): void {
+  unpark(circuit);
+  const place = new Map(circuit.elements.map((element, index) => [element, index]));
+  const isLive = (element: Element) =>
+    graph.island[element.from]! >= 0 && graph.blockIsLive[graph.block[place.get(element)!]!]!;
+  for (const valve of circuit.valves) {
+    if (valve.kind === 'tracker' || valve.kind === 'joiner') startController(circuit, graph, valve, isLive);
+    else if (!isLive(valve.element)) {
+      enter(valve, 'off');
+      if (valve.kind === 'converter' && !isLive(valve.input)) valve.input.law = Law.none;
+    } else enter(valve, 'held');
+  }
+}
+
+function startController(
+  circuit: Circuit,
+  graph: GraphView,
+  valve: Extract<Valve, { kind: 'tracker' | 'joiner' }>,
+  isLive: (element: Element) => boolean,
+): void {
+  const island = graph.island[valve.input.from]!;
+  const arrays = circuit.elements.filter((e) => e.law === Law.array && island >= 0 && graph.island[e.from] === island);
+  if (arrays.length === 0 || !isLive(valve.input) || graph.island[valve.element.from]! < 0) {
+    enter(valve, 'off');
+    return;
+  }
+  if (valve.kind === 'joiner') {
+    enter(valve, 'direct');
+    return;
+  }
+  // Arrays in parallel share their volts: the first one's best volts are near the group's.
+  const best = maximumPower(arrays[0]!.curve!);
+  valve.trackedV = best.voltageV;
+  valve.availableW = best.powerW;
+  enter(valve, 'tracking');
+}
+
+/** Solves with valve states found on the way; constant-power sinks at `share` of their figures. */
+export function settle(circuit: Circuit, graph: GraphView, share: number): Settled {
+  let fewest = Number.POSITIVE_INFINITY;
+  let patience = 3;
+  const limit = 60 + 12 * circuit.valves.length;
+  for (let pass = 0; pass < limit; pass++) {
+    const reduction = reduce(circuit, graph);
+    if (!reduction.ok) {
+      giveWay(circuit, reduction.conflicts, reduction.adrift);
+      continue;
+    }
+    const assembled = new Assembled(circuit, reduction.value);
+    if (!assembled.solveUnloaded()) return { ok: false, assembled };
+    if (!assembled.solve(share)) return { ok: false, assembled };
+    if (!trackMaximumPower(assembled, share)) return { ok: false, assembled };
+    assembled.coupling.balance();
+    const changes = disagreements(circuit, assembled);
+    if (changes.length === 0) return { ok: true, assembled };
+    if (changes.length < fewest) {
+      fewest = changes.length;
+      patience = 3;
+    } else patience--;
+    unpark(circuit);
+    const chosen = patience >= 0 ? changes : changes.slice(0, 1);
+    for (const { valve, state } of chosen) enter(valve, state);
+  }
+  throw new Defect('the states of chargers, diodes and controllers settle');
+}
+
+/** Sinks set aside because closed valves cut them off get another chance in the next states. */
+function unpark(circuit: Circuit): void {
+  for (const sink of circuit.sinks) {
+    if (sink.parkedLaw === null) continue;
+    sink.element.law = sink.parkedLaw;
+    sink.parkedLaw = null;
+    sink.state = 'on';
+  }
+}
+
+interface Change {
+  readonly valve: Valve;
+  readonly state: ValveState;
+}
+
+function giveWay(
+  circuit: Circuit,
+  conflicts: readonly { readonly valve: Valve; readonly above: boolean }[],
+  adrift: readonly Element[],
+): void {
+  for (const { valve, above } of conflicts) {
+    if (valve.kind === 'diode') enter(valve, 'off');
+    else enter(valve, above ? 'off' : 'limited');
+  }
+  for (const element of adrift) {
+    const valve = circuit.valves.find((candidate) => candidate.element === element);
+    const sink = circuit.sinks.find((candidate) => candidate.element === element);
+    if (valve !== undefined) enter(valve, valve.state === 'limited' ? 'held' : 'off');
+    else if (sink !== undefined) {
+      sink.state = 'unfed';
+      sink.parkedLaw = element.law;
+      element.law = Law.none;
+    } else element.law = Law.none;
+  }
+}
+
+/** Valves whose state contradicts the solution, in job order. */
+function disagreements(circuit: Circuit, assembled: Assembled): Change[] {
+  const { volts, coupling } = assembled;
+  const changes: Change[] = [];
+  // Rounding must not flip a valve: currents and volts closer than this to a corner are on it.
+  let largest = 1;
+  for (const element of assembled.active) largest = Math.max(largest, Math.abs(element.i));
+  const smallA = 1e-10 * largest;
+  for (const valve of circuit.valves) {
+    const { element } = valve;
+    const node = assembled.reduction.node;
+    if (node[element.from] === -2) continue;
+    const drifts = assembled.reduction.drifting[element.from] !== assembled.reduction.drifting[element.to];
+    const v = volts[element.from]! - volts[element.to]!;
+    const tieA = coupling.ties.get(element) ?? 0;
+    const state =
+      valve.kind === 'diode'
+        ? diodeState(valve, v, tieA, smallA, drifts)
+        : sourceState(valve, { v, tieA, smallA, drifts }, assembled);
+    if (state !== null) changes.push({ valve, state });
+  }
+  return changes;
+}
+
+function diodeState(
+  valve: Extract<Valve, { kind: 'diode' }>,
+  v: number,
+  tieA: number,
+  smallA: number,
+  drifts: boolean,
+): ValveState | null {
+  if (valve.state === 'off') return !drifts && v > valve.forwardV + 1e-11 * Math.max(1, Math.abs(v)) ? 'held' : null;
+  const i = valve.slopeOhm > 0 ? valve.element.i : tieA;
+  return i < -smallA ? 'off' : null;
+}
+
+interface Seen {
+  readonly v: number;
+  readonly tieA: number;
+  readonly smallA: number;
+  readonly drifts: boolean;
+}
+
+function sourceState(valve: Exclude<Valve, { kind: 'diode' }>, seen: Seen, assembled: Assembled): ValveState | null {
+  const { v, tieA, smallA, drifts } = seen;
+  const smallV = 1e-11 * Math.max(1, valve.setpointV);
+  const over = v > valve.setpointV + smallV;
+  const outputA = -tieA;
+  switch (valve.state) {
+    case 'held':
+      if (outputA > valve.limitA + smallA) return 'limited';
+      if (outputA < -smallA) return 'off';
+      return beyondInput(valve, valve.setpointV * outputA, assembled);
+    case 'limited':
+      if (over) return 'held';
+      return beyondInput(valve, v * valve.limitA, assembled);
+    case 'tracking':
+      if (over) return 'held';
+      return -valve.element.i > valve.limitA + smallA ? 'limited' : null;
+    case 'direct': {
+      const linkA = valve.kind === 'joiner' ? (assembled.coupling.ties.get(valve.plusLink) ?? 0) : 0;
+      if (over) return 'held';
+      if (linkA > valve.limitA + smallA) return 'limited';
+      return linkA < -smallA ? 'off' : null;
+    }
+    default:
+      return mayStart(valve, v, smallV, drifts, assembled);
+  }
+}
+
+/** A controller cannot pass on more than its array gives: then it tracks (or joins) instead. */
+function beyondInput(
+  valve: Exclude<Valve, { kind: 'diode' }>,
+  outputW: number,
+  assembled: Assembled,
+): ValveState | null {
+  if (valve.kind === 'tracker') return outputW / valve.efficiency > valve.availableW * (1 + 1e-10) ? 'tracking' : null;
+  if (valve.kind !== 'joiner') return null;
+  const inputV = voltsAcross(valve.input, assembled);
+  const outputV = voltsAcross(valve.element, assembled);
+  return inputV < outputV - 1e-10 * Math.max(1, outputV) ? 'direct' : null;
+}
+
+function mayStart(
+  valve: Exclude<Valve, { kind: 'diode' }>,
+  v: number,
+  smallV: number,
+  drifts: boolean,
+  assembled: Assembled,
+): ValveState | null {
+  if (v > valve.setpointV - smallV || drifts) return null;
+  if (valve.kind === 'tracker') return valve.availableW > 0 ? 'tracking' : null;
+  if (valve.kind === 'joiner') return voltsAcross(valve.input, assembled) > v + smallV ? 'direct' : null;
+  if (valve.kind === 'converter' && valve.input.law === Law.none) return null;
+  return 'held';
+}
+
+function voltsAcross(element: Element, assembled: Assembled): number {
+  return assembled.volts[element.from]! - assembled.volts[element.to]!;
+}

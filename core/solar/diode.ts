@@ -1,0 +1,151 @@
+/** One solar module as a single diode with a series resistance (four parameters; the shunt is neglected). */
+import { Defect } from '../job/issue.ts';
+
+/** The three points of a module's label, at 1000 W/m2 and 25 degC cell temperature. */
+export interface ModuleLabel {
+  readonly vocV: number;
+  readonly iscA: number;
+  readonly vmpV: number;
+  readonly impA: number;
+}
+
+/** The two figures of the diode that the label fixes. */
+export interface DiodeFit {
+  /** a: modified ideality (n Ns k T/q), volts. */
+  readonly bendV: number;
+  /** Rs. */
+  readonly seriesOhm: number;
+  /** True where the label points give no Rs >= 0, and Rs = 0 was taken. */
+  readonly withoutSeries: boolean;
+}
+
+/**
+ * I = photoA - darkA [exp((u - darkV)/bendV) - exp(-darkV/bendV)],  u = V + I seriesOhm.
+ *
+ * The saturation current is written as `darkA` at `darkV` so that no exponential overflows.
+ */
+export interface DiodeCurve {
+  readonly photoA: number;
+  readonly darkA: number;
+  readonly darkV: number;
+  readonly bendV: number;
+  readonly seriesOhm: number;
+  /** Volts at which the current is zero. */
+  readonly openV: number;
+}
+
+/** Current and its slope against the terminal volts. */
+export interface CurrentAt {
+  readonly currentA: number;
+  /** dI/dV, never positive. */
+  readonly slopeSiemens: number;
+}
+
+export interface PowerPoint {
+  readonly voltageV: number;
+  readonly currentA: number;
+  readonly powerW: number;
+}
+
+/** Next to open circuit the curve is bent to the blocked state over this part of the diode's bend (ours, no source). */
+const BLOCKING_PART_OF_BEND = 0.1;
+const MOST_STEPS = 200;
+
+/**
+ * Four-parameter fit in closed form. From I(Voc) = 0, I(Vmp) = Imp and dP/dV = 0 at Vmp, neglecting 1 against exp(Voc/a):
+ *
+ *   a  = (2 Vmp - Voc) / [ln(1 - Imp/Isc) + Imp/(Isc - Imp)]
+ *   Rs = [a ln(1 - Imp/Isc) + Voc - Vmp] / Imp
+ *
+ * Where that gives a <= 0 or Rs < 0, Rs = 0 and a = (Vmp - Voc)/ln(1 - Imp/Isc): the curve still passes the three points.
+ * Needs 0 < Imp < Isc and 0 < Vmp < Voc, else a `Defect`. Source: SRC-SOLAR-FOUR-PARAMETER (from memory; derived above).
+ */
+export function fitDiode({ vocV, iscA, vmpV, impA }: ModuleLabel): DiodeFit {
+  if (!(impA > 0 && impA < iscA && vmpV > 0 && vmpV < vocV)) {
+    throw new Defect(`an array label has 0 < impA < iscA and 0 < vmpV < vocV, not ${impA}, ${iscA}, ${vmpV}, ${vocV}`);
+  }
+  const log = Math.log1p(-impA / iscA);
+  const bendV = (2 * vmpV - vocV) / (log + impA / (iscA - impA));
+  const seriesOhm = (bendV * log + vocV - vmpV) / impA;
+  if (bendV > 0 && seriesOhm >= 0) return { bendV, seriesOhm, withoutSeries: false };
+  return { bendV: (vmpV - vocV) / log, seriesOhm: 0, withoutSeries: true };
+}
+
+/** The curve whose diode carries `fullSunA` at `fullSunOpenV`, lit to `photoA` (> 0). */
+export function diodeCurve(
+  { bendV, seriesOhm }: Pick<DiodeFit, 'bendV' | 'seriesOhm'>,
+  { fullSunA, fullSunOpenV, photoA }: { fullSunA: number; fullSunOpenV: number; photoA: number },
+): DiodeCurve {
+  const base = Math.exp(-fullSunOpenV / bendV);
+  const darkA = fullSunA / (1 - base);
+  const openV = fullSunOpenV + bendV * Math.log(photoA / darkA + base);
+  return { photoA, darkA, darkV: fullSunOpenV, bendV, seriesOhm, openV };
+}
+
+/**
+ * Current and slope at terminal volts. Below 0 V the diode equation goes on (near the photo current); just below open
+ * circuit a cubic leads smoothly to 0 A and slope 0, and above it the module is blocked: 0 A.
+ */
+export function diodeCurrent(curve: DiodeCurve, voltageV: number): CurrentAt {
+  const width = Math.min(BLOCKING_PART_OF_BEND * curve.bendV, curve.openV / 2);
+  if (voltageV >= curve.openV) return { currentA: 0, slopeSiemens: 0 };
+  const start = curve.openV - width;
+  return voltageV <= start ? onDiode(curve, voltageV) : towardsBlocked(onDiode(curve, start), width, voltageV - start);
+}
+
+/** Hermite cubic from a point of the curve to (openV, 0 A, slope 0); it falls all the way. */
+function towardsBlocked(start: CurrentAt, width: number, past: number): CurrentAt {
+  const t = past / width;
+  const rest = 1 - t;
+  const { currentA, slopeSiemens } = start;
+  return {
+    currentA: rest * rest * (currentA * (1 + 2 * t) + slopeSiemens * width * t),
+    slopeSiemens: rest * ((-6 * t * currentA) / width + slopeSiemens * (1 - 3 * t)),
+  };
+}
+
+/**
+ * Newton on f(u) = u - Rs I(u) - V, which rises and is convex: from a start at or right of the root it comes down to the
+ * root without ever overshooting.
+ */
+function onDiode(curve: DiodeCurve, voltageV: number): CurrentAt {
+  const { seriesOhm, photoA, openV, bendV } = curve;
+  let u = Math.min(voltageV + seriesOhm * photoA, openV);
+  for (let step = 0; step < MOST_STEPS; step += 1) {
+    const { currentA, conductance } = atDiode(curve, u);
+    const rise = 1 + seriesOhm * conductance;
+    const change = (u - seriesOhm * currentA - voltageV) / rise;
+    u -= change;
+    if (Math.abs(change) <= 1e-13 * (bendV + Math.abs(u))) {
+      const end = atDiode(curve, u);
+      return { currentA: end.currentA, slopeSiemens: -end.conductance / (1 + seriesOhm * end.conductance) };
+    }
+  }
+  throw new Defect(`the diode equation is solved within ${MOST_STEPS} steps (V = ${voltageV})`);
+}
+
+/** Current and -dI/du at diode volts u. */
+function atDiode(curve: DiodeCurve, u: number): { readonly currentA: number; readonly conductance: number } {
+  const { photoA, darkA, darkV, bendV } = curve;
+  const diodeA = darkA * Math.exp((u - darkV) / bendV);
+  return { currentA: photoA - diodeA + darkA * Math.exp(-darkV / bendV), conductance: diodeA / bendV };
+}
+
+/**
+ * Maximum power point: the root of dP/du = I (1 + 2 Rs g) - u g, g = -dI/du, which has one sign change between u = 0 and
+ * open circuit. Bisection to the last bit.
+ */
+export function diodePeak(curve: DiodeCurve): PowerPoint {
+  let low = 0;
+  let high = curve.openV;
+  for (let step = 0; step < MOST_STEPS; step += 1) {
+    const middle = (low + high) / 2;
+    if (middle <= low || middle >= high) break;
+    const { currentA, conductance } = atDiode(curve, middle);
+    if (currentA * (1 + 2 * curve.seriesOhm * conductance) > middle * conductance) low = middle;
+    else high = middle;
+  }
+  const { currentA } = atDiode(curve, low);
+  const voltageV = low - curve.seriesOhm * currentA;
+  return { voltageV, currentA, powerW: voltageV * currentA };
+}
