@@ -1,11 +1,67 @@
 /** The only door out of core. Hosts, screens and data import from here and from nowhere else inside. */
 
+export type { Banded } from './battery/banded.ts';
+export type { CapacityFraction, PeukertExponent, RatedCapacity, TwoWells, WellCharge } from './battery/capacity.ts';
+export {
+  advanceWells,
+  capacityAtRate,
+  capacityAtTemperature,
+  fullWells,
+  largestDischarge,
+  peukertExponent,
+  peukertHours,
+  ratePerHFromReduced,
+} from './battery/capacity.ts';
+export type { CellCount } from './battery/cells.ts';
+export { cellsPerBlock } from './battery/cells.ts';
+export type { CellState, Emf } from './battery/emf.ts';
+export { emfOfCells, emfOnCurve, emfPerCell } from './battery/emf.ts';
+export type { ChargeWindow, CurrentLimits, DischargeVolts, TemperatureWindow } from './battery/limits.ts';
+export {
+  chargeWindow,
+  currentLimits,
+  dischargeVolts,
+  freezingTemperature,
+  limitOf,
+  temperatureWindow,
+} from './battery/limits.ts';
+export type { RcElement, RcModel } from './battery/rc.ts';
+export { advanceElements, rcModel, resistanceAfter } from './battery/rc.ts';
+export type { ResistanceQuery } from './battery/resistance.ts';
+export { arrheniusFactor, defaultResistance } from './battery/resistance.ts';
+export type { BatteryBranch, BatteryFault, LoadPoint, Thevenin, TwoPointAnswer } from './battery/shortCircuit.ts';
+export { batteryFault, boltedCurrent, twoPointSource } from './battery/shortCircuit.ts';
+export type { StringContext, StringFacts, StringSource } from './battery/stringSource.ts';
+export { factsOf, stringEmf, stringEmfAtCharge, stringSource } from './battery/stringSource.ts';
+export type { GassingCells, Ventilation } from './battery/ventilation.ts';
+export { ventilation } from './battery/ventilation.ts';
+export type { Ampacity } from './conductor/ampacity.ts';
+export { ampacity } from './conductor/ampacity.ts';
+export {
+  circularMilDropV,
+  circularMilK,
+  circularMilsNeeded,
+  conductorDropV,
+  dropFromMillivoltsV,
+  lengthForSameDropM,
+  millivoltsPerAmpereMetre,
+  pairDropV,
+} from './conductor/drop.ts';
+export type { Equivalent } from './conductor/equivalent.ts';
+export { equivalentIn } from './conductor/equivalent.ts';
+export type { AmpacityContext, AmpacityFactor, FactorKind, RatedConductor } from './conductor/rating.ts';
+export type { ConductorResistance, ConductorRun, ResistanceContext } from './conductor/resistance.ts';
+export { conductorResistance, resistanceAt, resistanceTo20 } from './conductor/resistance.ts';
+export type { Missing } from './conductor/size.ts';
+export { areaOf, awgDiameterMm, nextSizeUp, sameSize, sizesOf, smallestSize } from './conductor/size.ts';
+export type { HeatingLaw } from './conductor/temperature.ts';
+export { heatingLaw, temperatureAt } from './conductor/temperature.ts';
 export type { Issue, IssueCode, Result } from './job/issue.ts';
 export { Defect } from './job/issue.ts';
 export type { CheckedJob, OperatingCase, Practice, Reading, Settings, Site, Targets } from './job/job.ts';
 export { caseById, partsInCase } from './job/job.ts';
 export { checkJob, parseJob } from './job/parseJob.ts';
-export type { Chemistry, ConductorSize, JunctionId, Origin, Part, PartId, PartKind } from './job/part.ts';
+export type { Chemistry, JunctionId, Origin, Part, PartId, PartKind, StringPart } from './job/part.ts';
 export { cablesOfPair, junctionsOf, originOf } from './job/part.ts';
 export type {
   Assumption,
@@ -18,9 +74,35 @@ export type {
 } from './network/answer.ts';
 export type { CircuitRequest } from './network/circuit.ts';
 export { operatingPoint } from './network/operatingPoint.ts';
-export type { ChemistryTables } from './tables/chemistryTables.ts';
-export type { ConductorTables } from './tables/conductorTables.ts';
-export type { DeviceTables } from './tables/deviceTables.ts';
-export type { PracticeTable } from './tables/practiceTable.ts';
+export type { ArrayConditions, ArrayCurve } from './solar/arrayCurve.ts';
+export { arrayCurve, currentAt, maximumPower, openCircuitV, shortCircuitA } from './solar/arrayCurve.ts';
+export type {
+  CellResistance,
+  ChemistryTables,
+  EmfCurve,
+  EmfPoint,
+  FactorPoint,
+  LimitQuantity,
+  ModelParameter,
+  Spread,
+} from './tables/chemistryTables.ts';
+export type {
+  AmpacityRow,
+  AmpacityTable,
+  BareMetal,
+  BoatAmpacity,
+  CircularMilConstant,
+  ConductorTables,
+  FactorBand,
+  IecAmpacity,
+  MetalConstants,
+  MetricResistanceRow,
+  UsLandAmpacity,
+  UsResistanceRow,
+} from './tables/conductorTables.ts';
+export type { BreakerInterruptRow, DeviceTables, RatingSeries, TypicalInterrupt } from './tables/deviceTables.ts';
+export type { Figure, PracticeTable, SmallestConductor, UnfusedLength } from './tables/practiceTable.ts';
 export type { Basis, Status } from './tables/status.ts';
 export type { Tables } from './tables/tables.ts';
+export type { ConductorSize } from './units/conductorSize.ts';
+export { parseSize, sizeText } from './units/conductorSize.ts';
