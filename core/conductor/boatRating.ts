@@ -22,7 +22,7 @@ import type { Missing } from './size.ts';
 /**
  * The book's table, its engine-space factor, its bundling factor where it binds, and the square-root law for surroundings
  * warmer than the table (or than the engine space) assumes: boat books give no factor for those.
- * Sources SRC-CFR33-183, SRC-ISO-13297.
+ * Sources SRC-CFR33-183-425-T5, SRC-ISO-13297-A.
  */
 export function boatRating(
   cable: RatedConductor & { readonly size: ConductorSize },
@@ -34,7 +34,7 @@ export function boatRating(
     return { missing: `${table.name} has no aluminium: use copper` };
   const insulation = insulationOf(cable, context);
   const ratedDegC = columnUpTo(columnsOf(book), insulation.degC);
-  if (ratedDegC === undefined) return { missing: `a column of ${table.name} for ${insulation.degC} degC insulation` };
+  if (ratedDegC === undefined) return { missing: `a column of ${table.name} for ${insulation.degC} °C insulation` };
   const rated = ratedRow({ size: cable.size, table, column: String(ratedDegC) }, context.tables);
   if ('missing' in rated) return rated;
   const around = surroundings(cable, context, book.engineSpaceDegC);
@@ -67,7 +67,7 @@ function engineFactor(ratedDegC: number, book: BoatAmpacity): AmpacityFactor {
     return { kind: 'engine-space', name: 'engine space', factor: figure.value, basis: figure.basis };
   return {
     kind: 'engine-space',
-    name: `engine space: ${ratedDegC} degC insulation is not allowed there`,
+    name: `engine space: ${ratedDegC} °C insulation is not allowed there`,
     factor: 0,
     basis: book.engineSpaceDegC.basis,
   };
@@ -78,13 +78,13 @@ function warmFactor(
   place: { readonly engine: boolean; readonly base: Figure; readonly book: BoatAmpacity },
 ): AmpacityFactor | undefined {
   const baseDegC = place.engine ? place.book.engineSpaceDegC.value : place.book.table.tableAmbientDegC;
-  const name = `ambient ${degC.ambientDegC} degC`;
+  const name = `ambient ${degC.ambientDegC} °C`;
   if (degC.ambientDegC > baseDegC) {
     const factor = degC.ratedDegC > baseDegC ? squareRootFactor({ ...degC, tableAmbientDegC: baseDegC }) : 0;
     return { kind: 'ambient', name, factor, basis: SQUARE_ROOT_LAW };
   }
   if (place.engine) return undefined;
-  return { kind: 'ambient', name: `${name}, table ${baseDegC} degC`, factor: 1, basis: place.base.basis };
+  return { kind: 'ambient', name: `${name}, table ${baseDegC} °C`, factor: 1, basis: place.base.basis };
 }
 
 interface Bundling {

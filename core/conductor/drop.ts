@@ -24,7 +24,7 @@ export function pairDropV(run: {
 
 /**
  * K of the circular-mil form, ohm circular mils per foot, at a conductor temperature: ρ20 · lay · (1 + α20 (T − 20)).
- * 10.37 for copper at 20 °C without lay. Sources SRC-IACS, SRC-AL-EC.
+ * 10.37 for copper at 20 °C without lay. Sources SRC-IACS, SRC-METAL-HANDBOOK.
  */
 export function circularMilK(
   conductor: { readonly metal: BareMetal; readonly conductorDegC: number; readonly layFactor: number },

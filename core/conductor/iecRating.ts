@@ -68,9 +68,9 @@ function columnFor(insulationDegC: number, run: Run | undefined, book: IecAmpaci
     return { table: book.xlpe90, column: method, ratedDegC: 90, ambient: 'xlpe90', grouping, assumed };
   if (insulationDegC >= 70)
     return { table: book.pvc70, column: method, ratedDegC: 70, ambient: 'pvc70', grouping, assumed };
-  if (insulationDegC < 60) return { missing: `ampacity of ${insulationDegC} degC insulation: no table` };
+  if (insulationDegC < 60) return { missing: `ampacity of ${insulationDegC} °C insulation: no table` };
   if (run === 'conduit')
-    return { missing: 'ampacity of 60 degC flexible cable in conduit: the table is for cable in air' };
+    return { missing: 'ampacity of 60 °C flexible cable in conduit: the table is for cable in air' };
   return { table: book.flexible60, column: 'pair', ratedDegC: 60, ambient: undefined, grouping, assumed: [] };
 }
 
@@ -80,7 +80,7 @@ function ambientFactor(
   from: { readonly rated: RatedRow; readonly book: IecAmpacity },
 ): AmpacityFactor {
   const { tableAmbientDegC } = column.table;
-  const name = `ambient ${ambientDegC} degC`;
+  const name = `ambient ${ambientDegC} °C`;
   if (ambientDegC === tableAmbientDegC) return { kind: 'ambient', name, factor: 1, basis: from.rated.base.basis };
   if (column.ambient === undefined) {
     const factor = squareRootFactor({ ratedDegC: column.ratedDegC, ambientDegC, tableAmbientDegC });
@@ -91,7 +91,7 @@ function ambientFactor(
   const basis = from.book.ambient[0]?.factors.get(column.ambient)?.basis ?? from.rated.base.basis;
   return {
     kind: 'ambient',
-    name: `${name}: no current allowed on ${column.ratedDegC} degC insulation`,
+    name: `${name}: no current allowed on ${column.ratedDegC} °C insulation`,
     factor: 0,
     basis,
   };

@@ -3,8 +3,9 @@ import type { Stranding } from '../job/part.ts';
 import type { ConductorTables, MetricResistanceRow } from '../tables/conductorTables.ts';
 import type { Figure } from '../tables/practiceTable.ts';
 import { weakest } from '../tables/status.ts';
+import { numberText } from '../units/numberText.ts';
 import { type ConductorMake, metalConstants } from './metal.ts';
-import { figureText, type PerKilometre } from './perKilometre.ts';
+import type { PerKilometre } from './perKilometre.ts';
 
 type Make = Pick<ConductorMake, 'metal' | 'stranding'>;
 
@@ -23,7 +24,7 @@ export function metricOhmPerKm(areaMm2: number, make: Make, tables: ConductorTab
     ohmPerKm: limit.figure.value,
     basis: limit.figure.basis,
     working: [
-      `${limit.figure.basis.text}, ${areaMm2} mm2 ${limit.column}: ${limit.figure.value} mohm/m at 20 degC, at most`,
+      `${limit.figure.basis.text}, ${areaMm2} mm² ${limit.column}: ${limit.figure.value} mΩ/m at 20 °C, at most`,
     ],
     assumed: limit.assumed,
   };
@@ -92,10 +93,10 @@ function byNominalArea(areaMm2: number, make: Make, tables: ConductorTables): Pe
       status: weakest('common-practice', resistivityOhmMm2PerM.basis.status, ...neighbours.map((row) => row.status)),
     },
     working: [
-      `${resistivityOhmMm2PerM.value} ohm mm2/m x 1000 / ${areaMm2} mm2 x ${figureText(ratio)} = ${figureText(ohmPerKm)} mohm/m at 20 degC`,
+      `${resistivityOhmMm2PerM.value} Ω mm²/m × 1000 / ${areaMm2} mm² × ${numberText({ value: ratio })} = ${numberText({ value: ohmPerKm })} mΩ/m at 20 °C`,
     ],
     assumed: [
-      `${areaMm2} mm2 is not in ${text} for this make: resistance ${figureText(ratio)} times that of its nominal area`,
+      `${areaMm2} mm² is not in ${text} for this make: resistance ${numberText({ value: ratio })} times that of its nominal area`,
     ],
   };
 }

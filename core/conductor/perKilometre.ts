@@ -8,8 +8,3 @@ export interface PerKilometre {
   readonly working: readonly string[];
   readonly assumed: readonly string[];
 }
-
-/** A figure inside a line of working, four significant digits. */
-export function figureText(value: number): string {
-  return String(Number(value.toPrecision(4)));
-}

@@ -4,14 +4,15 @@ import type { ConductorFields, ConductorSize } from '../job/part.ts';
 import type { AmpacityRow, AmpacityTable, ConductorTables, FactorBand } from '../tables/conductorTables.ts';
 import type { Figure } from '../tables/practiceTable.ts';
 import type { Basis } from '../tables/status.ts';
-import { areaMm2, areaOf, type Missing, SAME_AREA, sameSize, sizeName } from './size.ts';
+import { sizeText } from '../units/conductorSize.ts';
+import { areaMm2, areaOf, type Missing, SAME_AREA, sameSize } from './size.ts';
 
 /** Why a factor stands: what surrounds the cable, the heat of its neighbours, or the terminals it ends on. */
 export type FactorKind = 'ambient' | 'engine-space' | 'bundle' | 'terminal';
 
 export interface AmpacityFactor {
   readonly kind: FactorKind;
-  /** Printed, with the figures in it: `ambient 45 degC`, `6 loaded conductors`, `60 degC terminals: 40 A at most`. */
+  /** Printed, with the figures in it: `ambient 45 °C`, `6 loaded conductors`, `60 °C terminals: 40 A at most`. */
   readonly name: string;
   readonly factor: number;
   readonly basis: Basis;
@@ -52,7 +53,7 @@ export interface Rating {
 /** What a square-root law of heating rests on where a book gives no factor of its own. */
 export const SQUARE_ROOT_LAW: Basis = {
   source: 'SRC-SQUARE-ROOT-LAW',
-  text: 'heating law sqrt((T - ambient)/(T - table ambient)), common practice, no source',
+  text: 'heating law sqrt((T − ambient)/(T − table ambient)), common practice, no source',
   status: 'common-practice',
 };
 
@@ -89,7 +90,7 @@ export function ratedRow(
   if (own !== undefined) {
     const base = own.amperesA.get(column);
     if (base !== undefined) return { row: own, base, assumed: [] };
-    return { missing: `ampacity of ${sizeName(size)}: ${table.name} has no figure in column ${column}` };
+    return { missing: `ampacity of ${sizeText(size)}: ${table.name} has no figure in column ${column}` };
   }
   const area = areaOf(size, tables);
   if ('missing' in area) return area;
@@ -99,12 +100,12 @@ export function ratedRow(
   const row = smaller.at(-1);
   const base = row?.amperesA.get(column);
   if (row === undefined || base === undefined) {
-    return { missing: `ampacity of ${sizeName(size)}: smaller than anything in ${table.name}, column ${column}` };
+    return { missing: `ampacity of ${sizeText(size)}: smaller than anything in ${table.name}, column ${column}` };
   }
   return {
     row,
     base,
-    assumed: [`${sizeName(size)} rated as ${sizeName(row.size)}, the next smaller size in ${table.name}`],
+    assumed: [`${sizeText(size)} rated as ${sizeText(row.size)}, the next smaller size in ${table.name}`],
   };
 }
 
@@ -136,7 +137,7 @@ export function surroundings(
   if (cable.run !== 'engine-space' || context.ambientDegC >= engineSpace.value) {
     return { degC: context.ambientDegC, assumed: [] };
   }
-  return { degC: engineSpace.value, assumed: [`engine space at ${engineSpace.value} degC`] };
+  return { degC: engineSpace.value, assumed: [`engine space at ${engineSpace.value} °C`] };
 }
 
 /** Insulation temperature as given, or the practice's cautious one. */
@@ -146,7 +147,7 @@ export function insulationOf(
 ): { readonly degC: number; readonly assumed: readonly string[] } {
   if (cable.insulationDegC !== undefined) return { degC: cable.insulationDegC, assumed: [] };
   const degC = context.tables.defaultInsulationDegC[context.practice].value;
-  return { degC, assumed: [`insulation ${degC} degC`] };
+  return { degC, assumed: [`insulation ${degC} °C`] };
 }
 
 /** The hottest column that an insulation may use; `undefined` when it is cooler than them all. Columns named by degrees. */

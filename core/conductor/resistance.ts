@@ -3,10 +3,12 @@ import type { Practice } from '../job/job.ts';
 import type { ConductorSize, Metal, Stranding } from '../job/part.ts';
 import type { ConductorTables } from '../tables/conductorTables.ts';
 import type { Basis } from '../tables/status.ts';
+import { sizeText } from '../units/conductorSize.ts';
+import { numberText } from '../units/numberText.ts';
 import { type ConductorMake, makeOf, metalConstants } from './metal.ts';
 import { metricOhmPerKm } from './metricResistance.ts';
-import { figureText, type PerKilometre } from './perKilometre.ts';
-import { type Missing, sizeName } from './size.ts';
+import type { PerKilometre } from './perKilometre.ts';
+import type { Missing } from './size.ts';
 import { areaOhmPerKm, usTableOhmPerKm } from './usResistance.ts';
 
 /** What a resistance is asked of; a `CablePart` is one. */
@@ -55,7 +57,7 @@ export function conductorResistance(run: ConductorRun, context: ResistanceContex
     basis: perKm.basis,
     working: [
       ...perKm.working,
-      `${figureText(perKm.ohmPerKm)} mohm/m x ${figureText(run.lengthM)} m${parallel} = ${figureText(at20Ohm * 1000)} mohm at 20 degC`,
+      `${numberText({ value: perKm.ohmPerKm })} mΩ/m × ${numberText({ value: run.lengthM })} m${parallel} = ${numberText({ value: at20Ohm * 1000 })} mΩ at 20 °C`,
     ],
     assumed: [...make.assumed, ...perKm.assumed],
   };
@@ -81,13 +83,13 @@ export function ohmPerKmAt20(
     ...byArea,
     assumed: [
       ...byArea.assumed,
-      `${sizeName(size)} ${make.stranding} is not in the 75 degC table: resistance from its area`,
+      `${sizeText(size)} ${make.stranding} is not in the 75 °C table: resistance from its area`,
     ],
   };
 }
 
 /**
- * Resistance of a conductor at a temperature: R = R20 (1 + α20 (T − 20)), the metal's own law. Sources SRC-IACS, SRC-AL-EC.
+ * Resistance of a conductor at a temperature: R = R20 (1 + α20 (T − 20)), the metal's own law. Sources SRC-IACS, SRC-METAL-HANDBOOK.
  * Good from about −50 to 200 °C.
  */
 export function resistanceAt(

@@ -3,6 +3,7 @@ import { Defect } from '../job/issue.ts';
 import type { ConductorSize } from '../job/part.ts';
 import type { ConductorTables } from '../tables/conductorTables.ts';
 import type { Figure } from '../tables/practiceTable.ts';
+import { sizeText } from '../units/conductorSize.ts';
 
 /** A figure that is not there, in words a person can act on. */
 export interface Missing {
@@ -36,37 +37,21 @@ export function areaOf(size: ConductorSize, tables: ConductorTables): Figure | M
       return { value: size.areaKcmil * 1000 * MM2_PER_CMIL, basis: tables.awgFormula };
     case 'sae': {
       const cmil = tables.saeAreaCmil.get(size.gauge);
-      if (cmil === undefined) return { missing: `area of ${sizeName(size)}: not in the table of SAE gauges` };
+      if (cmil === undefined) return { missing: `area of ${sizeText(size)}: not in the table of SAE gauges` };
       return { value: cmil.value * MM2_PER_CMIL, basis: cmil.basis };
     }
     case 'auto':
       return (
         tables.autoAreaMm2.get(size.outsideDiameterMm) ?? {
-          missing: `copper in ${sizeName(size)}: the trade list has no cable of that outside diameter; give the size in mm2`,
+          missing: `copper in ${sizeText(size)}: the trade list has no cable of that outside diameter; give the size in mm2`,
         }
       );
   }
 }
 
-/** A size as people write it: `35 mm2`, `2/0 AWG`, `250 kcmil`, `6 SAE`, `6 auto`. */
-export function sizeName(size: ConductorSize): string {
-  switch (size.system) {
-    case 'mm2':
-      return `${size.areaMm2} mm2`;
-    case 'awg':
-      return `${gaugeName(size.gauge)} AWG`;
-    case 'kcmil':
-      return `${size.areaKcmil} kcmil`;
-    case 'sae':
-      return `${gaugeName(size.gauge)} SAE`;
-    case 'auto':
-      return `${size.outsideDiameterMm} auto`;
-  }
-}
-
 /** The same size of the same system; sizes of two systems are never the same, whatever their areas. */
 export function sameSize(a: ConductorSize, b: ConductorSize): boolean {
-  return sizeName(a) === sizeName(b);
+  return sizeText(a) === sizeText(b);
 }
 
 /** The sizes of a system that the tables hold, in rising area. */
@@ -116,8 +101,4 @@ export function areaMm2(size: ConductorSize, tables: ConductorTables): number {
   const area = areaOf(size, tables);
   if ('missing' in area) throw new Defect(`a size taken from the tables has an area (${area.missing})`);
   return area.value;
-}
-
-function gaugeName(gauge: number): string {
-  return gauge > 0 ? String(gauge) : `${1 - gauge}/0`;
 }

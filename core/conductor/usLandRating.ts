@@ -31,7 +31,7 @@ export function usLandRating(
   const insulation = insulationOf(cable, context);
   const ratedDegC = columnUpTo(COLUMNS, insulation.degC);
   if (ratedDegC === undefined)
-    return { missing: `a column of ${book.current.name} for ${insulation.degC} degC insulation` };
+    return { missing: `a column of ${book.current.name} for ${insulation.degC} °C insulation` };
   const metal = bareMetal(cable.metal ?? 'copper');
   const rated = ratedRow({ size: cable.size, table: book.current, column: `${metal}-${ratedDegC}` }, context.tables);
   if ('missing' in rated) return rated;
@@ -59,7 +59,7 @@ function ambientFactor(
   rated: RatedRow,
   book: UsLandAmpacity,
 ): AmpacityFactor {
-  const name = `ambient ${degC.ambientDegC} degC`;
+  const name = `ambient ${degC.ambientDegC} °C`;
   if (degC.ambientDegC === book.current.tableAmbientDegC) {
     return { kind: 'ambient', name, factor: 1, basis: rated.base.basis };
   }
@@ -68,7 +68,7 @@ function ambientFactor(
   const basis = book.ambient[0]?.factors.get(String(degC.ratedDegC))?.basis ?? rated.base.basis;
   return {
     kind: 'ambient',
-    name: `${name}: no current allowed on ${degC.ratedDegC} degC insulation`,
+    name: `${name}: no current allowed on ${degC.ratedDegC} °C insulation`,
     factor: 0,
     basis,
   };
@@ -98,10 +98,10 @@ function terminalFactor(
   return {
     factor: {
       kind: 'terminal',
-      name: `${column} degC terminals: ${limit.value} A at most`,
+      name: `${column} °C terminals: ${limit.value} A at most`,
       factor,
       basis: usual.basis,
     },
-    assumed: context.terminalDegC === undefined ? [`terminals ${degC} degC`] : [],
+    assumed: context.terminalDegC === undefined ? [`terminals ${degC} °C`] : [],
   };
 }

@@ -3,9 +3,11 @@ import type { ConductorSize } from '../job/part.ts';
 import type { ConductorTables } from '../tables/conductorTables.ts';
 import type { Basis } from '../tables/status.ts';
 import { weakest } from '../tables/status.ts';
+import { sizeText } from '../units/conductorSize.ts';
+import { numberText } from '../units/numberText.ts';
 import { type ConductorMake, metalConstants, tinnedConductivity } from './metal.ts';
-import { figureText, type PerKilometre } from './perKilometre.ts';
-import { areaOf, type Missing, sameSize, sizeName } from './size.ts';
+import type { PerKilometre } from './perKilometre.ts';
+import { areaOf, type Missing, sameSize } from './size.ts';
 
 type Make = Pick<ConductorMake, 'metal' | 'stranding'>;
 
@@ -32,8 +34,8 @@ export function usTableOhmPerKm(size: ConductorSize, make: Make, tables: Conduct
     ohmPerKm,
     basis: { ...cell.basis, status: weakest(cell.basis.status, alphaPerK.basis.status) },
     working: [
-      `${cell.basis.text}, ${sizeName(size)} ${construction}, ${columnName(column)}: ${cell.value} ohm/1000 ft = ${figureText(at75)} mohm/m at 75 degC`,
-      `${figureText(at75)} / (1 + ${alphaPerK.value} x 55) = ${figureText(ohmPerKm)} mohm/m at 20 degC`,
+      `${cell.basis.text}, ${sizeText(size)} ${construction}, ${columnName(column)}: ${cell.value} Ω/1000 ft = ${numberText({ value: at75 })} mΩ/m at 75 °C`,
+      `${numberText({ value: at75 })} / (1 + ${alphaPerK.value} × 55) = ${numberText({ value: ohmPerKm })} mΩ/m at 20 °C`,
     ],
     assumed: make.stranding === 'flexible' ? ['flexible cable taken as the stranded row of the table'] : [],
   };
@@ -41,7 +43,7 @@ export function usTableOhmPerKm(size: ConductorSize, make: Make, tables: Conduct
 
 /**
  * Ohm per kilometre at 20 °C from the area of metal: R = ρ20 · lay · L / (A · tin), lay 1 for a solid wire, tin 1 where plain.
- * Missing where a trade list does not hold the size. Sources SRC-IACS, SRC-AL-EC, SRC-NEC-CH9-T8 (lay), SRC-TINNED-CONDUCTIVITY.
+ * Missing where a trade list does not hold the size. Sources SRC-IACS, SRC-METAL-HANDBOOK, SRC-NEC-CH9-T8 (lay), SRC-TINNED-CONDUCTIVITY.
  */
 export function areaOhmPerKm(size: ConductorSize, make: Make, tables: ConductorTables): PerKilometre | Missing {
   const area = areaOf(size, tables);
@@ -55,14 +57,14 @@ export function areaOhmPerKm(size: ConductorSize, make: Make, tables: ConductorT
   const ohmPerKm = (rho.value * 1000 * (lay?.value ?? 1)) / (area.value * (tin?.value ?? 1));
   const wire = tin !== undefined && make.stranding === 'flexible' ? tables.flexibleWireMm : undefined;
   const bases = [area.basis, rho.basis, lay?.basis, tin?.basis, wire?.basis].filter((basis) => basis !== undefined);
-  const layText = lay === undefined ? '' : ` x ${lay.value} (lay)`;
+  const layText = lay === undefined ? '' : ` × ${lay.value} (lay)`;
   const tinText = tin === undefined ? '' : ` / ${tin.value} (tin)`;
   return {
     ohmPerKm,
     basis: combined(bases),
     working: [
-      `${sizeName(size)}: ${figureText(area.value)} mm2 (${area.basis.text})`,
-      `${rho.value} ohm mm2/m x 1000 / ${figureText(area.value)} mm2${layText}${tinText} = ${figureText(ohmPerKm)} mohm/m at 20 degC`,
+      `${sizeText(size)}: ${numberText({ value: area.value })} mm² (${area.basis.text})`,
+      `${rho.value} Ω mm²/m × 1000 / ${numberText({ value: area.value })} mm²${layText}${tinText} = ${numberText({ value: ohmPerKm })} mΩ/m at 20 °C`,
     ],
     assumed: wire === undefined ? [] : [`wires of ${wire.value} mm in tinned flexible cable`],
   };
