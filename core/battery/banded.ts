@@ -43,7 +43,10 @@ export function bandedEntry(part: Part, field: string, value: number, band: Entr
     return { value, low: Math.min(range[0], value), high: Math.max(range[1], value), origin, basis };
   }
   const half = origin === 'default' ? band.guess : band[origin];
-  const basis = entryBasis(origin, `band of ${(100 * half).toFixed(half < 0.01 ? 2 : 0)} % either way by common practice`);
+  const basis = entryBasis(
+    origin,
+    `band of ${(100 * half).toFixed(half < 0.01 ? 2 : 0)} % either way by common practice`,
+  );
   return { value, low: value * (1 - half), high: value * (1 + half), origin, basis };
 }
 

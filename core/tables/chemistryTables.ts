@@ -109,6 +109,13 @@ export interface ResistanceEvidence {
   readonly basis: Basis;
 }
 
+/** Temperature at which the acid of a lead cell freezes at a state of charge. */
+export interface FreezingPoint {
+  readonly stateOfCharge: number;
+  readonly temperatureDegC: number;
+  readonly basis: Basis;
+}
+
 export interface ModelParameter {
   readonly value: number;
   readonly unit: string;
@@ -133,6 +140,8 @@ export interface ChemistryTables {
   /** A quantity that is missing is not known, or does not exist for the chemistry. */
   readonly limits: Readonly<Record<Chemistry, ReadonlyMap<LimitQuantity, Spread>>>;
   readonly capacityByTemperature: Readonly<Record<Chemistry, readonly CapacityPoint[]>>;
+  /** Acid of lead cells, rising in state of charge. */
+  readonly freezing: readonly FreezingPoint[];
   readonly gassing: readonly GassingCurrent[];
   readonly resistanceEvidence: readonly ResistanceEvidence[];
   /** Published parameter sets of battery models: set name, then parameter name. */
