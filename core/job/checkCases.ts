@@ -1,21 +1,13 @@
 /** Operating cases: what each changes on the drawing, applied to whole parts and checked again. */
-import { quoted } from '../units/parseQuantity.ts';
-import { checkIdField, checkPart } from './checkPart.ts';
-import {
-  described,
-  type Fields,
-  isRawObject,
-  own,
-  type Place,
-  type RawObject,
-  readFields,
-  readValue,
-} from './field.ts';
+import { quoted } from '../units/parsed.ts';
+import { checkIdField, checkLooseFields, checkPart, ownerOf } from './checkPart.ts';
+import { described, type Fields, isRawObject, own, type Place, type RawObject } from './field.ts';
 import type { IssueList } from './issueList.ts';
 import { atRestChanges, type OperatingCase } from './job.ts';
 import { nearestNameHint } from './nearestName.ts';
 import type { Part, PartId } from './part.ts';
 import { fieldPath, itemPath } from './path.ts';
+import { readFields, readValue } from './readField.ts';
 
 /** The parts of the file as cases need them: checked, and raw beside it for `set`. */
 export interface PartsRead {
@@ -192,7 +184,10 @@ function* settings(
       at.issues.add(fieldPath(at.path, name), 'forbidden-field', () => `A case cannot change the ${name} of a part.`);
     }
     const part = parts.checkedById.get(id);
-    if (fixed.length === 0 && part !== undefined) yield [part, fields, at];
+    if (part === undefined) {
+      const raw = parts.rawById.get(id)!;
+      checkLooseFields(fields, own(raw, 'kind'), { ...at, owner: ownerOf(raw) });
+    } else if (fixed.length === 0) yield [part, fields, at];
   }
 }
 

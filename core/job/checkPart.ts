@@ -1,16 +1,6 @@
 /** One part of the file, unknown, becomes a checked part. */
-import { quoted } from '../units/parseQuantity.ts';
-import {
-  described,
-  type Fields,
-  isRawObject,
-  own,
-  type Place,
-  type RawObject,
-  type Rule,
-  readFields,
-  readValue,
-} from './field.ts';
+import { quoted } from '../units/parsed.ts';
+import { described, type Fields, isRawObject, own, type Place, type RawObject, type Rule } from './field.ts';
 import type { IssueList } from './issueList.ts';
 import { troubleWithId } from './names.ts';
 import { nearestNameHint } from './nearestName.ts';
@@ -18,6 +8,7 @@ import type { Origin, Part } from './part.ts';
 import { findContradictions } from './partContradictions.ts';
 import { commonFields, partFields } from './partFields.ts';
 import { fieldPath } from './path.ts';
+import { readFields, readValue } from './readField.ts';
 
 const origins: readonly string[] = ['measured', 'label', 'default', 'guess'] satisfies Origin[];
 
@@ -100,6 +91,13 @@ function fieldsOf(raw: RawObject, { issues, path, owner }: Place): Fields | unde
     return `kind of ${owner}: expected one of ${kinds.join(', ')}, got ${described(kind)}${hint}.`;
   });
   return undefined;
+}
+
+/** Checks some fields for a part of a kind by themselves, where the whole part cannot be judged. */
+export function checkLooseFields(raw: RawObject, kind: unknown, place: Place): void {
+  const fields = typeof kind === 'string' ? fieldsByKind.get(kind) : undefined;
+  if (fields === undefined) return;
+  readFields(raw, Object.fromEntries(Object.entries(fields).map(([name, { rule }]) => [name, { rule }])), place);
 }
 
 function readOrigins(raw: unknown, fields: Fields, place: Place): ReadonlyMap<string, Origin> {

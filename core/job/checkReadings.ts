@@ -1,21 +1,13 @@
 /** Field readings: what a meter said, at which junctions or in which part, in which case. */
-import { quoted } from '../units/parseQuantity.ts';
+import { quoted } from '../units/parsed.ts';
 import type { UnitName } from '../units/unitName.ts';
 import { checkIdField } from './checkPart.ts';
-import {
-  described,
-  type Field,
-  type Fields,
-  isRawObject,
-  own,
-  type Place,
-  type RawObject,
-  readFields,
-} from './field.ts';
+import { described, type Field, type Fields, isRawObject, own, type Place, type RawObject } from './field.ts';
 import type { IssueList } from './issueList.ts';
 import type { Reading } from './job.ts';
 import { nearestNameHint } from './nearestName.ts';
 import { fieldPath, itemPath } from './path.ts';
+import { readFields } from './readField.ts';
 
 /** The names that a reading may refer to. */
 export interface Known {

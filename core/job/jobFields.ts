@@ -1,8 +1,9 @@
 /** The fields of a job beside its parts, cases and readings: site, demand, targets, settings. */
-import { described, type Field, type Fields, isRawObject, type Place, readFields } from './field.ts';
+import { described, type Field, type Fields, isRawObject, type Place } from './field.ts';
 import type { IssueList } from './issueList.ts';
 import type { DemandRow, Settings, Site, Targets } from './job.ts';
 import { fieldPath, itemPath } from './path.ts';
+import { readFields } from './readField.ts';
 
 const anything: Field = { rule: { holds: 'anything' } };
 const shortText: Field = { rule: { holds: 'text', longest: 1000 } };

@@ -1,9 +1,9 @@
 /** Unknown JSON in, a checked job or every issue out. Nothing downstream parses. */
-import { quoted } from '../units/parseQuantity.ts';
+import { quoted } from '../units/parsed.ts';
 import { checkCases, type PartsRead } from './checkCases.ts';
 import { checkPart, extraOf } from './checkPart.ts';
 import { checkReadings } from './checkReadings.ts';
-import { described, isRawObject, own, type RawObject, readFields } from './field.ts';
+import { described, isRawObject, own, type RawObject } from './field.ts';
 import type { Issue, Result } from './issue.ts';
 import { IssueList } from './issueList.ts';
 import type { CheckedJob, JunctionNote } from './job.ts';
@@ -12,6 +12,7 @@ import { type Migration, migrate, migrations } from './migrate.ts';
 import { nearestNameHint } from './nearestName.ts';
 import { type JunctionId, junctionsOf, type Part } from './part.ts';
 import { fieldPath, itemPath } from './path.ts';
+import { readFields } from './readField.ts';
 import { readJson } from './readJson.ts';
 
 /** A job of more parts is no job of this trade; the limit keeps every later step bounded. */

@@ -7,13 +7,17 @@ import { fieldPath } from './path.ts';
 export function findContradictions(part: Part, place: Place): void {
   switch (part.kind) {
     case 'string':
-      return string(part, place);
+      string(part, place);
+      return;
     case 'load':
-      return load(part, place);
+      load(part, place);
+      return;
     case 'inverter':
-      return inverter(part, place);
+      inverter(part, place);
+      return;
     case 'array':
-      return array(part, place);
+      array(part, place);
+      return;
     case 'cable':
       differ(part.from, part.to, 'to', place);
       if (part.size === undefined && part.resistanceOhm === undefined) needsSize(place);
@@ -31,11 +35,12 @@ export function findContradictions(part: Part, place: Place): void {
       differ(part.to.plus, part.to.minus, 'to', place);
       return;
     case 'charger':
-      return differ(part.plus, part.minus, 'minus', place);
+      differ(part.plus, part.minus, 'minus', place);
+      return;
     case 'busbar':
       return;
     default:
-      return differ(part.from, part.to, 'to', place);
+      differ(part.from, part.to, 'to', place);
   }
 }
 

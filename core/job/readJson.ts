@@ -3,7 +3,7 @@
  * given twice in one object and field names that would reach into the program's own objects, and says where and what is wrong
  * in the same words on every host.
  */
-import { quoted } from '../units/parseQuantity.ts';
+import { quoted } from '../units/parsed.ts';
 import type { Issue, Result } from './issue.ts';
 import { IssueList } from './issueList.ts';
 import { fieldPath, itemPath } from './path.ts';
@@ -49,7 +49,7 @@ class Unreadable extends Error {
 // Bounded repeats: an unbounded one over millions of digits would exhaust the pattern matcher's own stack.
 const numberPattern = /-?(?:0|[1-9]\d{0,400})(?:\.\d{1,400})?(?:[eE][+-]?\d{1,20})?/y;
 const wordPattern = /[^\s,:{}[\]"]{1,30}/y;
-const needsCare = /[\\\u0000-\u001f]/;
+const needsCare = /[\\\p{Cc}]/u;
 const escapePattern = /^(?:["\\/bfnrt]|u[0-9A-Fa-f]{4})/;
 const escapes: Readonly<Record<string, string>> = { b: '\b', f: '\f', n: '\n', r: '\r', t: '\t' };
 
@@ -166,13 +166,13 @@ class JsonReader {
         );
       }
       if (code !== 0x5c) continue;
-      const escape = escapePattern.exec(this.text.slice(i + 1, i + 6))?.[0];
-      if (escape === undefined) {
+      const sign = escapePattern.exec(this.text.slice(i + 1, i + 6))?.[0];
+      if (sign === undefined) {
         this.at = i;
         this.fail('a backslash in a text must be followed by one of " \\ / b f n r t or u and four hexadecimal digits');
       }
-      pieces.push(this.text.slice(from, i), unescaped(escape));
-      i += escape.length;
+      pieces.push(this.text.slice(from, i), unescaped(sign));
+      i += sign.length;
       from = i + 1;
     }
     this.at = start;
@@ -231,7 +231,7 @@ class JsonReader {
   }
 }
 
-function unescaped(escape: string): string {
-  if (escape.startsWith('u')) return String.fromCharCode(Number.parseInt(escape.slice(1), 16));
-  return escapes[escape] ?? escape;
+function unescaped(sign: string): string {
+  if (sign.startsWith('u')) return String.fromCharCode(Number.parseInt(sign.slice(1), 16));
+  return escapes[sign] ?? sign;
 }

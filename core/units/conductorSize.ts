@@ -1,5 +1,5 @@
 /** Conductor sizes: five systems that look alike on paper and are not the same copper. */
-import { type Parsed, quoted } from './parseQuantity.ts';
+import { type Parsed, quoted } from './parsed.ts';
 
 /** A conductor size. The five kinds never convert silently; `core/conductor` says what each means in copper. */
 export type ConductorSize =

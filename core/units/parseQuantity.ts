@@ -1,9 +1,7 @@
 /** A written quantity, `3 m + 40 cm`, becomes a number in the unit that its field keeps. */
+import { type Parsed, quoted } from './parsed.ts';
 import { describeUnit, type UnitName } from './unitName.ts';
 import { worthOf } from './unitWords.ts';
-
-/** A number read from text, or a sentence part `expected …, got …` that says what could not be read. */
-export type Parsed<T> = { readonly ok: true; readonly value: T } | { readonly ok: false; readonly message: string };
 
 /** Longest text that is read as a quantity; a longer one is no quantity of this trade. */
 export const longestQuantityText = 80;
@@ -138,14 +136,4 @@ function termsOf(text: string): readonly Term[] | undefined {
 function amountOf([whole, wholePart, above, below]: RegExpExecArray): number {
   if (above === undefined || below === undefined) return Number(whole);
   return Number(wholePart ?? 0) + Number(above) / Number(below);
-}
-
-/** A piece of the user's own text for a message: short, in quotes, control signs made visible. */
-export function quoted(text: string): string {
-  const short = text.length > 40 ? `${text.slice(0, 40).replace(/[\ud800-\udbff]$/, '')}…` : text;
-  return JSON.stringify(short).replace(/[\u007f-\u009f\u200b-\u200f\u2028-\u202e\u2060-\u206f\ufeff]/g, escapeSign);
-}
-
-function escapeSign(sign: string): string {
-  return `\\u${sign.charCodeAt(0).toString(16).padStart(4, '0')}`;
 }
