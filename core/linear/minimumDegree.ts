@@ -1,195 +1,264 @@
 /**
  * Minimum-degree ordering on the quotient graph, with the approximate external degree and the element absorption of
  * Amestoy, Davis and Duff. It also yields the pattern of each factor column, and stops early: once what is left is nearly
- * complete, it is left to be factored as a full matrix.
+ * complete, it is left to be factored as a full block.
  */
+import { reserve, workspace } from './workspace.ts';
 
-/** An undirected graph without loops or double edges: node v's neighbours are neighbours[starts[v] .. starts[v + 1]). */
-export interface Graph {
+/**
+ * Where things stand in the workspace, for a graph of `size` nodes without loops or double edges.
+ * The caller fills `place`, `length`, `held` and the neighbour lists, all of which lie below `end`.
+ */
+export interface QuotientGraph {
   readonly size: number;
-  readonly starts: Int32Array;
-  readonly neighbours: Int32Array;
+  /** place[v]: where the list of node v begins (once it is eliminated: its column in the factor). */
+  readonly place: number;
+  /** length[v]: how long that list is. */
+  readonly length: number;
+  /** held[v] = 1 keeps v back until a neighbour has been eliminated, because its diagonal is empty until then. */
+  readonly held: number;
+  /** order[k]: the node eliminated k-th. */
+  readonly order: number;
+  /** The first free place of the workspace. */
+  readonly end: number;
 }
 
-/** The order in which to eliminate the nodes. */
-export interface Elimination {
-  /** Length size: order[k] is the node eliminated k-th. */
-  readonly order: Int32Array;
-  /** The first `sparseCount` pivots have sparse columns; the rest form one full block. */
-  readonly sparseCount: number;
-  /** Length size, for the sparse pivots only: the column of node p is lists[listStarts[p] .. + listLengths[p]), unsorted nodes. */
-  readonly listStarts: Int32Array;
-  readonly listLengths: Int32Array;
-  readonly lists: Int32Array;
-}
-
-/** A remaining graph with at least this share of its possible edges is factored as a full block. */
+/** A remaining graph with at least this share of its possible edges is factored as a full block: measured to cost least. */
 const FULL_ENOUGH = 0.6;
 
+/** What a node is: still to be eliminated; eliminated, its list a column; eliminated, its column covered by that of a later one. */
 const VARIABLE = 0;
 const ELEMENT = 1;
 const ABSORBED = 2;
 
-/**
- * Orders the graph. `held[v]` = 1 keeps node v back until a neighbour has been eliminated: its diagonal is empty, and it becomes a
- * pivot only by fill. Ties go to the node that reached its degree last, so the order depends on the graph alone.
- */
-export function minimumDegree(graph: Graph, held: Uint8Array): Elimination {
-  const { size, starts, neighbours } = graph;
-  // Quotient graph. Variable v: place[v] points at elementCount[v] elements, then variables, length[v] entries in all.
-  // Element p (a pivot already taken): place[p] points at the length[p] variables of its column.
-  let store = new Int32Array(2 * starts[size]! + size + 16);
-  store.set(neighbours.subarray(0, starts[size]!));
-  let used = starts[size]!;
-  const place = new Int32Array(size);
-  const length = new Int32Array(size);
-  const elementCount = new Int32Array(size);
-  const kind = new Uint8Array(size);
-  const degree = new Int32Array(size);
-  // Doubly linked lists of the variables of equal degree; -1 ends a list.
-  const first = new Int32Array(size + 1).fill(-1);
-  const next = new Int32Array(size);
-  const previous = new Int32Array(size);
-  const inColumn = new Int32Array(size).fill(-1); // inColumn[v] = k when v is in the column of the k-th pivot
-  const outside = new Int32Array(size); // outside[e] = |L_e \ L_p|, valid when touched[e] = k
-  const touched = new Int32Array(size).fill(-1);
-  const order = new Int32Array(size);
+/** Ends a list. */
+const NONE = -1;
 
-  const insert = (v: number, d: number): void => {
-    const f = first[d]!;
-    next[v] = f;
-    previous[v] = -1;
-    if (f !== -1) previous[f] = v;
-    first[d] = v;
-    degree[v] = d;
-  };
-  const remove = (v: number): void => {
-    const p = previous[v]!;
-    const q = next[v]!;
-    if (p === -1) first[degree[v]!] = q;
-    else next[p] = q;
-    if (q !== -1) previous[q] = p;
-  };
+/** How the ordering ended. */
+export interface EliminationEnd {
+  /** Nodes eliminated before the full block; those of the block end the order. */
+  readonly count: number;
+  /** The first free place of the workspace. */
+  readonly end: number;
+}
 
-  let waiting = 0;
-  for (let v = size - 1; v >= 0; v--) {
-    place[v] = starts[v]!;
-    length[v] = starts[v + 1]! - starts[v]!;
-    if (held[v] === 1) {
-      degree[v] = -1;
-      waiting++;
-    } else insert(v, length[v]!);
+/** Orders the graph. Equal degrees go to the node that reached its degree last, so the order depends on the graph alone. */
+export function minimumDegree(graph: QuotientGraph): EliminationEnd {
+  const elimination = new Elimination(graph);
+  let count = 0;
+  while (count < graph.size && !elimination.restIsFull(count)) elimination.eliminate(count++);
+  elimination.appendRest(count);
+  return { count, end: elimination.used };
+}
+
+class Elimination {
+  private readonly graph: QuotientGraph;
+  // Places in the workspace of arrays by node:
+  /** Elements at the head of a variable's list; variables follow. */
+  private readonly elements: number;
+  private readonly kind: number;
+  /** Approximate external degree; NONE for a held variable, which is in no list. */
+  private readonly degree: number;
+  /** Doubly linked lists of the variables of equal degree: first[degree], next[v], previous[v]. */
+  private readonly first: number;
+  private readonly next: number;
+  private readonly previous: number;
+  /** inColumn[v] = k: v is in the column of the k-th pivot. */
+  private readonly inColumn: number;
+  /** outside[e], if touched[e] = k: how many variables of element e are not in that column. */
+  private readonly outside: number;
+  private readonly touched: number;
+  /** The first free place of the workspace. */
+  used: number;
+  /** No variable has a lower degree. */
+  private lowest = 0;
+  /** Number of held variables. */
+  private waiting = 0;
+
+  constructor(graph: QuotientGraph) {
+    const { size } = graph;
+    this.graph = graph;
+    const base = graph.end;
+    this.elements = base;
+    this.kind = base + size;
+    this.degree = base + 2 * size;
+    this.next = base + 3 * size;
+    this.previous = base + 4 * size;
+    this.outside = base + 5 * size;
+    this.inColumn = base + 6 * size;
+    this.touched = base + 7 * size;
+    this.first = base + 8 * size;
+    this.used = base + 9 * size;
+    reserve(this.used + size);
+    const { ints } = workspace;
+    ints.fill(0, base, base + 2 * size);
+    ints.fill(NONE, this.inColumn, this.used);
+    for (let v = size - 1; v >= 0; v--) {
+      if (ints[graph.held + v] === 1) {
+        ints[this.degree + v] = NONE;
+        this.waiting++;
+      } else this.insert(v, ints[graph.length + v]!);
+    }
   }
 
-  let lowest = 0;
-  let k = 0;
-  while (k < size) {
-    while (lowest < size && first[lowest] === -1) lowest++;
-    if (lowest >= size) {
-      // Only held nodes are left: no neighbour will fill them. Let them through; the factorisation will report them.
-      for (let v = size - 1; v >= 0; v--) {
-        if (kind[v] === VARIABLE && degree[v] === -1) insert(v, Math.min(length[v]!, size - 1));
-      }
-      waiting = 0;
-      lowest = 0;
-      continue;
-    }
-    const left = size - k;
-    if (waiting === 0 && lowest >= FULL_ENOUGH * (left - 1)) break;
-    const p = first[lowest]!;
-    remove(p);
-
-    // The column of p: its variables, and those of every element it belongs to, which p absorbs.
-    if (used + left > store.length) {
-      const larger = new Int32Array(2 * store.length + left);
-      larger.set(store);
-      store = larger;
-    }
-    const columnStart = used;
-    inColumn[p] = k;
-    const pEnd = place[p]! + length[p]!;
-    const pElements = place[p]! + elementCount[p]!;
-    for (let s = place[p]!; s < pElements; s++) {
-      const e = store[s]!;
-      if (kind[e] !== ELEMENT) continue;
-      kind[e] = ABSORBED;
-      for (let t = place[e]!; t < place[e]! + length[e]!; t++) {
-        const v = store[t]!;
-        if (kind[v] === VARIABLE && inColumn[v] !== k) {
-          inColumn[v] = k;
-          store[used++] = v;
-        }
-      }
-    }
-    for (let s = pElements; s < pEnd; s++) {
-      const v = store[s]!;
-      if (kind[v] === VARIABLE && inColumn[v] !== k) {
-        inColumn[v] = k;
-        store[used++] = v;
-      }
-    }
-    kind[p] = ELEMENT;
-    place[p] = columnStart;
-    length[p] = used - columnStart;
-    order[k] = p;
-
-    // How much of each neighbouring element lies outside the column.
-    for (let c = columnStart; c < used; c++) {
-      const v = store[c]!;
-      for (let s = place[v]!; s < place[v]! + elementCount[v]!; s++) {
-        const e = store[s]!;
-        if (kind[e] !== ELEMENT) continue;
-        if (touched[e] !== k) {
-          touched[e] = k;
-          outside[e] = length[e]!;
-        }
-        outside[e]!--;
-      }
-    }
-
-    // Each variable of the column: forget what p covers, count its new degree.
-    for (let c = columnStart; c < used; c++) {
-      const v = store[c]!;
-      const vStart = place[v]!;
-      const vElements = vStart + elementCount[v]!;
-      const vEnd = vStart + length[v]!;
-      let to = vStart;
-      let d = 0;
-      for (let s = vStart; s < vElements; s++) {
-        const e = store[s]!;
-        if (kind[e] !== ELEMENT) continue;
-        if (outside[e] === 0) {
-          kind[e] = ABSORBED; // wholly inside p's column
-          continue;
-        }
-        d += outside[e]!;
-        store[to++] = e;
-      }
-      const elementsEnd = to;
-      for (let s = vElements; s < vEnd; s++) {
-        const u = store[s]!;
-        if (kind[u] !== VARIABLE || inColumn[u] === k) continue;
-        d++;
-        store[to++] = u;
-      }
-      // p itself joins the elements; the first variable makes room. There is room: p, or an element it absorbed, has gone.
-      if (to > elementsEnd) store[to] = store[elementsEnd]!;
-      store[elementsEnd] = p;
-      length[v] = to + 1 - vStart;
-      elementCount[v] = elementsEnd + 1 - vStart;
-
-      const inside = used - columnStart - 1;
-      const before = degree[v]!;
-      if (before === -1) waiting--;
-      else remove(v);
-      const bound = before === -1 ? d + inside : Math.min(d, before) + inside;
-      const now = Math.min(bound, left - 2);
-      insert(v, now);
-      if (now < lowest) lowest = now;
-    }
-    k++;
+  private insert(v: number, d: number): void {
+    const { ints } = workspace;
+    const f = ints[this.first + d]!;
+    ints[this.next + v] = f;
+    ints[this.previous + v] = NONE;
+    if (f !== NONE) ints[this.previous + f] = v;
+    ints[this.first + d] = v;
+    ints[this.degree + v] = d;
+    if (d < this.lowest) this.lowest = d;
   }
-  const sparseCount = k;
-  for (let v = 0; v < size; v++) if (kind[v] === VARIABLE) order[k++] = v;
-  return { order, sparseCount, listStarts: place, listLengths: length, lists: store };
+
+  private remove(v: number): void {
+    const { ints } = workspace;
+    const p = ints[this.previous + v]!;
+    const q = ints[this.next + v]!;
+    if (p === NONE) ints[this.first + ints[this.degree + v]!] = q;
+    else ints[this.next + p] = q;
+    if (q !== NONE) ints[this.previous + q] = p;
+  }
+
+  /** Whether the nodes left after k pivots are as good as all joined to each other. Finds the lowest degree on the way. */
+  restIsFull(k: number): boolean {
+    const { ints } = workspace;
+    const { size } = this.graph;
+    if (this.waiting === size - k) this.letThrough();
+    while (ints[this.first + this.lowest] === NONE) this.lowest++;
+    return this.waiting === 0 && this.lowest >= FULL_ENOUGH * (size - k - 1) && this.lowest > 0;
+  }
+
+  /** Only held nodes are left, and no neighbour will ever fill their diagonals: they go in as they are, for the factorisation to report. */
+  private letThrough(): void {
+    const { ints } = workspace;
+    const { size, length } = this.graph;
+    this.lowest = 0;
+    this.waiting = 0;
+    for (let v = size - 1; v >= 0; v--) {
+      if (ints[this.kind + v] === VARIABLE) this.insert(v, Math.min(ints[length + v]!, size - 1));
+    }
+  }
+
+  /** Takes a node of lowest degree as the k-th pivot. */
+  eliminate(k: number): void {
+    const p = workspace.ints[this.first + this.lowest]!;
+    this.remove(p);
+    reserve(this.used + this.graph.size);
+    const columnStart = this.used;
+    this.gatherColumn(p, k);
+    this.measureElements(columnStart, k);
+    this.updateDegrees(p, columnStart, k);
+  }
+
+  /** The column of p: its variables, and those of every element it belongs to, which p absorbs. */
+  private gatherColumn(p: number, k: number): void {
+    const { ints } = workspace;
+    const { place, length, order } = this.graph;
+    const columnStart = this.used;
+    ints[order + k] = p;
+    ints[this.inColumn + p] = k;
+    const start = ints[place + p]!;
+    const elementsEnd = start + ints[this.elements + p]!;
+    for (let s = start; s < elementsEnd; s++) {
+      const e = ints[s]!;
+      if (ints[this.kind + e] !== ELEMENT) continue;
+      ints[this.kind + e] = ABSORBED;
+      const from = ints[place + e]!;
+      this.gather(from, from + ints[length + e]!, k);
+    }
+    this.gather(elementsEnd, start + ints[length + p]!, k);
+    ints[this.kind + p] = ELEMENT;
+    ints[place + p] = columnStart;
+    ints[length + p] = this.used - columnStart;
+  }
+
+  /** Adds the variables of a list to the column, once each. */
+  private gather(from: number, to: number, k: number): void {
+    const { ints } = workspace;
+    for (let t = from; t < to; t++) {
+      const v = ints[t]!;
+      if (ints[this.kind + v] !== VARIABLE || ints[this.inColumn + v] === k) continue;
+      ints[this.inColumn + v] = k;
+      ints[this.used++] = v;
+    }
+  }
+
+  /** How much of each neighbouring element lies outside the column. */
+  private measureElements(columnStart: number, k: number): void {
+    const { ints } = workspace;
+    const { place, length } = this.graph;
+    const columnEnd = this.used;
+    for (let c = columnStart; c < columnEnd; c++) {
+      const v = ints[c]!;
+      const start = ints[place + v]!;
+      const end = start + ints[this.elements + v]!;
+      for (let s = start; s < end; s++) {
+        const e = ints[s]!;
+        if (ints[this.kind + e] !== ELEMENT) continue;
+        if (ints[this.touched + e] !== k) {
+          ints[this.touched + e] = k;
+          ints[this.outside + e] = ints[length + e]!;
+        }
+        ints[this.outside + e]!--;
+      }
+    }
+  }
+
+  /** Gives each variable of the column p as an element in place of all that p covers, and its new degree. */
+  private updateDegrees(p: number, columnStart: number, k: number): void {
+    const { ints } = workspace;
+    const inside = this.used - columnStart - 1;
+    const most = this.graph.size - k - 2;
+    for (let c = columnStart; c < this.used; c++) {
+      const v = ints[c]!;
+      const before = ints[this.degree + v]!;
+      if (before === NONE) this.waiting--;
+      else this.remove(v);
+      const beyond = this.prune(v, p, k);
+      this.insert(v, Math.min(most, inside + (before === NONE ? beyond : Math.min(beyond, before))));
+    }
+  }
+
+  /** Drops from the list of v what the column of p covers, and adds p. Returns how many neighbours v may have outside the column. */
+  private prune(v: number, p: number, k: number): number {
+    const { ints } = workspace;
+    const start = ints[this.graph.place + v]!;
+    const elementsEnd = start + ints[this.elements + v]!;
+    const end = start + ints[this.graph.length + v]!;
+    let beyond = 0;
+    let to = start;
+    for (let s = start; s < elementsEnd; s++) {
+      const e = ints[s]!;
+      if (ints[this.kind + e] !== ELEMENT) continue;
+      if (ints[this.outside + e] === 0) {
+        ints[this.kind + e] = ABSORBED;
+        continue;
+      }
+      beyond += ints[this.outside + e]!;
+      ints[to++] = e;
+    }
+    const kept = to;
+    for (let s = elementsEnd; s < end; s++) {
+      const u = ints[s]!;
+      if (ints[this.kind + u] !== VARIABLE || ints[this.inColumn + u] === k) continue;
+      beyond++;
+      ints[to++] = u;
+    }
+    // The first variable makes room for p among the elements. There is room: p itself, or an element that p absorbed, has gone.
+    ints[to] = ints[kept]!;
+    ints[kept] = p;
+    ints[this.elements + v] = kept + 1 - start;
+    ints[this.graph.length + v] = to + 1 - start;
+    return beyond;
+  }
+
+  /** The nodes of the full block end the order, as they are numbered. */
+  appendRest(k: number): void {
+    const { ints } = workspace;
+    const { size, order } = this.graph;
+    let next = order + k;
+    for (let v = 0; v < size; v++) if (ints[this.kind + v] === VARIABLE) ints[next++] = v;
+  }
 }

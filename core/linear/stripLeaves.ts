@@ -1,55 +1,62 @@
 /** Takes a tree-like graph apart from its twigs inwards: a node with one neighbour left is eliminated without any fill. */
 import type { Pattern } from './matrix.ts';
-
-/** What the stripping leaves. */
-export interface Stripped {
-  /** Number of leaves taken. */
-  readonly count: number;
-  /** Length size; the first `count` are the leaves in the order taken. */
-  readonly leaves: Int32Array;
-  /** Length size, by node: the one neighbour a leaf had left. */
-  readonly parent: Int32Array;
-  /** Length size, by node: the place in `values` of the entry that joins leaf and parent. */
-  readonly edge: Int32Array;
-  /** Length size, by node: neighbours left; -1 for a leaf that is gone. */
-  readonly degree: Int32Array;
-}
+import type { Layout } from './symmetricPlan.ts';
+import { workspace } from './workspace.ts';
 
 /**
- * Strips the leaves of a symmetric pattern. Instead of neighbour lists each node keeps the exclusive-or of its neighbours' numbers and of
- * its entries' places: with one neighbour left, these are the neighbour and the entry themselves.
- * A node with an empty diagonal waits until a neighbour has been taken and has filled it.
+ * Strips the leaves of a symmetric pattern; returns how many. Writes their pairs (leaf, neighbour) to the program, in order, and where their
+ * entries stand; leaves degree[v] = -1 behind for a leaf, and the number of neighbours left for any other node.
+ *
+ * Instead of neighbour lists each node keeps the exclusive-or of its neighbours' numbers and of its entries' places: with one neighbour left,
+ * these are the neighbour and the entry themselves.
  */
-export function stripLeaves(pattern: Pattern): Stripped {
-  const { size, columnStarts, rowIndices, emptyDiagonal } = pattern;
-  const degree = new Int32Array(size);
-  const parent = new Int32Array(size);
-  const edge = new Int32Array(size);
-  const leaves = new Int32Array(size);
-  for (let j = 0; j < size; j++) {
-    // The diagonal ends the column.
-    for (let e = columnStarts[j]!; e < columnStarts[j + 1]! - 1; e++) {
-      const i = rowIndices[e]!;
-      degree[i]!++;
-      degree[j]!++;
-      parent[i]! ^= j;
-      parent[j]! ^= i;
-      edge[i]! ^= e;
-      edge[j]! ^= e;
-    }
-  }
+export function stripLeaves(pattern: Pattern, at: Layout): number {
+  sumNeighbours(pattern, at);
+  const { ints } = workspace;
+  const { size } = pattern;
+  const { degree, neighbour, edge, held, slot, program, offDiagonal } = at;
+  let tail = 0;
+  const { queue } = at;
+  for (let v = 0; v < size; v++) if (ints[degree + v] === 1 && ints[held + v] === 0) ints[queue + tail++] = v;
   let count = 0;
-  for (let v = 0; v < size; v++) if (degree[v] === 1 && emptyDiagonal[v] === 0) leaves[count++] = v;
-  let taken = 0;
-  for (let head = 0; head < count; head++) {
-    const v = leaves[head]!;
-    if (degree[v] !== 1) continue; // its one neighbour was taken first
-    leaves[taken++] = v;
-    degree[v] = -1;
-    const p = parent[v]!;
-    parent[p]! ^= v;
-    edge[p]! ^= edge[v]!;
-    if (--degree[p]! === 1) leaves[count++] = p; // by now filled, so an empty diagonal is no bar
+  for (let head = 0; head < tail; head++) {
+    const v = ints[queue + head]!;
+    if (ints[degree + v] !== 1) continue; // its one neighbour was taken first
+    const p = ints[neighbour + v]!;
+    const e = ints[edge + v]!;
+    ints[program + 2 * count] = v;
+    ints[program + 2 * count + 1] = p;
+    ints[slot + e] = offDiagonal + count;
+    count++;
+    ints[degree + v] = -1;
+    ints[neighbour + p]! ^= v;
+    ints[edge + p]! ^= e;
+    ints[held + p] = 0;
+    if (--ints[degree + p]! === 1) ints[queue + tail++] = p;
   }
-  return { count: taken, leaves, parent, edge, degree };
+  return count;
+}
+
+function sumNeighbours(pattern: Pattern, at: Layout): void {
+  const { ints } = workspace;
+  const { size, columnStarts, rowIndices, emptyDiagonal } = pattern;
+  const { degree, neighbour, edge, held, slot } = at;
+  ints.fill(0, degree, degree + size);
+  ints.fill(0, neighbour, neighbour + size);
+  ints.fill(0, edge, edge + size);
+  let e = 0;
+  for (let j = 0; j < size; j++) {
+    ints[held + j] = emptyDiagonal[j]!;
+    const diagonal = columnStarts[j + 1]! - 1; // it ends its column
+    for (; e < diagonal; e++) {
+      const i = rowIndices[e]!;
+      ints[degree + i]!++;
+      ints[degree + j]!++;
+      ints[neighbour + i]! ^= j;
+      ints[neighbour + j]! ^= i;
+      ints[edge + i]! ^= e;
+      ints[edge + j]! ^= e;
+    }
+    ints[slot + e++] = j;
+  }
 }

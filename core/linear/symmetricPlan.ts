@@ -1,187 +1,145 @@
-/** The plan of an L D Lᵀ factorisation: which entry meets which, worked out once from the pattern alone. */
+/** The plan of an L D Lᵀ factorisation: what is eliminated when and which numbers it meets, worked out once from the pattern alone. */
 import type { Pattern } from './matrix.ts';
-import { minimumDegree } from './minimumDegree.ts';
+import { type ColumnPlan, planColumns } from './planColumns.ts';
+import { reduceLinks } from './reduceLinks.ts';
 import { stripLeaves } from './stripLeaves.ts';
+import { reserve, workspace } from './workspace.ts';
 
 /**
- * Nodes are renumbered in pivot order: leaves 0 .. leafCount - 1, sparse pivots .. fullStart - 1, then the full block to size - 1.
- * All numbers of a factorisation stand in one array `w`:
- * the diagonal d (size); one multiplier a leaf (leafCount); the sparse columns of L; the upper triangle of the full block, row by row.
+ * The numbers stand in one array w (see `SymmetricFactors`): the diagonal d, length size + 1; the right-hand side y, length size + 1; then
+ * the off-diagonal entries: one a leaf, two a link, the sparse columns, and the full block's upper triangle without diagonal, row by row.
+ * d and y are indexed by node; node `size` is nobody.
+ *
+ * `table` is the program of the elimination, a list of integers in this order:
+ * - leaves: (node, neighbour)
+ * - links: (node, neighbour, neighbour or nobody, place in w of the entry between the two)
+ * - sparse columns: (node, d, d rows, d (d - 1) / 2 places in w, d), the places in w for row pairs (0, 1), (0, 2) … (1, 2) …
+ * - the nodes of the full block
+ * - for each entry of the pattern its place in w.
  */
 export interface SymmetricPlan {
   readonly pattern: Pattern;
   readonly leafCount: number;
-  readonly fullStart: number;
-  /** Length size: original[k] is the node that became pivot k. */
-  readonly original: Int32Array;
-  /** Length of values: where each entry of the matrix goes in w. */
-  readonly destination: Int32Array;
-  /** Length of w. */
-  readonly storage: number;
-  /** Length leafCount: the pivot that each leaf is eliminated into. */
-  readonly parent: Int32Array;
-  /** Length fullStart - leafCount + 1: sparse column c (pivot leafCount + c) has entries columnStarts[c] .. columnStarts[c + 1] - 1. */
-  readonly columnStarts: Int32Array;
-  /** By entry of the sparse columns: its row, as a pivot number, rising. Entry p stands in w at size + leafCount + p. */
-  readonly rows: Int32Array;
-  /**
-   * The places in w that elimination changes, off the diagonal: for each sparse column with rows r_0 < r_1 < …, the entries (r_0, r_1),
-   * (r_0, r_2) …, then (r_1, r_2) …
-   */
-  readonly targets: Int32Array;
+  readonly linkCount: number;
+  readonly columnCount: number;
+  readonly fullSize: number;
+  readonly table: Int32Array;
+  /** Where the full block's nodes begin in the table. */
+  readonly fullNodes: number;
+  /** Where the places of the pattern's entries begin in the table. */
+  readonly slots: number;
   /** Where the full block begins in w. */
   readonly fullPlace: number;
+  /** Length of w. */
+  readonly storage: number;
+}
+
+/** Where the arrays of an analysis begin in the workspace; all by node unless said otherwise. */
+export interface Layout {
+  /** Neighbours left; -1 once eliminated. */
+  readonly degree: number;
+  /** Exclusive-or of the neighbours left; of the entries that lead there. */
+  readonly neighbour: number;
+  readonly edge: number;
+  /** 1 while the diagonal is empty. */
+  readonly held: number;
+  /** Nodes to look at; length size + 1. */
+  readonly queue: number;
+  /** 1 for a node in the queue. */
+  readonly waiting: number;
+  /** The last pass in which a neighbour was eliminated. */
+  readonly pass: number;
+  /** Neighbour lists: where they begin, and how far they are filled. */
+  readonly start: number;
+  readonly cursor: number;
+  /** By entry, then by fill of the links: its place in w. */
+  readonly slot: number;
+  /** The program so far: at most four integers a node. */
+  readonly program: number;
+  /** By end of a branch, two an entry: the node there, the place of the other end, the number of the entry. */
+  readonly end: number;
+  readonly twin: number;
+  readonly entry: number;
+  /** The first free place after all that. */
+  readonly free: number;
+  /** Where the off-diagonal entries begin in w. */
+  readonly offDiagonal: number;
+}
+
+function layOut({ size, rowIndices }: Pattern): Layout {
+  const ends = 2 * (rowIndices.length - size);
+  const slot = 9 * size + 1;
+  const program = slot + rowIndices.length + size;
+  const end = program + 4 * size;
+  return {
+    degree: 0,
+    neighbour: size,
+    edge: 2 * size,
+    held: 3 * size,
+    waiting: 4 * size,
+    pass: 5 * size,
+    start: 6 * size,
+    cursor: 7 * size,
+    queue: 8 * size,
+    slot,
+    program,
+    end,
+    twin: end + ends,
+    entry: end + 2 * ends,
+    free: end + 3 * ends,
+    offDiagonal: 2 * (size + 1),
+  };
 }
 
 /** Works out the plan. */
 export function symmetricPlan(pattern: Pattern): SymmetricPlan {
-  const { size, columnStarts: aStarts, rowIndices } = pattern;
-  const stripped = stripLeaves(pattern);
-  const leafCount = stripped.count;
-  const original = stripped.leaves;
-  const pivot = new Int32Array(size);
-  for (let k = 0; k < leafCount; k++) pivot[original[k]!] = k;
-
-  // The core: nodes that are no leaves, numbered 0 .. coreSize - 1 as they come.
-  const coreSize = size - leafCount;
-  const coreNode = new Int32Array(coreSize);
-  const coreNumber = new Int32Array(size).fill(-1);
-  const starts = new Int32Array(coreSize + 1);
-  let c = 0;
-  for (let v = 0; v < size; v++) {
-    if (stripped.degree[v] === -1) continue;
-    coreNode[c] = v;
-    coreNumber[v] = c;
-    starts[c + 1] = starts[c]! + stripped.degree[v]!;
-    c++;
-  }
-  const neighbours = new Int32Array(starts[coreSize]!);
-  const next = starts.slice();
-  const held = new Uint8Array(coreSize);
-  const fed = new Uint8Array(size);
-  for (let k = 0; k < leafCount; k++) fed[stripped.parent[original[k]!]!] = 1;
-  for (let a = 0; a < coreSize; a++) {
-    const v = coreNode[a]!;
-    held[a] = pattern.emptyDiagonal[v] === 1 && fed[v] === 0 ? 1 : 0;
-    for (let e = aStarts[v]!; e < aStarts[v + 1]! - 1; e++) {
-      const b = coreNumber[rowIndices[e]!]!;
-      if (b === -1) continue;
-      neighbours[next[a]!++] = b;
-      neighbours[next[b]!++] = a;
-    }
-  }
-  const elimination = minimumDegree({ size: coreSize, starts, neighbours }, held);
-  for (let k = 0; k < coreSize; k++) {
-    const v = coreNode[elimination.order[k]!]!;
-    original[leafCount + k] = v;
-    pivot[v] = leafCount + k;
-  }
-  const parent = new Int32Array(leafCount);
-  for (let k = 0; k < leafCount; k++) parent[k] = pivot[stripped.parent[original[k]!]!]!;
-
-  // Sparse columns of L with rows rising: two transpositions sort them.
-  const { sparseCount, lists, listStarts, listLengths, order } = elimination;
-  const columnStarts = new Int32Array(sparseCount + 1);
-  const rowStarts = new Int32Array(coreSize + 1);
-  for (let k = 0; k < sparseCount; k++) {
-    const p = order[k]!;
-    columnStarts[k + 1] = columnStarts[k]! + listLengths[p]!;
-    for (let s = listStarts[p]!; s < listStarts[p]! + listLengths[p]!; s++) {
-      rowStarts[pivot[coreNode[lists[s]!]!]! - leafCount + 1]!++;
-    }
-  }
-  for (let r = 0; r < coreSize; r++) rowStarts[r + 1]! += rowStarts[r]!;
-  const entries = columnStarts[sparseCount]!;
-  const columnOf = new Int32Array(entries); // by row: the columns in which the row has an entry, rising
-  const rowNext = rowStarts.slice();
-  for (let k = 0; k < sparseCount; k++) {
-    const p = order[k]!;
-    for (let s = listStarts[p]!; s < listStarts[p]! + listLengths[p]!; s++) {
-      columnOf[rowNext[pivot[coreNode[lists[s]!]!]! - leafCount]!++] = k;
-    }
-  }
-  const rows = new Int32Array(entries);
-  const columnNext = columnStarts.slice();
-  const entryOf = new Int32Array(entries); // parallel to columnOf: the entry itself
-  for (let r = 0; r < coreSize; r++) {
-    for (let s = rowStarts[r]!; s < rowStarts[r + 1]!; s++) {
-      const p = columnNext[columnOf[s]!]!++;
-      rows[p] = leafCount + r;
-      entryOf[s] = p;
-    }
-  }
-
-  // Where the entry (r, row) stands in w, for the column r in hand.
-  const base = size + leafCount;
-  const fullStart = leafCount + sparseCount;
-  const fullSize = size - fullStart;
-  const fullPlace = base + entries;
-  const fullEntry = (r: number, s: number): number => {
-    const i = r - fullStart;
-    // Row i of the upper triangle begins after the i rows before it, of lengths fullSize - 1, fullSize - 2, …
-    return fullPlace + i * (fullSize - 1) - (i * (i - 1)) / 2 + (s - r - 1);
-  };
-  const targetStarts = new Int32Array(sparseCount + 1);
-  for (let k = 0; k < sparseCount; k++) {
-    const d = columnStarts[k + 1]! - columnStarts[k]!;
-    targetStarts[k + 1] = targetStarts[k]! + (d * (d - 1)) / 2;
-  }
-  const targets = new Int32Array(targetStarts[sparseCount]!);
-  const where = new Int32Array(size);
-  for (let r = 0; r < coreSize; r++) {
-    const full = r >= sparseCount;
-    if (!full) for (let p = columnStarts[r]!; p < columnStarts[r + 1]!; p++) where[rows[p]!] = base + p;
-    for (let s = rowStarts[r]!; s < rowStarts[r + 1]!; s++) {
-      const k = columnOf[s]!;
-      const end = columnStarts[k + 1]!;
-      const p = entryOf[s]!;
-      const i = p - columnStarts[k]!;
-      const d = end - columnStarts[k]!;
-      let t = targetStarts[k]! + i * d - (i * (i + 1)) / 2;
-      for (let q = p + 1; q < end; q++) targets[t++] = full ? fullEntry(leafCount + r, rows[q]!) : where[rows[q]!]!;
-    }
-  }
-
-  // Where each entry of the matrix goes.
-  const destination = new Int32Array(rowIndices.length);
-  for (let j = 0; j < size; j++) {
-    const end = aStarts[j + 1]! - 1;
-    destination[end] = pivot[j]!;
-    for (let e = aStarts[j]!; e < end; e++) {
-      const a = pivot[j]!;
-      const b = pivot[rowIndices[e]!]!;
-      const low = a < b ? a : b;
-      const high = a < b ? b : a;
-      if (low < leafCount) destination[e] = size + low;
-      else if (low >= fullStart) destination[e] = fullEntry(low, high);
-      else
-        destination[e] = base + search(rows, columnStarts[low - leafCount]!, columnStarts[low - leafCount + 1]!, high);
-    }
-  }
-  const storage = fullPlace + (fullSize * (fullSize - 1)) / 2;
+  const { size } = pattern;
+  const at = layOut(pattern);
+  reserve(at.free);
+  const leafCount = stripLeaves(pattern, at);
+  const linkCount = reduceLinks(pattern, at, leafCount);
+  const core = planColumns(at, {
+    patternSize: size,
+    size: size - leafCount - linkCount,
+    place: at.offDiagonal + leafCount + 2 * linkCount,
+  });
+  placeLinkEntries(at, leafCount, linkCount);
+  const chainEnd = 2 * leafCount + 4 * linkCount;
+  const slots = chainEnd + core.end - core.start;
   return {
     pattern,
     leafCount,
-    fullStart,
-    original,
-    destination,
-    storage,
-    parent,
-    columnStarts,
-    rows,
-    targets,
-    fullPlace,
+    linkCount,
+    columnCount: core.columnCount,
+    fullSize: core.fullSize,
+    table: collect(pattern, at, core, chainEnd),
+    fullNodes: slots - core.fullSize,
+    slots,
+    fullPlace: core.fullPlace,
+    storage: core.storage,
   };
 }
 
-/** The place of `wanted` in the rising list rows[from .. to). */
-function search(rows: Int32Array, from: number, to: number, wanted: number): number {
-  let low = from;
-  let high = to - 1;
-  while (low < high) {
-    const middle = (low + high) >> 1;
-    if (rows[middle]! < wanted) low = middle + 1;
-    else high = middle;
+/** The table, from its parts in the workspace. */
+function collect({ rowIndices }: Pattern, at: Layout, core: ColumnPlan, chainEnd: number): Int32Array {
+  const { ints } = workspace;
+  const slots = chainEnd + core.end - core.start;
+  const table = new Int32Array(slots + rowIndices.length);
+  table.set(ints.subarray(at.program, at.program + chainEnd));
+  table.set(ints.subarray(core.start, core.end), chainEnd);
+  table.set(ints.subarray(at.slot, at.slot + rowIndices.length), slots);
+  return table;
+}
+
+/** Turns the number of the entry that each link changes into its place in w; for a link that changes none, its own empty second entry. */
+function placeLinkEntries(at: Layout, leafCount: number, linkCount: number): void {
+  const { ints } = workspace;
+  let record = at.program + 2 * leafCount + 3;
+  let own = at.offDiagonal + leafCount + 1;
+  for (let k = 0; k < linkCount; k++) {
+    const e = ints[record]!;
+    ints[record] = e < 0 ? own : ints[at.slot + e]!;
+    record += 4;
+    own += 2;
   }
-  return low;
 }
