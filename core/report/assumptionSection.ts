@@ -2,11 +2,11 @@
 import type { CheckedJob } from '../job/job.ts';
 import type { Part } from '../job/part.ts';
 import { originOf } from '../job/part.ts';
-import type { Assumption, OperatingPoint } from '../network/answer.ts';
+import type { Assumption } from '../network/answer.ts';
 import type { Citations } from './citations.ts';
 import { caseTitle } from './cover.ts';
 import type { Block, Cell, TableBlock } from './document.ts';
-import { NOT_GIVEN, plain, unitWord } from './figures.ts';
+import { milliohms, NOT_GIVEN, plain, unitWord } from './figures.ts';
 import type { ReportInput } from './input.ts';
 import { count, fieldWords, ORIGIN_WORDS, sentenceCase } from './wording.ts';
 
@@ -68,15 +68,19 @@ function gather({ job, points }: ReportInput): readonly AssumptionLine[] {
   return [...lines.values()];
 }
 
-/** The assumption's sentence without the name of its part, so that the same sentence about two parts is the same. */
-function withoutPart({ text, part }: Assumption): string {
-  if (part === null) return text;
-  return text.replaceAll(` of ${part}`, '').replaceAll(part, 'the part');
+/**
+ * The assumption's sentence without the name of its part, so that the same sentence about two parts is the same; field names
+ * and units of the job file become words. Nothing is left where it only repeats the columns.
+ */
+function withoutPart({ text, part, field, value }: Assumption): string {
+  const general = part === null ? text : text.replaceAll(` of ${part}`, '').replaceAll(part, 'the part');
+  if (general.startsWith(`${field} taken as ${value}`)) return '';
+  return general.replaceAll(field, fieldWords(field)).replaceAll(' degC', ' °C');
 }
 
 function assumptionTable(lines: readonly AssumptionLine[], { points }: ReportInput, citations: Citations): TableBlock {
   const rows = lines.map(({ assumption, words, parts, cases }): readonly Cell[] => [
-    { text: sentenceCase(fieldWords(assumption.field)), under: words },
+    nameCell(assumption, words),
     valueText(assumption),
     rangeText(assumption),
     ORIGIN_WORDS[assumption.origin],
@@ -99,6 +103,12 @@ function assumptionTable(lines: readonly AssumptionLine[], { points }: ReportInp
     rows,
     notes: rows.some((row) => row.includes(NOT_GIVEN)) ? [`${NOT_GIVEN} no number, or no range known.`] : [],
   };
+}
+
+/** Where the assumption is no number, its sentence is the figure. */
+function nameCell({ field, value }: Assumption, words: string): Cell {
+  const name = sentenceCase(fieldWords(field));
+  return typeof value === 'number' ? { text: name, under: words } : `${name}: ${words}`;
 }
 
 function valueText({ value, unit }: Assumption): string {
@@ -125,7 +135,7 @@ function markedFigures(job: CheckedJob): TableBlock {
         part.id,
         sentenceCase(fieldWords(field)),
         fieldValue(part, field),
-        range === undefined ? NOT_GIVEN : `${plain(range[0])} – ${plain(range[1])}`,
+        range === undefined ? NOT_GIVEN : `${fieldText(field, range[0])} – ${fieldText(field, range[1])}`,
         ORIGIN_WORDS[originOf(part, field)],
       ];
     }),
@@ -161,18 +171,18 @@ const UNIT_OF_SUFFIX: readonly (readonly [RegExp, string])[] = [
 
 function fieldValue(part: Part, field: string): string {
   const value: unknown = Reflect.get(part, field);
-  const unit = UNIT_OF_SUFFIX.find(([suffix]) => suffix.test(field))?.[1] ?? '';
-  if (typeof value === 'number') return `${plain(value)}${unit.replace(' ', '\u00a0')}`;
+  if (typeof value === 'number') return fieldText(field, value);
   if (typeof value === 'string') return value;
   if (typeof value === 'boolean') return value ? 'yes' : 'no';
   return NOT_GIVEN;
 }
+function fieldText(field: string, value: number): string {
+  const unit = UNIT_OF_SUFFIX.find(([suffix]) => suffix.test(field))?.[1] ?? '';
+  if (unit === ' Ω' && Math.abs(value) < 1) return `${milliohms(value)}\u00a0mΩ`;
+  return `${plain(value)}${unit.replace(' ', '\u00a0')}`;
+}
 
-/** All assumptions of a report, for the summary's count. */
-export function countAssumptions(points: readonly OperatingPoint[]): number {
-  const seen = new Set<string>();
-  for (const point of points) {
-    for (const { part, field, text } of point.assumptions) seen.add(JSON.stringify([part, field, text]));
-  }
-  return seen.size;
+/** How many different figures were assumed: the lines of the table. */
+export function countAssumptions(input: ReportInput): number {
+  return gather(input).length;
 }

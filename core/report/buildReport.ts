@@ -21,12 +21,9 @@ export function buildReport(input: ReportInput): ReportDocument {
   const citations = new Citations();
   const body: readonly Block[] = [
     ...summarySection(input, citations),
-    PAGE,
     ...assumptionSection(input, citations),
     ...partSections(input, citations),
-    PAGE,
     ...caseSection(input),
-    PAGE,
     ...findingSection(input, citations),
     ...proofSection(input),
     ...testSection(input, citations),

@@ -14,19 +14,17 @@ export function proofSection({ job, points }: ReportInput): readonly Block[] {
   const rows = points.map((point): readonly Cell[] => {
     const { proof } = point;
     const title = caseTitle(job, point, points);
-    if (point.outcome !== 'solved') return [title, point.outcome, '', '', '', '', '', ''];
+    if (point.outcome !== 'solved') return [title, point.outcome, '', '', '', '', '', '', ''];
     return [
       title,
-      proof.holds ? 'holds' : 'does not hold',
+      { text: proof.holds ? 'holds' : 'does not hold', under: `${proof.iterations} steps` },
       { text: scientific(proof.worstJunctionA), under: proof.worstJunction ?? '' },
       scientific(proof.worstLoopV),
+      scientific(proof.relativeResidual),
       watts(proof.powerInW),
       watts(proof.powerOutW),
       watts(proof.heatW),
-      {
-        text: scientific(proof.mismatchW),
-        under: `residual ${scientific(proof.relativeResidual)}, ${proof.iterations} steps`,
-      },
+      scientific(proof.mismatchW),
     ];
   });
   return [
@@ -42,16 +40,17 @@ export function proofSection({ job, points }: ReportInput): readonly Block[] {
       columns: [
         { head: 'Case', kind: 'text', align: 'left' },
         { head: 'Proof', kind: 'id', align: 'left' },
-        { head: 'Largest junction remainder', unit: 'A', kind: 'text', align: 'left' },
-        { head: 'Largest voltage remainder', unit: 'V', kind: 'text', align: 'left' },
+        { head: 'At a junction', unit: 'A', kind: 'text', align: 'left' },
+        { head: 'In a part', unit: 'V', kind: 'text', align: 'left' },
+        { head: 'Residual', unit: 'scaled', kind: 'text', align: 'left' },
         { head: 'In', unit: 'W', kind: 'number', align: 'decimal' },
         { head: 'Out', unit: 'W', kind: 'number', align: 'decimal' },
         { head: 'Heat', unit: 'W', kind: 'number', align: 'decimal' },
-        { head: 'In − out − heat', unit: 'W', kind: 'text', align: 'left' },
+        { head: 'Left over', unit: 'W', kind: 'text', align: 'left' },
       ],
       rows,
       notes: [
-        'The junction with the largest remainder stands under it. Residual: largest scaled remainder of the equations. Out: taken by loads, batteries under charge included.',
+        'At a junction: the largest remainder of the currents, with the junction where it stands. In a part: the largest disagreement between the law of a part and the volts across it. Residual: of the equations, scaled. Out: taken by loads, batteries under charge included. Left over: in less out less heat.',
       ],
     },
   ];

@@ -22,13 +22,6 @@ function grouped(text: string): string {
   return fraction === undefined ? spaced : `${spaced}.${fraction}`;
 }
 
-/** Three or four figures: enough to check a sum, not more than a meter shows. */
-function decimalsFor(value: number): number {
-  const size = Math.abs(value);
-  if (size >= 1000) return 0;
-  return size >= 10 ? 1 : 2;
-}
-
 export function amps(currentA: number): string {
   return fixed(currentA, Math.abs(currentA) >= 1000 ? 0 : Math.abs(currentA) >= 1 || currentA === 0 ? 1 : 2);
 }
@@ -81,10 +74,9 @@ function superscript(exponent: string): string {
 
 /** A measured or limiting value in the unit that the engine names, e.g. `{ value: 0.041, unit: '1' }` → `4.1 %`. */
 export function withUnit({ value, unit }: { readonly value: number; readonly unit: string }): string {
-  const words = UNIT_WORDS[unit];
-  if (unit === '1') return `${percent(value)} %`;
-  if (unit === 'ohm') return Math.abs(value) < 1 ? `${milliohms(value)} mΩ` : `${fixed(value, decimalsFor(value))} Ω`;
-  return `${fixed(value, decimalsFor(value))} ${words ?? unit}`;
+  if (unit === '1') return `${percent(value)}\u00a0%`;
+  if (unit === 'ohm' && Math.abs(value) < 1) return `${milliohms(value)}\u00a0mΩ`;
+  return `${plain(Number(value.toPrecision(unit === 'V' || Math.abs(value) >= 1000 ? 4 : 3)))}\u00a0${unitWord(unit)}`;
 }
 
 /** Units of assumptions and measures as they are printed; any other is printed as it stands. */

@@ -115,10 +115,10 @@ function passed({ passed: held }: CheckReport): readonly Block[] {
       kind: 'table',
       caption: 'Comparisons that held',
       columns: [
-        { head: 'What was compared', kind: 'text', align: 'left' },
         { head: 'Times', kind: 'number', align: 'right' },
+        { head: 'What was compared', kind: 'text', align: 'left' },
       ],
-      rows: held.map(({ rule, count: times }) => [sentenceCase(rule), String(times)]),
+      rows: held.map(({ rule, count: times }) => [String(times), sentenceCase(rule)]),
       notes: [],
     },
   ];

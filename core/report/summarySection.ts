@@ -29,8 +29,9 @@ export function summarySection(input: ReportInput, citations: Citations): readon
   ];
 }
 
-function standing({ points, checkReport, job }: ReportInput): readonly Fact[] {
-  const assumed = countAssumptions(points);
+function standing(input: ReportInput): readonly Fact[] {
+  const { checkReport, job } = input;
+  const assumed = countAssumptions(input);
   return [
     { label: 'Findings', value: findingCounts(checkReport) },
     {

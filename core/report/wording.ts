@@ -93,8 +93,35 @@ export function sentenceCase(name: string): string {
   return words.charAt(0).toUpperCase() + words.slice(1);
 }
 
-/** Camel-case field names of the job as words, unit suffix left off: `insulationDegC` → `insulation`. */
+/** Fields whose bare name would not be understood on paper. */
+const FIELD_WORDS: Readonly<Record<string, string>> = {
+  ambientDegC: 'air temperature',
+  ambientDesignDegC: 'air temperature',
+  capacityAh: 'capacity',
+  conductorDegC: 'conductor temperature',
+  cutoffV: 'cut-off voltage',
+  emfV: 'rest voltage',
+  endOhm: 'resistance of the terminations',
+  forwardV: 'forward voltage',
+  impA: 'current at full power',
+  insulationDegC: 'insulation temperature',
+  iscA: 'short-circuit current',
+  iscPerDegC: 'change of short-circuit current',
+  linkOhm: 'resistance of the links',
+  nominalCellDegC: 'nominal cell temperature',
+  pmpPerDegC: 'change of power',
+  ratingMv: 'rated millivolts',
+  string: 'battery string',
+  temperatureDegC: 'temperature',
+  vmpV: 'voltage at full power',
+  vocPerDegC: 'change of open-circuit voltage',
+  vocV: 'open-circuit voltage',
+};
+
+/** Camel-case field names of the job as words, unit suffix left off: `maxChargeA` → `max charge`. */
 export function fieldWords(field: string): string {
+  const known = FIELD_WORDS[field];
+  if (known !== undefined) return known;
   const bare = field.replace(/(?:DegC|PerDegC|Ohm|Mv|Mm2|KWhPerM2Day|WPerM2|Ah|Wh|Years|Deg)$|(?<=[a-z])[AVWMS]$/, '');
   return bare
     .replaceAll(/([a-z0-9])([A-Z])/g, '$1 $2')

@@ -1,0 +1,35 @@
+/** Figures: vector shapes brought to the width of the page, with words for those who cannot see them. */
+import type { FigureBlock } from '../../core/report/document.ts';
+import type { Sheet } from './sheet.ts';
+import { STYLES } from './style.ts';
+import { flowText } from './textBlocks.ts';
+
+const TITLE_PT = STYLES.caption.leadingPt + 6;
+
+/** Scale at which a figure fits an empty page. */
+function scaleOf(sheet: Sheet, { width, height }: FigureBlock): number {
+  return Math.min(1, sheet.width / width, (sheet.fullRoom - TITLE_PT) / height);
+}
+
+export function figureHeightPt(sheet: Sheet, block: FigureBlock): number {
+  return TITLE_PT + block.height * scaleOf(sheet, block);
+}
+
+export function drawFigure(sheet: Sheet, block: FigureBlock): void {
+  const scale = scaleOf(sheet, block);
+  sheet.ensure(figureHeightPt(sheet, block));
+  flowText(sheet, sheet.root, { text: block.title, style: STYLES.caption, x: sheet.left, widthPt: sheet.width });
+  sheet.y += 6;
+  const x = sheet.left + (sheet.width - block.width * scale) / 2;
+  const y = sheet.y;
+  const element = sheet.child(sheet.root, 'Figure', {
+    alt: block.alt,
+    bbox: [x, y, x + block.width * scale, y + block.height * scale],
+    placement: 'Block',
+  });
+  sheet.tagged(element, 'Figure', () => {
+    for (const shape of block.shapes) sheet.shape(shape, { x, y, scale });
+  });
+  element.end();
+  sheet.y = y + block.height * scale + 12;
+}
