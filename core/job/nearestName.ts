@@ -14,7 +14,9 @@ export function nearestNameHint(written: string, candidates: Iterable<string>): 
     seen += 1;
     if (seen > mostCandidates) break;
     if (Math.abs(candidate.length - written.length) >= bestDistance) continue;
-    const distance = editDistance(written.toLowerCase(), candidate.toLowerCase());
+    // Of names that are equally near, the one that begins alike is the likelier.
+    const distance =
+      editDistance(written.toLowerCase(), candidate.toLowerCase()) - (written[0] === candidate[0] ? 0.5 : 0);
     if (distance < bestDistance) [best, bestDistance] = [candidate, distance];
   }
   return best === undefined ? '' : ` (did you mean ${best}?)`;
