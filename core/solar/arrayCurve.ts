@@ -102,8 +102,8 @@ function assumptions(array: ArrayPart, fit: DiodeFit): readonly string[] {
 }
 
 /**
- * Current out of the array at its terminal volts, and dI/dV. Falls steadily; smooth below 0 V and above open circuit, where
- * the array blocks and gives 0 A.
+ * Current out of the array at its terminal volts, and dI/dV. Falls steadily everywhere; negative above open circuit, where a
+ * lit array takes current (a blocking diode is a part of its own).
  */
 export function currentAt(curve: ArrayCurve, voltageV: number): CurrentAt {
   if (curve.module === undefined) return { currentA: 0, slopeSiemens: 0 };

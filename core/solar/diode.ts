@@ -47,8 +47,8 @@ export interface PowerPoint {
   readonly powerW: number;
 }
 
-/** Next to open circuit the curve is bent to the blocked state over this part of the diode's bend (ours, no source). */
-const BLOCKING_PART_OF_BEND = 0.1;
+/** Above this many bends over the label's open circuit the exponential goes on as a straight line. */
+const STEEPEST = 40;
 const MOST_STEPS = 200;
 
 /**
@@ -83,25 +83,12 @@ export function diodeCurve(
 }
 
 /**
- * Current and slope at terminal volts. Below 0 V the diode equation goes on (near the photo current); just below open
- * circuit a cubic leads smoothly to 0 A and slope 0, and above it the module is blocked: 0 A.
+ * Current and slope at terminal volts: the diode equation everywhere. Below 0 V it stays near the photo current; above open
+ * circuit the current is negative, since a lit module does not block (a blocking diode is a part of its own) and the network
+ * relies on a curve that falls without a flat piece.
  */
 export function diodeCurrent(curve: DiodeCurve, voltageV: number): CurrentAt {
-  const width = Math.min(BLOCKING_PART_OF_BEND * curve.bendV, curve.openV / 2);
-  if (voltageV >= curve.openV) return { currentA: 0, slopeSiemens: 0 };
-  const start = curve.openV - width;
-  return voltageV <= start ? onDiode(curve, voltageV) : towardsBlocked(onDiode(curve, start), width, voltageV - start);
-}
-
-/** Hermite cubic from a point of the curve to (openV, 0 A, slope 0); it falls all the way. */
-function towardsBlocked(start: CurrentAt, width: number, past: number): CurrentAt {
-  const t = past / width;
-  const rest = 1 - t;
-  const { currentA, slopeSiemens } = start;
-  return {
-    currentA: rest * rest * (currentA * (1 + 2 * t) + slopeSiemens * width * t),
-    slopeSiemens: rest * ((-6 * t * currentA) / width + slopeSiemens * (1 - 3 * t)),
-  };
+  return onDiode(curve, voltageV);
 }
 
 /**
@@ -110,7 +97,7 @@ function towardsBlocked(start: CurrentAt, width: number, past: number): CurrentA
  */
 function onDiode(curve: DiodeCurve, voltageV: number): CurrentAt {
   const { seriesOhm, photoA, openV, bendV } = curve;
-  let u = Math.min(voltageV + seriesOhm * photoA, openV);
+  let u = Math.min(voltageV + seriesOhm * photoA, Math.max(openV, voltageV));
   for (let step = 0; step < MOST_STEPS; step += 1) {
     const { currentA, conductance } = atDiode(curve, u);
     const rise = 1 + seriesOhm * conductance;
@@ -127,7 +114,13 @@ function onDiode(curve: DiodeCurve, voltageV: number): CurrentAt {
 /** Current and -dI/du at diode volts u. */
 function atDiode(curve: DiodeCurve, u: number): { readonly currentA: number; readonly conductance: number } {
   const { photoA, darkA, darkV, bendV } = curve;
-  const diodeA = darkA * Math.exp((u - darkV) / bendV);
+  const x = (u - darkV) / bendV;
+  if (x > STEEPEST) {
+    // Far above open circuit the tangent goes on, so that a far guess cannot overflow.
+    const steep = darkA * Math.exp(STEEPEST);
+    return { currentA: photoA - steep * (1 + x - STEEPEST), conductance: steep / bendV };
+  }
+  const diodeA = darkA * Math.exp(x);
   return { currentA: photoA - diodeA + darkA * Math.exp(-darkV / bendV), conductance: diodeA / bendV };
 }
 
