@@ -61,7 +61,18 @@ export { Defect } from './job/issue.ts';
 export type { CheckedJob, OperatingCase, Practice, Reading, Settings, Site, Targets } from './job/job.ts';
 export { caseById, partsInCase } from './job/job.ts';
 export { checkJob, parseJob } from './job/parseJob.ts';
-export type { Chemistry, JunctionId, Origin, Part, PartId, PartKind, StringPart } from './job/part.ts';
+export type {
+  Chemistry,
+  JunctionId,
+  Metal,
+  Origin,
+  Part,
+  PartId,
+  PartKind,
+  Run,
+  Stranding,
+  StringPart,
+} from './job/part.ts';
 export { cablesOfPair, junctionsOf, originOf } from './job/part.ts';
 export type {
   Assumption,

@@ -55,9 +55,17 @@ function limitOf(row: MetricResistanceRow, make: Make): Limit | undefined {
   const own = tinned ? row[`class${conductorClass}Tinned`] : row[`class${conductorClass}Plain`];
   const column = `class ${conductorClass} ${tinned ? 'tinned' : 'plain'} copper`;
   if (own !== undefined) return { figure: own, column, assumed: [] };
-  const stranded = tinned ? row.class2Tinned : row.class2Plain;
-  if (stranded === undefined) return undefined;
-  return { figure: stranded, column: 'class 2 tinned copper', assumed: [`no limit for ${column}: class 2 taken`] };
+  return tinned ? tinnedInstead(row, column) : undefined;
+}
+
+/** The standard has no limit for thick solid tinned wire: the larger of its plain limit and the stranded tinned one. */
+function tinnedInstead(row: MetricResistanceRow, column: string): Limit | undefined {
+  const [larger] = [row.class1Plain, row.class2Tinned]
+    .filter((figure) => figure !== undefined)
+    .sort((a, b) => b.value - a.value);
+  if (larger === undefined) return undefined;
+  const instead = larger === row.class1Plain ? 'class 1 plain copper' : 'class 2 tinned copper';
+  return { figure: larger, column: instead, assumed: [`no limit for ${column}: ${instead} taken`] };
 }
 
 function aluminiumLimit(row: MetricResistanceRow, make: Make): Limit | undefined {
