@@ -64,12 +64,12 @@ function moduleAt(
   const fullSunOpenV = array.vocV * Math.max(LEAST_VOC_PART, vocPart);
   const natural = (fit.bendV * (cellDegC + KELVIN)) / (LABEL_CELL_DEG_C + KELVIN);
   const fullSun = (bendV: number) =>
-    diodeCurve({ bendV, seriesOhm: fit.seriesOhm }, { fullSunA, fullSunOpenV, photoA: fullSunA });
+    diodeCurve({ bendV, seriesOhm: fit.seriesOhm }, { fullSunA, fullSunOpenV, sun: 1 });
   const wantedW =
     array.pmpPerDegC === undefined ? undefined : array.vmpV * array.impA * (1 + array.pmpPerDegC * warmer);
   const bendV = wantedW === undefined ? natural : bendForPower(fullSun, natural, wantedW);
-  const photoA = (fullSunA * irradianceWPerM2) / LABEL_W_PER_M2;
-  return diodeCurve({ bendV, seriesOhm: fit.seriesOhm }, { fullSunA, fullSunOpenV, photoA });
+  const sun = irradianceWPerM2 / LABEL_W_PER_M2;
+  return diodeCurve({ bendV, seriesOhm: fit.seriesOhm }, { fullSunA, fullSunOpenV, sun });
 }
 
 /** The bend is sought within this factor of the natural one. */

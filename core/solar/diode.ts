@@ -52,32 +52,74 @@ const STEEPEST = 40;
 const MOST_STEPS = 200;
 
 /**
- * Four-parameter fit in closed form. From I(Voc) = 0, I(Vmp) = Imp and dP/dV = 0 at Vmp, neglecting 1 against exp(Voc/a):
+ * Four-parameter fit to the label. Written with L = photo current + saturation current, the three conditions I(Voc) = 0,
+ * I(Vmp) = Imp and dP/dV = 0 at Vmp give in closed form
  *
- *   a  = (2 Vmp - Voc) / [ln(1 - Imp/Isc) + Imp/(Isc - Imp)]
- *   Rs = [a ln(1 - Imp/Isc) + Voc - Vmp] / Imp
+ *   a  = (2 Vmp - Voc) / [ln(1 - Imp/L) + Imp/(L - Imp)]
+ *   Rs = [a ln(1 - Imp/L) + Voc - Vmp] / Imp
  *
- * Where that gives a <= 0 or Rs < 0, Rs = 0 and a = (Vmp - Voc)/ln(1 - Imp/Isc): the curve still passes the three points.
- * Needs 0 < Imp < Isc and 0 < Vmp < Voc, else a `Defect`. Source: SRC-SOLAR-FOUR-PARAMETER (from memory; derived above).
+ * The usual closed form takes L = Isc. The fourth condition, I(0) = Isc, gives L (see `lightAndDark`); repeating the two
+ * steps makes all four hold. Where the label gives a <= 0 or Rs < 0, Rs = 0 and a = (Vmp - Voc)/ln(1 - Imp/L): the curve
+ * still passes the three points. Needs 0 < Imp < Isc and 0 < Vmp < Voc, else a `Defect`.
+ * Source: SRC-SOLAR-FOUR-PARAMETER (from memory; derived above).
  */
-export function fitDiode({ vocV, iscA, vmpV, impA }: ModuleLabel): DiodeFit {
+export function fitDiode(label: ModuleLabel): DiodeFit {
+  const { vocV, iscA, vmpV, impA } = label;
   if (!(impA > 0 && impA < iscA && vmpV > 0 && vmpV < vocV)) {
     throw new Defect(`an array label has 0 < impA < iscA and 0 < vmpV < vocV, not ${impA}, ${iscA}, ${vmpV}, ${vocV}`);
   }
-  const log = Math.log1p(-impA / iscA);
-  const bendV = (2 * vmpV - vocV) / (log + impA / (iscA - impA));
-  const seriesOhm = (bendV * log + vocV - vmpV) / impA;
-  if (bendV > 0 && seriesOhm >= 0) return { bendV, seriesOhm, withoutSeries: false };
-  return { bendV: (vmpV - vocV) / log, seriesOhm: 0, withoutSeries: true };
+  return repeated(label, closedForm) ?? repeated(label, withoutSeries)!;
 }
 
-/** The curve whose diode carries `fullSunA` at `fullSunOpenV`, lit to `photoA` (> 0). */
+/** The fit for a given L, or `undefined` where it has no physical answer. */
+type FitFor = (label: ModuleLabel, lightA: number) => DiodeFit | undefined;
+
+const closedForm: FitFor = ({ vocV, iscA, vmpV, impA }, lightA) => {
+  const log = Math.log1p(-impA / lightA);
+  const bendV = (2 * vmpV - vocV) / (log + impA / (lightA - impA));
+  const seriesOhm = (bendV * log + vocV - vmpV) / impA;
+  return bendV > 0 && seriesOhm >= 0 && seriesOhm * iscA < vocV
+    ? { bendV, seriesOhm, withoutSeries: false }
+    : undefined;
+};
+
+const withoutSeries: FitFor = ({ vocV, vmpV, impA }, lightA) => ({
+  bendV: (vmpV - vocV) / Math.log1p(-impA / lightA),
+  seriesOhm: 0,
+  withoutSeries: true,
+});
+
+const FIT_ROUNDS = 60;
+
+/** Each round shrinks the error by about exp(-Vmp/a), so a few are enough; poor labels need more. */
+function repeated(label: ModuleLabel, fitFor: FitFor): DiodeFit | undefined {
+  let lightA = label.iscA;
+  let fit = fitFor(label, lightA);
+  for (let round = 0; round < FIT_ROUNDS && fit !== undefined; round += 1) {
+    const next = lightAndDark(fit, label.iscA, label.vocV);
+    if (Math.abs(next - lightA) <= 1e-15 * next) break;
+    lightA = next;
+    fit = fitFor(label, lightA);
+  }
+  return fit;
+}
+
+/** L = Isc / (1 - exp[(Isc Rs - Voc)/a]): photo and saturation current together, so that the short circuit carries Isc. */
+function lightAndDark({ bendV, seriesOhm }: Pick<DiodeFit, 'bendV' | 'seriesOhm'>, iscA: number, vocV: number): number {
+  return iscA / -Math.expm1((iscA * seriesOhm - vocV) / bendV);
+}
+
+/**
+ * The curve that in full sun carries `fullSunA` at 0 V and nothing at `fullSunOpenV`, lit to `sun` of full sun (> 0).
+ */
 export function diodeCurve(
-  { bendV, seriesOhm }: Pick<DiodeFit, 'bendV' | 'seriesOhm'>,
-  { fullSunA, fullSunOpenV, photoA }: { fullSunA: number; fullSunOpenV: number; photoA: number },
+  fit: Pick<DiodeFit, 'bendV' | 'seriesOhm'>,
+  { fullSunA, fullSunOpenV, sun }: { fullSunA: number; fullSunOpenV: number; sun: number },
 ): DiodeCurve {
+  const { bendV, seriesOhm } = fit;
+  const darkA = lightAndDark(fit, fullSunA, fullSunOpenV);
   const base = Math.exp(-fullSunOpenV / bendV);
-  const darkA = fullSunA / (1 - base);
+  const photoA = sun * darkA * (1 - base);
   const openV = fullSunOpenV + bendV * Math.log(photoA / darkA + base);
   return { photoA, darkA, darkV: fullSunOpenV, bendV, seriesOhm, openV };
 }

@@ -11,11 +11,10 @@ describe('chemistry tables', () => {
     const written = readFileSync(new URL('../../data/SOURCES.md', import.meta.url), 'utf8');
     const tables = readdirSync(folder).filter((name) => name.endsWith('.csv'));
     expect(tables.length).toBeGreaterThanOrEqual(14);
-    for (const name of tables) {
-      for (const row of readRows(name, readFileSync(new URL(name, folder), 'utf8'))) {
-        expect(written, `${name}`).toContain(`| ${row.text('source')} |`);
-      }
-    }
+    const rows = tables.flatMap((name) => readRows(name, readFileSync(new URL(name, folder), 'utf8')));
+    const named = new Set(rows.map((row) => row.text('source')));
+    expect(named.size).toBeGreaterThan(40);
+    expect([...named].filter((source) => !written.includes(`| ${source} |`))).toEqual([]);
   });
 
   const sources = new Map([['SRC-BAT-X', 'a source']]);
