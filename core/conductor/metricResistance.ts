@@ -60,11 +60,10 @@ function limitOf(row: MetricResistanceRow, make: Make): Limit | undefined {
 
 /** The standard has no limit for thick solid tinned wire: the larger of its plain limit and the stranded tinned one. */
 function tinnedInstead(row: MetricResistanceRow, column: string): Limit | undefined {
-  const [larger] = [row.class1Plain, row.class2Tinned]
-    .filter((figure) => figure !== undefined)
-    .sort((a, b) => b.value - a.value);
+  const { class1Plain: plain, class2Tinned: tinned } = row;
+  const larger = (plain?.value ?? 0) > (tinned?.value ?? 0) ? plain : tinned;
   if (larger === undefined) return undefined;
-  const instead = larger === row.class1Plain ? 'class 1 plain copper' : 'class 2 tinned copper';
+  const instead = larger === plain ? 'class 1 plain copper' : 'class 2 tinned copper';
   return { figure: larger, column: instead, assumed: [`no limit for ${column}: ${instead} taken`] };
 }
 

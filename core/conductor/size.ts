@@ -65,11 +65,9 @@ export function sizesOf(system: ConductorSize['system'], tables: ConductorTables
         .filter((row) => row.construction === 'stranded' && row.size.system === system)
         .map((row) => row.size);
     case 'sae':
-      return [...tables.saeAreaCmil.keys()].sort((a, b) => b - a).map((gauge) => ({ system: 'sae', gauge }));
+      return [...tables.saeAreaCmil.keys()].map((gauge) => ({ system: 'sae', gauge }));
     case 'auto':
-      return [...tables.autoAreaMm2.keys()]
-        .sort((a, b) => a - b)
-        .map((outsideDiameterMm) => ({ system: 'auto', outsideDiameterMm }));
+      return [...tables.autoAreaMm2.keys()].map((outsideDiameterMm) => ({ system: 'auto', outsideDiameterMm }));
   }
 }
 

@@ -128,9 +128,9 @@ export interface ConductorTables {
   readonly metricResistance: readonly MetricResistanceRow[];
   /** In rising area, solid before stranded. */
   readonly usResistance: readonly UsResistanceRow[];
-  /** Least area of each SAE gauge, circular mils, by gauge (0 for 1/0, -1 for 2/0 …). */
+  /** Least area of each SAE gauge, circular mils, by gauge (0 for 1/0, -1 for 2/0 …), in rising area. */
   readonly saeAreaCmil: ReadonlyMap<number, Figure>;
-  /** Copper in "auto" cable, mm², by outside diameter in millimetres. */
+  /** Copper in "auto" cable, mm², by outside diameter in millimetres, rising. */
   readonly autoAreaMm2: ReadonlyMap<number, Figure>;
   readonly circularMilConstants: readonly CircularMilConstant[];
   readonly usLand: UsLandAmpacity;

@@ -1,5 +1,5 @@
 /** What must hold of every conductor, and what happens where a figure is not there. */
-import fc from 'fast-check';
+import * as fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
   type AmpacityContext,

@@ -1,6 +1,6 @@
 /** The rows in `data/`: whole, rising, each with a source that SOURCES.md describes. */
 import { describe, expect, it } from 'vitest';
-import { type Basis, type Practice, type Status, sizeText } from '../../core/api.ts';
+import { type Basis, type Practice, type Status, sizesOf, sizeText } from '../../core/api.ts';
 import { SQUARE_ROOT_LAW } from '../../core/conductor/rating.ts';
 import { areaMm2 } from '../../core/conductor/size.ts';
 import { readRows } from '../../data/chemistry/rows.ts';
@@ -20,6 +20,8 @@ function basesIn(value: unknown, found: Basis[] = []): Basis[] {
   }
   return found;
 }
+
+const rises = (values: readonly number[]) => values.slice(1).every((value, index) => value > (values[index] ?? value));
 
 describe('sources', () => {
   const bases = basesIn({ conductors, devices, practices });
@@ -65,7 +67,7 @@ describe('tables', () => {
     for (const column of columns) {
       const amperes = table.rows.flatMap((row) => row.amperesA.get(column)?.value ?? []);
       expect(amperes.length).toBeGreaterThan(10);
-      expect(amperes).toEqual([...new Set(amperes)].sort((a, b) => a - b));
+      expect(rises(amperes)).toBe(true);
     }
   });
 
@@ -98,10 +100,18 @@ describe('tables', () => {
   });
 });
 
+describe('trade lists', () => {
+  it('stand in rising area, as the size lists promise', () => {
+    for (const system of ['mm2', 'awg', 'kcmil', 'sae', 'auto'] as const) {
+      expect(rises(sizesOf(system, conductors).map((size) => areaMm2(size, conductors)))).toBe(true);
+    }
+  });
+});
+
 describe('devices', () => {
   it('standard ratings rise; the fuse series holds the small ratings and the shared ones', () => {
     for (const { ratingsA } of devices.ratings.values()) {
-      expect(ratingsA).toEqual([...new Set(ratingsA)].sort((a, b) => a - b));
+      expect(rises(ratingsA)).toBe(true);
     }
     const shared = devices.ratings.get('nec_240_6A_fuse_and_breaker')?.ratingsA ?? [];
     expect(shared).toHaveLength(37);
