@@ -24,15 +24,11 @@ export function checkPart(raw: unknown, path: string, issues: IssueList): Part |
   const fields = fieldsOf(raw, place);
   if (fields === undefined) return undefined;
   const values = readFields(raw, fields, place);
-  const part = {
-    ...values,
-    origin: readOrigins(own(raw, 'origin'), fields, place),
-    range: readRanges(raw, fields, values, place),
-    given: new Set(
-      Object.keys(raw).filter((name) => Object.hasOwn(fields, name) && !Object.hasOwn(commonFields, name)),
-    ),
-    extra: extraOf(raw),
-  } as unknown as Part;
+  values['origin'] = readOrigins(own(raw, 'origin'), fields, place);
+  values['range'] = readRanges(raw, fields, values, place);
+  values['given'] = givenOf(raw, fields);
+  values['extra'] = extraOf(raw);
+  const part = values as unknown as Part;
   // Only a part whose fields are each right can be asked whether they fit together.
   if (issues.size === before) findContradictions(part, place);
   return issues.size === before ? part : undefined;
@@ -46,11 +42,21 @@ export function ownerOf(raw: RawObject): string {
   return typeof id === 'string' && troubleWithId(id) === undefined ? `${what} ${id}` : `this ${what}`;
 }
 
+/** Shared by the many parts that have nothing to put in a map of their own. */
+const nothing: ReadonlyMap<string, never> = new Map();
+
 /** The `x-…` fields of an object, as they are. */
 export function extraOf(raw: RawObject): ReadonlyMap<string, unknown> {
-  const extra = new Map<string, unknown>();
-  for (const name of Object.keys(raw)) if (name.startsWith('x-')) extra.set(name, raw[name]);
-  return extra;
+  const names = Object.keys(raw).filter((name) => name.startsWith('x-'));
+  return names.length === 0 ? nothing : new Map(names.map((name) => [name, raw[name]]));
+}
+
+function givenOf(raw: RawObject, fields: Fields): ReadonlySet<string> {
+  const given = new Set<string>();
+  for (const name of Object.keys(raw)) {
+    if (Object.hasOwn(fields, name) && !Object.hasOwn(commonFields, name) && raw[name] !== undefined) given.add(name);
+  }
+  return given;
 }
 
 function checkId(raw: RawObject, place: Place): void {
@@ -101,6 +107,7 @@ export function checkLooseFields(raw: RawObject, kind: unknown, place: Place): v
 }
 
 function readOrigins(raw: unknown, fields: Fields, place: Place): ReadonlyMap<string, Origin> {
+  if (raw === undefined) return nothing;
   const found = new Map<string, Origin>();
   for (const [name, value, at] of entriesByField(raw, 'origin', fields, place)) {
     const origin = readValue(value, { holds: 'choice', of: origins }, { ...at, name });
@@ -115,6 +122,7 @@ function readRanges(
   values: Readonly<Record<string, unknown>>,
   place: Place,
 ): ReadonlyMap<string, readonly [number, number]> {
+  if (own(raw, 'range') === undefined) return nothing;
   const found = new Map<string, readonly [number, number]>();
   for (const [name, value, at] of entriesByField(own(raw, 'range'), 'range', fields, place)) {
     const range = readRange(name, value, fields[name]?.rule, at);

@@ -18,6 +18,7 @@ export function troubleWithId(id: string): string | undefined {
 export function troubleWithJunction(name: string): string | undefined {
   if (name === '') return 'must not be empty';
   if (name.length > longestName) return troubleWithAnyName(name);
+  if (/^[ -~]+$/.test(name)) return troubleWithAnyName(name); // plain letters and signs cannot be mistaken
   if (/[\p{C}\p{Zl}\p{Zp}]/u.test(name)) return 'must not hold control signs or other signs that cannot be seen';
   if (name.normalize('NFC') !== name)
     return 'must be written with composed letters (Unicode form NFC), else two names may look alike';

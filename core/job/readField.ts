@@ -38,13 +38,15 @@ export function readFields(raw: RawObject, fields: Fields, place: Place): Record
     });
   }
   const values: Record<string, unknown> = {};
-  for (const name of Object.keys(fields)) values[name] = readOne(raw, name, fields[name]!, place);
+  for (const name in fields) values[name] = readOne(raw, name, fields[name]!, place);
   return values;
 }
 
 function readOne(raw: RawObject, name: string, field: Field, place: Place): unknown {
   const value = own(raw, name);
-  if (value !== undefined) return readValue(value, field.rule, { ...place, name });
+  if (value !== undefined) {
+    return readValue(value, field.rule, { issues: place.issues, path: place.path, owner: place.owner, name });
+  }
   if (field.required === true) {
     place.issues.add(fieldPath(place.path, name), 'missing', () => {
       return `${capital(place.owner)} needs ${name}: ${expectation(field.rule)}.`;

@@ -83,6 +83,7 @@ const vulgarFractions: ReadonlyMap<string, string> = new Map([
 
 /** Typographic signs as plain ones, so that `8 mΩ`, `25 °C` and `10′6″` read as `8 mohm`, `25 degC` and `10'6"`. */
 function plain(text: string): string {
+  if (/^[ -~]*$/.test(text) && !text.includes('deg')) return text.trim(); // most texts hold no such sign
   return text
     .replace(/[\u00a0\u2007\u2009\u202f]/g, ' ')
     .replace(/[−–]/g, '-')
