@@ -45,4 +45,3 @@ export interface CheckReport {
   readonly notChecked: readonly NotChecked[];
   readonly passed: readonly Passed[];
 }
-

@@ -1,0 +1,153 @@
+/** Volts lost between a source and what it feeds, and between a charger and the strings that it charges. */
+import type { InverterPart, LoadPart } from '../job/part.ts';
+import type { Basis } from '../tables/status.ts';
+import type { CheckContext, SolvedCase } from './checkContext.ts';
+import { feedersOf } from './feeding.ts';
+import type { Judge, Rule, RuleOutcome } from './rule.ts';
+import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
+import { polesOf } from './wiring.ts';
+import { apart, field, list, nameOf, percent, titleOf, volts, withEdition } from './wording.ts';
+
+export const dropTooBig: Rule = {
+  id: 'drop-too-big',
+  family: 'voltage',
+  title: 'Too many volts lost on the way to a load',
+  compares:
+    'volts at the source less volts at each running load or inverter, as a fraction of nominal volts, with the limit for its class (critical or ordinary), in every case without a starting load',
+  remedy: 'Use a thicker or shorter cable, clean up the joints on the way, or go to a higher system voltage.',
+  byPractice: true,
+  reads: 'steady-cases',
+  basisFor: (judge) => withEdition(judge.practice.dropCritical.basis, judge),
+  run: (context) => {
+    const tally = new Tally(dropTooBig, dropTooBig.basisFor(context));
+    for (const drawn of context.drawn) {
+      if (drawn.kind !== 'load' && drawn.kind !== 'inverter') continue;
+      const verdicts = context.steady.flatMap((one) => {
+        const part = one.part(drawn.id) as LoadPart | InverterPart;
+        return part.on ? dropVerdict(context, { part, one }) : [];
+      });
+      tally.judge([drawn.id], verdicts);
+    }
+    return tally.outcome();
+  },
+};
+
+function dropVerdict(
+  context: CheckContext,
+  { part, one }: { part: LoadPart | InverterPart; one: SolvedCase },
+): readonly Verdict[] {
+  const { voltageV, currentA } = one.answer(part.id);
+  // A load that is not fed or has dropped out has no drop to judge: other rules tell it.
+  if (voltageV === null || currentA === null || currentA <= 0) return [];
+  const feed = feedersOf(one).of(part);
+  if (feed === undefined) return [missing(`a source that feeds ${part.kind} ${part.id} in case ${one.id}`)];
+  const nominalV = context.volts.nominalBetween(part.plus, part.minus);
+  if (nominalV === undefined) return [missing(`nominalV in the settings: nominal volts of ${part.kind} ${part.id}`)];
+  const fraction = (feed.volts - voltageV) / nominalV;
+  const critical = limitOf(context, 'critical');
+  const ordinary = limitOf(context, 'ordinary');
+  // An inverter has no drop class: it feeds what it feeds, and has its own cut-off.
+  const dropClass = part.kind === 'inverter' ? 'ordinary' : part.dropClass;
+  if (!isOver(fraction, Math.min(critical.value, ordinary.value))) return [PASS];
+  if (dropClass === undefined && !isOver(fraction, Math.max(critical.value, ordinary.value))) {
+    return [
+      missing(
+        `${field(part, 'dropClass')}: ${percent(fraction)} is more than a critical load may lose (${percent(critical.value)}) and not more than an ordinary one (${percent(ordinary.value)})`,
+      ),
+    ];
+  }
+  const judged = dropClass ?? 'ordinary';
+  const limit = judged === 'critical' ? critical : ordinary;
+  if (!isOver(fraction, limit.value)) return [PASS];
+  const [lost, allowed] = apart(fraction, limit.value, '1');
+  return [
+    {
+      kind: 'fail',
+      severity: judged === 'critical' ? 'fix' : 'look',
+      case: one.id,
+      measured: { value: fraction, unit: '1' },
+      limit: { value: limit.value, unit: '1' },
+      excess: fraction / limit.value,
+      message: `${titleOf(part)} gets ${volts(voltageV)} of the ${volts(feed.volts)} at ${list(feed.sources.map(nameOf))}: ${lost} of ${volts(nominalV)} nominal is lost on the way; ${allowed} is allowed for ${judged === 'critical' ? 'a critical' : 'an ordinary'} load.`,
+      basis: limit.basis,
+    },
+  ];
+}
+
+interface DropLimit {
+  readonly value: number;
+  readonly basis: Basis;
+}
+
+/** The job's own setting, else the practice's figure. */
+function limitOf(judge: Judge, dropClass: 'critical' | 'ordinary'): DropLimit {
+  const name = dropClass === 'critical' ? 'dropCritical' : 'dropOrdinary';
+  const own = judge.job.settings[name];
+  const figure = judge.practice[name];
+  if (own === undefined || own === figure.value) {
+    return { value: figure.value, basis: withEdition(figure.basis, judge) };
+  }
+  const basis: Basis = {
+    source: 'SRC-JOB-ENTRY',
+    text: `${name} set in the job; no published source`,
+    status: 'common-practice',
+  };
+  return { value: own, basis };
+}
+
+/** Guidance for charge circuits of off-grid systems; a trade article, so no more than practice. */
+const CHARGE_DROP = 0.03;
+const CHARGE_DROP_BASIS: Basis = {
+  source: 'SRC-CHARGE-DROP',
+  text: 'trade article on off-grid wiring: 2 to 3 % for array and charge circuits; common practice',
+  status: 'common-practice',
+};
+
+export const chargeDropTooBig: Rule = {
+  id: 'charge-drop-too-big',
+  family: 'voltage',
+  title: 'Too many volts lost between a charger and the strings',
+  compares:
+    'volts at each running charger or controller output less volts at the strings that it charges, as a fraction of nominal volts, with 3 %',
+  remedy:
+    'Use a thicker or shorter charge cable: the charger sees its own volts, so the strings charge late and seldom fill.',
+  byPractice: false,
+  reads: 'steady-cases',
+  basisFor: () => CHARGE_DROP_BASIS,
+  run: runChargeDrop,
+};
+
+function runChargeDrop(context: CheckContext): RuleOutcome {
+  const tally = new Tally(chargeDropTooBig, CHARGE_DROP_BASIS);
+  for (const drawn of context.drawn) {
+    if (drawn.kind !== 'charger' && drawn.kind !== 'controller') continue;
+    const output = polesOf(drawn).find(({ role }) => role === 'source')!;
+    const verdicts = context.steady.flatMap((one): readonly Verdict[] => {
+      const answer = one.answer(drawn.id);
+      const [outV, outA] =
+        drawn.kind === 'charger' ? [answer.voltageV, answer.currentA] : [answer.outputV, answer.outputA];
+      if (typeof outV !== 'number' || typeof outA !== 'number' || outA <= 0) return [];
+      const feed = feedersOf(one).of(output);
+      if (feed === undefined || !feed.sources.every(({ kind }) => kind === 'string')) return [];
+      const nominalV = context.volts.nominalBetween(output.plus, output.minus);
+      if (nominalV === undefined)
+        return [missing(`nominalV in the settings: nominal volts at ${drawn.kind} ${drawn.id}`)];
+      const fraction = (outV - feed.volts) / nominalV;
+      if (!isOver(fraction, CHARGE_DROP)) return [PASS];
+      const [lost, allowed] = apart(fraction, CHARGE_DROP, '1');
+      return [
+        {
+          kind: 'fail',
+          severity: 'look',
+          case: one.id,
+          measured: { value: fraction, unit: '1' },
+          limit: { value: CHARGE_DROP, unit: '1' },
+          excess: fraction / CHARGE_DROP,
+          message: `${titleOf(drawn)} gives ${volts(outV)} and ${list(feed.sources.map(nameOf))} gets ${volts(feed.volts)}: ${lost} of ${volts(nominalV)} nominal is lost on the way; ${allowed} is usual.`,
+        },
+      ];
+    });
+    tally.judge([drawn.id], verdicts);
+  }
+  return tally.outcome();
+}

@@ -1,0 +1,43 @@
+/** Every rule, by family. A table of rules, their bases and their tests is made from this list. */
+import { cableOverloaded, cableUnderContinuous } from './cableRules.ts';
+import { chargerVoltsOff, coldCharge } from './chargingRules.ts';
+import { chargeDropTooBig, dropTooBig } from './dropRules.ts';
+import { fuseUnderContinuous, fuseUnderCurrent } from './fuseLoad.ts';
+import { fuseOverCable, smallWireCap } from './fuseRules.ts';
+import { loadOverfed, loadStarved } from './loadVolts.ts';
+import { ratingUnderCurrent, shuntSmall, voltsRatingLow } from './partRatings.ts';
+import type { Rule } from './rule.ts';
+import { deadShort, noFuseOnSource } from './shortRules.ts';
+import { chargeTooStrong, stringChargeHigh, stringDischargeHigh } from './stringRules.ts';
+import { surgeSag } from './surgeRules.ts';
+import { endOpen, groupUnconnected, loadCollapse, loadUnfed, partNeverUsed, polarityCrossed } from './wiringRules.ts';
+
+export const rules: readonly Rule[] = [
+  deadShort,
+  polarityCrossed,
+  loadCollapse,
+  loadUnfed,
+  groupUnconnected,
+  partNeverUsed,
+  endOpen,
+  noFuseOnSource,
+  fuseOverCable,
+  smallWireCap,
+  fuseUnderCurrent,
+  fuseUnderContinuous,
+  cableOverloaded,
+  cableUnderContinuous,
+  voltsRatingLow,
+  ratingUnderCurrent,
+  shuntSmall,
+  dropTooBig,
+  chargeDropTooBig,
+  loadStarved,
+  loadOverfed,
+  surgeSag,
+  stringDischargeHigh,
+  stringChargeHigh,
+  chargeTooStrong,
+  chargerVoltsOff,
+  coldCharge,
+];

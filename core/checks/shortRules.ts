@@ -1,0 +1,195 @@
+/** Sources joined pole to pole, and sources that feed something with no device in between. */
+import { stringSource } from '../battery/stringSource.ts';
+import type { StringPart } from '../job/part.ts';
+import { CIRCUIT_LAW, FUSE_AT_SOURCE } from './bases.ts';
+import { type CheckContext, SolvedCase } from './checkContext.ts';
+import type { Rule, RuleOutcome } from './rule.ts';
+import { banksOf } from './systemVolts.ts';
+import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
+import { isDevice, isOpen, netsOf, polesOf } from './wiring.ts';
+import { amps, apart, nameOf, ohms, percent, shortList, titleOf } from './wording.ts';
+
+/**
+ * A short circuit is told in two ways, both with every load, inverter, charger and array off, since then nothing but wiring and
+ * other strings can take current:
+ *
+ * 1. by the drawing: wiring parts that are closed join the two poles of a source;
+ * 2. by the sum: a string's current at rest is above a fifth of what it would give into a bolted short (E / R, links included).
+ *    Unequal strings that even out between themselves stay far below that; a string joined to another of twice its volts does not.
+ *
+ * A path by 1 whose current at rest stays below the fifth is a leak through a resistance: a person judges it.
+ */
+const SHORT_FRACTION = 0.2;
+
+export const deadShort: Rule = {
+  id: 'dead-short',
+  family: 'wiring',
+  title: 'Short circuit across a source',
+  compares:
+    'for each string, array, charger, controller and converter: do closed wiring parts join its two poles; and for each string its current with everything off with a fifth of its short-circuit current',
+  remedy: 'Do not close anything: find the link that joins plus and minus, and remove it.',
+  byPractice: false,
+  reads: 'drawing',
+  basisFor: () => CIRCUIT_LAW,
+  run: runDeadShort,
+};
+
+function runDeadShort(context: CheckContext): RuleOutcome {
+  const tally = new Tally(deadShort, CIRCUIT_LAW);
+  const states = context.cases.map((one) => quiet(context, one));
+  for (const drawn of context.drawn) {
+    if (drawn.kind === 'string') {
+      tally.judge(
+        [drawn.id],
+        states.map(({ rest, joins }) =>
+          stringVerdict(context, { string: rest.part(drawn.id) as StringPart, rest, joins }),
+        ),
+      );
+      continue;
+    }
+    const outputs = polesOf(drawn).filter(({ role }) => role === 'source');
+    const verdicts = outputs.flatMap(({ plus, minus }) =>
+      states.map(({ rest, joins }): Verdict => {
+        if (!joins(plus, minus)) return PASS;
+        return {
+          kind: 'fail',
+          severity: 'stop',
+          case: rest.id,
+          measured: { value: 0, unit: 'V' },
+          limit: { value: 0, unit: 'V' },
+          excess: Number.POSITIVE_INFINITY,
+          message: `${titleOf(drawn)} has its plus (${plus}) and minus (${minus}) joined by closed wiring parts.`,
+        };
+      }),
+    );
+    tally.judge([drawn.id], verdicts);
+  }
+  return tally.outcome();
+}
+
+interface Quiet {
+  /** The case with everything off but its switches as they stand. */
+  readonly rest: SolvedCase;
+  readonly joins: (a: StringPart['plus'], b: StringPart['plus']) => boolean;
+}
+
+function quiet(context: CheckContext, one: SolvedCase): Quiet {
+  const changed = new Map(one.operatingCase.changed);
+  for (const part of context.job.parts) {
+    const now = changed.get(part.id) ?? part;
+    if ('on' in now) changed.set(now.id, { ...now, on: false });
+  }
+  const operatingCase = { ...one.operatingCase, surge: undefined, irradianceWPerM2: 0, changed };
+  const rest = new SolvedCase(context.job, operatingCase, context.solve(operatingCase, 'slow'));
+  const nets = netsOf(rest.parts, (part) => !isOpen(part) && part.kind !== 'diode');
+  return { rest, joins: nets.same };
+}
+
+function stringVerdict(
+  context: CheckContext,
+  { string, rest, joins }: Quiet & { readonly string: StringPart },
+): Verdict {
+  const { currentA } = rest.answer(string.id);
+  const isJoined = joins(string.plus, string.minus);
+  if (currentA === null || !rest.isSolved) {
+    return isJoined
+      ? joinedOnly(string, rest.id)
+      : missing(`current of string ${string.id} at rest in case ${rest.id}`);
+  }
+  const { emfV, resistanceOhm } = stringSource(string, {
+    model: 'slow',
+    ambientDegC: rest.ambientDegC,
+    tables: context.tables.chemistry,
+  });
+  const shortA = emfV.value / (resistanceOhm.value + string.linkOhm);
+  const restA = Math.abs(currentA);
+  const limitA = SHORT_FRACTION * shortA;
+  const isShort = isOver(restA, limitA);
+  if (!isShort && !isJoined) return PASS;
+  const [found, limit] = apart(restA, limitA, 'A');
+  const path = isJoined
+    ? `closed wiring parts join its plus (${string.plus}) and minus (${string.minus})`
+    : 'it is joined to something that it cannot be joined to';
+  const pathOhm = restA > 0 ? Math.abs(rest.answer(string.id).voltageV ?? 0) / restA : 0;
+  const leak = isJoined && !isShort;
+  return {
+    kind: 'fail',
+    severity: leak ? 'look' : 'stop',
+    case: rest.id,
+    measured: { value: restA, unit: 'A' },
+    limit: { value: limitA, unit: 'A' },
+    excess: leak ? 1 : restA / limitA,
+    message: leak
+      ? `${titleOf(string)} gives ${amps(restA)} with everything off, through ${ohms(pathOhm)}: ${path}.`
+      : `${titleOf(string)} carries ${found} with everything off, more than ${limit} (${percent(SHORT_FRACTION)} of its short-circuit current): ${path}.`,
+  };
+}
+
+function joinedOnly(string: StringPart, caseId: string): Verdict {
+  return {
+    kind: 'fail',
+    severity: 'stop',
+    case: caseId,
+    measured: { value: 0, unit: 'V' },
+    limit: { value: 0, unit: 'V' },
+    excess: Number.POSITIVE_INFINITY,
+    message: `${titleOf(string)} has its plus (${string.plus}) and minus (${string.minus}) joined by closed wiring parts.`,
+  };
+}
+
+/**
+ * With every fuse and breaker taken out, no string may feed anything any more: whatever still lies between nets of its plus and
+ * of its minus has no device in either conductor. How far the device is from the string is another question.
+ */
+export const noFuseOnSource: Rule = {
+  id: 'no-fuse-on-source',
+  family: 'fuse',
+  title: 'String feeds or is fed without a fuse or breaker in between',
+  compares:
+    'for each string: with every fuse and breaker taken out, is any load, inverter, charger, controller or converter still joined to both its poles?',
+  remedy:
+    'Put a fuse or a breaker with manual reset in the ungrounded conductor right at the string; most books except only the cable of a starter motor.',
+  byPractice: false,
+  reads: 'drawing',
+  basisFor: () => FUSE_AT_SOURCE,
+  run: runNoFuse,
+};
+
+function runNoFuse(context: CheckContext): RuleOutcome {
+  const tally = new Tally(noFuseOnSource, FUSE_AT_SOURCE);
+  const bare = netsOf(context.drawn, (part) => !isDevice(part));
+  const bankOfNet = banksOf(context.drawn, bare);
+  const served = context.drawn
+    .flatMap((part) => (part.kind === 'string' || part.kind === 'array' ? [] : polesOf(part)))
+    .filter(({ plus, minus }) => {
+      const bank = bankOfNet.get(bare.of(plus)!);
+      return bank !== undefined && bank === bankOfNet.get(bare.of(minus)!) && !bare.same(plus, minus);
+    });
+  for (const string of context.drawn) {
+    if (string.kind !== 'string') continue;
+    const terminals = [string.plus, string.minus, ...(string.midpoint === undefined ? [] : [string.midpoint])];
+    const own = served.filter(({ plus, minus }) => terminals.some((at) => bare.same(plus, at) || bare.same(minus, at)));
+    const ids = [...new Set(own.map(({ part }) => part.id))];
+    if (ids.length === 0) {
+      tally.judge([string.id], [PASS]);
+      continue;
+    }
+    const names = [...new Set(own.map(({ part }) => nameOf(part)))];
+    tally.judge(
+      [string.id],
+      [
+        {
+          kind: 'fail',
+          severity: 'stop',
+          case: context.cases[0]?.id ?? '',
+          measured: { value: ids.length, unit: '1' },
+          limit: { value: 0, unit: '1' },
+          excess: Number.POSITIVE_INFINITY,
+          message: `${titleOf(string)} is joined to ${shortList(names)} with no fuse or breaker in between.`,
+          others: ids,
+        },
+      ],
+    );
+  }
+  return tally.outcome();
+}
