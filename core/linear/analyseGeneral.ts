@@ -9,4 +9,3 @@ export function analyseGeneral(pattern: Pattern): Factorisation {
   if (pattern.symmetric) throw new Defect('a general pattern, with both triangles, for a general factorisation');
   return new GeneralFactors(pattern, orderColumns(pattern));
 }
-

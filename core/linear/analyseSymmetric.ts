@@ -5,12 +5,18 @@
  * degree; and the end of that, where the fill is nearly complete, is factored as one full block.
  */
 import { Defect } from '../job/issue.ts';
-import type { Factorisation, Pattern } from './matrix.ts';
+import type { FusedFactorisation, Pattern } from './matrix.ts';
 import { SymmetricFactors } from './symmetricFactors.ts';
 import { symmetricPlan } from './symmetricPlan.ts';
 
-/** Analyses a pattern once; the result refactors and solves any values on it. */
-export function analyseSymmetric(pattern: Pattern): Factorisation {
+/**
+ * Analyses a pattern once; the result refactors and solves any values on it. `plain` keeps to plain JavaScript, as where compiled code is
+ * forbidden; the results are the same bit for bit.
+ */
+export function analyseSymmetric(
+  pattern: Pattern,
+  { plain = false }: { readonly plain?: boolean } = {},
+): FusedFactorisation {
   if (!pattern.symmetric) throw new Defect('a symmetric pattern for a symmetric factorisation');
-  return new SymmetricFactors(symmetricPlan(pattern));
+  return new SymmetricFactors(symmetricPlan(pattern), plain);
 }

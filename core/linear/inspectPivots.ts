@@ -53,7 +53,10 @@ function firstLost(plan: SymmetricPlan, w: Float64Array, values: Float64Array, i
 }
 
 /** Visits the pivots in order: the node; where its rows stand in the table, and its multipliers in w; how many there are. */
-function forEachPivot(plan: SymmetricPlan, visit: (v: number, rows: number, place: number, count: number) => void): void {
+function forEachPivot(
+  plan: SymmetricPlan,
+  visit: (v: number, rows: number, place: number, count: number) => void,
+): void {
   const { table, leafCount, linkCount, columnCount, fullSize, fullNodes } = plan;
   let t = 0;
   let q = 2 * (plan.pattern.size + 1);

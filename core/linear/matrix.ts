@@ -40,3 +40,9 @@ export interface Factorisation {
   /** Solves the transposed system; for a symmetric matrix the same as `solve`. */
   solveTransposed(b: Float64Array, x: Float64Array): void;
 }
+
+/** A factorisation that can also carry the right-hand side along while it factors, which costs less than `refactor` and `solve` in turn. */
+export interface FusedFactorisation extends Factorisation {
+  /** `refactor(values)`, then `solve(b, x)` with the same result bit for bit. When the matrix is singular, x is set to zero. */
+  refactorAndSolve(values: Float64Array, b: Float64Array, x: Float64Array): FactorReport;
+}

@@ -132,11 +132,29 @@ function layOutColumns({ size, place, length, order }: RestGraph, w: number, cou
   const end = program + integers + size - count;
   reserve(end);
   const fullPlace = w + entries;
-  return { count, size, position, columnStart, record, rowStart, columnOf, rank, row, where, program, end, place: w, fullPlace };
+  return {
+    count,
+    size,
+    position,
+    columnStart,
+    record,
+    rowStart,
+    columnOf,
+    rank,
+    row,
+    where,
+    program,
+    end,
+    place: w,
+    fullPlace,
+  };
 }
 
 /** Sorts the rows of each column by pivot number: columns to rows and back again. */
-function sortRows(graph: RestGraph, { count, size, position, columnStart, rowStart, columnOf, rank, row, where }: Columns): void {
+function sortRows(
+  graph: RestGraph,
+  { count, size, position, columnStart, rowStart, columnOf, rank, row, where }: Columns,
+): void {
   const { ints } = workspace;
   for (let k = 0; k < count; k++) {
     const p = ints[graph.order + k]!;
@@ -159,7 +177,10 @@ function sortRows(graph: RestGraph, { count, size, position, columnStart, rowSta
 }
 
 /** Writes the records of the sparse columns, all but the places that elimination changes, and the nodes of the full block. */
-function writeRecords({ node, order }: RestGraph, { count, size, columnStart, record, row, program, end }: Columns): void {
+function writeRecords(
+  { node, order }: RestGraph,
+  { count, size, columnStart, record, row, program, end }: Columns,
+): void {
   const { ints } = workspace;
   for (let k = 0; k < count; k++) {
     const from = ints[columnStart + k]!;
@@ -180,7 +201,8 @@ function placeEntries(at: Layout, graph: RestGraph, columns: Columns): void {
   const { ints } = workspace;
   for (let r = 0; r < size; r++) {
     if (r < count) {
-      for (let e = ints[columnStart + r]!; e < ints[columnStart + r + 1]!; e++) ints[where + ints[row + e]!] = place + e;
+      for (let e = ints[columnStart + r]!; e < ints[columnStart + r + 1]!; e++)
+        ints[where + ints[row + e]!] = place + e;
     } else {
       // Row i of the full block's upper triangle follows i rows of lengths m - 1, m - 2 …, for m nodes in the block.
       const i = r - count;
@@ -206,7 +228,10 @@ function placeOwn(at: Layout, { node, number, order }: RestGraph, { position, wh
 }
 
 /** The entries of column r that earlier columns change: those with an entry in row r change the rows below it. */
-function placeChanged({ columnStart, record, rowStart, columnOf, rank, row, where, program }: Columns, r: number): void {
+function placeChanged(
+  { columnStart, record, rowStart, columnOf, rank, row, where, program }: Columns,
+  r: number,
+): void {
   const { ints } = workspace;
   for (let s = ints[rowStart + r]!; s < ints[rowStart + r + 1]!; s++) {
     const k = ints[columnOf + s]!;

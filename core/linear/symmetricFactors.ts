@@ -1,27 +1,50 @@
 /** The numbers of an L D Lᵀ factorisation, laid out by its plan. */
 import { Defect } from '../job/issue.ts';
-import type { Factorisation, FactorReport, Pattern } from './matrix.ts';
 import { inspectPivots } from './inspectPivots.ts';
-import { eliminate, solveBackward, solveForward } from './symmetricSteps.ts';
+import { type BlockLayout, layOutBlock, writeBlock } from './kernelBlock.ts';
+import type { FactorReport, FusedFactorisation, Pattern } from './matrix.ts';
+import { residence, type Tenant } from './residence.ts';
 import type { SymmetricPlan } from './symmetricPlan.ts';
+import { eliminate, solveBackward, solveForward } from './symmetricSteps.ts';
 
-export class SymmetricFactors implements Factorisation {
+const NO_NUMBERS = new Float64Array(0);
+
+/**
+ * The first factorisation runs in plain JavaScript: it may be the only one. From the second on the work moves to a compiled kernel, where
+ * there is one. Both give the same bits.
+ */
+export class SymmetricFactors implements FusedFactorisation, Tenant {
   readonly pattern: Pattern;
   private readonly plan: SymmetricPlan;
   /**
    * Length plan.storage. First size + 1: the diagonal d, after elimination 1/d. Next size + 1: the right-hand side, then the solution.
-   * Then the off-diagonal entries, after elimination those of L.
+   * Then the off-diagonal entries, after elimination those of L. Lies in the kernel's memory while this is resident there.
    */
-  private readonly w: Float64Array;
+  private w: Float64Array;
   private readonly report = { regular: false, negativePivots: 0, failedColumn: -1 };
+  private readonly plain: boolean;
+  private used = false;
+  /** Where this lives in the kernel's memory, or -1. */
+  private address = -1;
+  private layout: BlockLayout | null = null;
+  /** Parts of the kernel's memory: the right-hand side and solution, and the values of the matrix. */
+  private y = NO_NUMBERS;
+  private values = NO_NUMBERS;
 
-  constructor(plan: SymmetricPlan) {
+  /** `plain` keeps to plain JavaScript. */
+  constructor(plan: SymmetricPlan, plain = false) {
+    this.plain = plain;
     this.pattern = plan.pattern;
     this.plan = plan;
     this.w = new Float64Array(plan.storage);
   }
 
   refactor(values: Float64Array): FactorReport {
+    if (this.moveIn()) {
+      this.values.set(values);
+      if (residence.functions!['refactor']!(this.address) === 1) return this.allWell();
+      return this.inspect(values);
+    }
     this.load(values);
     eliminate(this.plan, this.w);
     return this.inspect(values);
@@ -29,6 +52,13 @@ export class SymmetricFactors implements Factorisation {
 
   solve(b: Float64Array, x: Float64Array): void {
     if (!this.report.regular) throw new Defect('a regular factorisation before a solve');
+    if (this.address >= 0) {
+      this.lookAgain();
+      this.y.set(b);
+      residence.functions!['solve']!(this.address);
+      x.set(this.y);
+      return;
+    }
     const { w } = this;
     const { size } = this.pattern;
     w.set(b, size + 1);
@@ -41,8 +71,8 @@ export class SymmetricFactors implements Factorisation {
     this.solve(b, x);
   }
 
-  /** `refactor(values)` and `solve(b, x)` in one sweep. When the matrix is singular x is set to zero. */
   refactorAndSolve(values: Float64Array, b: Float64Array, x: Float64Array): FactorReport {
+    if (this.moveIn()) return this.refactorAndSolveResident(values, b, x);
     const { w } = this;
     const { size } = this.pattern;
     this.load(values);
@@ -57,6 +87,22 @@ export class SymmetricFactors implements Factorisation {
     return report;
   }
 
+  private refactorAndSolveResident(values: Float64Array, b: Float64Array, x: Float64Array): FactorReport {
+    const kernel = residence.functions!;
+    this.values.set(values);
+    this.y.set(b);
+    if (kernel['refactorAndSolve']!(this.address) === 1) {
+      x.set(this.y);
+      return this.allWell();
+    }
+    const report = this.inspect(values);
+    if (report.regular) {
+      kernel['substitute']!(this.address);
+      x.set(this.y);
+    } else x.fill(0, 0, this.pattern.size);
+    return report;
+  }
+
   private load(values: Float64Array): void {
     const { table, slots } = this.plan;
     const { w } = this;
@@ -65,8 +111,51 @@ export class SymmetricFactors implements Factorisation {
     for (let e = 0; e < count; e++) w[table[slots + e]!] = values[e]!;
   }
 
+  private allWell(): FactorReport {
+    const { report } = this;
+    report.regular = true;
+    report.negativePivots = 0;
+    report.failedColumn = -1;
+    return report;
+  }
+
   private inspect(values: Float64Array): FactorReport {
     inspectPivots(this.plan, this.w, values, this.report);
     return this.report;
+  }
+
+  /** Whether this is in the kernel's memory; moves there if this is not the first use. */
+  private moveIn(): boolean {
+    if (this.address >= 0) {
+      this.lookAgain();
+      return true;
+    }
+    if (this.plain || !this.used) {
+      this.used = true;
+      return false;
+    }
+    this.layout ??= layOutBlock(this.plan, 1);
+    this.address = residence.admit(this, this.layout.bytes);
+    if (this.address < 0) return false;
+    writeBlock(this.plan, this.layout, residence.buffer, this.address);
+    this.lookAgain();
+    return true;
+  }
+
+  /** Makes the views on the kernel's memory anew if it has grown. */
+  private lookAgain(): void {
+    const { buffer } = residence;
+    if (this.w.buffer === buffer) return;
+    const { parts } = this.layout!;
+    const { address } = this;
+    this.w = new Float64Array(buffer, address + parts.w, this.plan.storage);
+    this.y = new Float64Array(buffer, address + parts.y, this.pattern.size);
+    this.values = new Float64Array(buffer, address + parts.values, this.pattern.rowIndices.length);
+  }
+
+  leave(): void {
+    this.lookAgain();
+    this.w = this.w.slice();
+    this.address = -1;
   }
 }

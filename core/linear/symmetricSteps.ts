@@ -30,7 +30,14 @@ function eliminateLeaves(table: Int32Array, w: Float64Array, count: number, y: n
   }
 }
 
-function eliminateLinks(table: Int32Array, w: Float64Array, program: number, count: number, y: number, place: number): void {
+function eliminateLinks(
+  table: Int32Array,
+  w: Float64Array,
+  program: number,
+  count: number,
+  y: number,
+  place: number,
+): void {
   let t = program;
   let q = place;
   for (let k = 0; k < count; k++) {
@@ -57,7 +64,14 @@ function eliminateLinks(table: Int32Array, w: Float64Array, program: number, cou
   }
 }
 
-function eliminateColumns(table: Int32Array, w: Float64Array, program: number, count: number, y: number, place: number): void {
+function eliminateColumns(
+  table: Int32Array,
+  w: Float64Array,
+  program: number,
+  count: number,
+  y: number,
+  place: number,
+): void {
   let t = program;
   let q = place;
   for (let k = 0; k < count; k++) {
@@ -85,7 +99,14 @@ function eliminateColumns(table: Int32Array, w: Float64Array, program: number, c
   }
 }
 
-function eliminateFull(table: Int32Array, w: Float64Array, nodes: number, size: number, y: number, place: number): void {
+function eliminateFull(
+  table: Int32Array,
+  w: Float64Array,
+  nodes: number,
+  size: number,
+  y: number,
+  place: number,
+): void {
   let row = place;
   for (let k = 0; k < size; k++) {
     const v = table[nodes + k]!;

@@ -1,0 +1,67 @@
+/**
+ * The memory in which compiled kernels work on factorisations that are used more than once. It is filled from the bottom up; when it is full
+ * everybody has to leave, and comes back when next used. So its size is bounded and nobody needs to say when a factorisation is done with.
+ */
+import { symmetricProgram } from './symmetricKernel.ts';
+import { PAGE, type WasmKernel } from './webAssembly.ts';
+
+/** Somebody who lives here until told to leave. */
+export interface Tenant {
+  /** Takes along what it needs; its address is no longer its own. */
+  leave(): void;
+}
+
+/** Most bytes taken: some thousand networks of wiring size. */
+const LIMIT = 256 * PAGE;
+
+class Residence {
+  private kernel: WasmKernel | null | undefined;
+  private tenants: Tenant[] = [];
+  private top = 0;
+
+  /** The kernel, or null where the host has no WebAssembly or forbids it. */
+  get functions(): WasmKernel['functions'] | null {
+    if (this.kernel === undefined) this.kernel = symmetricProgram.instantiate(1);
+    return this.kernel === null ? null : this.kernel.functions;
+  }
+
+  /** The memory as it is now: growing it makes a new buffer and leaves arrays on the old one empty. */
+  get buffer(): ArrayBuffer {
+    return this.kernel!.memory.buffer;
+  }
+
+  /** The address of a block of so many bytes, a multiple of 16, or -1 where there is no kernel or the block is too large. */
+  admit(tenant: Tenant, bytes: number): number {
+    if (this.functions === null || bytes > LIMIT) return -1;
+    if (this.top + bytes > LIMIT) this.clear();
+    const missing = this.top + bytes - this.buffer.byteLength;
+    if (missing > 0) {
+      const pages = Math.min(
+        Math.ceil(missing / PAGE) + this.buffer.byteLength / PAGE,
+        (LIMIT - this.buffer.byteLength) / PAGE,
+      );
+      if (!this.grow(pages)) return -1;
+    }
+    const address = this.top;
+    this.top += bytes;
+    this.tenants.push(tenant);
+    return address;
+  }
+
+  private grow(pages: number): boolean {
+    try {
+      this.kernel!.memory.grow(pages);
+      return true;
+    } catch {
+      return false; // out of memory: the plain steps do the same work
+    }
+  }
+
+  private clear(): void {
+    for (const tenant of this.tenants) tenant.leave();
+    this.tenants = [];
+    this.top = 0;
+  }
+}
+
+export const residence = new Residence();
