@@ -59,8 +59,8 @@ const MOST_STEPS = 200;
  *   Rs = [a ln(1 - Imp/L) + Voc - Vmp] / Imp
  *
  * The usual closed form takes L = Isc. The fourth condition, I(0) = Isc, gives L (see `lightAndDark`); repeating the two
- * steps makes all four hold. Where the label gives a <= 0 or Rs < 0, Rs = 0 and a = (Vmp - Voc)/ln(1 - Imp/L): the curve
- * still passes the three points. Needs 0 < Imp < Isc and 0 < Vmp < Voc, else a `Defect`.
+ * steps makes all four hold. Where the label gives a <= 0 or Rs < 0, Rs = 0 and `a` is such that the curve still passes the
+ * three points (its peak then lies beside Vmp). Needs 0 < Imp < Isc and 0 < Vmp < Voc, else a `Defect`.
  * Source: SRC-SOLAR-FOUR-PARAMETER (from memory; derived above).
  */
 export function fitDiode(label: ModuleLabel): DiodeFit {
@@ -68,40 +68,46 @@ export function fitDiode(label: ModuleLabel): DiodeFit {
   if (!(impA > 0 && impA < iscA && vmpV > 0 && vmpV < vocV)) {
     throw new Defect(`an array label has 0 < impA < iscA and 0 < vmpV < vocV, not ${impA}, ${iscA}, ${vmpV}, ${vocV}`);
   }
-  return repeated(label, closedForm) ?? repeated(label, withoutSeries)!;
+  return fitWithSeries(label) ?? fitWithoutSeries(label);
 }
 
-/** The fit for a given L, or `undefined` where it has no physical answer. */
-type FitFor = (label: ModuleLabel, lightA: number) => DiodeFit | undefined;
-
-const closedForm: FitFor = ({ vocV, iscA, vmpV, impA }, lightA) => {
-  const log = Math.log1p(-impA / lightA);
-  const bendV = (2 * vmpV - vocV) / (log + impA / (lightA - impA));
-  const seriesOhm = (bendV * log + vocV - vmpV) / impA;
-  return bendV > 0 && seriesOhm >= 0 && seriesOhm * iscA < vocV
-    ? { bendV, seriesOhm, withoutSeries: false }
-    : undefined;
-};
-
-const withoutSeries: FitFor = ({ vocV, vmpV, impA }, lightA) => ({
-  bendV: (vmpV - vocV) / Math.log1p(-impA / lightA),
-  seriesOhm: 0,
-  withoutSeries: true,
-});
-
 const FIT_ROUNDS = 60;
+/** Relative agreement of L from one round to the next that ends the fit. */
+const FIT_AGREES = 1e-14;
 
-/** Each round shrinks the error by about exp(-Vmp/a), so a few are enough; poor labels need more. */
-function repeated(label: ModuleLabel, fitFor: FitFor): DiodeFit | undefined {
-  let lightA = label.iscA;
-  let fit = fitFor(label, lightA);
-  for (let round = 0; round < FIT_ROUNDS && fit !== undefined; round += 1) {
-    const next = lightAndDark(fit, label.iscA, label.vocV);
-    if (Math.abs(next - lightA) <= 1e-15 * next) break;
+/** Each round shrinks the error by about exp(-Vmp/a); a label for which that does not end has no fit with Rs. */
+function fitWithSeries({ vocV, iscA, vmpV, impA }: ModuleLabel): DiodeFit | undefined {
+  let lightA = iscA;
+  for (let round = 0; round < FIT_ROUNDS; round += 1) {
+    const log = Math.log1p(-impA / lightA);
+    const bendV = (2 * vmpV - vocV) / (log + impA / (lightA - impA));
+    const seriesOhm = (bendV * log + vocV - vmpV) / impA;
+    if (!(bendV > 0 && seriesOhm >= 0 && seriesOhm * iscA < vocV)) return undefined;
+    const next = lightAndDark({ bendV, seriesOhm }, iscA, vocV);
+    if (Math.abs(next - lightA) <= FIT_AGREES * next) return { bendV, seriesOhm, withoutSeries: false };
     lightA = next;
-    fit = fitFor(label, lightA);
   }
-  return fit;
+  return undefined;
+}
+
+/** At this many times Voc the bend is a straight line for all purposes. */
+const STRAIGHT = 1000;
+
+/**
+ * Rs = 0: the bend for which I(Vmp) = Isc (1 - exp[(Vmp - Voc)/a])/(1 - exp[-Voc/a]) is Imp, by bisection; the current at
+ * Vmp falls with a. A label below the straight line from Isc to Voc fits no module at all: the straight line is taken.
+ */
+function fitWithoutSeries({ vocV, iscA, vmpV, impA }: ModuleLabel): DiodeFit {
+  let sharp = 0;
+  let round = STRAIGHT * vocV;
+  for (let step = 0; step < MOST_STEPS; step += 1) {
+    const bendV = (sharp + round) / 2;
+    if (bendV <= sharp || bendV >= round) break;
+    const currentA = (iscA * Math.expm1((vmpV - vocV) / bendV)) / Math.expm1(-vocV / bendV);
+    if (currentA > impA) sharp = bendV;
+    else round = bendV;
+  }
+  return { bendV: round, seriesOhm: 0, withoutSeries: true };
 }
 
 /** L = Isc / (1 - exp[(Isc Rs - Voc)/a]): photo and saturation current together, so that the short circuit carries Isc. */

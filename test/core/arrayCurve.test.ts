@@ -1,4 +1,5 @@
 /** A solar array's curve: passes its label, peaks where the label says, falls everywhere. */
+import * as fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { Defect } from '../../core/job/issue.ts';
 import { arrayCurve, currentAt, maximumPower, openCircuitV, shortCircuitA } from '../../core/solar/arrayCurve.ts';
@@ -52,6 +53,36 @@ describe.each(modules)('a module of $name', ({ fields }) => {
     for (let volts = 0; volts <= array.vocV; volts += array.vocV / 500) {
       expect(volts * currentAt(curve, volts).currentA).toBeLessThanOrEqual(powerW * (1 + 1e-12));
     }
+  });
+});
+
+describe('any label above the straight line from short to open circuit', () => {
+  it('has a falling curve through its points, in any light and weather', () => {
+    fc.assert(
+      fc.property(
+        fc.double({ min: 1, max: 200, noNaN: true }),
+        fc.double({ min: 0.05, max: 30, noNaN: true }),
+        fc.double({ min: 0.55, max: 0.98, noNaN: true }),
+        fc.double({ min: 0.55, max: 0.99, noNaN: true }),
+        fc.double({ min: 1e-3, max: 1400, noNaN: true }),
+        fc.double({ min: -40, max: 50, noNaN: true }),
+        (vocV, iscA, voltPart, amperePart, irradianceWPerM2, ambientDegC) => {
+          const array = makeArray({ vocV, iscA, vmpV: voltPart * vocV, impA: amperePart * iscA });
+          const standard = arrayCurve(array, label);
+          expect(Math.abs(currentAt(standard, 0).currentA / iscA - 1)).toBeLessThan(1e-6);
+          expect(Math.abs(currentAt(standard, array.vmpV).currentA / array.impA - 1)).toBeLessThan(1e-6);
+          expect(Math.abs(currentAt(standard, vocV).currentA)).toBeLessThan(1e-6 * iscA);
+          const curve = arrayCurve(array, { irradianceWPerM2, ambientDegC });
+          const steps = Array.from({ length: 60 }, (_, index) => (vocV * (index - 10)) / 25);
+          const read = steps.map((volts) => currentAt(curve, volts));
+          expect(read.every(({ slopeSiemens }) => slopeSiemens <= 0)).toBe(true);
+          const rises = read.slice(1).filter(({ currentA }, index) => currentA > read[index]!.currentA + 1e-9 * iscA);
+          expect(rises).toEqual([]);
+          expect(maximumPower(curve).powerW).toBeGreaterThan(0);
+        },
+      ),
+      { seed: 7, numRuns: 1500 },
+    );
   });
 });
 
@@ -133,6 +164,13 @@ describe('an array', () => {
     const peak = maximumPower(curve);
     expect(peak.powerW).toBeGreaterThanOrEqual(47 * 1.7);
     expect(peak.powerW).toBeLessThan(47 * 1.7 * 1.002);
+  });
+
+  it('whose label lies below the straight line from short to open circuit gets the straight line', () => {
+    const curve = arrayCurve(makeArray({ vocV: 20, iscA: 5, vmpV: 6, impA: 1.5 }), label);
+    // Half way up a straight line of 5 A to 20 V; 0.1 %: the bend is 1000 times as long as the line.
+    expect(Math.abs(currentAt(curve, 10).currentA - 2.5)).toBeLessThan(0.0025);
+    expect(curve.assumed.some((text) => text.startsWith('vmpV:'))).toBe(true);
   });
 
   it('whose label contradicts itself is a broken promise of the reader of jobs', () => {
