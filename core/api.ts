@@ -35,6 +35,9 @@ export type { StringContext, StringFacts, StringSource } from './battery/stringS
 export { factsOf, stringEmf, stringEmfAtCharge, stringSource } from './battery/stringSource.ts';
 export type { GassingCells, Ventilation } from './battery/ventilation.ts';
 export { ventilation } from './battery/ventilation.ts';
+export type { CheckReport, Finding, Measure, NotChecked, Passed, Severity } from './checks/finding.ts';
+export type { CheckRequest } from './checks/runChecks.ts';
+export { runChecks } from './checks/runChecks.ts';
 export type { Ampacity } from './conductor/ampacity.ts';
 export { ampacity } from './conductor/ampacity.ts';
 export {
@@ -56,11 +59,24 @@ export type { Missing } from './conductor/size.ts';
 export { areaOf, awgDiameterMm, nextSizeUp, sameSize, sizesOf, smallestSize } from './conductor/size.ts';
 export type { HeatingLaw } from './conductor/temperature.ts';
 export { heatingLaw, temperatureAt } from './conductor/temperature.ts';
+export type { Bounds, Field, Fields, Rule } from './job/field.ts';
 export type { Issue, IssueCode, Result } from './job/issue.ts';
 export { Defect } from './job/issue.ts';
-export type { CheckedJob, OperatingCase, Practice, Reading, Settings, Site, Targets } from './job/job.ts';
-export { caseById, partsInCase } from './job/job.ts';
-export { checkJob, parseJob } from './job/parseJob.ts';
+export type {
+  CheckedJob,
+  DemandRow,
+  JunctionNote,
+  OperatingCase,
+  Practice,
+  Reading,
+  Settings,
+  Site,
+  Targets,
+} from './job/job.ts';
+export { caseById, partsInCase, withPractice } from './job/job.ts';
+export { currentVersion } from './job/migrate.ts';
+export { nearestNameHint } from './job/nearestName.ts';
+export { checkJob, mostParts, parseJob } from './job/parseJob.ts';
 export type {
   Chemistry,
   JunctionId,
@@ -74,6 +90,8 @@ export type {
   StringPart,
 } from './job/part.ts';
 export { cablesOfPair, junctionsOf, originOf } from './job/part.ts';
+export { partFields } from './job/partFields.ts';
+export { largestTextLength } from './job/readJson.ts';
 export type {
   Assumption,
   BatteryModel,
@@ -85,6 +103,9 @@ export type {
 } from './network/answer.ts';
 export type { CircuitRequest } from './network/circuit.ts';
 export { operatingPoint } from './network/operatingPoint.ts';
+export { buildReport } from './report/buildReport.ts';
+export type { ReportDocument } from './report/document.ts';
+export type { ReportInput, ReportOptions } from './report/input.ts';
 export type { ArrayConditions, ArrayCurve } from './solar/arrayCurve.ts';
 export { arrayCurve, currentAt, maximumPower, openCircuitV, shortCircuitA } from './solar/arrayCurve.ts';
 export type {
@@ -117,3 +138,11 @@ export type { Basis, Status } from './tables/status.ts';
 export type { Tables } from './tables/tables.ts';
 export type { ConductorSize } from './units/conductorSize.ts';
 export { parseSize, sizeText } from './units/conductorSize.ts';
+export { formatQuantity } from './units/formatQuantity.ts';
+export { fahrenheitText, feetText } from './units/imperial.ts';
+export { fixedText, numberText } from './units/numberText.ts';
+export type { Parsed } from './units/parsed.ts';
+export { quoted } from './units/parsed.ts';
+export { parseQuantity } from './units/parseQuantity.ts';
+export type { UnitName } from './units/unitName.ts';
+export { describeUnit, unitKinds } from './units/unitName.ts';

@@ -6,3 +6,5 @@ import { devices } from './devices/devices.ts';
 import { practices } from './practices/practices.ts';
 
 export const tables: Tables = { conductors, chemistry: chemistryTables, devices, practices };
+
+export { starters } from './starters.ts';

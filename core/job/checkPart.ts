@@ -43,7 +43,7 @@ export function ownerOf(raw: RawObject): string {
 }
 
 /** Shared by the many parts that have nothing to put in a map of their own. */
-const nothing: ReadonlyMap<string, never> = new Map();
+const nothing: ReadonlyMap<string, never> = new Map<string, never>();
 
 /** The `x-…` fields of an object, as they are. */
 export function extraOf(raw: RawObject): ReadonlyMap<string, unknown> {
