@@ -65,7 +65,10 @@ function gather({ job, points }: ReportInput): readonly AssumptionLine[] {
       lines.set(key, line);
     }
   }
-  return [...lines.values()];
+  // The same figure in several cases stands together, in the order in which the figures first came up.
+  const found = [...lines.values()];
+  const fields = [...new Set(found.map(({ assumption }) => assumption.field))];
+  return fields.flatMap((field) => found.filter(({ assumption }) => assumption.field === field));
 }
 
 /**
@@ -73,9 +76,15 @@ function gather({ job, points }: ReportInput): readonly AssumptionLine[] {
  * and units of the job file become words. Nothing is left where it only repeats the columns.
  */
 function withoutPart({ text, part, field, value }: Assumption): string {
-  const general = part === null ? text : text.replaceAll(` of ${part}`, '').replaceAll(part, 'the part');
+  const general = part === null ? text : withoutName(text, part);
   if (general.startsWith(`${field} taken as ${value}`)) return '';
-  return general.replaceAll(field, fieldWords(field)).replaceAll(' degC', ' °C');
+  return general.replaceAll(CAMEL_CASE, fieldWords).replaceAll(' degC', ' °C');
+}
+/** Names of fields of the job file, as they turn up inside sentences. */
+const CAMEL_CASE = /\b[a-z]+(?:[A-Z][a-z0-9]*)+\b/g;
+
+function withoutName(text: string, part: string): string {
+  return text.replaceAll(` of ${part}`, '').replaceAll(` "${part}"`, '').replaceAll(part, 'the part');
 }
 
 function assumptionTable(lines: readonly AssumptionLine[], { points }: ReportInput, citations: Citations): TableBlock {
@@ -108,7 +117,8 @@ function assumptionTable(lines: readonly AssumptionLine[], { points }: ReportInp
 /** Where the assumption is no number, its sentence is the figure. */
 function nameCell({ field, value }: Assumption, words: string): Cell {
   const name = sentenceCase(fieldWords(field));
-  return typeof value === 'number' ? { text: name, under: words } : `${name}: ${words}`;
+  if (typeof value === 'number') return { text: name, under: words };
+  return words.includes(':') ? sentenceCase(words) : `${name}: ${words}`;
 }
 
 function valueText({ value, unit }: Assumption): string {

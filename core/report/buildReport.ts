@@ -3,6 +3,7 @@ import { caseSection } from './caseSection.ts';
 import { Citations } from './citations.ts';
 import { proofSection, sourceSection, statementSection, testSection } from './closingSections.ts';
 import { coverOf, FOOTER } from './cover.ts';
+import { diagramSection } from './diagramSection.ts';
 import type { Block, ReportDocument } from './document.ts';
 import { findingSection } from './findingSection.ts';
 import type { ReportInput } from './input.ts';
@@ -21,6 +22,7 @@ export function buildReport(input: ReportInput): ReportDocument {
   const citations = new Citations();
   const body: readonly Block[] = [
     ...summarySection(input, citations),
+    ...diagramSection(job),
     ...assumptionSection(input, citations),
     ...partSections(input, citations),
     ...caseSection(input),

@@ -24,7 +24,7 @@ export function answerLine(job: CheckedJob, point: OperatingPoint): string {
   if (!point.proof.holds) {
     return `The sums of this case do not close (largest junction remainder ${scientific(point.proof.worstJunctionA)} A), so its figures are withheld.`;
   }
-  const told = [stringsLine(job, point), loadsLine(job, point), heatLine(point)];
+  const told = [stringsLine(job, point), loadsLine(job, point), stoppedLine(job, point), heatLine(point)];
   return told.filter((words) => words !== '').join(' ');
 }
 
@@ -45,7 +45,8 @@ function stringsLine(job: CheckedJob, point: OperatingPoint): string {
   const verb = totalA < 0 ? 'is charged with' : 'delivers';
   const bank = `The bank ${verb} ${amps(Math.abs(totalA))} A`;
   if (currents.length === 1 || currents.length > STRINGS_TOLD) return `${bank}.`;
-  return `${bank} (${currents.map(({ id, currentA }) => `${id} ${amps(currentA)} A`).join(', ')}).`;
+  const agree = currents.every(({ currentA }) => currentA >= 0 === totalA >= 0);
+  return `${bank} (${currents.map(({ id, currentA }) => `${id} ${amps(agree ? Math.abs(currentA) : currentA)} A`).join(', ')}).`;
 }
 
 function loadsLine(job: CheckedJob, point: OperatingPoint): string {
@@ -63,6 +64,19 @@ function loadsLine(job: CheckedJob, point: OperatingPoint): string {
   if (lowest === undefined) return 'No load draws current.';
   const where = `${volts(lowest.voltageV)} V at ${partName(job, lowest.part.id)}`;
   return fed.length === 1 ? `The load has ${where}.` : `Lowest of ${fed.length} loads: ${where}.`;
+}
+
+/** Loads that are switched on and get nothing: the answer that matters most to whoever stands before them. */
+function stoppedLine(job: CheckedJob, point: OperatingPoint): string {
+  const inState = (state: string): readonly string[] =>
+    job.parts.filter(({ id }) => point.parts.get(id)?.state === state).map(({ id }) => partName(job, id));
+  const dropped = inState('dropped-out');
+  const unfed = inState('unfed');
+  const told = [
+    dropped.length === 0 ? '' : `Dropped out for want of volts: ${join(dropped)}.`,
+    unfed.length === 0 ? '' : `Not fed: ${join(unfed)}.`,
+  ];
+  return told.filter((words) => words !== '').join(' ');
 }
 
 function heatLine({ proof }: OperatingPoint): string {
@@ -115,10 +129,10 @@ function differences(before: Part, now: Part): readonly string[] {
   });
 }
 
-/** `Fridge (L1)`, or the bare id where the part has no label. */
+/** `L1 (Fridge)`, or the bare id where the part has no label. */
 export function partName(job: CheckedJob, id: string): string {
   const part = job.parts.find((candidate) => candidate.id === id || id.startsWith(`${candidate.id}.`));
-  return part?.label === undefined || part.label === '' || part.label === id ? id : `${part.label} (${id})`;
+  return part?.label === undefined || part.label === '' || part.label === id ? id : `${id} (${part.label})`;
 }
 
 /** The state of a part in plain words; the engine's own words read well, only the hyphens go. */

@@ -206,7 +206,7 @@ const TITLES: Readonly<Record<CautionPlace, string>> = {
 /** The caution block of a place, or nothing where none of its cautions concerns this job. */
 export function cautionsAt(place: CautionPlace, job: CheckedJob, citations: Citations): readonly CautionBlock[] {
   const points = CAUTIONS.filter((caution) => caution.place === place && caution.appliesTo(job)).map(
-    ({ text, basis }) => (basis === undefined ? text : `${text} ${citations.short(basis)}`),
+    ({ text, basis }) => (basis === undefined ? text : `${text}\u00a0${citations.short(basis)}`),
   );
   return points.length === 0 ? [] : [{ kind: 'caution', title: TITLES[place], points }];
 }

@@ -2,7 +2,7 @@ import type { CheckedJob } from '../job/job.ts';
 import type { CablePart, PairPart } from '../job/part.ts';
 import type { ConductorTables } from '../tables/conductorTables.ts';
 import type { Cell, TableBlock } from './document.ts';
-import { feet, milliohms, NOT_GIVEN, plain } from './figures.ts';
+import { feet, metres, milliohms, NOT_GIVEN, plain } from './figures.ts';
 import { given, id, named, number, partsOf, schedule, text } from './schedule.ts';
 import { sizeAsGiven, sizeOtherwise } from './sizes.ts';
 import { METAL_WORDS, RUN_WORDS, STRANDING_WORDS } from './wording.ts';
@@ -65,7 +65,7 @@ function conductorRow(part: CablePart | PairPart, { name, from, to, tables }: Co
     name,
     from,
     to,
-    { text: plain(part.lengthM), under: feet(part.lengthM) },
+    { text: metres(part.lengthM), under: feet(part.lengthM) },
     sizeCell(part, tables),
     make === '' ? NOT_GIVEN : make,
     lay.length === 0 ? NOT_GIVEN : lay.join(', '),
@@ -113,7 +113,7 @@ export function jointSchedule(job: CheckedJob): readonly TableBlock[] {
       ? NOT_GIVEN
       : {
           text: sizeAsGiven(part.size),
-          under: part.lengthM === undefined ? '' : `${plain(part.lengthM)} m (${feet(part.lengthM)})`,
+          under: part.lengthM === undefined ? '' : `${metres(part.lengthM)} m (${feet(part.lengthM)})`,
         },
   ]);
   return schedule(

@@ -1,7 +1,7 @@
 import type { CheckedJob } from '../job/job.ts';
 import type { DiodePart, ShuntPart, SwitchPart } from '../job/part.ts';
 import type { Cell, TableBlock } from './document.ts';
-import { feet, milliohms, NOT_GIVEN, plain } from './figures.ts';
+import { feet, metres, milliohms, NOT_GIVEN, plain } from './figures.ts';
 import { given, id, named, number, partsOf, schedule, text, yesNo } from './schedule.ts';
 import { KIND_WORDS } from './wording.ts';
 
@@ -37,7 +37,7 @@ export function deviceSchedule(job: CheckedJob): readonly TableBlock[] {
       given(part.interruptA),
       part.distanceFromSourceM === undefined
         ? NOT_GIVEN
-        : { text: plain(part.distanceFromSourceM), under: feet(part.distanceFromSourceM) },
+        : { text: metres(part.distanceFromSourceM), under: feet(part.distanceFromSourceM) },
       yesNo(part.sheathed),
       part.resistanceOhm === undefined ? NOT_GIVEN : milliohms(part.resistanceOhm),
       part.state,

@@ -118,7 +118,8 @@ export interface TableBlock {
   readonly notes: readonly string[];
 }
 
-export type Tone = 'ink' | 'quiet' | 'copper';
+/** `paper` draws in the colour of the sheet: it wipes. */
+export type Tone = 'ink' | 'quiet' | 'copper' | 'paper';
 export type Stroke = 'hair' | 'line' | 'heavy';
 
 /** Shapes on a plane in points, x to the right and y down; text is placed by its baseline. */

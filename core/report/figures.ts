@@ -26,7 +26,8 @@ export function amps(currentA: number): string {
   return fixed(currentA, Math.abs(currentA) >= 1000 ? 0 : Math.abs(currentA) >= 1 || currentA === 0 ? 1 : 2);
 }
 export function volts(voltageV: number): string {
-  return fixed(voltageV, Math.abs(voltageV) >= 100 ? 1 : 2);
+  const size = Math.abs(voltageV);
+  return fixed(voltageV, size >= 100 ? 1 : size < 1 && size > 0 ? 3 : 2);
 }
 export function millivolts(voltageV: number): string {
   const millivolt = voltageV * 1000;
@@ -44,6 +45,10 @@ export function degrees(temperatureDegC: number): string {
 }
 export function percent(fraction: number): string {
   return fixed(fraction * 100, Math.abs(fraction) >= 0.1 ? 0 : 1);
+}
+/** Metres to the centimetre. */
+export function metres(lengthM: number): string {
+  return plain(Number(lengthM.toFixed(2)));
 }
 /** Feet of a length, for the second line of a cell. */
 export function feet(lengthM: number): string {

@@ -89,7 +89,7 @@ function companionPt(sheet: Sheet, following: readonly Block[]): number {
     case 'figure':
       return figureHeightPt(sheet, next);
     case 'caution':
-      return cautionHeightPt(sheet, next);
+      return cautionHeightPt(sheet, next) + (rest[0]?.kind === 'table' ? 10 + tableStartPt(sheet, rest[0]) : 0);
     case 'paragraph':
       return rest[0]?.kind === 'table' && next.text.length < 400 ? 44 + tableStartPt(sheet, rest[0]) : 42;
     default:

@@ -127,7 +127,7 @@ export class Sheet {
     const widthPt = place.align === undefined || place.align === 'left' ? 0 : this.face.width(text, style);
     const x = place.align === 'centre' ? place.x - widthPt / 2 : place.x - widthPt;
     this.doc
-      .font(style.face)
+      .font(faceFile(style.face))
       .fontSize(style.sizePt)
       .fillColor(style.colour)
       .text(text, x, place.baselineY, { lineBreak: false, baseline: 'alphabetic' });

@@ -16,7 +16,7 @@ export const QUIET = '#56616d';
 export const COPPER = '#9a4f22';
 export const HAIRLINE = '#9aa3ab';
 
-export const TONES: Readonly<Record<Tone, string>> = { ink: INK, quiet: QUIET, copper: COPPER };
+export const TONES: Readonly<Record<Tone, string>> = { ink: INK, quiet: QUIET, copper: COPPER, paper: '#ffffff' };
 export const STROKES: Readonly<Record<Stroke, number>> = { hair: 0.5, line: 0.9, heavy: 2.4 };
 
 export const PAGE_SIZES_PT = { A4: [595.28, 841.89], Letter: [612, 792] } as const;

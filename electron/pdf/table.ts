@@ -18,7 +18,7 @@ const ROWS_TOGETHER = 2;
 /** The caption is left out where the heading right above already says it. */
 export function drawTable(sheet: Sheet, block: TableBlock): void {
   const table = layTable(sheet.face, block, sheet.width);
-  sheet.ensure(beginning(sheet, table));
+  sheet.ensure(beginning(sheet, table, notesHeight(sheet, block)));
   const element = sheet.child(sheet.root, 'Table');
   if (block.caption !== sheet.headingAbove) {
     const { left: x, width: widthPt } = sheet;
@@ -37,15 +37,14 @@ const CAPTION_PT = STYLES.caption.leadingPt + 2;
 
 /** Height that must be free for a table to begin: caption, header and its first rows. */
 export function tableStartPt(sheet: Sheet, block: TableBlock): number {
-  return beginning(sheet, layTable(sheet.face, block, sheet.width));
+  return beginning(sheet, layTable(sheet.face, block, sheet.width), notesHeight(sheet, block));
 }
-function beginning(sheet: Sheet, table: LaidTable): number {
-  const bodyPt = table.rows.reduce((sum, { heightPt }) => sum + heightPt, 0);
-  const wholePt = CAPTION_PT + table.head.heightPt + bodyPt;
+function beginning(sheet: Sheet, table: LaidTable, notesPt: number): number {
+  const wholePt = CAPTION_PT + table.head.heightPt + total(table.rows) + notesPt;
   return wholePt <= sheet.fullRoom * KEPT_WHOLE ? wholePt : startHeight(table);
 }
 function startHeight(table: LaidTable): number {
-  const first = table.rows.slice(0, ROWS_TOGETHER).reduce((sum, { heightPt }) => sum + heightPt, 0);
+  const first = total(table.rows.slice(0, ROWS_TOGETHER));
   return CAPTION_PT + table.head.heightPt + Math.min(first, 160);
 }
 
@@ -101,9 +100,10 @@ function place(
 
 function drawRows(sheet: Sheet, block: TableBlock, table: LaidTable, element: Element): void {
   const headPt = CAPTION_PT + table.head.heightPt;
+  const notesPt = notesHeight(sheet, block);
   table.rows.forEach((row, index) => {
     const left = table.rows.length - index;
-    const together = left === ROWS_TOGETHER ? row.heightPt + (table.rows[index + 1]?.heightPt ?? 0) : row.heightPt;
+    const together = left > ROWS_TOGETHER ? row.heightPt : notesPt + total(table.rows.slice(index));
     const tooTall = row.heightPt > sheet.fullRoom - headPt;
     if (
       !tooTall &&
@@ -116,6 +116,14 @@ function drawRows(sheet: Sheet, block: TableBlock, table: LaidTable, element: El
     if (tooTall) drawTallRow(sheet, block, table, element, row);
     else drawRow(sheet, table, element, row);
   });
+}
+
+const total = (rows: readonly LaidRow[]): number => rows.reduce((sum, { heightPt }) => sum + heightPt, 0);
+
+/** Notes stay with the last rows. */
+function notesHeight(sheet: Sheet, block: TableBlock): number {
+  const lines = block.notes.flatMap((note) => breakLines(sheet.face, note, STYLES.small, sheet.width));
+  return Math.min(3 + lines.length * STYLES.small.leadingPt, sheet.fullRoom / 3);
 }
 
 function drawRow(sheet: Sheet, table: LaidTable, element: Element, row: LaidRow): void {

@@ -204,6 +204,9 @@ function share(needs: readonly Need[], columns: readonly Column[], widthPt: numb
   return minimum.map((need, index) => need + (left * (lacking[index] ?? 0)) / total(lacking));
 }
 
+/** With so few columns the rest of the line stays empty rather than the columns far apart. */
+const FEW_COLUMNS = 2;
+
 /** Spare width goes first to texts that are longer than their column, then to all columns alike, up to a limit that keeps rows readable. */
 function spread(
   natural: readonly number[],
@@ -216,6 +219,8 @@ function spread(
   const filled = natural.map(
     (width, index) => width + (total(lacking) === 0 ? 0 : (given * (lacking[index] ?? 0)) / total(lacking)),
   );
+  if (columns.length <= FEW_COLUMNS)
+    return filled.map((width, index) => width + (index === columns.length - 1 ? sparePt - given : 0));
   const each = (sparePt - given) / columns.length;
   return filled.map((width) => width + each);
 }

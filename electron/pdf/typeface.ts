@@ -4,8 +4,16 @@ import type { Face } from './style.ts';
 import { FACE_FILES } from './style.ts';
 
 /** The font package stands beside this program, whether it runs from its sources or from its bundle. */
+const packages = createRequire(import.meta.url);
+const files = new Map<Face, string>();
+
+/** Path of a face; also its key with pdfkit, which opens a file again each time when it is called by another name. */
 export function faceFile(face: Face): string {
-  return createRequire(import.meta.url).resolve(FACE_FILES[face]);
+  const known = files.get(face);
+  if (known !== undefined) return known;
+  const file = packages.resolve(FACE_FILES[face]);
+  files.set(face, file);
+  return file;
 }
 
 /** What the outline of a font can tell. */
@@ -28,7 +36,6 @@ export class Typeface {
 
   constructor(doc: PDFKit.PDFDocument) {
     this.doc = doc;
-    for (const face of Object.keys(FACE_FILES) as Face[]) doc.registerFont(face, faceFile(face));
   }
 
   /**
@@ -44,7 +51,7 @@ export class Typeface {
   private advance(face: Face, character: string): number {
     const known = this.advances[face].get(character);
     if (known !== undefined) return known;
-    const measured = this.doc.font(face).fontSize(1000).widthOfString(character) / 1000;
+    const measured = this.doc.font(faceFile(face)).fontSize(1000).widthOfString(character) / 1000;
     this.advances[face].set(character, measured);
     return measured;
   }
@@ -67,7 +74,7 @@ export class Typeface {
   }
 
   private has(codePoint: number): boolean {
-    this.glyphs ??= glyphsOf(this.doc.font('regular'));
+    this.glyphs ??= glyphsOf(this.doc.font(faceFile('regular')));
     return codePoint >= 0x20 && this.glyphs.hasGlyphForCodePoint(codePoint);
   }
 }
