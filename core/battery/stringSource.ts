@@ -124,7 +124,7 @@ function fromShortCircuit(emfV: number, currentA: Banded): Banded {
 }
 
 /** Resistance of the string from its chemistry, size, charge, temperature and age alone. */
-export function chemistryResistance(facts: StringFacts, model: 'slow' | 'fast', tables: ChemistryTables): Banded {
+function chemistryResistance(facts: StringFacts, model: 'slow' | 'fast', tables: ChemistryTables): Banded {
   const { string, cells, temperatureDegC } = facts;
   return defaultResistance({ ...string, cells, boards: boardsOf(facts), temperatureDegC, model }, tables);
 }
