@@ -14,11 +14,11 @@ export function proveAnswer(reader: Reader, iterations: number): Proof {
   const loop = worstLoop(reader);
   const power = powerBalance(reader);
   const mismatchW = power.inW - power.outW - power.heatW;
-  const relativeResidual = junction.worst / Math.max(junction.largestA, 1e-9);
+  const relativeResidual = junction.worst / Math.max(junction.largestA, LEAST_A);
   const holds =
-    relativeResidual < JUNCTION_BOUND &&
+    (relativeResidual < JUNCTION_BOUND || junction.worst <= junction.roundingA) &&
     loop.worst < LOOP_BOUND * Math.max(1, loop.largestV) &&
-    Math.abs(mismatchW) < POWER_BOUND * Math.max(1, power.inW);
+    (Math.abs(mismatchW) < POWER_BOUND * Math.max(1, power.inW) || Math.abs(mismatchW) <= junction.roundingW);
   return {
     worstJunctionA: junction.worst,
     worstJunction: junction.at < 0 ? null : reader.circuit.junctions[junction.at]!,
@@ -33,8 +33,17 @@ export function proveAnswer(reader: Reader, iterations: number): Proof {
   };
 }
 
+/** Currents are judged against at least this: a bank at rest carries none. */
+const LEAST_A = 1;
+
 /** Sum of the currents that leave each junction; where ties side by side leave a current open, over the junctions they join. */
-function junctionRemainders(reader: Reader): { worst: number; at: number; largestA: number } {
+function junctionRemainders(reader: Reader): {
+  worst: number;
+  at: number;
+  largestA: number;
+  roundingA: number;
+  roundingW: number;
+} {
   const { circuit } = reader;
   const n = circuit.junctions.length;
   const group = Int32Array.from({ length: n }, (_, j) => j);
@@ -45,8 +54,14 @@ function junctionRemainders(reader: Reader): { worst: number; at: number; larges
   };
   const sums = new Float64Array(n);
   let largestA = 0;
+  let roundingA = 0;
   for (const element of circuit.elements) {
     const i = reader.currentIn(element);
+    // A current through a very small resistance is known no better than the last place of the volts at its ends.
+    const volts = Math.abs(reader.voltsOf(element.from) ?? 0) + Math.abs(reader.voltsOf(element.to) ?? 0);
+    if (element.law !== Law.tie && element.law !== Law.none) {
+      roundingA = Math.max(roundingA, 2 ** -48 * Math.abs(element.slope) * volts);
+    }
     if (i === null) {
       group[find(element.from)] = find(element.to);
       continue;
@@ -65,7 +80,9 @@ function junctionRemainders(reader: Reader): { worst: number; at: number; larges
       at = j;
     }
   }
-  return { worst, at, largestA };
+  // By Tellegen's theorem the power that is missing is the sum, over the junctions, of volts times what the currents lack.
+  const totalV = Array.from({ length: n }, (_, j) => Math.abs(reader.voltsOf(j) ?? 0)).reduce((sum, v) => sum + v, 0);
+  return { worst, at, largestA, roundingA, roundingW: roundingA * totalV };
 }
 
 /**
