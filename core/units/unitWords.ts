@@ -3,7 +3,13 @@ import { create, type Unit, unitDependencies } from 'mathjs';
 import { type UnitName, unitKinds } from './unitName.ts';
 
 // Only the unit part of the library is loaded, so that no text of a user can reach a function, a variable or an expression.
-const library = create(unitDependencies!, {});
+let created: ReturnType<typeof create> | undefined;
+
+/** Made when the first unit is read, since making it takes longer than reading a whole job of plain numbers. */
+function library(): ReturnType<typeof create> {
+  created ??= create(unitDependencies!, {});
+  return created;
+}
 
 /**
  * Spellings of the trade that the unit library does not know, or reads as something else. The right side is the library's
@@ -109,22 +115,17 @@ export function worthOf({ word, unit }: { word: string; unit: UnitName }): numbe
   const target = unitKinds[unit].library;
   const written = libraryUnit(spellings.get(word) ?? word);
   if (target === undefined || written === undefined) return undefined;
-  if (!written.equalBase(library.unit(1, target))) return undefined;
+  if (!written.equalBase(library().unit(1, target))) return undefined;
   const worth = written.toNumber(target);
   if (!Number.isFinite(worth) || worth <= 0) return undefined;
   if (remembered.size < 1000) remembered.set(key, worth);
   return worth;
 }
 
-/** True for a word that names some unit, of whatever kind. */
-export function isUnitWord(word: string): boolean {
-  return libraryUnit(spellings.get(word) ?? word) !== undefined;
-}
-
 function libraryUnit(name: string): Unit | undefined {
   if (!/^[A-Za-z][A-Za-z ]{0,24}(\/m\^2)?$/.test(name)) return undefined;
   try {
-    return library.unit(1, name);
+    return library().unit(1, name);
   } catch {
     return undefined; // the library's way of saying that it knows no such unit
   }

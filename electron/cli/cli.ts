@@ -1,0 +1,6 @@
+#!/usr/bin/env node
+/** The command line as a program. */
+import { processIo } from './io.ts';
+import { main } from './main.ts';
+
+process.exitCode = await main(process.argv.slice(2), processIo());

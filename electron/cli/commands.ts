@@ -1,0 +1,131 @@
+/** What each command does: read, ask the engine, print. No command decides anything that the engine did not. */
+import {
+  type BatteryModel,
+  buildReport,
+  type CheckedJob,
+  type CheckReport,
+  type OperatingCase,
+  type OperatingPoint,
+  operatingPoint,
+  runChecks,
+} from '../../core/api.ts';
+import { tables } from '../../data/index.ts';
+import { checkText } from './checkText.ts';
+import type { Io } from './io.ts';
+import { jsonText } from './jsonText.ts';
+import { type CommandOptions, chosenCases, judgedJob } from './options.ts';
+import { programVersion } from './programVersion.ts';
+import { type JobRead, readJob } from './readJob.ts';
+import { exitStatus, Refusal } from './refusal.ts';
+import { solveAnswer } from './solveAnswer.ts';
+import { solveText } from './solveText.ts';
+import { checkPlace, writeOut } from './writeOut.ts';
+
+/** `solve`: volts, amps and watts of each case. */
+export async function solve(path: string, options: CommandOptions, io: Io): Promise<number> {
+  const { read, job, cases } = await begin(path, options, io);
+  const model = options.model ?? 'slow';
+  const points = cases.map((operatingCase) => operatingPoint({ job, operatingCase, tables, model }));
+  await print(
+    options.json === true ? jsonText(solveAnswer(job, model, points)) : solveText(job, points),
+    read,
+    options,
+    io,
+  );
+  return collapsed(points) ? exitStatus.found : exitStatus.done;
+}
+
+/** `check`: findings by the practice in force. */
+export async function check(path: string, options: CommandOptions, io: Io): Promise<number> {
+  const { read, job, cases } = await begin(path, options, io);
+  const points = solvedFor(job, cases, options.model);
+  const report = runChecks({ job, tables, cases, points });
+  const answer = options.json === true ? jsonText(checkAnswer(job, cases, report)) : checkText(job, report);
+  await print(answer, read, options, io);
+  return collapsed(points) || hasWork(report) ? exitStatus.found : exitStatus.done;
+}
+
+/** `report`: the paper of a job as a PDF, or its document tree. */
+export async function report(path: string, options: CommandOptions, io: Io): Promise<number> {
+  if (options.out === undefined && options.json !== true) {
+    throw new Refusal(exitStatus.words, 'report needs --out <file.pdf> for the PDF, or --json for its document tree.');
+  }
+  const { read, job, cases } = await begin(path, options, io);
+  const points = solvedFor(job, cases, options.model);
+  const checkReport = runChecks({ job, tables, cases, points });
+  const document = buildReport({
+    job,
+    tables,
+    points,
+    checkReport,
+    options: { programVersion, preparedOn: io.today() },
+  });
+  if (options.out !== undefined) {
+    // Only this command needs the PDF writer, which takes longer to load than all the rest.
+    const { renderPdf } = await import('../pdf/renderPdf.ts');
+    const content = await renderPdf(document);
+    writeOut({ path: options.out, content, input: read.file });
+    if (options.quiet !== true) io.err(`Wrote ${options.out} (${String(Math.ceil(content.length / 1024))} kB).\n`);
+  }
+  if (options.json === true) await io.out(jsonText(document));
+  return collapsed(points) ? exitStatus.found : exitStatus.done;
+}
+
+interface Begun {
+  readonly read: JobRead;
+  readonly job: CheckedJob;
+  readonly cases: readonly OperatingCase[];
+}
+
+async function begin(path: string, options: CommandOptions, io: Io): Promise<Begun> {
+  const read = await readJob(path, io);
+  const job = judgedJob(read.job, options);
+  const cases = chosenCases(job, options);
+  if (options.out !== undefined) checkPlace({ path: options.out, input: read.file });
+  if (job.practiceAssumed === true && options.quiet !== true) {
+    io.err(
+      `The job names no practice; ${job.practice} is assumed for its tables. Name one in the job or with --practice.\n`,
+    );
+  }
+  return { read, job, cases };
+}
+
+async function print(answer: string, read: JobRead, options: CommandOptions, io: Io): Promise<void> {
+  if (options.out === undefined) await io.out(answer);
+  else writeOut({ path: options.out, content: answer, input: read.file });
+}
+
+/** Each case by the battery model asked for; else a start by the first second and the rest over minutes. */
+function solvedFor(
+  job: CheckedJob,
+  cases: readonly OperatingCase[],
+  asked: BatteryModel | undefined,
+): readonly OperatingPoint[] {
+  return cases.map((operatingCase) => {
+    const model = asked ?? (operatingCase.surge === undefined ? 'slow' : 'fast');
+    return operatingPoint({ job, operatingCase, tables, model });
+  });
+}
+
+function collapsed(points: readonly OperatingPoint[]): boolean {
+  return points.some((point) => point.outcome === 'collapse');
+}
+
+function hasWork({ findings }: CheckReport): boolean {
+  return findings.some(({ severity }) => severity === 'stop' || severity === 'fix');
+}
+
+function checkAnswer(
+  job: CheckedJob,
+  cases: readonly OperatingCase[],
+  { findings, notChecked, passed }: CheckReport,
+): unknown {
+  return {
+    practice: job.practice,
+    practiceAssumed: job.practiceAssumed === true,
+    cases: cases.map(({ id }) => id),
+    findings,
+    notChecked,
+    passed,
+  };
+}

@@ -1,0 +1,26 @@
+import { defineConfig, type UserConfig } from 'vite';
+
+/** pdfkit reads files of its own beside itself, so it stays a package; all else goes into the bundle. */
+const external = ['pdfkit'];
+
+/** The command line: `dist/cli.mjs` and beside it what only some commands load. */
+const cli: UserConfig = {
+  publicDir: false,
+  build: {
+    ssr: 'electron/cli/cli.ts',
+    outDir: 'dist',
+    emptyOutDir: false,
+    target: 'node20',
+    minify: false,
+    rollupOptions: {
+      external,
+      output: { format: 'es', entryFileNames: 'cli.mjs', chunkFileNames: 'cli-[name].mjs' },
+    },
+  },
+  ssr: { noExternal: true, external },
+};
+
+export default defineConfig(({ mode }) => {
+  if (mode !== 'cli') throw new Error(`there is nothing to build in mode ${mode}; say --mode cli`);
+  return cli;
+});
