@@ -12,6 +12,7 @@ import { amps, apart, field, list, percent, titleOf, together, withEdition } fro
 export const cableOverloaded: Rule = {
   id: 'cable-overloaded',
   family: 'cable',
+  kinds: ['cable'],
   title: 'Cable carries more than it may',
   compares:
     'current solved in each cable with its ampacity after all corrections, in every case without a starting load',
@@ -25,6 +26,7 @@ export const cableOverloaded: Rule = {
 export const cableUnderContinuous: Rule = {
   id: 'cable-under-continuous',
   family: 'cable',
+  kinds: ['cable'],
   title: 'Cable has no margin for current that lasts',
   compares:
     'ampacity of each cable before correction with 125 % (or as set) of the current that lasts three hours or more plus the rest; a cable that is overloaded outright is told by the other rule',
@@ -62,9 +64,8 @@ function eachCable(context: CheckContext, rule: Rule, judgement: Judgement): Rul
     if (drawn.kind !== 'cable') continue;
     const verdicts = context.steady.map((one) => {
       const cable = one.part(drawn.id) as CablePart;
-      if (cable.size === undefined) return missing(field(cable, 'size'));
       const ampacity = context.ampacityOf(cable, one.ambientDegC);
-      if ('missing' in ampacity) return missing(`${ampacity.missing} (cable ${cable.id})`);
+      if ('missing' in ampacity) return missing(ampacity.missing);
       return judgement(context, { cable, one, ampacity });
     });
     tally.judge([drawn.id], verdicts);
@@ -101,7 +102,7 @@ const withoutMargin: Judgement = (context, { cable, one, ampacity }) => {
   const demand = demandsOf(context, one).of(cable.id);
   if (demand === undefined) return undetermined(cable, one);
   const uncorrected = context.uncorrectedAmpacityOf(cable, ampacity);
-  if ('missing' in uncorrected) return missing(`${uncorrected.missing} (cable ${cable.id})`);
+  if ('missing' in uncorrected) return missing(uncorrected.missing);
   const baseA = uncorrected.finalA;
   if (!isOver(demand.mostA, baseA)) return PASS;
   if (isOver(demand.runningA, ampacity.finalA)) return ELSEWHERE;

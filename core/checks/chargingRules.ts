@@ -18,6 +18,7 @@ const CHEMISTRY_WINDOW: Basis = {
 export const chargerVoltsOff: Rule = {
   id: 'charger-volts-off',
   family: 'charging',
+  kinds: ['charger', 'controller', 'converter'],
   title: 'Charger set to the wrong volts',
   compares:
     'set-point of each charger, controller and charging converter with the window from float to absorption volts of the chemistry times the cells in series, at the temperature of the string',
@@ -31,6 +32,7 @@ export const chargerVoltsOff: Rule = {
 export const coldCharge: Rule = {
   id: 'cold-charge',
   family: 'charging',
+  kinds: ['charger', 'controller', 'converter'],
   title: 'Lithium charged below its lowest temperature',
   compares:
     'temperature of each lithium string (its own, else the air of the case, else the coldest air of the site) with the lowest at which its chemistry may be charged, wherever something can charge it',

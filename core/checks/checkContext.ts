@@ -13,6 +13,7 @@ import type { Tables } from '../tables/tables.ts';
 import type { Judge } from './rule.ts';
 import { SystemVolts } from './systemVolts.ts';
 import { meetings, type Nets, netsOf, type PartEnd, type SinglePart, withoutPairs } from './wiring.ts';
+import { field } from './wording.ts';
 
 /** One case with its answer. */
 export class SolvedCase {
@@ -142,7 +143,7 @@ export class CheckContext implements Judge {
     }
     let found = byAmbient.get(ambientDegC);
     if (found === undefined) {
-      found = ampacity(cable, this.ampacityContext(cable, ambientDegC));
+      found = this.namedAmpacity(cable, ampacity(cable, this.ampacityContext(cable, ambientDegC)));
       byAmbient.set(ambientDegC, found);
     }
     return found;
@@ -156,7 +157,13 @@ export class CheckContext implements Judge {
     const ambientDegC = corrected.tableAmbientDegC;
     const run = cable.run === 'engine-space' ? undefined : cable.run;
     const alone: CablePart = { ...cable, ambientDegC, loadedConductors: 2, run };
-    return ampacity(alone, this.ampacityContext(cable, ambientDegC));
+    return this.namedAmpacity(cable, ampacity(alone, this.ampacityContext(cable, ambientDegC)));
+  }
+
+  /** What is missing, with the cable that it is missing of. */
+  private namedAmpacity(cable: CablePart, answer: Ampacity | Missing): Ampacity | Missing {
+    if (!('missing' in answer)) return answer;
+    return { missing: cable.size === undefined ? field(cable, 'size') : `${answer.missing} (cable ${cable.id})` };
   }
 
   private ampacityContext(cable: CablePart, ambientDegC: number) {

@@ -11,6 +11,7 @@ import { apart, field, list, nameOf, percent, titleOf, volts, withEdition } from
 export const dropTooBig: Rule = {
   id: 'drop-too-big',
   family: 'voltage',
+  kinds: ['load', 'inverter'],
   title: 'Too many volts lost on the way to a load',
   compares:
     'volts at the source less volts at each running load or inverter, as a fraction of nominal volts, with the limit for its class (critical or ordinary), in every case without a starting load',
@@ -37,8 +38,8 @@ function dropVerdict(
   { part, one }: { part: LoadPart | InverterPart; one: SolvedCase },
 ): readonly Verdict[] {
   const { voltageV, currentA } = one.answer(part.id);
-  // A load that is not fed or has dropped out has no drop to judge: other rules tell it.
-  if (voltageV === null || currentA === null || currentA <= 0) return [];
+  // A load that is not fed, has dropped out or is the wrong way round has no drop to judge: other rules tell it.
+  if (voltageV === null || voltageV <= 0 || currentA === null || currentA <= 0) return [];
   const feed = feedersOf(one).of(part);
   if (feed === undefined) return [missing(`a source that feeds ${part.kind} ${part.id} in case ${one.id}`)];
   const nominalV = context.volts.nominalBetween(part.plus, part.minus);
@@ -106,6 +107,7 @@ const CHARGE_DROP_BASIS: Basis = {
 export const chargeDropTooBig: Rule = {
   id: 'charge-drop-too-big',
   family: 'voltage',
+  kinds: ['charger', 'controller'],
   title: 'Too many volts lost between a charger and the strings',
   compares:
     'volts at each running charger or controller output less volts at the strings that it charges, as a fraction of nominal volts, with 3 %',

@@ -11,6 +11,7 @@ import { amps, apart, field, list, percent, titleOf, withEdition } from './wordi
 export const fuseUnderCurrent: Rule = {
   id: 'fuse-under-current',
   family: 'fuse',
+  kinds: ['fuse', 'breaker'],
   title: 'Fuse or breaker smaller than the current that it carries',
   compares: 'rating of each fuse and breaker with the current solved in it, in every case without a starting load',
   remedy: 'Fit the next standard size above the current with its margin, then check the cable against it.',
@@ -40,6 +41,7 @@ export const fuseUnderCurrent: Rule = {
 export const fuseUnderContinuous: Rule = {
   id: 'fuse-under-continuous',
   family: 'fuse',
+  kinds: ['fuse', 'breaker'],
   title: 'Fuse or breaker has no margin for current that lasts',
   compares:
     'rating of each fuse and breaker with 125 % (or as set) of the current that lasts three hours or more plus the rest; one that is below its running current outright is told by the other rule',

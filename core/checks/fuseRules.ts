@@ -20,6 +20,7 @@ const HIGHER_VOLTS = 50;
 export const fuseOverCable: Rule = {
   id: 'fuse-over-cable',
   family: 'fuse',
+  kinds: ['fuse', 'breaker'],
   title: 'Fuse or breaker too large for a cable that it protects',
   compares:
     'rating of each fuse and breaker with the ampacity of every cable that it protects (downstream through all branches to the next device; upstream and on the return as far as in series), by the factor and next standard size of the practice',
@@ -33,6 +34,7 @@ export const fuseOverCable: Rule = {
 export const smallWireCap: Rule = {
   id: 'small-wire-cap',
   family: 'fuse',
+  kinds: ['fuse', 'breaker'],
   title: 'Fuse or breaker above the cap for small wires',
   compares:
     'rating of each fuse and breaker with the cap for small copper and aluminium wires (18 to 10 AWG) that it protects',
@@ -72,7 +74,7 @@ function eachProtectedCable(context: CheckContext, rule: Rule, judgement: Judgem
 
 const overCable: Judgement = (context, { device, cable, hottest }) => {
   const ampacity = context.ampacityOf(cable, hottest.ambientDegC);
-  if ('missing' in ampacity) return [missing(`${ampacity.missing} (cable ${cable.id})`)];
+  if ('missing' in ampacity) return [missing(ampacity.missing)];
   const nominalV = context.volts.nominalAt(device.from) ?? context.volts.nominalAt(device.to);
   const allowed = largestDevice({ ampacityA: ampacity.finalA, nominalV }, context);
   if ('missing' in allowed) return [missing(`${allowed.missing} (${device.kind} ${device.id})`)];

@@ -10,6 +10,7 @@ import { apart, field, nameOf, titleOf, together, watts } from './wording.ts';
 export const loadStarved: Rule = {
   id: 'load-starved',
   family: 'voltage',
+  kinds: ['load', 'inverter'],
   title: 'Too few volts for a load to run',
   compares:
     'volts solved at each running load with its minimumV, and at each running inverter with its cutoffV, in every case without a starting load',
@@ -99,6 +100,7 @@ function tooFew(at: {
 export const loadOverfed: Rule = {
   id: 'load-overfed',
   family: 'voltage',
+  kinds: ['load'],
   title: 'More volts than a load stands',
   compares:
     'the highest volts at each load that is ever on, solved in any case or held by a charger, controller or converter on its two conductors, with its maximumV',

@@ -10,6 +10,7 @@ import { amps, apart, field, titleOf, together } from './wording.ts';
 export const voltsRatingLow: Rule = {
   id: 'volts-rating-low',
   family: 'rating',
+  kinds: ['fuse', 'breaker', 'switch', 'busbar'],
   title: 'Part not rated for the highest volts',
   compares:
     'ratingV of each fuse, breaker, switch and busbar with the highest volts on its net: charge set-points, solved volts, and for an array its open-circuit volts in the coldest air',
@@ -58,6 +59,7 @@ function runVoltsRating(context: CheckContext): RuleOutcome {
 export const ratingUnderCurrent: Rule = {
   id: 'rating-under-current',
   family: 'rating',
+  kinds: ['switch', 'busbar', 'diode'],
   title: 'Switch, busbar or diode carries more than its rating',
   compares:
     'ratingA of each switch, busbar and diode with the current solved in it (of a busbar: in its fullest segment), in every case without a starting load',
@@ -80,6 +82,7 @@ const SHUNT_CONTINUOUS = 2 / 3;
 export const shuntSmall: Rule = {
   id: 'shunt-small',
   family: 'rating',
+  kinds: ['shunt'],
   title: 'Shunt too small for its current',
   compares:
     'current solved in each shunt with two thirds of its ratingA (to be looked at) and with its ratingA (to be fixed)',

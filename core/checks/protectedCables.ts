@@ -35,7 +35,7 @@ export class ProtectedCables {
     }
   }
 
-  /** Every cable that the device protects, in job order. */
+  /** Every cable that the device protects, its `from` side first. */
   of(device: Device): readonly CablePart[] {
     const found = new Set<CablePart>();
     const [from, to] = [this.net(device.from), this.net(device.to)];

@@ -6,6 +6,7 @@ import type { Basis } from '../tables/status.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { CheckContext } from './checkContext.ts';
 import type { Finding } from './finding.ts';
+import type { SinglePart } from './wiring.ts';
 
 /** What a rule is about; rules of one family stand in one file or a few. */
 export type RuleFamily = 'wiring' | 'cable' | 'fuse' | 'rating' | 'voltage' | 'battery' | 'charging';
@@ -24,6 +25,8 @@ export interface Rule {
   readonly title: string;
   /** What is compared with what, in words; printed beside passes, so that a pass can be understood. */
   readonly compares: string;
+  /** Kinds of part that it judges; it says nothing about a job that has none of them. */
+  readonly kinds: readonly SinglePart['kind'][];
   /** What to do when it fails, one plain sentence. */
   readonly remedy: string;
   /** True when the answer depends on the chosen practice: such a rule is not done for a job that names none. */

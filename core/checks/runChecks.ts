@@ -28,10 +28,13 @@ export function runChecks(request: CheckRequest): CheckReport {
   return { findings: worstFirst(ranked), notChecked, passed };
 }
 
+const NOTHING: RuleOutcome = { findings: [], notChecked: [], passed: 0 };
+
 function outcomeOf(rule: Rule, context: CheckContext): RuleOutcome {
+  if (!context.drawn.some(({ kind }) => rule.kinds.includes(kind))) return NOTHING;
   if (rule.byPractice && context.job.practiceAssumed === true) {
     const missing = 'practice of the job: which rule book judges it';
-    return { findings: [], notChecked: [{ parts: [], missing }], passed: 0 };
+    return { ...NOTHING, notChecked: [{ parts: [], missing }] };
   }
   const outcome = rule.run(context);
   const gaps = gapsOf(rule, context);

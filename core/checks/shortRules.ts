@@ -1,4 +1,5 @@
 /** Sources joined pole to pole, and sources that feed something with no device in between. */
+import { currentLimits } from '../battery/limits.ts';
 import { stringSource } from '../battery/stringSource.ts';
 import type { StringPart } from '../job/part.ts';
 import { CIRCUIT_LAW, FUSE_AT_SOURCE } from './bases.ts';
@@ -17,13 +18,15 @@ import { amps, apart, nameOf, ohms, percent, shortList, titleOf } from './wordin
  * 2. by the sum: a string's current at rest is above a fifth of what it would give into a bolted short (E / R, links included).
  *    Unequal strings that even out between themselves stay far below that; a string joined to another of twice its volts does not.
  *
- * A path by 1 whose current at rest stays below the fifth is a leak through a resistance: a person judges it.
+ * A path by 1 whose current at rest stays below the fifth, and below what the string may give for long, is a leak through a
+ * resistance: still to be removed, but no short circuit.
  */
 const SHORT_FRACTION = 0.2;
 
 export const deadShort: Rule = {
   id: 'dead-short',
   family: 'wiring',
+  kinds: ['string', 'array', 'charger', 'controller', 'converter'],
   title: 'Short circuit across a source',
   compares:
     'for each string, array, charger, controller and converter: do closed wiring parts join its two poles; and for each string its current with everything off with a fifth of its short-circuit current',
@@ -102,26 +105,38 @@ function stringVerdict(
     tables: context.tables.chemistry,
   });
   const shortA = emfV.value / (resistanceOhm.value + string.linkOhm);
+  const lastingA = string.maxDischargeA ?? currentLimits(string, context.tables.chemistry).dischargeA?.value ?? shortA;
   const restA = Math.abs(currentA);
-  const limitA = SHORT_FRACTION * shortA;
-  const isShort = isOver(restA, limitA);
-  if (!isShort && !isJoined) return PASS;
-  const [found, limit] = apart(restA, limitA, 'A');
-  const path = isJoined
-    ? `closed wiring parts join its plus (${string.plus}) and minus (${string.minus})`
-    : 'it is joined to something that it cannot be joined to';
+  const limitA = isJoined ? Math.min(SHORT_FRACTION * shortA, lastingA) : SHORT_FRACTION * shortA;
+  if (isOver(restA, limitA)) {
+    const [found, limit] = apart(restA, limitA, 'A');
+    const why = isJoined
+      ? `closed wiring parts join its plus (${string.plus}) and minus (${string.minus})`
+      : 'what is joined to it is reversed or of other volts';
+    const against =
+      limitA < SHORT_FRACTION * shortA
+        ? 'what it may give for long'
+        : `${percent(SHORT_FRACTION)} of its short-circuit current`;
+    return {
+      kind: 'fail',
+      severity: 'stop',
+      case: rest.id,
+      measured: { value: restA, unit: 'A' },
+      limit: { value: limitA, unit: 'A' },
+      excess: restA / limitA,
+      message: `${titleOf(string)} carries ${found} with everything off, more than ${limit} (${against}): ${why}.`,
+    };
+  }
+  if (!isJoined) return PASS;
   const pathOhm = restA > 0 ? Math.abs(rest.answer(string.id).voltageV ?? 0) / restA : 0;
-  const leak = isJoined && !isShort;
   return {
     kind: 'fail',
-    severity: leak ? 'look' : 'stop',
+    severity: 'fix',
     case: rest.id,
     measured: { value: restA, unit: 'A' },
-    limit: { value: limitA, unit: 'A' },
-    excess: leak ? 1 : restA / limitA,
-    message: leak
-      ? `${titleOf(string)} gives ${amps(restA)} with everything off, through ${ohms(pathOhm)}: ${path}.`
-      : `${titleOf(string)} carries ${found} with everything off, more than ${limit} (${percent(SHORT_FRACTION)} of its short-circuit current): ${path}.`,
+    limit: { value: 0, unit: 'A' },
+    excess: 1,
+    message: `${titleOf(string)} gives ${amps(restA)} with everything off: closed wiring parts of ${ohms(pathOhm)} together join its plus (${string.plus}) and minus (${string.minus}).`,
   };
 }
 
@@ -144,6 +159,7 @@ function joinedOnly(string: StringPart, caseId: string): Verdict {
 export const noFuseOnSource: Rule = {
   id: 'no-fuse-on-source',
   family: 'fuse',
+  kinds: ['string'],
   title: 'String feeds or is fed without a fuse or breaker in between',
   compares:
     'for each string: with every fuse and breaker taken out, is any load, inverter, charger, controller or converter still joined to both its poles?',

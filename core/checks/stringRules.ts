@@ -21,6 +21,7 @@ const CHEMISTRY_RATES: Basis = {
 export const stringDischargeHigh: Rule = {
   id: 'string-discharge-high',
   family: 'battery',
+  kinds: ['string'],
   title: 'String gives more than it may',
   compares:
     'current solved out of each string with its maxDischargeA, else with the usual continuous rate of its chemistry, in every case without a starting load',
@@ -34,6 +35,7 @@ export const stringDischargeHigh: Rule = {
 export const stringChargeHigh: Rule = {
   id: 'string-charge-high',
   family: 'battery',
+  kinds: ['string'],
   title: 'String takes more charge current than it may',
   compares:
     'current solved into each string with its maxChargeA, else with the largest usual charge rate of its chemistry, in every case without a starting load',
@@ -48,6 +50,7 @@ export const stringChargeHigh: Rule = {
 export const chargeTooStrong: Rule = {
   id: 'charge-too-strong',
   family: 'charging',
+  kinds: ['string'],
   title: 'Chargers together too strong for the strings',
   compares:
     'for each string its share by capacity of what all chargers that are on can give at once while no load takes any, with its maxChargeA, else with the largest usual charge rate of its chemistry',

@@ -17,6 +17,7 @@ import { apart, field, titleOf, together, watts } from './wording.ts';
 export const surgeSag: Rule = {
   id: 'surge-sag',
   family: 'voltage',
+  kinds: ['load', 'inverter'],
   title: 'Volts sag too far while a load starts',
   compares:
     'volts at each load and inverter with a surgeW while it starts on top of each case, with its minimumV or cutoffV, and its surge with the largest power that the wiring can bring',

@@ -95,9 +95,14 @@ export class Tally {
         basis: basis.text,
         basisStatus: basis.status,
       },
-      excess,
+      excess: ranked(excess),
     };
   }
+}
+
+/** An excess to six figures: rounding in a solve must not decide an order. */
+function ranked(excess: number): number {
+  return Number.isFinite(excess) ? Number(excess.toPrecision(6)) : excess;
 }
 
 function worstOf(verdicts: readonly Verdict[]): Failure | undefined {
@@ -110,5 +115,5 @@ function worstOf(verdicts: readonly Verdict[]): Failure | undefined {
 
 function isWorse(a: Failure, b: Failure): boolean {
   const rank = SEVERITY_ORDER.indexOf(a.severity) - SEVERITY_ORDER.indexOf(b.severity);
-  return rank < 0 || (rank === 0 && a.excess > b.excess);
+  return rank < 0 || (rank === 0 && ranked(a.excess) > ranked(b.excess));
 }

@@ -41,6 +41,26 @@ export type WiringPart =
   | BondPart;
 export type PoledPart = StringPart | LoadPart | InverterPart | ArrayPart | ChargerPart | ControllerPart | ConverterPart;
 
+/** Every kind that a check can meet, for rules that judge them all. */
+export const ANY_KIND: readonly SinglePart['kind'][] = [
+  'string',
+  'cable',
+  'busbar',
+  'fuse',
+  'breaker',
+  'switch',
+  'shunt',
+  'joint',
+  'diode',
+  'load',
+  'inverter',
+  'array',
+  'controller',
+  'charger',
+  'converter',
+  'bond',
+];
+
 export function withoutPairs(parts: readonly Part[]): readonly SinglePart[] {
   return parts.flatMap((part) => (part.kind === 'pair' ? cablesOfPair(part) : [part]));
 }

@@ -6,7 +6,7 @@ import { CIRCUIT_LAW } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { ELSEWHERE, PASS, Tally, type Verdict } from './tally.ts';
-import { isOpen, type SinglePart } from './wiring.ts';
+import { ANY_KIND, isOpen, type SinglePart } from './wiring.ts';
 import { list, nameOf, shortList, titleOf } from './wording.ts';
 
 /** One part too many where none is allowed. */
@@ -19,6 +19,7 @@ const NONE_ALLOWED = {
 export const loadCollapse: Rule = {
   id: 'load-collapse',
   family: 'wiring',
+  kinds: ['load', 'inverter', 'converter'],
   title: 'A load asks for more than the network can deliver',
   compares:
     'power asked for by the loads in each case with the most that the network can deliver to the one that gives way',
@@ -64,6 +65,7 @@ export const loadCollapse: Rule = {
 export const loadUnfed: Rule = {
   id: 'load-unfed',
   family: 'wiring',
+  kinds: ['load', 'inverter', 'converter'],
   title: 'Load without a closed path to a source',
   compares:
     'for each load, inverter and converter that is on in some case: is there a case in which a closed path joins both its poles to a source?',
@@ -116,6 +118,7 @@ function isOn(part: SinglePart): boolean {
 export const groupUnconnected: Rule = {
   id: 'group-unconnected',
   family: 'wiring',
+  kinds: ANY_KIND,
   title: 'Group of parts with no source, or source with nothing to feed',
   compares:
     'for each connected group of parts: has it a source, and has each source something to feed, in at least one case?',
@@ -153,6 +156,7 @@ function runUnconnected(context: CheckContext): RuleOutcome {
 export const partNeverUsed: Rule = {
   id: 'part-never-used',
   family: 'wiring',
+  kinds: ['switch', 'fuse', 'breaker', 'load', 'inverter', 'charger', 'converter'],
   title: 'Part off or open in every case',
   compares:
     'for each switch, fuse, breaker, load, inverter, charger and converter: is it on or closed in at least one case?',
@@ -182,6 +186,7 @@ export const partNeverUsed: Rule = {
 export const endOpen: Rule = {
   id: 'end-open',
   family: 'wiring',
+  kinds: ANY_KIND,
   title: 'Conductor or part with a free end',
   compares: 'for each junction: do at least two part ends meet there?',
   remedy: 'Finish the connection, cap the end, or delete the part; a misspelt junction name looks like this too.',
@@ -226,6 +231,7 @@ function runEndOpen(context: CheckContext): RuleOutcome {
 export const polarityCrossed: Rule = {
   id: 'polarity-crossed',
   family: 'wiring',
+  kinds: ['load', 'inverter', 'charger', 'array', 'string', 'controller', 'converter'],
   title: 'Plus and minus crossed',
   compares:
     'volts from plus to minus of each load, inverter, charger, controller, converter, array and string, at rest and in every case, with nought; plus and minus of each string and array with those of the others that it is joined to',

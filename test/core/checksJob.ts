@@ -53,3 +53,32 @@ export function battery(id: string, fields: Record<string, unknown> = {}): RawPa
     ...fields,
   };
 }
+
+/**
+ * One battery, one fuse in the plus lead, one cable out and one back, one load: P - F1 - Q - OUT - L, load L to M, M - BACK - N.
+ * Air at 30 degC, the table's own in most books.
+ */
+export function oneCircuit(fields: {
+  readonly battery?: Record<string, unknown>;
+  readonly fuse?: Record<string, unknown>;
+  readonly cable?: Record<string, unknown>;
+  readonly load?: Record<string, unknown>;
+  readonly more?: readonly RawPart[];
+  readonly [field: string]: unknown;
+}): RawJob {
+  const { battery: string, fuse, cable, load, more, ...job } = fields;
+  const lead = { kind: 'cable', lengthM: 1, size: '70 mm2', resistanceOhm: 0.0005, ...cable };
+  const taker = load ?? { currentA: 10 };
+  return {
+    site: { ambientDesignDegC: 30 },
+    parts: [
+      battery('B1', string),
+      { id: 'F1', kind: 'fuse', from: 'P', to: 'Q', ratingA: 200, ...fuse },
+      { id: 'OUT', from: 'Q', to: 'L', ...lead },
+      { id: 'BACK', from: 'M', to: 'N', ...lead },
+      { id: 'L1', kind: 'load', plus: 'L', minus: 'M', ...taker },
+      ...(more ?? []),
+    ],
+    ...job,
+  };
+}
