@@ -29,6 +29,11 @@ export function readGraph(circuit: Circuit): GraphView {
   for (const index of sourceElements(circuit)) {
     if (blockIsLive[block[index]!]) live[island[circuit.elements[index]!.from]!] = true;
   }
+  // An island of its own behind a converter or controller is live through it.
+  const couplerOutputs = new Set(circuit.valves.filter(isCoupler).map(({ element }) => element));
+  circuit.elements.forEach((element, index) => {
+    if (couplerOutputs.has(element) && blockIsLive[block[index]!]) live[island[element.from]!] = true;
+  });
   const remarks = [...unfed, ...unsuppliedRemarks(circuit, island, live)];
   for (let j = 0; j < island.length; j++) if (!live[island[j]!]) island[j] = -1;
   const { reference, renumbered } = references(circuit, island, live);
