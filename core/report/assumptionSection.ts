@@ -8,7 +8,7 @@ import { caseTitle } from './cover.ts';
 import type { Block, Cell, TableBlock } from './document.ts';
 import { milliohms, NOT_GIVEN, plain, unitWord } from './figures.ts';
 import type { ReportInput } from './input.ts';
-import { count, fieldWords, ORIGIN_WORDS, sentenceCase } from './wording.ts';
+import { count, fieldWords, ORIGIN_WORDS, plainFields, sentenceCase } from './wording.ts';
 
 /** One line of the table: the same assumption made for several parts is told once, with all their names. */
 interface AssumptionLine {
@@ -78,11 +78,10 @@ function gather({ job, points }: ReportInput): readonly AssumptionLine[] {
 function withoutPart({ text, part, field, value }: Assumption): string {
   const general = part === null ? text : withoutName(text, part);
   if (general.startsWith(`${field} taken as ${value}`)) return '';
-  return general.replaceAll(CAMEL_CASE, fieldWords).replaceAll(' degC', ' °C');
+  const plainly = plainFields(general);
+  const name = `${fieldWords(field)} `;
+  return plainly.startsWith(name) ? plainly.slice(name.length) : plainly;
 }
-/** Names of fields of the job file, as they turn up inside sentences. */
-const CAMEL_CASE = /\b[a-z]+(?:[A-Z][a-z0-9]*)+\b/g;
-
 function withoutName(text: string, part: string): string {
   return text.replaceAll(` of ${part}`, '').replaceAll(` "${part}"`, '').replaceAll(part, 'the part');
 }
@@ -189,6 +188,7 @@ function fieldValue(part: Part, field: string): string {
 function fieldText(field: string, value: number): string {
   const unit = UNIT_OF_SUFFIX.find(([suffix]) => suffix.test(field))?.[1] ?? '';
   if (unit === ' Ω' && Math.abs(value) < 1) return `${milliohms(value)}\u00a0mΩ`;
+  if (unit === ' years' && value === 1) return '1\u00a0year';
   return `${plain(value)}${unit.replace(' ', '\u00a0')}`;
 }
 

@@ -70,7 +70,7 @@ function conductorRow(part: CablePart | PairPart, { name, from, to, tables }: Co
     make === '' ? NOT_GIVEN : make,
     lay.length === 0 ? NOT_GIVEN : lay.join(', '),
     given(part.ambientDegC),
-    milliohms(part.endOhm),
+    part.given.has('endOhm') ? milliohms(part.endOhm) : NOT_GIVEN,
   ];
 }
 
@@ -100,7 +100,7 @@ export function jointSchedule(job: CheckedJob): readonly TableBlock[] {
     'busbar',
     part.junctions[0] ?? '',
     part.junctions.slice(1).join(', '),
-    milliohms(part.segmentOhm),
+    part.given.has('segmentOhm') ? milliohms(part.segmentOhm) : NOT_GIVEN,
     ratings(part.ratingA, part.ratingV),
   ]);
   const bonds = partsOf(job, 'bond').map((part): readonly Cell[] => [

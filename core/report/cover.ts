@@ -33,13 +33,15 @@ export function coverOf(input: ReportInput): CoverBlock {
   };
 }
 
+const PRACTICE_ASSUMED = 'not named in the job: nothing was judged by a rule book';
+
 function coverFacts({ job, tables, points, options }: ReportInput): readonly Fact[] {
   const practice = tables.practices[job.practice];
   const facts: readonly (readonly [string, string | undefined])[] = [
     ['Prepared for', job.preparedFor],
     ['Prepared by', job.preparedBy],
     ['Date', options.preparedOn],
-    ['Practice', `${practice.name} (${practice.books})`],
+    ['Practice', job.practiceAssumed === true ? PRACTICE_ASSUMED : `${practice.name} (${practice.books})`],
     ['Edition', job.practiceEdition ?? 'not stated in the job'],
     ['System', systemText(job)],
     ['Bank', bankText(job)],

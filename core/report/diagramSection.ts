@@ -8,10 +8,10 @@ import { wiringGraph } from './wiringGraph.ts';
 import { layWiring } from './wiringLayout.ts';
 import { KIND_WORDS } from './wording.ts';
 
-/** Width and height that a figure may take at full size on the paper in each orientation, in points; the smaller paper decides. */
-const ROOM_PT = { portrait: { width: 499, height: 600 }, landscape: { width: 696, height: 420 } } as const;
+/** Width and height left for a figure below its heading, in points, on the smaller of A4 and Letter in each direction. */
+const ROOM_PT = { portrait: { width: 499, height: 560 }, landscape: { width: 696, height: 366 } } as const;
 /** Below this scale the smallest words of the drawing could not be read: 5.5 pt at full size 7. */
-const SMALLEST_SCALE = 0.74;
+const SMALLEST_SCALE = 0.79;
 
 type Orientation = keyof typeof ROOM_PT;
 
@@ -19,30 +19,16 @@ export function diagramSection(job: CheckedJob): readonly Block[] {
   const drawn = diagram(job);
   const heading: Block = { kind: 'heading', level: 1, text: 'One-line diagram' };
   if ('reason' in drawn) {
-    return [
-      { kind: 'pageBreak', orientation: 'portrait' },
-      heading,
-      {
-        kind: 'paragraph',
-        tone: 'body',
-        text: `No diagram is drawn: ${drawn.reason}. The connections stand in the table instead.`,
-      },
-      connectionTable(job),
-      { kind: 'pageBreak', orientation: 'portrait' },
-    ];
+    const text = `No diagram is drawn: ${drawn.reason}. The connections stand in the table instead.`;
+    return [heading, { kind: 'paragraph', tone: 'body', text }, connectionTable(job)];
   }
-  return [
-    { kind: 'pageBreak', orientation: drawn.orientation },
-    heading,
-    {
-      kind: 'paragraph',
-      tone: 'small',
-      text: 'Symbols after IEC 60617. Lines that cross without a dot are not joined. Contacts are drawn open, as is usual; their state stands in the schedules. Not to scale, and no plan of places.',
-    },
-    drawn.figure,
-    { kind: 'pageBreak', orientation: 'portrait' },
-  ];
+  const section: readonly Block[] = [heading, { kind: 'paragraph', tone: 'small', text: HOW_TO_READ }, drawn.figure];
+  if (drawn.orientation === 'portrait') return section;
+  return [{ kind: 'pageBreak', orientation: 'landscape' }, ...section, { kind: 'pageBreak', orientation: 'portrait' }];
 }
+
+const HOW_TO_READ =
+  'Symbols after IEC 60617. Lines that cross without a dot are not joined. Contacts are drawn open, as is usual; their state stands in the schedules. Not to scale, and no plan of places.';
 
 function diagram(
   job: CheckedJob,
@@ -80,10 +66,23 @@ function connectionTable(job: CheckedJob): TableBlock {
 }
 
 function betweenText(part: Part): string {
-  if (part.kind === 'busbar') return part.junctions.join(' – ');
-  if ('plus' in part)
-    return `plus ${part.plus}, minus ${part.minus}${part.kind === 'string' && part.midpoint !== undefined ? `, midpoint ${part.midpoint}` : ''}`;
-  if (typeof part.from === 'string') return `${part.from} → ${String(part.to)}`;
-  if (typeof part.to === 'string') return '';
-  return `${part.from.plus}, ${part.from.minus} → ${part.to.plus}, ${part.to.minus}`;
+  switch (part.kind) {
+    case 'busbar':
+      return part.junctions.join(' – ');
+    case 'pair':
+    case 'controller':
+    case 'converter':
+      return `${part.from.plus}, ${part.from.minus} → ${part.to.plus}, ${part.to.minus}`;
+    case 'string': {
+      const middle = part.midpoint === undefined ? '' : `, midpoint ${part.midpoint}`;
+      return `plus ${part.plus}, minus ${part.minus}${middle}`;
+    }
+    case 'load':
+    case 'inverter':
+    case 'array':
+    case 'charger':
+      return `plus ${part.plus}, minus ${part.minus}`;
+    default:
+      return `${part.from} → ${part.to}`;
+  }
 }

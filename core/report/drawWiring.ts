@@ -57,7 +57,7 @@ function drawLink({ link, x1, x2, y }: PlacedLink): readonly Shape[] {
     line(x1, y, x2, y, part.kind === 'busbar' ? 'heavy' : 'line'),
     ...inLineSymbol(part, middle, x2 > x1 ? 1 : -1),
     label(cut(link.id, widthPt, NAME_PT), { x: middle.x, y: y - 6 }, { sizePt: NAME_PT, strong: true }),
-    label(cut(linkDetail(part), widthPt, DETAIL_PT), { x: middle.x, y: y + 10 }, { sizePt: DETAIL_PT, tone: 'quiet' }),
+    label(cut(linkDetail(part), widthPt, DETAIL_PT), { x: middle.x, y: y + 12 }, { sizePt: DETAIL_PT, tone: 'quiet' }),
   ];
 }
 
@@ -101,20 +101,9 @@ function linkDetail(part: Part): string {
 }
 
 function drawBox({ twoPort: { part }, x, plusY, minusY }: PlacedBox): readonly Shape[] {
-  const middle = (plusY + minusY) / 2;
   const detail = part.kind === 'controller' ? `${part.type.toUpperCase()}, ${plain(part.outputA)} A` : '';
   return [
-    {
-      shape: 'rect',
-      x: x - 3 * U,
-      y: plusY - 4,
-      width: 6 * U,
-      height: minusY - plusY + 8,
-      fill: 'paper',
-      stroke: 'line',
-      tone: 'ink',
-    },
-    ...symbols.converterSymbol({ x, y: middle }, { from: 'DC', to: 'DC' }),
+    ...symbols.twoPortSymbol(x, plusY, minusY),
     label(cut(part.id, LAYER_PT, NAME_PT), { x, y: plusY - 8 }, { sizePt: NAME_PT, strong: true }),
     label(cut(detail, LAYER_PT, DETAIL_PT), { x, y: minusY + 13 }, { sizePt: DETAIL_PT, tone: 'quiet' }),
   ];
@@ -189,8 +178,9 @@ function drawPoint({ name, pole, x, top, bottom, meets }: PlacedPoint, layout: L
   const dots = meets
     .filter((y) => ends(y) + (y > top ? 1 : 0) + (y < bottom ? 1 : 0) > 2)
     .map((y) => symbols.dot({ x, y }));
-  const place = pole === 'plus' ? { x, y: top - 14 } : { x, y: bottom + 19 };
-  return [...dots, label(cut(name, LAYER_PT, POINT_PT), place, { sizePt: POINT_PT, tone: 'copper' })];
+  const place = pole === 'plus' ? { x, y: top - 14 } : { x, y: bottom + 21 };
+  const marks = dots.length === 0 && top === bottom ? [symbols.terminal({ x, y: top })] : dots;
+  return [...marks, label(cut(name, LAYER_PT, POINT_PT), place, { sizePt: POINT_PT, tone: 'copper' })];
 }
 
 const LEGEND_SYMBOLS: readonly {

@@ -44,7 +44,7 @@ export function degrees(temperatureDegC: number): string {
   return fixed(temperatureDegC, 0);
 }
 export function percent(fraction: number): string {
-  return fixed(fraction * 100, Math.abs(fraction) >= 0.1 ? 0 : 1);
+  return fraction === 0 ? '0' : fixed(fraction * 100, Math.abs(fraction) >= 0.1 ? 0 : 1);
 }
 /** Metres to the centimetre. */
 export function metres(lengthM: number): string {

@@ -1,12 +1,13 @@
 /** The verdicts worst first, then what could not be judged, then what was compared and held. */
 import type { CheckReport, Finding } from '../checks/finding.ts';
+import { rules } from '../checks/rules.ts';
 import { partName } from './caseWords.ts';
 import { cautionsAt } from './cautions.ts';
 import type { Citations } from './citations.ts';
 import type { Block, EntryBlock, TableBlock } from './document.ts';
 import { withUnit } from './figures.ts';
 import type { ReportInput } from './input.ts';
-import { count, SEVERITIES, SEVERITY_WORDS, STATUS_WORDS, sentenceCase } from './wording.ts';
+import { count, plainFields, SEVERITIES, SEVERITY_WORDS, STATUS_WORDS, sentenceCase } from './wording.ts';
 
 /** Worst first; among equals in the order in which the checks gave them. */
 export function worstFirst(findings: readonly Finding[]): readonly Finding[] {
@@ -63,18 +64,23 @@ function entryOf(finding: Finding, number: number, { job, points }: ReportInput,
     number: String(number),
     mark: finding.severity,
     word: SEVERITY_WORDS[finding.severity].word,
-    title: finding.message,
+    title: plainFields(finding.message),
     facts: [
       { label: 'Where', value: where === '' ? 'the system as a whole' : where },
       ...(points.length > 1 && finding.case !== '' ? [{ label: 'Case', value: caseLabel }] : []),
       { label: 'Measured', value: `${withUnit(finding.measured)}, limit ${withUnit(finding.limit)}` },
-      { label: 'Remedy', value: finding.remedy },
+      { label: 'Remedy', value: plainFields(finding.remedy) },
       {
         label: 'Basis',
         value: finding.basis.includes(status) ? `${finding.basis} ${cited}` : `${finding.basis} (${status}) ${cited}`,
       },
     ],
   };
+}
+
+/** What a rule compares, in the rule's own words. */
+function comparedBy(id: string): string {
+  return sentenceCase(plainFields(rules.find((rule) => rule.id === id)?.compares ?? id));
 }
 
 function notDone({ checkReport, job }: ReportInput): readonly Block[] {
@@ -85,14 +91,14 @@ function notDone({ checkReport, job }: ReportInput): readonly Block[] {
     kind: 'table',
     caption: 'Checks not done, and the figure that each is waiting for',
     columns: [
-      { head: 'Check', kind: 'text', align: 'left' },
+      { head: 'What was to be compared', kind: 'text', align: 'left' },
       { head: 'Missing', kind: 'text', align: 'left' },
       { head: 'Part', kind: 'text', align: 'left' },
       { head: 'Found since', kind: 'blank', align: 'left' },
     ],
     rows: checkReport.notChecked.map(({ rule, missing, parts }) => [
-      sentenceCase(rule),
-      missing,
+      comparedBy(rule),
+      plainFields(missing),
       parts.map((id) => partName(job, id)).join(', '),
       '',
     ]),
@@ -118,7 +124,7 @@ function passed({ passed: held }: CheckReport): readonly Block[] {
         { head: 'Times', kind: 'number', align: 'right' },
         { head: 'What was compared', kind: 'text', align: 'left' },
       ],
-      rows: held.map(({ rule, count: times }) => [String(times), sentenceCase(rule)]),
+      rows: held.map(({ rule, count: times }) => [String(times), comparedBy(rule)]),
       notes: [],
     },
   ];

@@ -1,4 +1,5 @@
 /** The schedules: what the system is made of, one table a trade, every part of the job in exactly one of them. */
+import { ampacitySchedule } from './ampacitySchedule.ts';
 import { batterySchedule } from './batterySchedule.ts';
 import type { CautionPlace } from './cautions.ts';
 import { cautionsAt } from './cautions.ts';
@@ -10,7 +11,8 @@ import type { ReportInput } from './input.ts';
 import { demandSchedule, inverterSchedule, loadSchedule } from './loadSchedule.ts';
 import { sourceSchedules } from './sourceSchedule.ts';
 
-export function partSections({ job, tables }: ReportInput, citations: Citations): readonly Block[] {
+export function partSections(input: ReportInput, citations: Citations): readonly Block[] {
+  const { job, tables } = input;
   const groups: readonly {
     readonly title: string;
     readonly place: CautionPlace;
@@ -20,7 +22,11 @@ export function partSections({ job, tables }: ReportInput, citations: Citations)
     {
       title: 'Conductors',
       place: 'conductors',
-      schedules: [...conductorSchedule(job, tables.conductors), ...jointSchedule(job)],
+      schedules: [
+        ...conductorSchedule(job, tables.conductors),
+        ...ampacitySchedule(input, citations),
+        ...jointSchedule(job),
+      ],
     },
     {
       title: 'Protective and switching devices',

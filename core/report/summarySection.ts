@@ -8,7 +8,7 @@ import { caseTitle } from './cover.ts';
 import type { Block, Fact } from './document.ts';
 import { findingCounts, worstFirst } from './findingSection.ts';
 import type { ReportInput } from './input.ts';
-import { count, join, SEVERITY_WORDS } from './wording.ts';
+import { count, join, plainFields, SEVERITY_WORDS } from './wording.ts';
 
 /** Findings told in front; all of them stand in their own section. */
 const FINDINGS_IN_FRONT = 8;
@@ -73,7 +73,7 @@ function topFindings({ checkReport, job, points }: ReportInput): readonly Block[
       rows: worst.map((finding, index) => [
         String(index + 1),
         { text: SEVERITY_WORDS[finding.severity].word, mark: finding.severity },
-        finding.message,
+        plainFields(finding.message),
         finding.parts.map((id) => partName(job, id)).join(', '),
         ...(severalCases
           ? [job.cases.find(({ id }) => id === finding.case)?.label ?? finding.case.replaceAll(/[-_]/g, ' ')]

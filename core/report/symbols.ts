@@ -59,6 +59,10 @@ function gap({ x, y }: At, width: number): Shape {
 export function dot(at: At): Shape {
   return ring(at, U * 0.4, 'ink');
 }
+/** A point of the wiring where nothing branches off. */
+export function terminal(at: At): Shape {
+  return ring(at, U * 0.3);
+}
 /** Rectangle with the conductor running straight through. */
 export function fuseSymbol({ x, y }: At): readonly Shape[] {
   return [box({ x, y }, 3 * U, U * 1.2), line(x - 1.5 * U, y, x + 1.5 * U, y)];
@@ -129,7 +133,7 @@ export function batterySymbol(x: number, plusY: number, minusY: number): readonl
   const middle = (plusY + minusY) / 2;
   const bars = [-1.5, -0.7, 0.7, 1.5].map((step, index) => {
     const half = index % 2 === 0 ? 2 * U : U;
-    return line(x - half, middle + step * U, x + half, middle + step * U, index % 2 === 0 ? 'line' : 'heavy');
+    return line(x - half, middle + step * U, x + half, middle + step * U);
   });
   return [
     line(x, plusY, x, middle - 1.5 * U),
@@ -184,6 +188,26 @@ export function converterSymbol(
     line(at.x - half, at.y + half, at.x + half, at.y - half, 'hair'),
     ...currentSign({ x: at.x - 1.15 * U, y: at.y - 1.2 * U }, kinds.from),
     ...currentSign({ x: at.x + 1.15 * U, y: at.y + 1.2 * U }, kinds.to),
+  ];
+}
+/** A converter between two pairs of lines: one box over both. */
+export function twoPortSymbol(x: number, plusY: number, minusY: number): readonly Shape[] {
+  const half = 3 * U;
+  const [top, bottom] = [plusY - U, minusY + U];
+  return [
+    {
+      shape: 'rect',
+      x: x - half,
+      y: top,
+      width: 2 * half,
+      height: bottom - top,
+      fill: 'paper',
+      stroke: 'line',
+      tone: INK,
+    },
+    line(x - half, bottom, x + half, top, 'hair'),
+    ...currentSign({ x: x - 1.5 * U, y: top + 2 * U }, 'DC'),
+    ...currentSign({ x: x + 1.5 * U, y: bottom - 2 * U }, 'DC'),
   ];
 }
 /** Direct: a whole line over a broken one. Alternating: one wave. */

@@ -8,7 +8,7 @@ import type { TreeNode } from './wiringTree.ts';
 import { branchOf, growTree, partingPoint } from './wiringTree.ts';
 
 export const LAYER_PT = 66;
-export const ROW_PT = 66;
+export const ROW_PT = 82;
 /** Between the plus line and the minus line of a row. */
 export const POLES_PT = 32;
 /** Between upright lines that would otherwise stand on each other. */

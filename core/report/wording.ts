@@ -89,33 +89,55 @@ export function count(number: number, noun: string): string {
 
 /** A rule's or state's name in plain words: `fuse-over-cable` → `Fuse over cable`. */
 export function sentenceCase(name: string): string {
-  const words = name.replaceAll(/[-_]+/g, ' ').trim();
+  const words = (/\s/.test(name) ? name : name.replaceAll(/[-_]+/g, ' ')).trim();
   return words.charAt(0).toUpperCase() + words.slice(1);
 }
 
 /** Fields whose bare name would not be understood on paper. */
 const FIELD_WORDS: Readonly<Record<string, string>> = {
+  acPowerW: 'AC output',
+  ageYears: 'age',
   ambientDegC: 'air temperature',
-  ambientDesignDegC: 'air temperature',
+  ambientDesignDegC: 'design air temperature',
+  ambientMaxDegC: 'highest air temperature',
+  ambientMinDegC: 'lowest air temperature',
   capacityAh: 'capacity',
   conductorDegC: 'conductor temperature',
-  cutoffV: 'cut-off voltage',
-  emfV: 'rest voltage',
+  cutoffV: 'cut-off volts',
+  distanceFromSourceM: 'distance from the source',
+  emfV: 'rest volts',
   endOhm: 'resistance of the terminations',
-  forwardV: 'forward voltage',
+  forwardV: 'forward volts',
   impA: 'current at full power',
   insulationDegC: 'insulation temperature',
+  interruptA: 'interrupt rating',
   iscA: 'short-circuit current',
   iscPerDegC: 'change of short-circuit current',
   linkOhm: 'resistance of the links',
+  maxChargeA: 'highest charge current',
+  maxDischargeA: 'highest discharge current',
+  maxFuseA: 'largest fuse',
+  maxInputV: 'highest input volts',
+  maximumV: 'highest working volts',
+  minimumV: 'lowest working volts',
   nominalCellDegC: 'nominal cell temperature',
+  outputA: 'output limit',
+  outputV: 'output volts',
   pmpPerDegC: 'change of power',
+  ratedW: 'rated power',
+  ratingA: 'rated amps',
   ratingMv: 'rated millivolts',
+  ratingV: 'rated volts',
+  setpointV: 'set-point',
+  shortCircuitA: 'short-circuit current',
+  slopeOhm: 'slope resistance',
+  standbyW: 'idle power',
   string: 'battery string',
+  surgeW: 'surge power',
   temperatureDegC: 'temperature',
-  vmpV: 'voltage at full power',
-  vocPerDegC: 'change of open-circuit voltage',
-  vocV: 'open-circuit voltage',
+  vmpV: 'volts at full power',
+  vocPerDegC: 'change of open-circuit volts',
+  vocV: 'open-circuit volts',
 };
 
 /** Camel-case field names of the job as words, unit suffix left off: `maxChargeA` → `max charge`. */
@@ -128,3 +150,10 @@ export function fieldWords(field: string): string {
     .replaceAll('.', ', ')
     .toLowerCase();
 }
+
+/** Names of fields of the job file inside a sentence, as words. Units such as mV or kW are too short to be taken for one. */
+export function plainFields(text: string): string {
+  return text.replaceAll(FIELD_NAME, (name) => fieldWords(name)).replaceAll(/(?<=\d) degC\b/g, '\u00a0°C');
+}
+const FIELD_NAME =
+  /\b(?:[a-z]{3,}|ac)(?:[A-Z][a-z]*)*(?:DegC|Ohm|Mv|Ah|Years|[AVWMS])\b|\bstateOfCharge\b|\bloadedConductors\b|\binParallel\b/g;

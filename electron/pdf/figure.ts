@@ -6,13 +6,19 @@ import { flowText } from './textBlocks.ts';
 
 const TITLE_PT = STYLES.caption.leadingPt + 6;
 
-/** Scale at which a figure fits an empty page. */
-function scaleOf(sheet: Sheet, { width, height }: FigureBlock): number {
-  return Math.min(1, sheet.width / width, (sheet.fullRoom - TITLE_PT) / height);
+/** How much smaller than on an empty page a figure may come out to stay on the page that is begun. */
+const SHRINKS_TO = 0.72;
+
+/** Scale at which a figure fits what is left of the page, or else an empty one. */
+function scaleOf(sheet: Sheet, { width, height }: FigureBlock, abovePt = 0): number {
+  const empty = Math.min(1, sheet.width / width, (sheet.fullRoom - TITLE_PT) / height);
+  const here = Math.min(empty, (sheet.room - abovePt - TITLE_PT) / height);
+  return here >= empty * SHRINKS_TO ? here : empty;
 }
 
-export function figureHeightPt(sheet: Sheet, block: FigureBlock): number {
-  return TITLE_PT + block.height * scaleOf(sheet, block);
+/** Height that a figure takes, where `abovePt` will still be used before it. */
+export function figureHeightPt(sheet: Sheet, block: FigureBlock, abovePt = 0): number {
+  return TITLE_PT + block.height * scaleOf(sheet, block, abovePt);
 }
 
 export function drawFigure(sheet: Sheet, block: FigureBlock): void {

@@ -91,11 +91,19 @@ function companionPt(sheet: Sheet, following: readonly Block[]): number {
     case 'caution':
       return cautionHeightPt(sheet, next) + (rest[0]?.kind === 'table' ? 10 + tableStartPt(sheet, rest[0]) : 0);
     case 'paragraph':
-      return rest[0]?.kind === 'table' && next.text.length < 400 ? 44 + tableStartPt(sheet, rest[0]) : 42;
+      return 44 + (next.text.length > 400 ? 0 : afterParagraphPt(sheet, rest[0]));
     default:
       return 64;
   }
 }
+
+/** A table or figure that a few lines introduce stays with them. */
+function afterParagraphPt(sheet: Sheet, next: Block | undefined): number {
+  if (next?.kind === 'table') return tableStartPt(sheet, next);
+  return next?.kind === 'figure' ? figureHeightPt(sheet, next, INTRODUCTION_PT) : 0;
+}
+/** Heading and introduction above a figure. */
+const INTRODUCTION_PT = 100;
 
 /** Bookmarks: first-level headings, with the second level inside. */
 class Outline {

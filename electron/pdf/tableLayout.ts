@@ -150,7 +150,8 @@ function needOf(face: Typeface, column: Column, cells: readonly Cell[], styles: 
     const { text, under, mark } = parts(cell);
     const markPt = mark === undefined ? 0 : MARK_PT;
     const drawn = face.drawable(text);
-    const whole = Math.max(face.width(drawn, styles.text) + markPt, face.width(face.drawable(under), styles.under));
+    const underPt = Math.min(face.width(face.drawable(under), styles.under), UNDER_LIMIT_PT);
+    const whole = Math.max(face.width(drawn, styles.text) + markPt, underPt);
     naturalPt = Math.max(naturalPt, whole);
     const words = Math.max(widestWord(face, text, styles.text) + markPt, widestWord(face, under, styles.under));
     minimumPt = Math.max(
@@ -162,6 +163,8 @@ function needOf(face: Typeface, column: Column, cells: readonly Cell[], styles: 
   }
   return { minimumPt, naturalPt, fractionPt: 0 };
 }
+/** A second line asks for no more than this; beyond it, it wraps. */
+const UNDER_LIMIT_PT = 96;
 /** A name wider than this may be broken between its words; a word wider than the second, inside. */
 const ID_LIMIT_PT = 84;
 const WORD_LIMIT_PT = 72;
