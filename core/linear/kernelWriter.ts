@@ -1,5 +1,16 @@
 /** Helps to write loops over a symmetric plan, for one system or for several side by side. */
-import { type Arithmetic, type Code, FunctionWriter, I32, i32, type Local, repeatWhile, when } from './wasmWriter.ts';
+import {
+  type Arithmetic,
+  type Code,
+  FunctionWriter,
+  I32,
+  i32,
+  type Local,
+  pair,
+  repeatWhile,
+  twice,
+  when,
+} from './wasmWriter.ts';
 
 /**
  * A block of memory begins with a header of byte addresses, in this order; a part ends where the next begins.
@@ -96,6 +107,41 @@ export class KernelWriter {
   take(target: Local, l: Local, factor: Code, offset: number): Code {
     const { load, store, subtract, multiply } = this.arithmetic;
     return store(target.get, subtract(load(target.get, offset), multiply(l.get, factor)), offset);
+  }
+
+  /**
+   * target -= l0 u0, then target -= l1 u1, for all numbers up to where u0 ends; all three addresses move on. With one system the numbers
+   * are neighbours and are taken in pairs; the rounding is the same.
+   */
+  takeBoth(
+    target: Local,
+    [u0, u1]: readonly [Local, Local],
+    end: Local,
+    [l0, l1]: readonly [readonly Local[], readonly Local[]],
+  ): Code {
+    const step = (a: Arithmetic, m0: Code, m1: Code, o: number): Code => {
+      const once = a.subtract(a.load(target.get, o), a.multiply(m0, a.load(u0.get, o)));
+      return a.store(target.get, a.subtract(once, a.multiply(m1, a.load(u1.get, o))), o);
+    };
+    const move = (bytes: number): Code => [target, u0, u1].flatMap((at) => this.advance(at, bytes));
+    const single = this.loop(u0, end, [
+      ...this.each((j, o) => step(this.arithmetic, l0[j]!.get, l1[j]!.get, o)),
+      ...move(this.stride),
+    ]);
+    if (this.vectors > 1) return single;
+    const [m0, m1] = [this.writer.local(pair.type), this.writer.local(pair.type)];
+    const last = this.writer.local(I32);
+    return [
+      ...m0.set(twice(l0[0]!.get)),
+      ...m1.set(twice(l1[0]!.get)),
+      ...last.set(i32.subtract(end.get, i32.constant(2 * pair.bytes - 1))),
+      ...this.loop(u0, last, [
+        ...step(pair, m0.get, m1.get, 0),
+        ...step(pair, m0.get, m1.get, pair.bytes),
+        ...move(2 * pair.bytes),
+      ]),
+      ...single,
+    ];
   }
 
   /** r = 1 / d, also stored in place of d. */

@@ -3,8 +3,8 @@ import type { Pattern } from './matrix.ts';
 import { scratch } from './scratch.ts';
 
 /**
- * Writes r = b - A x and returns the scaled residual max|r| / max(|A| |x| + |b|), dimensionless; 0 for an empty or an all-zero system.
- * A backward-stable solve leaves about 1e-16.
+ * Writes r = b - A x and returns the scaled residual max|r| / max(|A| |x| + |b|), dimensionless; 0 for an empty or an all-zero system,
+ * infinite where x is not finite. A backward-stable solve leaves about 1e-16.
  */
 export function residual(
   pattern: Pattern,
@@ -13,29 +13,47 @@ export function residual(
   x: Float64Array,
   r: Float64Array,
 ): number {
-  const { size, symmetric, columnStarts, rowIndices } = pattern;
-  const magnitude = scratch.magnitude(size);
+  const magnitude = scratch.magnitude(pattern.size);
+  startResidual(pattern.size, b, r, magnitude);
+  takeProduct(pattern, values, x, r, magnitude);
+  return scaledResidual(pattern.size, r, magnitude);
+}
+
+/** r = b, magnitude = |b|. */
+export function startResidual(size: number, b: Float64Array, r: Float64Array, magnitude: Float64Array): void {
   for (let i = 0; i < size; i++) {
     r[i] = b[i]!;
     magnitude[i] = Math.abs(b[i]!);
   }
+}
+
+/** r -= A x, magnitude += |A| |x|. */
+export function takeProduct(
+  { size, symmetric, columnStarts, rowIndices }: Pattern,
+  values: Float64Array,
+  x: Float64Array,
+  r: Float64Array,
+  magnitude: Float64Array,
+): void {
   for (let j = 0; j < size; j++) {
     const xj = x[j]!;
     for (let e = columnStarts[j]!; e < columnStarts[j + 1]!; e++) {
       const i = rowIndices[e]!;
       const a = values[e]!;
-      r[i]! -= a * xj;
-      magnitude[i]! += Math.abs(a * xj);
+      const below = a * xj;
+      r[i] = r[i]! - below;
+      magnitude[i] = magnitude[i]! + Math.abs(below);
       if (symmetric && i !== j) {
-        r[j]! -= a * x[i]!;
-        magnitude[j]! += Math.abs(a * x[i]!);
+        const right = a * x[i]!;
+        r[j] = r[j]! - right;
+        magnitude[j] = magnitude[j]! + Math.abs(right);
       }
     }
   }
-  return ratioOfLargest(size, r, magnitude);
 }
 
-function ratioOfLargest(size: number, r: Float64Array, magnitude: Float64Array): number {
+/** max|r| / max(magnitude). */
+export function scaledResidual(size: number, r: Float64Array, magnitude: Float64Array): number {
   let largest = 0;
   let scale = 0;
   for (let i = 0; i < size; i++) {

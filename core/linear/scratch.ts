@@ -3,7 +3,7 @@
 function lender(): (size: number) => Float64Array {
   let vector = new Float64Array(0);
   return (size) => {
-    if (vector.length < size) vector = new Float64Array(Math.max(size, 2 * vector.length));
+    if (vector.length !== size) vector = new Float64Array(size);
     return vector;
   };
 }
@@ -12,10 +12,10 @@ function lender(): (size: number) => Float64Array {
 export const scratch = {
   /** `residual`: |A| |x| + |b|. */
   magnitude: lender(),
-  /** `solveRefined`: residual, then correction. */
+  /** `refine`: residual, then correction. */
   remainder: lender(),
-  /** `solveRefined`: the best solution so far. */
+  /** `refine`: the best solution so far. */
   best: lender(),
-  /** `solveRefined`: a right-hand side that shares its array with x. */
+  /** `refine`: a right-hand side that shares its array with x. */
   rightHandSide: lender(),
 };

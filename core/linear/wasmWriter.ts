@@ -96,6 +96,9 @@ export const pair: Arithmetic = {
   allAtMost: (a, b) => [...a, ...b, ...simd(0x4b), ...simd(0xc3)],
 };
 
+/** A pair of the same number twice. */
+export const twice = (a: Code): Code => [...a, ...simd(0x14)];
+
 /** Stores zero bytes: from, how many. */
 export const clear = (from: Code, bytes: Code): Code => [...from, 0x41, 0, ...bytes, 0xfc, 0x0b, 0];
 
@@ -141,7 +144,7 @@ export interface WrittenFunction {
 
 /** A module of these functions, working on the memory imported as host.memory. */
 export function writeModule(functions: readonly WrittenFunction[]): Uint8Array {
-  const text = (s: string): number[] => [...unsigned(s.length), ...[...s].map((c) => c.charCodeAt(0))];
+  const text = (s: string): number[] => [...unsigned(s.length), ...Array.from(s, (c) => c.charCodeAt(0))];
   const section = (id: number, items: readonly (readonly number[])[]): number[] => {
     const body = [...unsigned(items.length), ...items.flat()];
     return [id, ...unsigned(body.length), ...body];
@@ -154,7 +157,14 @@ export function writeModule(functions: readonly WrittenFunction[]): Uint8Array {
     I32,
   ]);
   return Uint8Array.from([
-    ...[0x00, 0x61, 0x73, 0x6d, 1, 0, 0, 0],
+    0x00,
+    0x61,
+    0x73,
+    0x6d,
+    1,
+    0,
+    0,
+    0,
     ...section(1, types),
     ...section(2, [[...text('host'), ...text('memory'), 2, 0, 1]]),
     ...section(
