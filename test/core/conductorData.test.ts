@@ -181,12 +181,42 @@ describe('practices', () => {
     ]);
   });
 
-  it('smallest conductors and unprotected lengths of the boat law', () => {
-    const boat = practices['us-marine'];
-    expect(boat.smallestSingle && sizeText(boat.smallestSingle.size)).toBe('16 AWG');
-    // 7 in and 40 in.
-    expect([boat.unfusedElsewhere.openM?.value, boat.unfusedElsewhere.sheathedM?.value]).toEqual([0.178, 1.016]);
-    expect(boat.strandedCopperOnly?.text).toContain('183.425');
+  it.each([
+    ['us-land', undefined, undefined, 0, 0],
+    // 7 in and 72 in at the battery; 7 in and 40 in elsewhere.
+    ['us-marine', 0.178, 1.829, 0.178, 1.016],
+    ['iso-marine', 0.2, undefined, 0.2, undefined],
+    ['iec-land', 3, undefined, 3, undefined],
+  ] as const)(
+    '%s: unprotected from the battery %s m open, %s m sheathed, elsewhere %s and %s',
+    (practice, ...expected) => {
+      const { unfusedFromBattery: battery, unfusedElsewhere: elsewhere } = practices[practice];
+      const figures = [battery.openM, battery.sheathedM, elsewhere.openM, elsewhere.sheathedM];
+      expect(figures.map((figure) => figure?.value)).toEqual(expected);
+      expect([battery.words, elsewhere.words].every((words) => words.length > 10)).toBe(true);
+    },
+  );
+
+  it.each([
+    ['us-land', '12 AWG', '12 AWG', '1/0 AWG'],
+    ['us-marine', '16 AWG', '18 AWG', undefined],
+    ['iso-marine', '1 mm²', '0.75 mm²', undefined],
+    ['iec-land', '1.5 mm²', '1.5 mm²', undefined],
+  ] as const)('%s: smallest conductor %s alone, %s sheathed, %s in parallel', (practice, ...expected) => {
+    const { smallestSingle, smallestSheathed, smallestParalleled } = practices[practice];
+    const names = [smallestSingle, smallestSheathed, smallestParalleled].map((each) => each && sizeText(each.size));
+    expect(names).toEqual(expected);
+  });
+
+  it('only the US boat law asks for stranded copper', () => {
+    expect(practices['us-marine'].strandedCopperOnly?.text).toContain('183.425');
+    expect(PRACTICES.filter((practice) => practices[practice].strandedCopperOnly !== undefined)).toEqual(['us-marine']);
+  });
+
+  it('small copper wires have caps on US land only: 7, 10, 15, 20, 30 A', () => {
+    const caps = practices['us-land'].smallWireCaps?.capsA;
+    expect([18, 16, 14, 12, 10].map((gauge) => caps?.get(gauge))).toEqual([7, 10, 15, 20, 30]);
+    expect(PRACTICES.filter((practice) => practices[practice].smallWireCaps !== undefined)).toEqual(['us-land']);
   });
 });
 

@@ -66,6 +66,13 @@ describe('resistance', () => {
     expect(lead.assumed.join()).toContain('1.115 times that of its nominal area');
   });
 
+  it('8 mm² flexible, between 6 and 10 of the table: the worse of the two ratios', () => {
+    const lead = found(conductorResistance(cable('8 mm2'), iec));
+    // 6 mm²: 3.30 × 6 / 17.24138 = 1.14840; 10 mm²: 1.91 × 10 / 17.24138 = 1.10780
+    // 17.24138 / 8 × 1.14840 = 2.4750 mohm/m
+    expect(lead.at20Ohm).toBeCloseTo(0.002475, 9);
+  });
+
   it('a run out of 3.5 m and back over 3 m, 20 A', () => {
     const out = found(conductorResistance(cable('6 mm2', { lengthM: 3.5 }), iec)).at20Ohm;
     const back = found(conductorResistance(cable('6 mm2', { lengthM: 3 }), iec)).at20Ohm;
@@ -93,6 +100,12 @@ describe('ampacity', () => {
     const wire = cable('10 mm2', { insulationDegC: 70, run: 'conduit', loadedConductors: 6 });
     // B2: 52 A × 0.87 × 0.70 = 31.668 A
     expect(rated(wire, { practice: 'iec-land', ambientDegC: 40 }).finalA).toBeCloseTo(31.668, 9);
+  });
+
+  it('three loaded conductors are two circuits', () => {
+    const wire = cable('10 mm2', { insulationDegC: 70, run: 'conduit', loadedConductors: 3 });
+    // B2: 52 A × 0.80 = 41.6 A
+    expect(rated(wire, { practice: 'iec-land' }).finalA).toBeCloseTo(41.6, 9);
   });
 
   it('a boat cable in 60 °C, where the law gives no factor', () => {
