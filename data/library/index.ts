@@ -121,7 +121,10 @@ function fuses(): readonly LibraryPart[] {
   });
 }
 
-export const libraryParts: readonly LibraryPart[] = [...(partRows as readonly PartRow[]).map(libraryPart), ...fuses()];
+export const libraryParts: readonly LibraryPart[] = [
+  ...(partRows as unknown as readonly PartRow[]).map(libraryPart),
+  ...fuses(),
+];
 
 export const libraryLoads: readonly LibraryLoad[] = (loadRows as unknown as readonly LoadRow[]).map((row) => ({
   label: row.label,

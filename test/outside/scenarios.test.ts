@@ -269,7 +269,8 @@ describe('S05, fishing boat: a ladder of drops at 96 A', () => {
   });
 
   it('the run from switch to inverter is rank 1 and the rest is within 0.15 mΩ', () => {
-    const ranked = steps.toSorted((a, b) => excessMOhm(b) - excessMOhm(a));
+    const ranked = [...steps];
+    ranked.sort((a, b) => excessMOhm(b) - excessMOhm(a));
     const [first, ...rest] = ranked;
     expect(first).toBe('switch to inverter +, 1.2 m 50 mm2');
     const worst = idOf(first ?? '');

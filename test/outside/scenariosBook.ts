@@ -1,5 +1,5 @@
 /** The acceptance scenarios: their inputs and expected values, and a tally of which values a test has held. */
-import book from './data/scenarios.json';
+import bookText from './data/scenarios.json?raw';
 
 interface Expected {
   readonly name: string;
@@ -12,7 +12,13 @@ interface Scenario {
   readonly inputs: unknown;
   readonly expected: readonly Expected[];
 }
-const scenarios: readonly Scenario[] = book.scenarios;
+
+interface Book {
+  readonly convention: { readonly rho20_ohm_mm2_per_m: number };
+  readonly scenarios: readonly Scenario[];
+}
+const book = JSON.parse(bookText) as Book;
+const { scenarios } = book;
 
 /** The scenarios' own convention for a conductor: copper at 20 °C by its plain area. */
 export function plainCopperOhm(run: { readonly lengthM: number; readonly areaMm2: number }): number {
