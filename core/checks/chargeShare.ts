@@ -1,8 +1,9 @@
 /** What charges what, and how much of it each string would get. */
-import type { ChargerPart, ControllerPart, ConverterPart, StringPart } from '../job/part.ts';
+import type { ChargerPart, ControllerPart, ConverterPart, DiodePart, StringPart } from '../job/part.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
-import type { Nets, SinglePart } from './wiring.ts';
-import { isOpen, netsOf, polesOf } from './wiring.ts';
+import { banksOf } from './systemVolts.ts';
+import type { SinglePart } from './wiring.ts';
+import { isOpen, netsOf, polesOf, throughDiodes } from './wiring.ts';
 
 export type ChargingPart = ChargerPart | ControllerPart | ConverterPart;
 
@@ -10,38 +11,41 @@ export function isCharging(part: SinglePart): part is ChargingPart {
   return part.kind === 'charger' || part.kind === 'controller' || part.kind === 'converter';
 }
 
-/** A charging part with the strings whose two terminals lie on its output's nets. */
+/** A string that a charging part reaches, and the diodes on the way. */
+export interface ChargedString {
+  readonly string: StringPart;
+  readonly diodes: readonly DiodePart[];
+}
+
 export interface Charge {
   readonly charger: ChargingPart;
-  readonly strings: readonly StringPart[];
-  /** Strings that it reaches only through a diode, or as one of several in series. */
-  readonly indirect: readonly StringPart[];
+  /** Strings whose two terminals its output reaches, itself or through diodes. */
+  readonly strings: readonly ChargedString[];
+  /** Where it reaches none whole: strings that it charges as several in series. */
+  readonly inSeries: readonly StringPart[];
 }
 
-/** What can charge what in a case: parts that are on, through what is closed. */
-export function chargesIn(context: CheckContext, one: SolvedCase): readonly Charge[] {
-  const direct = netsOf(one.parts, (part) => !isOpen(part) && part.kind !== 'diode');
+/** What can charge what in a case: parts that are on, through what is closed, along the diodes. */
+export function chargesIn(one: SolvedCase): readonly Charge[] {
+  const nets = netsOf(one.parts, (part) => !isOpen(part) && part.kind !== 'diode');
+  const diodes = one.parts.filter((part) => part.kind === 'diode');
   const strings = one.parts.filter((part) => part.kind === 'string');
-  return one.parts.filter(isCharging).flatMap((charger) => {
+  const banks = banksOf(one.parts, nets);
+  return one.parts.filter(isCharging).flatMap((charger): readonly Charge[] => {
     if (charger.kind !== 'controller' && !charger.on) return [];
     const output = polesOf(charger).find(({ role }) => role === 'source')!;
-    const own = strings.filter((string) => spans(direct, string, output));
-    const indirect = strings.filter(
-      (string) =>
-        !own.includes(string) &&
-        (spans(context.nets, string, output) ||
-          (own.length === 0 && context.volts.sharesBank(string.plus, output.plus, output.minus))),
-    );
-    return own.length + indirect.length === 0 ? [] : [{ charger, strings: own, indirect }];
+    const out = throughDiodes(nets.of(output.plus)!, 'along', { nets, diodes });
+    const back = throughDiodes(nets.of(output.minus)!, 'against', { nets, diodes });
+    const reached = strings.flatMap((string): readonly ChargedString[] => {
+      const [plus, minus] = [out.get(nets.of(string.plus)!), back.get(nets.of(string.minus)!)];
+      return plus === undefined || minus === undefined ? [] : [{ string, diodes: [...plus, ...minus] }];
+    });
+    if (reached.length > 0) return [{ charger, strings: reached, inSeries: [] }];
+    const bank = banks.get(nets.of(output.plus)!);
+    const isAcross = bank !== undefined && bank === banks.get(nets.of(output.minus)!);
+    const inSeries = isAcross ? strings.filter((string) => banks.get(nets.of(string.plus)!) === bank) : [];
+    return inSeries.length > 0 ? [{ charger, strings: [], inSeries }] : [];
   });
-}
-
-function spans(
-  nets: Nets,
-  string: StringPart,
-  output: { plus: StringPart['plus']; minus: StringPart['minus'] },
-): boolean {
-  return nets.same(string.plus, output.plus) && nets.same(string.minus, output.minus);
 }
 
 export type StringShare =
@@ -54,26 +58,32 @@ export type StringShare =
   | { readonly string: StringPart; readonly missing: string };
 
 /**
- * Each string's share, by capacity among the strings in parallel with it, of what the charging parts on its nets can give at once:
- * I_k = (C_k / ΣC) Σ I_limit. A controller gives no more than its array: array power at the case's sun over nominal volts
+ * Each string's share, by capacity among the strings that the same charging parts reach, of what these can give at once:
+ * I_k = Σ over them of I_limit C_k / ΣC. A controller gives no more than its array: array power at the case's sun over nominal volts
  * (`pwm`: the array's own current).
  */
 export function bulkChargeShares(context: CheckContext, one: SolvedCase): readonly StringShare[] {
-  const charges = chargesIn(context, one);
+  const charges = chargesIn(one);
   const shares: StringShare[] = [];
   for (const string of one.parts) {
     if (string.kind !== 'string') continue;
-    const own = charges.filter(({ strings }) => strings.includes(string));
-    const indirect = charges.find((charge) => charge.indirect.includes(string));
-    if (own.length === 0 && indirect === undefined) continue;
-    if (indirect !== undefined) {
-      const missing = `share of ${indirect.charger.kind} ${indirect.charger.id} in string ${string.id}: it lies behind a diode or in series with others`;
-      shares.push({ string, missing });
+    const series = charges.find(({ inSeries }) => inSeries.includes(string));
+    if (series !== undefined) {
+      const { charger } = series;
+      shares.push({
+        string,
+        missing: `share of ${charger.kind} ${charger.id} in string ${string.id}: it is one of several in series`,
+      });
       continue;
     }
-    const totalA = own.reduce((sum, { charger }) => sum + mostA(context, one, charger), 0);
-    const capacityAh = own[0]!.strings.reduce((sum, { capacityAh: own }) => sum + own, 0);
-    const shareA = (totalA * string.capacityAh) / capacityAh;
+    const own = charges.filter(({ strings }) => strings.some((charged) => charged.string === string));
+    let shareA = 0;
+    let totalA = 0;
+    for (const { charger, strings } of own) {
+      const givesA = mostA(context, one, charger);
+      totalA += givesA;
+      shareA += (givesA * string.capacityAh) / strings.reduce((sum, charged) => sum + charged.string.capacityAh, 0);
+    }
     if (totalA > 0) shares.push({ string, shareA, totalA, chargers: own.map(({ charger }) => charger) });
   }
   return shares;

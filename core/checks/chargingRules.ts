@@ -1,13 +1,13 @@
 /** Charge volts and charge temperature against the chemistry. */
 import { cellsPerBlock } from '../battery/cells.ts';
 import { type ChargeWindow, chargeWindow, limitOf } from '../battery/limits.ts';
-import type { StringPart } from '../job/part.ts';
+import type { DiodePart, StringPart } from '../job/part.ts';
 import type { Basis } from '../tables/status.ts';
 import { type ChargingPart, chargesIn, mostA } from './chargeShare.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { isOver, isUnder, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { apart, degrees, nameOf, titleOf, together, volts } from './wording.ts';
+import { apart, degrees, field, nameOf, titleOf, together, volts } from './wording.ts';
 
 const CHEMISTRY_WINDOW: Basis = {
   source: 'SRC-BAT-LIMIT-PRACTICE',
@@ -48,8 +48,10 @@ interface ChargeAt {
   readonly charger: ChargingPart;
   readonly string: StringPart;
   readonly one: SolvedCase;
-  /** Through a diode, or one of several in series: its volts are not the charger's. */
-  readonly isIndirect: boolean;
+  /** Diodes between the two. */
+  readonly diodes: readonly DiodePart[];
+  /** One of several in series: its volts are not the charger's. */
+  readonly isInSeries: boolean;
 }
 
 /** One verdict list for each charging part and string over all cases in which the one can charge the other. */
@@ -57,12 +59,16 @@ function eachCharge(context: CheckContext, rule: Rule, judgement: Judgement): Ru
   const tally = new Tally(rule, rule.basisFor(context));
   const found = new Map<string, { parts: readonly [ChargingPart['id'], StringPart['id']]; verdicts: Verdict[] }>();
   for (const one of context.cases) {
-    for (const { charger, strings, indirect } of chargesIn(context, one)) {
-      for (const string of [...strings, ...indirect]) {
-        const key = JSON.stringify([charger.id, string.id]);
-        const entry = found.get(key) ?? { parts: [charger.id, string.id] as const, verdicts: [] };
-        entry.verdicts.push(...judgement(context, { charger, string, one, isIndirect: indirect.includes(string) }));
-        found.set(key, entry);
+    for (const { charger, strings, inSeries } of chargesIn(one)) {
+      const charged = [
+        ...strings.map((entry) => ({ ...entry, isInSeries: false })),
+        ...inSeries.map((string) => ({ string, diodes: [], isInSeries: true })),
+      ];
+      for (const entry of charged) {
+        const key = JSON.stringify([charger.id, entry.string.id]);
+        const known = found.get(key) ?? { parts: [charger.id, entry.string.id] as const, verdicts: [] };
+        known.verdicts.push(...judgement(context, { charger, one, ...entry }));
+        found.set(key, known);
       }
     }
   }
@@ -70,14 +76,15 @@ function eachCharge(context: CheckContext, rule: Rule, judgement: Judgement): Ru
   return tally.outcome();
 }
 
-const voltsVerdict: Judgement = (context, { charger, string, one, isIndirect }) => {
-  if (isIndirect) {
-    return [
-      missing(
-        `volts of ${charger.kind} ${charger.id} at string ${string.id}: it lies behind a diode or in series with others`,
-      ),
-    ];
+const voltsVerdict: Judgement = (context, { charger, string, one, diodes, isInSeries }) => {
+  if (isInSeries) {
+    return [missing(`volts of ${charger.kind} ${charger.id} at string ${string.id}: it is one of several in series`)];
   }
+  const unknown = diodes.find(({ forwardV }) => forwardV === undefined);
+  if (unknown !== undefined)
+    return [missing(`${field(unknown, 'forwardV')}: it lies between ${charger.id} and string ${string.id}`)];
+  // A diode keeps its forward volts from the string.
+  const keptV = diodes.reduce((sum, { forwardV }) => sum + (forwardV ?? 0), 0);
   const { chemistry, blockNominalV, blocksInSeries } = string;
   const count = cellsPerBlock(chemistry, blockNominalV, context.tables.chemistry);
   if (!count.known) return [missing(`${count.missing} (string ${string.id})`)];
@@ -86,7 +93,7 @@ const voltsVerdict: Judgement = (context, { charger, string, one, isIndirect }) 
   const window = chargeWindow({ chemistry, cells, temperatureDegC }, context.tables.chemistry);
   const plain = chargeWindow({ chemistry, cells, temperatureDegC: REFERENCE_DEG_C }, context.tables.chemistry);
   if (window.absorptionV === undefined) return [missing(`absorption volts of ${chemistry} (string ${string.id})`)];
-  const setpointV = charger.kind === 'converter' ? charger.outputV : charger.setpointV;
+  const setpointV = (charger.kind === 'converter' ? charger.outputV : charger.setpointV) - keptV;
   const { lowV, highV } = bounds(window);
   const isHigh = isOver(setpointV, highV);
   if (!isHigh && !isUnder(setpointV, lowV)) return [PASS];
@@ -108,7 +115,7 @@ const voltsVerdict: Judgement = (context, { charger, string, one, isIndirect }) 
       measured: { value: setpointV, unit: 'V' },
       limit: { value: limitV, unit: 'V' },
       excess: isHigh ? setpointV / limitV : limitV / setpointV,
-      message: `${titleOf(charger)} is set to ${set}; ${nameOf(string)} (${chemistry}, ${cells} cells at ${degrees(temperatureDegC)}) is charged at ${isHigh ? 'no more than' : 'no less than'} ${bound}${doubt}.`,
+      message: `${titleOf(charger)} is set to ${set}${keptV > 0 ? ` behind ${volts(keptV)} of diodes` : ''}; ${nameOf(string)} (${chemistry}, ${cells} cells at ${degrees(temperatureDegC)}) is charged at ${isHigh ? 'no more than' : 'no less than'} ${bound}${doubt}.`,
       basis: windowBasis(window, isHigh),
     },
   ];

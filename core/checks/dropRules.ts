@@ -1,11 +1,11 @@
 /** Volts lost between a source and what it feeds, and between a charger and the strings that it charges. */
-import type { InverterPart, LoadPart } from '../job/part.ts';
+import type { InverterPart, LoadPart, StringPart } from '../job/part.ts';
 import type { Basis } from '../tables/status.ts';
+import { type ChargingPart, chargesIn } from './chargeShare.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { feedersOf } from './feeding.ts';
 import type { Judge, Rule, RuleOutcome } from './rule.ts';
 import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { polesOf } from './wiring.ts';
 import { apart, field, list, nameOf, percent, titleOf, volts, withEdition } from './wording.ts';
 
 export const dropTooBig: Rule = {
@@ -110,7 +110,7 @@ export const chargeDropTooBig: Rule = {
   kinds: ['charger', 'controller'],
   title: 'Too many volts lost between a charger and the strings',
   compares:
-    'volts at each running charger or controller output less volts at the strings that it charges, as a fraction of nominal volts, with 3 %',
+    'volts at each charger or controller that gives less volts at each string that takes, diodes on the way included, as a fraction of nominal volts, with 3 %',
   remedy:
     'Use a thicker or shorter charge cable: the charger sees its own volts, so the strings charge late and seldom fill.',
   byPractice: false,
@@ -121,35 +121,45 @@ export const chargeDropTooBig: Rule = {
 
 function runChargeDrop(context: CheckContext): RuleOutcome {
   const tally = new Tally(chargeDropTooBig, CHARGE_DROP_BASIS);
-  for (const drawn of context.drawn) {
-    if (drawn.kind !== 'charger' && drawn.kind !== 'controller') continue;
-    const output = polesOf(drawn).find(({ role }) => role === 'source')!;
-    const verdicts = context.steady.flatMap((one): readonly Verdict[] => {
-      const answer = one.answer(drawn.id);
-      const [outV, outA] =
-        drawn.kind === 'charger' ? [answer.voltageV, answer.currentA] : [answer.outputV, answer.outputA];
-      if (typeof outV !== 'number' || typeof outA !== 'number' || outA <= 0) return [];
-      const feed = feedersOf(one).of(output);
-      if (feed === undefined || !feed.sources.every(({ kind }) => kind === 'string')) return [];
-      const nominalV = context.volts.nominalBetween(output.plus, output.minus);
-      if (nominalV === undefined)
-        return [missing(`nominalV in the settings: nominal volts at ${drawn.kind} ${drawn.id}`)];
-      const fraction = (outV - feed.volts) / nominalV;
-      if (!isOver(fraction, CHARGE_DROP)) return [PASS];
-      const [lost, allowed] = apart(fraction, CHARGE_DROP, '1');
-      return [
-        {
-          kind: 'fail',
-          severity: 'look',
-          case: one.id,
-          measured: { value: fraction, unit: '1' },
-          limit: { value: CHARGE_DROP, unit: '1' },
-          excess: fraction / CHARGE_DROP,
-          message: `${titleOf(drawn)} gives ${volts(outV)} and ${list(feed.sources.map(nameOf))} gets ${volts(feed.volts)}: ${lost} of ${volts(nominalV)} nominal is lost on the way; ${allowed} is usual.`,
-        },
-      ];
-    });
-    tally.judge([drawn.id], verdicts);
+  const verdicts = new Map<ChargingPart['id'], Verdict[]>();
+  for (const one of context.steady) {
+    for (const { charger, strings } of chargesIn(one)) {
+      if (charger.kind === 'converter') continue;
+      const found = strings.flatMap(({ string }) => chargeDropVerdict(context, { charger, string, one }));
+      verdicts.set(charger.id, [...(verdicts.get(charger.id) ?? []), ...found]);
+    }
   }
+  for (const [id, found] of verdicts) tally.judge([id], found);
   return tally.outcome();
+}
+
+function chargeDropVerdict(
+  context: CheckContext,
+  { charger, string, one }: { charger: ChargingPart; string: StringPart; one: SolvedCase },
+): readonly Verdict[] {
+  const answer = one.answer(charger.id);
+  const [outV, outA] =
+    charger.kind === 'charger' ? [answer.voltageV, answer.currentA] : [answer.outputV, answer.outputA];
+  const { voltageV: stringV, currentA: stringA } = one.answer(string.id);
+  // Judged only while the charger gives and the string takes.
+  if (typeof outV !== 'number' || typeof outA !== 'number' || outA <= 0) return [];
+  if (stringV === null || stringA === null || stringA >= 0) return [];
+  const nominalV = context.volts.nominalBetween(string.plus, string.minus);
+  if (nominalV === undefined)
+    return [missing(`nominalV in the settings: nominal volts at ${charger.kind} ${charger.id}`)];
+  const fraction = (outV - stringV) / nominalV;
+  if (!isOver(fraction, CHARGE_DROP)) return [PASS];
+  const [lost, allowed] = apart(fraction, CHARGE_DROP, '1');
+  return [
+    {
+      kind: 'fail',
+      severity: 'look',
+      case: one.id,
+      measured: { value: fraction, unit: '1' },
+      limit: { value: CHARGE_DROP, unit: '1' },
+      excess: fraction / CHARGE_DROP,
+      message: `${titleOf(charger)} gives ${volts(outV)} and ${nameOf(string)} gets ${volts(stringV)}: ${lost} of ${volts(nominalV)} nominal is lost on the way; ${allowed} is usual.`,
+      others: [string.id],
+    },
+  ];
 }

@@ -1,8 +1,8 @@
 /** What feeds a part: the source terminals on the nets of its two poles. */
-import type { JunctionId, PartId } from '../job/part.ts';
+import type { DiodePart, JunctionId, PartId } from '../job/part.ts';
 import type { SolvedCase } from './checkContext.ts';
-import type { Nets, PoledPart, WiringPart } from './wiring.ts';
-import { isOpen, netsOf, polesOf } from './wiring.ts';
+import type { Nets, PoledPart } from './wiring.ts';
+import { isOpen, netsOf, polesOf, throughDiodes } from './wiring.ts';
 
 export interface Feed {
   /** Volts between the source terminals that feed the part, at the sources. */
@@ -16,17 +16,28 @@ interface Terminal {
   readonly volts: number;
 }
 
-/** Source terminals of a solved case by net: what is open or blocking in the case joins nothing. */
-class Feeders {
-  private readonly nets: Nets;
-  private readonly plusOf = new Map<number, { part: PoledPart; at: JunctionId }[]>();
-  private readonly minusOf = new Map<number, { part: PoledPart; at: JunctionId }[]>();
+interface SourceEnd {
+  readonly part: PoledPart;
+  readonly at: JunctionId;
+}
 
+/**
+ * Source terminals of a solved case by net: what is open in the case joins nothing, and a diode lets a source feed only in its
+ * own direction, so that two banks behind an isolator do not feed each other's loads.
+ */
+class Feeders {
   private readonly one: SolvedCase;
+  private readonly nets: Nets;
+  private readonly diodes: readonly DiodePart[];
+  private readonly plusOf = new Map<number, SourceEnd[]>();
+  private readonly minusOf = new Map<number, SourceEnd[]>();
 
   constructor(one: SolvedCase) {
     this.one = one;
-    this.nets = netsOf(one.parts, (part) => conductsIn(one, part));
+    this.nets = netsOf(one.parts, (part) => !isOpen(part) && part.kind !== 'diode');
+    this.diodes = one.parts.filter(
+      (part) => part.kind === 'diode' && one.answer(part.id).state === 'conducting',
+    ) as DiodePart[];
     for (const part of one.parts) {
       if (part.kind !== 'string' && !gives(one, part.id)) continue;
       for (const { role, plus, minus } of polesOf(part)) {
@@ -42,43 +53,43 @@ class Feeders {
   }
 
   /**
-   * The feed of a pair of junctions: the highest plus terminal among the strings on the plus junction's net, less the
-   * lowest minus terminal among those on the minus junction's net. Only where no string feeds both, the converters, controllers
-   * and chargers there count. `undefined` where nothing feeds them or their volts are not known.
+   * The feed of a pair of junctions: the highest plus terminal among the strings that feed the plus junction, less the lowest
+   * minus terminal among those that take back from the minus junction. Only where no string does both, the converters,
+   * controllers and chargers there count. `undefined` where nothing feeds them or their volts are not known.
    */
   of(ends: { readonly plus: JunctionId; readonly minus: JunctionId }): Feed | undefined {
+    const above = this.ends(this.plusOf, ends.plus, 'against');
+    const below = this.ends(this.minusOf, ends.minus, 'along');
     for (const wanted of [isString, isOther]) {
-      const high = best(this.terminals(this.plusOf, ends.plus, wanted), 1);
-      const low = best(this.terminals(this.minusOf, ends.minus, wanted), -1);
+      const high = best(this.terminals(above, wanted), 1);
+      const low = best(this.terminals(below, wanted), -1);
       if (high === undefined || low === undefined) continue;
       return { volts: high.volts - low.volts, sources: [...new Set([high.part, low.part])] };
     }
     return undefined;
   }
 
-  private terminals(
-    map: ReadonlyMap<number, readonly { part: PoledPart; at: JunctionId }[]>,
-    end: JunctionId,
-    wanted: (part: PoledPart) => boolean,
-  ): readonly Terminal[] {
+  private ends(map: ReadonlyMap<number, readonly SourceEnd[]>, end: JunctionId, way: 'along' | 'against') {
     const net = this.nets.of(end);
-    const here = net === undefined ? undefined : map.get(net);
-    return (here ?? []).flatMap(({ part, at }) => {
+    if (net === undefined) return [];
+    return [...throughDiodes(net, way, { nets: this.nets, diodes: this.diodes }).keys()].flatMap(
+      (reached) => map.get(reached) ?? [],
+    );
+  }
+
+  private terminals(ends: readonly SourceEnd[], wanted: (part: PoledPart) => boolean): readonly Terminal[] {
+    return ends.flatMap(({ part, at }) => {
       const volts = this.one.point.junctions.get(at);
       return wanted(part) && typeof volts === 'number' ? [{ part, volts }] : [];
     });
   }
 
-  private add(map: Map<number, { part: PoledPart; at: JunctionId }[]>, part: PoledPart, at: JunctionId): void {
+  private add(map: Map<number, SourceEnd[]>, part: PoledPart, at: JunctionId): void {
     const net = this.nets.of(at)!;
     const here = map.get(net);
     if (here === undefined) map.set(net, [{ part, at }]);
     else here.push({ part, at });
   }
-}
-
-function conductsIn(one: SolvedCase, part: WiringPart): boolean {
-  return !isOpen(part) && (part.kind !== 'diode' || one.answer(part.id).state === 'conducting');
 }
 
 /** True for a source that gives current in the case. */

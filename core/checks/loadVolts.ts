@@ -1,6 +1,7 @@
 /** Volts at each load against what it needs and what it stands. */
 import type { InverterPart, LoadPart } from '../job/part.ts';
-import { assumedSources } from './assumed.ts';
+import type { Basis } from '../tables/status.ts';
+import { assumedSources, overRange, stiffestStrings } from './assumed.ts';
 import { CIRCUIT_LAW, entered } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
@@ -68,23 +69,26 @@ function starvedVerdict(context: CheckContext, drawn: LoadPart | InverterPart, o
         },
       ];
     }
-    return [tooFew({ part, one, voltageV: heldV, leastV, dropsOut: true, basis })];
+    return [tooFew(context, { part, one, voltageV: heldV, leastV, dropsOut: true, basis })];
   }
   if (!isUnder(answer.voltageV, leastV)) return [PASS];
-  return [tooFew({ part, one, voltageV: answer.voltageV, leastV, dropsOut: false, basis })];
+  return [tooFew(context, { part, one, voltageV: answer.voltageV, leastV, dropsOut: false, basis })];
 }
 
-function tooFew(at: {
+interface TooFew {
   readonly part: LoadPart | InverterPart;
   readonly one: SolvedCase;
   readonly voltageV: number;
   readonly leastV: number;
   readonly dropsOut: boolean;
-  readonly basis: typeof CIRCUIT_LAW;
-}): Verdict {
+  readonly basis: Basis;
+}
+
+function tooFew(context: CheckContext, at: TooFew): Verdict {
   const { part, one, voltageV, leastV } = at;
   const [found, needed] = apart(voltageV, leastV, 'V');
   const outcome = at.dropsOut ? ', so it drops out' : '';
+  const range = `${assumedSources(one.point)}${overRange(holdsAtBest(context, at))}`;
   return {
     kind: 'fail',
     severity: 'fix',
@@ -92,9 +96,17 @@ function tooFew(at: {
     measured: { value: voltageV, unit: 'V' },
     limit: { value: leastV, unit: 'V' },
     excess: voltageV > 0 ? leastV / voltageV : Number.POSITIVE_INFINITY,
-    message: `${titleOf(part)} gets ${found} while it runs and needs ${needed}${outcome}${assumedSources(one.point)}.`,
+    message: `${titleOf(part)} gets ${found} while it runs and needs ${needed}${outcome}${range}.`,
     basis: at.basis,
   };
+}
+
+/** Would the load run with the best figures that may be assumed for the strings? `undefined` where none are assumed. */
+function holdsAtBest(context: CheckContext, { part, one, leastV }: TooFew): boolean | undefined {
+  const strings = stiffestStrings(context, one, one.point.model);
+  if (strings.length === 0) return undefined;
+  const voltageV = context.solveChanged(one, [...strings, withoutDropOut(part)]).parts.get(part.id)?.voltageV;
+  return typeof voltageV === 'number' && !isUnder(voltageV, leastV);
 }
 
 export const loadOverfed: Rule = {

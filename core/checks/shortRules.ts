@@ -7,7 +7,7 @@ import { type CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { banksOf } from './systemVolts.ts';
 import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { isDevice, isOpen, netsOf, polesOf } from './wiring.ts';
+import { isDevice, isOpen, isWiring, netsOf, polesOf } from './wiring.ts';
 import { amps, apart, nameOf, ohms, percent, shortList, titleOf } from './wording.ts';
 
 /**
@@ -39,7 +39,7 @@ export const deadShort: Rule = {
 
 function runDeadShort(context: CheckContext): RuleOutcome {
   const tally = new Tally(deadShort, CIRCUIT_LAW);
-  const states = context.cases.map((one) => quiet(context, one));
+  const states = quietStates(context);
   for (const drawn of context.drawn) {
     if (drawn.kind === 'string') {
       tally.judge(
@@ -74,6 +74,17 @@ interface Quiet {
   /** The case with everything off but its switches as they stand. */
   readonly rest: SolvedCase;
   readonly joins: (a: StringPart['plus'], b: StringPart['plus']) => boolean;
+}
+
+/** The quiet state of each case; cases that differ only in what is off in it share one. */
+function quietStates(context: CheckContext): readonly Quiet[] {
+  const known = new Map<string, Quiet>();
+  for (const one of context.cases) {
+    const lasting = one.parts.filter((part) => part.kind === 'string' || isWiring(part));
+    const key = JSON.stringify([one.ambientDegC, lasting]);
+    if (!known.has(key)) known.set(key, quiet(context, one));
+  }
+  return [...known.values()];
 }
 
 function quiet(context: CheckContext, one: SolvedCase): Quiet {
@@ -175,16 +186,27 @@ function runNoFuse(context: CheckContext): RuleOutcome {
   const tally = new Tally(noFuseOnSource, FUSE_AT_SOURCE);
   const bare = netsOf(context.drawn, (part) => !isDevice(part));
   const bankOfNet = banksOf(context.drawn, bare);
-  const served = context.drawn
+  /** The stretch of nominal volts that two junctions span in a bank; `undefined` where no bank joins them. */
+  const spanOf = ({ plus, minus }: { plus: StringPart['plus']; minus: StringPart['plus'] }) => {
+    const [p, m] = [bare.of(plus)!, bare.of(minus)!];
+    const bank = bankOfNet.get(p);
+    if (bank === undefined || bank !== bankOfNet.get(m)) return undefined;
+    const ends = [bank.potentialV.get(p)!, bank.potentialV.get(m)!];
+    return { bank, lowV: Math.min(...ends), highV: Math.max(...ends) };
+  };
+  const users = context.drawn
     .flatMap((part) => (part.kind === 'string' || part.kind === 'array' ? [] : polesOf(part)))
-    .filter(({ plus, minus }) => {
-      const bank = bankOfNet.get(bare.of(plus)!);
-      return bank !== undefined && bank === bankOfNet.get(bare.of(minus)!) && !bare.same(plus, minus);
+    .flatMap((poles) => {
+      const span = spanOf(poles);
+      return span === undefined ? [] : [{ ...poles, ...span }];
     });
   for (const string of context.drawn) {
     if (string.kind !== 'string') continue;
-    const terminals = [string.plus, string.minus, ...(string.midpoint === undefined ? [] : [string.midpoint])];
-    const own = served.filter(({ plus, minus }) => terminals.some((at) => bare.same(plus, at) || bare.same(minus, at)));
+    const span = spanOf(string)!;
+    // A tap is fed by the strings whose stretch of volts it shares.
+    const own = users.filter(
+      (user) => user.bank === span.bank && Math.min(user.highV, span.highV) > Math.max(user.lowV, span.lowV),
+    );
     const ids = [...new Set(own.map(({ part }) => part.id))];
     if (ids.length === 0) {
       tally.judge([string.id], [PASS]);

@@ -1,7 +1,7 @@
 /** Volts while a load or inverter starts up. */
-import type { InverterPart, LoadPart } from '../job/part.ts';
+import type { InverterPart, LoadPart, StringPart } from '../job/part.ts';
 import type { OperatingPoint } from '../network/answer.ts';
-import { assumedSources } from './assumed.ts';
+import { assumedSources, overRange, stiffestStrings } from './assumed.ts';
 import { CIRCUIT_LAW, entered } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { leastVoltsField, leastVoltsOf, withoutDropOut } from './loadVolts.ts';
@@ -54,8 +54,13 @@ interface Start {
 }
 
 /** The case with the part starting and never dropping out, so that its volts can be seen. */
-function started(context: CheckContext, { part, one, surgeW }: Start): OperatingPoint {
+function started(
+  context: CheckContext,
+  { part, one, surgeW }: Start,
+  strings: readonly StringPart[] = [],
+): OperatingPoint {
   const changed = new Map(one.operatingCase.changed);
+  for (const string of strings) changed.set(string.id, string);
   changed.set(part.id, { ...withoutDropOut(part), surgeW });
   return context.solve({ ...one.operatingCase, surge: part.id, changed }, 'fast');
 }
@@ -76,7 +81,7 @@ function startVerdict(context: CheckContext, start: Start): Verdict {
       measured: { value: largestDeliverableW, unit: 'W' },
       limit: { value: wantedW, unit: 'W' },
       excess: largestDeliverableW > 0 ? wantedW / largestDeliverableW : Number.POSITIVE_INFINITY,
-      message: `${titleOf(part)} cannot start with ${watts(surgeW)} on top of case ${one.id}: ${who} would need ${watts(wantedW)} at its terminals, and the wiring can bring ${watts(largestDeliverableW)} at most${assumedSources(point)}.`,
+      message: `${titleOf(part)} cannot start with ${watts(surgeW)} on top of case ${one.id}: ${who} would need ${watts(wantedW)} at its terminals, and the wiring can bring ${watts(largestDeliverableW)} at most${assumedSources(point)}${overRange(holdsAtBest(context, start, leastV))}.`,
     };
   }
   if (answer === undefined || answer.voltageV === null || answer.state === 'unfed') {
@@ -93,9 +98,17 @@ function startVerdict(context: CheckContext, start: Start): Verdict {
     measured: { value: answer.voltageV, unit: 'V' },
     limit: { value: leastV, unit: 'V' },
     excess: leastV / answer.voltageV,
-    message: `${titleOf(part)} has ${found} while it starts with ${watts(surgeW)} on top of case ${one.id} and needs ${needed}; ${bearableText(bearableW)}${assumedSources(point)}.`,
+    message: `${titleOf(part)} has ${found} while it starts with ${watts(surgeW)} on top of case ${one.id} and needs ${needed}; ${bearableText(bearableW)}${assumedSources(point)}${overRange(holdsAtBest(context, start, leastV))}.`,
     basis: together(CIRCUIT_LAW, entered(part, leastVoltsField(part))),
   };
+}
+
+/** Would the start hold with the best figures that may be assumed for the strings? `undefined` where none are assumed. */
+function holdsAtBest(context: CheckContext, start: Start, leastV: number | undefined): boolean | undefined {
+  const strings = stiffestStrings(context, start.one, 'fast');
+  if (strings.length === 0) return undefined;
+  const voltageV = started(context, start, strings).parts.get(start.part.id)?.voltageV;
+  return typeof voltageV === 'number' && !isUnder(voltageV, leastV ?? 0);
 }
 
 function bearableText(bearableW: number): string {

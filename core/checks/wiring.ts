@@ -196,3 +196,23 @@ export function meetings(parts: readonly SinglePart[]): ReadonlyMap<JunctionId, 
   }
   return found;
 }
+
+/**
+ * Nets that current can reach from one net (`along`) or come from to it (`against`) through diodes alone, with the diodes on the
+ * way; the net itself first, with none. `nets` must not be joined by diodes.
+ */
+export function throughDiodes(
+  start: number,
+  way: 'along' | 'against',
+  { nets, diodes }: { readonly nets: Nets; readonly diodes: readonly DiodePart[] },
+): ReadonlyMap<number, readonly DiodePart[]> {
+  const reached = new Map<number, readonly DiodePart[]>([[start, []]]);
+  for (const [net, passed] of reached) {
+    for (const diode of diodes) {
+      const [near, far] = way === 'along' ? [diode.from, diode.to] : [diode.to, diode.from];
+      const beyond = nets.of(far)!;
+      if (nets.of(near) === net && !reached.has(beyond)) reached.set(beyond, [...passed, diode]);
+    }
+  }
+  return reached;
+}

@@ -105,7 +105,7 @@ describe('charge-drop-too-big', () => {
   test('30 A through 12 mohm lose exactly 3 % of 12 V', () => {
     expect(passes(charging(12), 'charge-drop-too-big')).toBe(1);
     const [finding] = found(charging(13), 'charge-drop-too-big');
-    expect(finding).toMatchObject({ severity: 'look', parts: ['C1'], limit: { value: 0.03, unit: '1' } });
+    expect(finding).toMatchObject({ severity: 'look', parts: ['C1', 'B1'], limit: { value: 0.03, unit: '1' } });
     expect(finding!.measured.value).toBeCloseTo((30 * 0.013) / 12, 9);
   });
 });
