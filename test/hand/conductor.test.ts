@@ -51,6 +51,15 @@ describe('resistance', () => {
     expect(resistanceAt(lead, 75)).toBeCloseTo(0.00641 * 1.22165, 9);
   });
 
+  it('tinned 4/0 AWG of 19 wires on a boat', () => {
+    const lead = found(
+      conductorResistance(cable('4/0 AWG', { metal: 'tinned-copper' }), { practice: 'us-marine', tables: conductors }),
+    );
+    // 107.219 mm² / 19 = 5.643 mm², wires of 2.68 mm: tin leaves 0.97
+    // 17.24138 × 1.02 / 107.219 / 0.97 = 0.169095 mohm/m
+    expect(lead.at20Ohm).toBeCloseTo(0.000169095, 9);
+  });
+
   it('6 mm "auto" cable is 4.6 mm² of copper, not 6', () => {
     const auto = found(conductorResistance(cable('6 auto', { lengthM: 10 }), iec));
     // 17.24138 / 4.6 × 1.02 = 3.8231 mohm/m; × 10 m = 38.231 mohm
