@@ -10,7 +10,7 @@ import {
   type Proof,
 } from '../../core/api.ts';
 import { statusWords } from './statusWords.ts';
-import { textTable, wrapped } from './textTable.ts';
+import { listItem, textTable, wrapped } from './textTable.ts';
 
 const modelWords = {
   slow: 'battery resistance over minutes (slow)',
@@ -139,7 +139,7 @@ function assumedText(points: readonly OperatingPoint[]): string {
   const lines = [...partsByWords].map(([words, parts]) => {
     const [told, more] = [[...parts].slice(0, mostPartsTold), parts.size - mostPartsTold];
     const where = told.length === 0 ? '' : ` At ${told.join(', ')}${more > 0 ? ` and ${String(more)} more` : ''}.`;
-    return wrapped(`- ${words}${where}`);
+    return listItem(`${words}${where}`);
   });
   return `Assumed, since the job does not say:\n${lines.join('')}`;
 }

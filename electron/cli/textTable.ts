@@ -35,6 +35,11 @@ export function wrapped(text: string, { indent = '', width = 100 }: { indent?: s
   return [...lines, line].map((each) => `${each}\n`).join('');
 }
 
+/** An item of a list, its further lines under the first. */
+export function listItem(text: string): string {
+  return `- ${wrapped(text, { indent: '  ' }).slice('  '.length)}`;
+}
+
 function pad(text: string, width: number, align: TextColumn['align']): string {
   const space = ' '.repeat(Math.max(0, width - widthOf(text)));
   return align === 'left' ? text + space : space + text;
