@@ -4,6 +4,7 @@ import {
   type AmpacityContext,
   ampacity,
   conductorResistance,
+  dropFromMillivoltsV,
   heatingLaw,
   pairDropV,
   resistanceAt,
@@ -56,8 +57,8 @@ describe('resistance', () => {
       conductorResistance(cable('4/0 AWG', { metal: 'tinned-copper' }), { practice: 'us-marine', tables: conductors }),
     );
     // 107.219 mm² / 19 = 5.643 mm², wires of 2.68 mm: tin leaves 0.97
-    // 17.24138 × 1.02 / 107.219 / 0.97 = 0.169095 mohm/m
-    expect(lead.at20Ohm).toBeCloseTo(0.000169095, 9);
+    // 17.24138 × 1.02 / 107.219 / 0.97 = 0.169094 mohm/m
+    expect(lead.at20Ohm).toBeCloseTo(0.000169094, 9);
   });
 
   it('6 mm "auto" cable is 4.6 mm² of copper, not 6', () => {
@@ -87,6 +88,13 @@ describe('resistance', () => {
     const back = found(conductorResistance(cable('6 mm2', { lengthM: 3 }), iec)).at20Ohm;
     // 3.30 mohm/m × 6.5 m = 21.45 mohm; × 20 A = 0.429 V
     expect(pairDropV({ currentA: 20, plusOhm: out, minusOhm: back })).toBeCloseTo(0.429, 9);
+  });
+});
+
+describe('drop from a printed figure', () => {
+  it('1.31 mV/A/m already counts the return: 100 A over a 5 m run', () => {
+    // 1.31 × 100 × 5 / 1000 = 0.655 V
+    expect(dropFromMillivoltsV({ millivoltsPerAmpereMetre: 1.31, currentA: 100, oneWayM: 5 })).toBeCloseTo(0.655, 12);
   });
 });
 
