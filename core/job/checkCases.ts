@@ -216,7 +216,7 @@ function* entriesByPart(
 }
 
 /** The sentence for an id that no part has. */
-export function unknownPart(id: string, parts: PartsRead): string {
+function unknownPart(id: string, parts: PartsRead): string {
   const pairId = /^(.*)\.(?:plus|minus)$/.exec(id)?.[1];
   if (pairId !== undefined && own(parts.rawById.get(pairId) ?? {}, 'kind') === 'pair') {
     return `${quoted(id)} is one cable of pair ${pairId}; change the pair itself.`;

@@ -4,7 +4,7 @@ import { describeUnit, type UnitName } from './unitName.ts';
 import { worthOf } from './unitWords.ts';
 
 /** Longest text that is read as a quantity; a longer one is no quantity of this trade. */
-export const longestQuantityText = 80;
+const longestQuantityText = 80;
 const mostTerms = 12;
 const absoluteZeroDegC = -273.15;
 
