@@ -24,6 +24,9 @@ interface GlyphSource {
 /** Marks that steer text and draw nothing: left out. */
 const UNDRAWN = /[\p{Cf}\p{Variation_Selector}]/gu;
 
+/** A number and its unit stay on one line. */
+const BEFORE_UNIT = /(?<=\d) (?=(?:%|°C|m?V|m?A|kA|k?W|m?Ω|µΩ|mm²|m|ft|AWG|kcmil|k?Wh|Ah|W\/m²|h|s)(?![\p{L}\d]))/gu;
+
 export class Typeface {
   private readonly doc: PDFKit.PDFDocument;
   /** Advance of single characters at 1 pt, by face. */
@@ -57,7 +60,7 @@ export class Typeface {
   }
 
   /**
-   * The text as it can be drawn: composed, line ends and tabs as spaces, and each character that the face lacks told by its code
+   * The text as it can be drawn: composed, line ends and tabs as spaces, units tied to their numbers, and each character that the face lacks told by its code
    * (`[U+26A0]`), so that nothing drops out without a trace.
    */
   drawable(text: string): string {
@@ -65,8 +68,9 @@ export class Typeface {
       .normalize('NFC')
       .replaceAll(UNDRAWN, '')
       .replaceAll(/[\t\n\v\f\r\u2028\u2029]+/g, ' ');
+    const glued = plain.replaceAll(BEFORE_UNIT, '\u00a0');
     let drawn = '';
-    for (const character of plain) {
+    for (const character of glued) {
       const codePoint = character.codePointAt(0) ?? 0;
       drawn += this.has(codePoint) ? character : `[U+${codePoint.toString(16).toUpperCase().padStart(4, '0')}]`;
     }

@@ -1,48 +1,14 @@
-/** Invented jobs and hand-made answers for the tests of the report: no engine runs here. */
+/** Hand-made answers and findings about an invented job, for what a real solve seldom gives: no engine runs here. */
 import type { CheckReport } from '../../core/checks/finding.ts';
-import type { CheckedJob, OperatingCase } from '../../core/job/job.ts';
+import type { CheckedJob } from '../../core/job/job.ts';
 import type { Part, PartId } from '../../core/job/part.ts';
 import { cablesOfPair, junctionsOf } from '../../core/job/part.ts';
 import type { Assumption, OperatingPoint, PartAnswer, Proof } from '../../core/network/answer.ts';
 import type { ReportInput } from '../../core/report/input.ts';
 import type { Basis } from '../../core/tables/status.ts';
-import type { Tables } from '../../core/tables/tables.ts';
-
-type Loose = Readonly<Record<string, unknown>>;
-
-/** A part with the contract's defaults for what the test does not say. */
-export function part(fields: Loose): Part {
-  const defaults: Loose = {
-    origin: new Map(),
-    range: new Map(),
-    given: new Set(Object.keys(fields)),
-    inParallel: 1,
-    endOhm: 0,
-    linkOhm: 0,
-    segmentOhm: 0,
-    stateOfCharge: 1,
-  };
-  const state: Loose = ['fuse', 'breaker', 'switch'].includes(String(fields['kind']))
-    ? { state: 'closed' }
-    : { on: true };
-  return { ...defaults, ...state, ...fields } as unknown as Part;
-}
-
-export function job(fields: Loose & { readonly parts: readonly Part[] }): CheckedJob {
-  return {
-    title: 'Untitled',
-    practice: 'iec-land',
-    site: {},
-    junctions: new Map(),
-    cases: [{ id: 'as-drawn', label: undefined, changed: new Map() }],
-    demand: [],
-    targets: {},
-    readings: [],
-    settings: {},
-    extra: new Map(),
-    ...fields,
-  } as unknown as CheckedJob;
-}
+import { tables } from '../../data/index.ts';
+import { checked } from './reportInput.ts';
+import { cabin } from './reportJobs.ts';
 
 export const PUBLISHED: Basis = {
   source: 'SRC-IEC60228',
@@ -55,23 +21,6 @@ export const REMEMBERED: Basis = {
   text: 'ISO 13297:2020, electrical systems of small craft, clause 12',
   status: 'from-memory',
 };
-
-/** The little of the tables that the report reads itself. */
-export const tables = {
-  practices: {
-    'us-land': { name: 'Land, United States', books: 'NEC (NFPA 70) articles 240, 310, 480, 690, 706' },
-    'us-marine': { name: 'Small craft, United States', books: '33 CFR 183 subpart I; ABYC E-11' },
-    'iso-marine': { name: 'Small craft, ISO', books: 'ISO 13297' },
-    'iec-land': { name: 'Land, IEC', books: 'IEC 60364 series; IEC 62485-2' },
-  },
-  conductors: {
-    awgFormula: PUBLISHED,
-    metricResistance: [],
-    usResistance: [],
-    saeAreaCmil: new Map(),
-    autoAreaMm2: new Map(),
-  },
-} as unknown as Tables;
 
 const BALANCED: Proof = {
   worstJunctionA: 2.1e-12,
@@ -92,7 +41,7 @@ export function point(of: CheckedJob, fields: Partial<OperatingPoint> & { readon
   const junctions = new Map(
     [...new Set(parts.flatMap(junctionsOf))].map((junction, index) => [
       junction,
-      String(junction).includes('-') || String(junction).startsWith('B−') ? index * 0.013 : 25.6 - index * 0.037,
+      String(junction).endsWith('-') ? index * 0.013 : 25.6 - index * 0.037,
     ]),
   );
   return {
@@ -160,308 +109,6 @@ export function assumption(
   };
 }
 
-/** Three strings at a ridge, an inverter, a solar array, some loads: a job as a small firm would hand over. Invented. */
-export function cabinJob(): CheckedJob {
-  const strings = ['A', 'B', 'C'].map((letter, index) =>
-    part({
-      id: `S-${letter}`,
-      kind: 'string',
-      label: index === 2 ? 'String C, replaced last year' : `String ${letter}`,
-      locationTag: 'battery box',
-      plus: `${letter}+`,
-      minus: `${letter}−`,
-      chemistry: 'agm',
-      blocksInSeries: 2,
-      blockNominalV: 12,
-      capacityAh: 200,
-      stateOfCharge: 0.8,
-      ageYears: index === 2 ? 1 : 6,
-      temperatureDegC: 8,
-      ...(index === 2
-        ? {
-            resistanceOhm: 0.0061,
-            origin: new Map([['resistanceOhm', 'measured']]),
-            range: new Map([['resistanceOhm', [0.0058, 0.0064]]]),
-          }
-        : {}),
-    }),
-  );
-  const links = ['A', 'B', 'C'].flatMap((letter) => [
-    part({
-      id: `L${letter}+`,
-      kind: 'cable',
-      from: `${letter}+`,
-      to: `F${letter}`,
-      lengthM: 0.6,
-      size: { system: 'mm2', areaMm2: 35 },
-      metal: 'copper',
-      stranding: 'flexible',
-      insulationDegC: 90,
-      run: 'free-air',
-      endOhm: 0.0002,
-    }),
-    part({
-      id: `F-${letter}`,
-      kind: 'fuse',
-      label: `String fuse ${letter}`,
-      type: 'class T',
-      from: `F${letter}`,
-      to: 'BUS+',
-      ratingA: 125,
-      ratingV: 125,
-      interruptA: 20000,
-      distanceFromSourceM: 0.6,
-      sheathed: true,
-      resistanceOhm: 0.0005,
-    }),
-    part({
-      id: `L${letter}−`,
-      kind: 'cable',
-      from: 'BUS−',
-      to: `${letter}−`,
-      lengthM: 0.9,
-      size: { system: 'mm2', areaMm2: 35 },
-      metal: 'copper',
-      stranding: 'flexible',
-      insulationDegC: 90,
-      run: 'free-air',
-      endOhm: 0.0002,
-    }),
-  ]);
-  const rest = [
-    part({ id: 'BAR+', kind: 'busbar', junctions: ['BUS+', 'BUS+2', 'BUS+3'], ratingA: 250, segmentOhm: 0.00004 }),
-    part({
-      id: 'Q1',
-      kind: 'switch',
-      label: 'Main switch',
-      from: 'BUS+3',
-      to: 'MAIN+',
-      ratingA: 275,
-      ratingV: 48,
-      loadBreak: true,
-      resistanceOhm: 0.00015,
-    }),
-    part({ id: 'SH1', kind: 'shunt', from: 'RET', to: 'BUS−', ratingA: 300, ratingMv: 50 }),
-    part({
-      id: 'F-INV',
-      kind: 'fuse',
-      label: 'Inverter fuse',
-      type: 'class T',
-      from: 'MAIN+',
-      to: 'INVF',
-      ratingA: 200,
-      ratingV: 125,
-      interruptA: 20000,
-    }),
-    part({
-      id: 'C-INV+',
-      kind: 'cable',
-      from: 'INVF',
-      to: 'INV+',
-      lengthM: 1.8,
-      size: { system: 'awg', gauge: -1 },
-      metal: 'copper',
-      insulationDegC: 105,
-      run: 'conduit',
-    }),
-    part({
-      id: 'C-INV−',
-      kind: 'cable',
-      from: 'INV−',
-      to: 'RET',
-      lengthM: 1.8,
-      size: { system: 'awg', gauge: -1 },
-      metal: 'copper',
-      insulationDegC: 105,
-      run: 'conduit',
-    }),
-    part({
-      id: 'INV1',
-      kind: 'inverter',
-      label: 'Inverter',
-      plus: 'INV+',
-      minus: 'INV−',
-      ratedW: 3000,
-      acPowerW: 900,
-      surgeW: 6000,
-      efficiency: 0.9,
-      standbyW: 18,
-      cutoffV: 21,
-    }),
-    part({
-      id: 'B-DC',
-      kind: 'breaker',
-      label: 'Lighting and pump breaker',
-      from: 'MAIN+',
-      to: 'DCB',
-      ratingA: 25,
-      ratingV: 80,
-      manualReset: true,
-    }),
-    part({
-      id: 'W-FRIDGE',
-      kind: 'pair',
-      label: 'Run to the refrigerator in the back kitchen',
-      from: { plus: 'DCB', minus: 'RET' },
-      to: { plus: 'FR+', minus: 'FR−' },
-      lengthM: 7.3,
-      size: { system: 'mm2', areaMm2: 6 },
-      metal: 'tinned-copper',
-      run: 'bundle',
-      loadedConductors: 4,
-    }),
-    part({
-      id: 'FRIDGE',
-      kind: 'load',
-      label: 'Refrigerator',
-      plus: 'FR+',
-      minus: 'FR−',
-      powerW: 120,
-      minimumV: 21,
-      surgeW: 480,
-      surgeS: 0.5,
-      continuous: true,
-      dropClass: 'ordinary',
-    }),
-    part({
-      id: 'W-RADIO',
-      kind: 'pair',
-      from: { plus: 'DCB', minus: 'RET' },
-      to: { plus: 'RA+', minus: 'RA−' },
-      lengthM: 4.2,
-      size: { system: 'mm2', areaMm2: 2.5 },
-    }),
-    part({
-      id: 'RADIO',
-      kind: 'load',
-      label: 'Radio link',
-      plus: 'RA+',
-      minus: 'RA−',
-      currentA: 1.8,
-      dropClass: 'critical',
-    }),
-    part({
-      id: 'PV',
-      kind: 'array',
-      label: 'Roof array',
-      plus: 'PV+',
-      minus: 'PV−',
-      modulesInSeries: 2,
-      stringsInParallel: 2,
-      vocV: 45.6,
-      iscA: 9.4,
-      vmpV: 37.8,
-      impA: 8.9,
-      vocPerDegC: -0.0029,
-      tiltDeg: 55,
-      azimuthDeg: 180,
-      maxFuseA: 15,
-    }),
-    part({
-      id: 'MPPT',
-      kind: 'controller',
-      label: 'Solar controller',
-      type: 'mppt',
-      from: { plus: 'PV+', minus: 'PV−' },
-      to: { plus: 'BUS+2', minus: 'BUS−' },
-      outputA: 40,
-      maxInputV: 150,
-      setpointV: 28.4,
-    }),
-    part({
-      id: 'GEN',
-      kind: 'charger',
-      label: 'Generator charger',
-      source: 'generator',
-      plus: 'BUS+2',
-      minus: 'BUS−',
-      outputA: 50,
-      setpointV: 28.8,
-      on: false,
-    }),
-    part({ id: 'J-RET', kind: 'joint', from: 'RET', to: 'RET2', resistanceOhm: 0.00012 }),
-    part({ id: 'E1', kind: 'bond', from: 'BUS−', to: 'earth', size: { system: 'mm2', areaMm2: 16 }, lengthM: 3.5 }),
-  ];
-  const all = [...strings, ...links, ...rest];
-  const night: OperatingCase = {
-    id: 'winter-night',
-    label: 'Winter night',
-    ambientDegC: -5,
-    irradianceWPerM2: 0,
-    surge: undefined,
-    changed: new Map(
-      all.filter(({ kind }) => kind === 'string').map((one) => [one.id, { ...one, stateOfCharge: 0.5 } as Part]),
-    ),
-  };
-  const day: OperatingCase = {
-    id: 'sunny-day',
-    label: 'Sunny day, nobody at home',
-    ambientDegC: 12,
-    irradianceWPerM2: 800,
-    surge: undefined,
-    changed: new Map(all.filter(({ id }) => id === 'INV1').map((one) => [one.id, { ...one, on: false } as Part])),
-  };
-  const surge: OperatingCase = {
-    id: 'saw-start',
-    label: 'Saw starting',
-    ambientDegC: -5,
-    irradianceWPerM2: 0,
-    surge: 'INV1' as PartId,
-    changed: new Map(),
-  };
-  return job({
-    title: 'Ridge cabin: three 24 V strings',
-    preparedFor: 'The hut association (invented)',
-    preparedBy: 'A. Writer',
-    practiceEdition: 'IEC 60364-4-43:2008, as adopted locally',
-    notes: 'Invented for a test. Two strings are six years old, one was replaced.',
-    parts: all,
-    cases: [night, day, surge],
-    demand: [
-      {
-        label: 'Lights',
-        powerW: 8,
-        quantity: 9,
-        hoursPerDay: [5, 5, 4, 3, 3, 2, 2, 3, 3, 4, 5, 6],
-        supply: 'dc',
-        together: true,
-      },
-      {
-        label: 'Washing machine',
-        powerW: 700,
-        quantity: 1,
-        hoursPerDay: Array.from({ length: 12 }, () => 0.4),
-        supply: 'ac',
-        surgeW: 2100,
-        together: false,
-      },
-    ],
-    readings: [
-      {
-        id: 'R1',
-        case: 'winter-night',
-        quantity: 'voltage',
-        plus: 'BUS+',
-        minus: 'BUS−',
-        valueV: 25.02,
-        meter: 'handheld',
-        set: 'as-found',
-        takenAt: '2025-01-14',
-        takenBy: 'A. W.',
-      },
-      {
-        id: 'R2',
-        case: 'winter-night',
-        quantity: 'current',
-        part: 'S-A',
-        valueA: 12.4,
-        standardUncertainty: 0.5,
-        set: 'as-found',
-      },
-    ],
-  });
-}
-
 export const cabinChecks: CheckReport = {
   findings: [
     {
@@ -517,7 +164,7 @@ export const cabinChecks: CheckReport = {
     { rule: 'device-voltage', parts: ['F-INV'] as PartId[], missing: 'ratingV of fuse F-INV' },
     {
       rule: 'terminal-temperature',
-      parts: ['C-INV+', 'C-INV−'] as PartId[],
+      parts: ['C-INV+', 'C-INV-'] as PartId[],
       missing: 'insulationDegC of the inverter leads, and the temperature rating of the inverter terminals',
     },
   ],
@@ -528,7 +175,7 @@ export const cabinChecks: CheckReport = {
 };
 
 export function cabinInput(options: Partial<ReportInput['options']> = {}): ReportInput {
-  const cabin = cabinJob();
+  const job = checked(cabin);
   const assumptions = [
     assumption(null, 'ambientDegC', 25, {
       unit: 'degC',
@@ -556,7 +203,7 @@ export function cabinInput(options: Partial<ReportInput['options']> = {}): Repor
       basis: PUBLISHED,
       text: 'stranded copper taken, since the job does not say',
     }),
-    assumption('C-INV−', 'conductor', 'stranded copper taken, since the job does not say', {
+    assumption('C-INV-', 'conductor', 'stranded copper taken, since the job does not say', {
       basis: PUBLISHED,
       text: 'stranded copper taken, since the job does not say',
     }),
@@ -567,7 +214,7 @@ export function cabinInput(options: Partial<ReportInput['options']> = {}): Repor
     }),
   ];
   const wanted = 6666.7;
-  const collapsed = point(cabin, {
+  const collapsed = point(job, {
     case: 'saw-start',
     outcome: 'collapse',
     parts: new Map(),
@@ -581,11 +228,11 @@ export function cabinInput(options: Partial<ReportInput['options']> = {}): Repor
     },
   });
   return {
-    job: cabin,
+    job,
     tables,
     points: [
-      point(cabin, { case: 'winter-night', assumptions }),
-      point(cabin, { case: 'sunny-day', assumptions: assumptions.slice(0, 4) }),
+      point(job, { case: 'winter-night', assumptions }),
+      point(job, { case: 'sunny-day', assumptions: assumptions.slice(0, 4) }),
       collapsed,
     ],
     checkReport: cabinChecks,
