@@ -20,7 +20,7 @@ const quick = process.argv.includes('--quick');
 const files = readdirSync(here)
   .filter((f) => f.endsWith('.bench.ts'))
   .filter((f) => wanted.length === 0 || wanted.includes(basename(f, '.bench.ts')))
-  .sort();
+  .toSorted();
 
 const missing = [];
 const report = {

@@ -100,3 +100,35 @@ export function bothTriangles(pattern: Pattern): { starts: Int32Array; rows: Int
   for (let j = 0; j < size; j++) starts[j + 1]! += starts[j]!;
   return { starts, rows: Int32Array.from(list, (t) => t[1]), source: Int32Array.from(list, (t) => t[2]) };
 }
+
+/** As `WiringMatrix`, but unsymmetric. */
+export interface GeneralMatrix {
+  readonly pattern: Pattern;
+  readonly values: readonly Float64Array[];
+  readonly rightHandSides: readonly Float64Array[];
+}
+
+/**
+ * Wiring with converters, one for each 20 junctions: each draws at one junction a current that depends on the voltage at another, so the
+ * matrix has an entry without its mirror image.
+ */
+export function generalMatrix(request: WiringRequest): GeneralMatrix {
+  const { pattern: upper, values, rightHandSides } = wiringMatrix(request);
+  const { starts, rows, source } = bothTriangles(upper);
+  const random = seeded(request.seed + 1);
+  const { size } = request;
+  const columns = Int32Array.from(rows);
+  for (let j = 0; j < size; j++) columns.fill(j, starts[j], starts[j + 1]);
+  const inputs = Array.from({ length: Math.floor(size / 20) }, () => Math.floor(random() * size));
+  const outputs = inputs.map((i) => (i + 1 + Math.floor(random() * 8)) % size);
+  const { pattern, slots } = patternFromEntries(size, [...rows, ...inputs], [...columns, ...outputs], {
+    symmetric: false,
+  });
+  const general = values.map((v) => {
+    const w = new Float64Array(pattern.rowIndices.length);
+    for (let k = 0; k < source.length; k++) w[slots[k]!] = v[source[k]!]!;
+    for (let k = source.length; k < slots.length; k++) w[slots[k]!] = w[slots[k]!]! + 0.1 * random();
+    return w;
+  });
+  return { pattern, values: general, rightHandSides };
+}

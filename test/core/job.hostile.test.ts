@@ -1,6 +1,8 @@
+import * as fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
-import { parseJob } from '../../core/job/parseJob.ts';
+import { checkJob, parseJob } from '../../core/job/parseJob.ts';
 import { hostileJobs } from '../hosts/hostileJobs.ts';
+import { everyKind } from './jobEveryKind.ts';
 
 const corpus = hostileJobs();
 
@@ -33,5 +35,51 @@ describe('each hostile text is answered with sentences, at the right place', () 
   });
   test('and nothing of it reached the objects of the program', () => {
     expect(({} as Record<string, unknown>)['polluted']).toBeUndefined();
+  });
+});
+
+describe('values that are no JSON at all, as a screen might hand them over', () => {
+  const anyValue = fc.anything({
+    withBigInt: true,
+    withDate: true,
+    withMap: true,
+    withNullPrototype: true,
+    withObjectString: true,
+    withSet: true,
+    withSparseArray: true,
+    withTypedArray: true,
+  });
+  type Holder = Record<string, unknown>;
+  /** Puts a value somewhere into the job: goes down by the steps as far as there is something to go into. */
+  function put(job: Holder, steps: readonly number[], value: unknown): void {
+    let holder = job;
+    let name = '';
+    for (const step of steps) {
+      const names = Object.keys(holder);
+      name = names[step % names.length] ?? 'x';
+      const below = holder[name];
+      if (typeof below !== 'object' || below === null || Object.keys(below).length === 0) break;
+      if (step % 5 !== 0) holder = below as Holder;
+    }
+    holder[Object.hasOwn(holder, name) ? name : Object.keys(holder)[0]!] = value;
+  }
+  test('never make it throw, and what is refused is refused with a sentence', () => {
+    fc.assert(
+      fc.property(fc.array(fc.nat(1000), { minLength: 1, maxLength: 6 }), anyValue, (steps, value) => {
+        const job = everyKind();
+        put(job, steps, value);
+        const read = checkJob(job);
+        const messages = read.ok ? [] : read.issues.map((issue) => issue.message);
+        expect(messages.filter((message) => !/[.?)]$/.test(message) || message.length > 700)).toEqual([]);
+      }),
+      { seed: 51, numRuns: 3000 },
+    );
+  });
+  test('a job that holds itself is refused, not followed for ever', () => {
+    const job = everyKind();
+    job['site'] = job;
+    job.parts[0]!['range'] = job.parts[0];
+    job.cases[0]!['set'] = { S1: job };
+    expect(checkJob(job).ok).toBe(false);
   });
 });
