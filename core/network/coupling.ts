@@ -11,6 +11,9 @@ import type { ConverterValve, JoinerValve, TrackerValve, Valve } from './valve.t
 
 type Coupler = ConverterValve | TrackerValve | JoinerValve;
 
+/** At an array's very best power its volts are not fixed; a set power stays this little below it. */
+export const SHORT_OF_NOSE = 1 - 1e-6;
+
 export class Coupling {
   /** Current in each tie, from `from` to `to`, after `balance`. */
   readonly ties = new Map<Element, number>();
@@ -48,7 +51,7 @@ export class Coupling {
     }
   }
 
-  /** Hands each side's figures to the other; returns the largest relative change, 0 when nothing is coupled. */
+  /** Hands each side's figures to the other; returns the largest change of a current, A; 0 when nothing is coupled. */
   update(share: number): number {
     if (this.couplers.length === 0) return 0;
     this.balance();
@@ -57,14 +60,14 @@ export class Coupling {
       const target = valve.kind === 'tracker' && valve.state === 'tracking' ? valve.element : valve.input;
       const next = this.figureFor(valve);
       if (next === null || target.law === Law.none || target.law === Law.tie) continue;
-      const size = Math.max(Math.abs(next), Math.abs(target.a), 1e-9);
-      moved = Math.max(moved, Math.abs(next - target.a) / size);
+      const before = target.i;
       target.a = next;
       evaluate(target, target.v);
       if (share !== 1 && target.law !== Law.powerSource) {
         target.i *= share;
         target.slope *= share;
       }
+      moved = Math.max(moved, Math.abs(target.i - before));
     }
     return moved;
   }
@@ -75,11 +78,13 @@ export class Coupling {
       const inputA = this.ties.get(valve.input) ?? 0;
       return Math.max(0, valve.efficiency * valve.trackedV * inputA);
     }
-    const outputA = valve.state === 'held' ? Math.max(0, -(this.ties.get(valve.element) ?? 0)) : valve.limitA;
-    if (valve.kind === 'joiner') return outputA;
-    const outputV = valve.state === 'held' ? valve.setpointV : Math.max(0, valve.element.v);
-    const standbyW = valve.kind === 'converter' ? valve.standbyW : 0;
-    return (outputV * outputA) / valve.efficiency + standbyW;
+    // While states are being tried a held output may ask for more than its limit: the input is never asked for that.
+    const heldA = Math.min(valve.limitA, Math.max(0, -(this.ties.get(valve.element) ?? 0)));
+    const outputA = valve.state === 'held' ? heldA : valve.limitA;
+    if (valve.kind === 'joiner') return Math.min(outputA, valve.availableA);
+    const outputV = valve.state === 'held' ? valve.setpointV : Math.min(valve.setpointV, Math.max(0, valve.element.v));
+    const inputW = (outputV * outputA) / valve.efficiency;
+    return valve.kind === 'converter' ? inputW + valve.standbyW : Math.min(inputW, valve.availableW * SHORT_OF_NOSE);
   }
 }
 

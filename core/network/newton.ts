@@ -79,8 +79,9 @@ export class Assembled {
       this.evaluateAll(share);
       const moved = this.coupling.update(share);
       const { norm, floor } = this.residual();
-      if (norm <= floor && moved <= 1e-14) return this.isHighBranch();
-      if (norm >= 0.5 * best && norm <= 64 * floor && moved <= 1e-12 && ++stalled >= 2) return this.isHighBranch();
+      if (norm <= floor && moved <= 16 * floor) return this.isHighBranch();
+      if (norm >= 0.5 * best && norm <= 64 * floor && moved <= 256 * floor && ++stalled >= 2)
+        return this.isHighBranch();
       best = Math.min(best, norm);
       if (!this.newtonStep()) return false;
     }
@@ -145,7 +146,9 @@ export class Assembled {
   private newtonStep(): boolean {
     this.fillValues();
     const report = this.factorisation.refactor(this.values);
-    if (!report.regular || report.negativePivots > 0) return false;
+    if (!report.regular || report.negativePivots > 0) {
+      return false;
+    }
     const { r, step } = this;
     for (let k = 0; k < r.length; k++) r[k] = -r[k]!;
     this.factorisation.solve(r, step);

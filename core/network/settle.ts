@@ -4,8 +4,10 @@
  * (Murty's least-index rule), which cannot cycle on networks of resistances.
  */
 import { Defect } from '../job/issue.ts';
-import { maximumPower } from '../solar/arrayCurve.ts';
+import type { Part } from '../job/part.ts';
+import { currentAt, maximumPower } from '../solar/arrayCurve.ts';
 import type { Circuit } from './circuit.ts';
+import { SHORT_OF_NOSE } from './coupling.ts';
 import type { Element } from './element.ts';
 import { Law } from './element.ts';
 import type { GraphView } from './graph.ts';
@@ -40,13 +42,14 @@ function startController(
   valve: Extract<Valve, { kind: 'tracker' | 'joiner' }>,
   isLive: (element: Element) => boolean,
 ): void {
-  const island = graph.island[valve.input.from]!;
-  const arrays = circuit.elements.filter((e) => e.law === Law.array && island >= 0 && graph.island[e.from] === island);
+  const arrays = feedingArrays(circuit, valve.input);
   if (arrays.length === 0 || !isLive(valve.input) || graph.island[valve.element.from]! < 0) {
     enter(valve, 'off');
     return;
   }
   if (valve.kind === 'joiner') {
+    const atSetpointA = arrays.reduce((sum, e) => sum + currentAt(e.curve!, valve.setpointV).currentA, 0);
+    valve.availableA = Math.max(0, atSetpointA * OFF_THE_PLATEAU);
     enter(valve, 'direct');
     return;
   }
@@ -57,10 +60,54 @@ function startController(
   enter(valve, 'tracking');
 }
 
-/** Solves with valve states found on the way; constant-power sinks at `share` of their figures. */
+/** The arrays whose plus reaches an input through conductors, fuses, switches and diodes alone. */
+function feedingArrays(circuit: Circuit, input: Element): Element[] {
+  const diodes = new Set(circuit.valves.flatMap((valve) => (valve.kind === 'diode' ? [valve.element] : [])));
+  const passes = (element: Element) => {
+    if (diodes.has(element)) return true;
+    const kind = circuit.parts[element.partIndex]!.kind;
+    return element.law !== Law.none && (isTwoEnded(kind) || kind === 'busbar');
+  };
+  const reached = new Set([input.from]);
+  for (let grown = true; grown; ) {
+    grown = false;
+    for (const element of circuit.elements) {
+      if (reached.has(element.from) === reached.has(element.to) || !passes(element)) continue;
+      reached.add(element.from);
+      reached.add(element.to);
+      grown = true;
+    }
+  }
+  return circuit.elements.filter((element) => element.law === Law.array && reached.has(element.from));
+}
+
+function isTwoEnded(kind: Part['kind']): boolean {
+  return ['cable', 'fuse', 'breaker', 'switch', 'shunt', 'joint', 'bond'].includes(kind);
+}
+
+/** Well below the maximum-power point an array's curve is flat: a set current a hair under it still fixes the volts. */
+const OFF_THE_PLATEAU = 1 - 1e-8;
+
+/**
+ * Solves with valve states found on the way; constant-power sinks at `share` of their figures. Every disagreeing valve changes
+ * at once; where that leads to states without a solution or round in circles, again from the start one valve at a time.
+ */
 export function settle(circuit: Circuit, graph: GraphView, share: number): Settled {
-  let fewest = Number.POSITIVE_INFINITY;
-  let patience = 3;
+  const together = pivot(circuit, graph, share, 3);
+  if (together !== null && (together.ok || circuit.valves.length === 0)) return together;
+  startStates(circuit, graph);
+  const singly = pivot(circuit, graph, share, 0);
+  if (singly === null) throw new Defect('the states of chargers, diodes and controllers settle');
+  return singly;
+}
+
+/** Principal pivoting; `patience` is how often all changes together may fail to lessen their number. Null: no end found. */
+function pivot(circuit: Circuit, graph: GraphView, share: number, patience: number): Settled | null {
+  let fewest = patience === 0 ? 0 : Number.POSITIVE_INFINITY;
+  let left = patience;
+  let rescues = 0;
+  // Constant-power loads can make two states each point to the other: on a return the next valve in line changes instead.
+  const visits = new Map<string, number>();
   const limit = 60 + 12 * circuit.valves.length;
   for (let pass = 0; pass < limit; pass++) {
     const reduction = reduce(circuit, graph);
@@ -70,20 +117,28 @@ export function settle(circuit: Circuit, graph: GraphView, share: number): Settl
     }
     const assembled = new Assembled(circuit, reduction.value);
     if (!assembled.solveUnloaded()) return { ok: false, assembled };
-    if (!assembled.solve(share)) return { ok: false, assembled };
-    if (!trackMaximumPower(assembled, share)) return { ok: false, assembled };
+    if (!assembled.solve(share) || !trackMaximumPower(assembled, share)) {
+      if (!callOnOthers(circuit, assembled, rescues++)) return { ok: false, assembled };
+      continue;
+    }
     assembled.coupling.balance();
     const changes = disagreements(circuit, assembled);
     if (changes.length === 0) return { ok: true, assembled };
     if (changes.length < fewest) {
       fewest = changes.length;
-      patience = 3;
-    } else patience--;
+      left = patience;
+    } else left--;
     unpark(circuit);
-    const chosen = patience >= 0 ? changes : changes.slice(0, 1);
+    const before = visits.get(signature(circuit)) ?? 0;
+    visits.set(signature(circuit), before + 1);
+    const chosen = left >= 0 ? changes : [changes[before % changes.length]!];
     for (const { valve, state } of chosen) enter(valve, state);
   }
-  throw new Defect('the states of chargers, diodes and controllers settle');
+  return null;
+}
+
+function signature(circuit: Circuit): string {
+  return circuit.valves.map((valve) => valve.state).join(' ');
 }
 
 /** Sinks set aside because closed valves cut them off get another chance in the next states. */
@@ -94,6 +149,37 @@ function unpark(circuit: Circuit): void {
     sink.parkedLaw = null;
     sink.state = 'on';
   }
+}
+
+/** Sources that give nothing although the volts across them lie below their set point, and diodes that block forwards. */
+function idleSources(circuit: Circuit, assembled: Assembled): Valve[] {
+  return circuit.valves.filter((valve) => {
+    if (valve.state !== 'off' || assembled.reduction.node[valve.element.from] === -2) return false;
+    if (valve.kind === 'diode') return voltsAcross(valve.element, assembled) > valve.forwardV;
+    if (valve.kind === 'tracker' && valve.availableW <= 0) return false;
+    if (valve.kind === 'joiner' && valve.availableA <= 0) return false;
+    if (valve.kind === 'converter' && valve.input.law === Law.none) return false;
+    return voltsAcross(valve.element, assembled) < valve.setpointV * (1 - 1e-9);
+  });
+}
+
+/**
+ * A trial without a solution may only mean wrong states: volts that give way call on whatever source stands idle above them;
+ * failing that, once, sources that push a set current or power hold their volts instead. False when there is nothing to try.
+ */
+function callOnOthers(circuit: Circuit, assembled: Assembled, rescues: number): boolean {
+  const idle = idleSources(circuit, assembled);
+  for (const valve of idle) enter(valve, startOf(valve));
+  if (idle.length > 0) return true;
+  const pushing = circuit.valves.filter((valve) => valve.state === 'tracking' || valve.state === 'limited');
+  if (rescues > 0 || pushing.length === 0) return false;
+  for (const valve of pushing) enter(valve, 'held');
+  return true;
+}
+
+function startOf(valve: Valve): ValveState {
+  if (valve.kind === 'tracker') return 'tracking';
+  return valve.kind === 'joiner' ? 'direct' : 'held';
 }
 
 interface Change {
@@ -141,7 +227,9 @@ function disagreements(circuit: Circuit, assembled: Assembled): Change[] {
       valve.kind === 'diode'
         ? diodeState(valve, v, tieA, smallA, drifts)
         : sourceState(valve, { v, tieA, smallA, drifts }, assembled);
-    if (state !== null) changes.push({ valve, state });
+    if (state !== null) {
+      changes.push({ valve, state });
+    }
   }
   return changes;
 }
@@ -165,6 +253,8 @@ interface Seen {
   readonly drifts: boolean;
 }
 
+const NOSE_BAND = 2 * (1 - SHORT_OF_NOSE);
+
 function sourceState(valve: Exclude<Valve, { kind: 'diode' }>, seen: Seen, assembled: Assembled): ValveState | null {
   const { v, tieA, smallA, drifts } = seen;
   const smallV = 1e-11 * Math.max(1, valve.setpointV);
@@ -174,13 +264,14 @@ function sourceState(valve: Exclude<Valve, { kind: 'diode' }>, seen: Seen, assem
     case 'held':
       if (outputA > valve.limitA + smallA) return 'limited';
       if (outputA < -smallA) return 'off';
-      return beyondInput(valve, valve.setpointV * outputA, assembled);
+      return beyondInput(valve, { v: valve.setpointV, outputA }, assembled);
     case 'limited':
       if (over) return 'held';
-      return beyondInput(valve, v * valve.limitA, assembled);
+      return beyondInput(valve, { v, outputA: valve.limitA }, assembled);
     case 'tracking':
-      if (over) return 'held';
-      return -valve.element.i > valve.limitA + smallA ? 'limited' : null;
+      // The band matches SHORT_OF_NOSE, so that a controller at its corner does not swing between two states.
+      if (v > valve.setpointV * (1 + NOSE_BAND)) return 'held';
+      return -valve.element.i > valve.limitA * (1 + NOSE_BAND) ? 'limited' : null;
     case 'direct': {
       const linkA = valve.kind === 'joiner' ? (assembled.coupling.ties.get(valve.plusLink) ?? 0) : 0;
       if (over) return 'held';
@@ -195,11 +286,14 @@ function sourceState(valve: Exclude<Valve, { kind: 'diode' }>, seen: Seen, assem
 /** A controller cannot pass on more than its array gives: then it tracks (or joins) instead. */
 function beyondInput(
   valve: Exclude<Valve, { kind: 'diode' }>,
-  outputW: number,
+  { v, outputA }: { readonly v: number; readonly outputA: number },
   assembled: Assembled,
 ): ValveState | null {
-  if (valve.kind === 'tracker') return outputW / valve.efficiency > valve.availableW * (1 + 1e-10) ? 'tracking' : null;
+  if (valve.kind === 'tracker') {
+    return (v * outputA) / valve.efficiency > valve.availableW * SHORT_OF_NOSE ? 'tracking' : null;
+  }
   if (valve.kind !== 'joiner') return null;
+  if (outputA > valve.availableA * (1 + 1e-10)) return 'direct';
   const inputV = voltsAcross(valve.input, assembled);
   const outputV = voltsAcross(valve.element, assembled);
   return inputV < outputV - 1e-10 * Math.max(1, outputV) ? 'direct' : null;

@@ -51,10 +51,12 @@ class Search {
     else this.high = Math.min(this.high, v);
     const secant = v - (f * (v - this.lastV)) / (f - this.lastF);
     let next = Number.isFinite(secant) ? secant : v * (1 + 1e-3 * Math.sign(f));
-    if (f === 0) next = v;
+    if (Math.abs(f) <= 1e-13 * Math.abs(inputA)) next = v;
     else if (!(next > this.low && next < this.high)) {
       next = this.high === Number.POSITIVE_INFINITY ? v * 1.1 : 0.5 * (this.low + this.high);
     }
+    // Without an upper bracket the secant may point far beyond open circuit.
+    next = Math.min(next, 1.25 * v);
     this.lastV = v;
     this.lastF = f;
     this.changeV = next - v;
