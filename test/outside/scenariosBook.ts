@@ -1,4 +1,10 @@
-/** The acceptance scenarios: their inputs and expected values, and a tally of which values a test has held. */
+/**
+ * The acceptance scenarios: their inputs and expected values, and a tally of which values a test has held.
+ *
+ * A solve answers S01, S03, S05, S17, S19 and most of S07 and S11. Left to the tests of other capabilities: S09 (sizing a cable),
+ * S13 (deviations of block readings), S15 (a winter's energy).
+ */
+import { expect, it } from 'vitest';
 import bookText from './data/scenarios.json?raw';
 
 interface Expected {
@@ -49,6 +55,13 @@ export class ScenarioPage {
     throw new Error(`${this.id}, ${name}: got ${figure}, the book says ${value} within ${tol}`);
   }
 
+  /** Holds a verdict, or a round figure that the book gives without a tolerance. */
+  holdVerdict(name: string, verdict: boolean | number): void {
+    const { value } = this.rowOf(name);
+    this.held.add(name);
+    if (verdict !== value) throw new Error(`${this.id}, ${name}: got ${verdict}, the book says ${value}`);
+  }
+
   /** Names of the values that no test has held so far. */
   left(): readonly string[] {
     return this.expected.map(({ name }) => name).filter((name) => !this.held.has(name));
@@ -64,4 +77,11 @@ export class ScenarioPage {
 /** A scenario's own inputs, as they stand in the book. */
 export function inputsOf(id: string): unknown {
   return scenarios.find((scenario) => scenario.id === id)?.inputs;
+}
+
+/** A last test of a scenario: fails when a value was neither held nor named as another capability's answer. */
+export function closePage(page: ScenarioPage, notASolve: readonly string[] = []): void {
+  it("every value of the scenario is held above or named as not a solve's", () => {
+    expect(page.left()).toStrictEqual(notASolve);
+  });
 }
