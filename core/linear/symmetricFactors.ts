@@ -55,6 +55,8 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
     if (this.address >= 0) {
       this.lookAgain();
       this.y.set(b);
+      // The place behind the right-hand side stands for known volts: what an earlier, hopeless matrix left there must go.
+      this.w[2 * this.pattern.size + 1] = 0;
       residence.functions!['solve']!(this.address);
       x.set(this.y);
       return;

@@ -49,7 +49,9 @@ interface Import {
 
 function importsOf(path: string): Import[] {
   const text = readFileSync(path, 'utf8');
-  const found = [...text.matchAll(/(?:from|import)\s*\(?\s*['"]([^'"]+)['"]/g)].map((match) => match[1]!);
+  // Statements only: a text such as "optionalNumber('from')" is no import.
+  const statement = /^(?:import|export)\s(?:[\w\s{},*]*\sfrom\s+)?['"]([^'"]+)['"]|\bimport\(\s*['"]([^'"]+)['"]/gm;
+  const found = [...text.matchAll(statement)].map((match) => match[1] ?? match[2]!);
   return found.map((what) => ({
     file: relative(root, path),
     what,
