@@ -13,8 +13,11 @@ import {
   type CheckReport,
   caseById,
   type Finding,
+  type JunctionId,
+  type OperatingPoint,
   operatingPoint,
   parseJob,
+  type Reading,
   runChecks,
 } from '../../core/api.ts';
 import { examples } from '../../data/examples/index.ts';
@@ -68,6 +71,19 @@ function sorted(words: readonly string[]): readonly string[] {
   return copy;
 }
 
+/** How far a reading lies from what the solve says, in the reading's own unit. */
+function readingGap(reading: Reading, point: OperatingPoint): number {
+  const volts = (junction: JunctionId) => point.junctions.get(junction) ?? Number.NaN;
+  switch (reading.quantity) {
+    case 'voltage':
+      return Math.abs(reading.valueV - (volts(reading.plus) - volts(reading.minus)));
+    case 'current':
+      return Math.abs(reading.valueA - (point.parts.get(reading.part)?.currentA ?? Number.NaN));
+    case 'temperature':
+      return Math.abs(reading.valueDegC - (point.parts.get(reading.part)?.conductorDegC ?? Number.NaN));
+  }
+}
+
 describe.each(examples)('$name', ({ name, title, oneLine, text }) => {
   const job = jobOf(text);
 
@@ -105,6 +121,19 @@ describe.each(examples)('$name', ({ name, title, oneLine, text }) => {
       // A case in which a load gives up is no ordinary one; the seeded job may have one.
       const dropped = [...point.parts.values()].filter(({ state }) => state === 'dropped-out').map((part) => part.id);
       expect(dropped).toStrictEqual(name === SEEDED && id === 'inverter-surge' ? ['INV'] : []);
+    }
+  });
+
+  it('has readings that the solve explains within three times their own uncertainty', () => {
+    expect(job.readings.length).toBeGreaterThan(0);
+    for (const reading of job.readings) {
+      const operatingCase = caseById(job, reading.case ?? '')!;
+      const point = operatingPoint({ job, operatingCase, tables, model: 'slow' });
+      const gap = readingGap(reading, point);
+      expect([reading.id, gap <= 3 * (reading.standardUncertainty ?? 0) ? 'explained' : gap]).toStrictEqual([
+        reading.id,
+        'explained',
+      ]);
     }
   });
 

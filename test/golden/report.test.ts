@@ -1,0 +1,57 @@
+/** The whole paper of one invented job as plain text, word for word; a change of wording or order shows here and nowhere else first. */
+import { expect, test } from 'vitest';
+import { buildReport } from '../../core/report/buildReport.ts';
+import type { Block, ReportDocument } from '../../core/report/document.ts';
+import { cellText } from '../../core/report/document.ts';
+import { cabinInput } from '../core/reportSample.ts';
+
+test('the cabin reads as it did', async () => {
+  await expect(transcript(buildReport(cabinInput()))).toMatchFileSnapshot('report-cabin.txt');
+});
+
+function transcript({ title, subject, author, paper, preparedOn, program, footer, blocks }: ReportDocument): string {
+  const head = [title, subject, author, `${paper}, ${preparedOn ?? 'undated'}, ${program}`, footer];
+  return `${[...head, ...blocks.flatMap(linesOf)].join('\n').replaceAll('\u00a0', ' ')}\n`;
+}
+
+function linesOf(block: Block): readonly string[] {
+  switch (block.kind) {
+    case 'cover':
+      return [
+        '',
+        ...block.facts.map(({ label, value }) => `${label}: ${value}`),
+        ...block.statement,
+        ...block.blanks.map((label) => `${label}: ______`),
+      ];
+    case 'heading':
+      return ['', `${'#'.repeat(block.level)} ${block.text}`];
+    case 'paragraph':
+      return [block.text];
+    case 'list':
+      return block.items.map((item, index) => `${block.ordered ? `${index + 1}.` : '-'} ${item}`);
+    case 'caution':
+      return [`! ${block.title}`, ...block.points.map((point) => `! - ${point}`)];
+    case 'facts':
+      return block.facts.map(({ label, value }) => `${label}: ${value}`);
+    case 'entry':
+      return [
+        `${block.number} ${block.word} ${block.title}`,
+        ...block.facts.map(({ label, value }) => `   ${label}: ${value}`),
+      ];
+    case 'table':
+      return [
+        `[${block.caption}]`,
+        block.columns
+          .map(({ head, unit }) => (unit === undefined || unit === '' ? head : `${head} ${unit}`))
+          .join(' | '),
+        ...block.rows.map((row) => row.map(cellText).join(' | ')),
+        ...block.notes.map((note) => `(${note})`),
+      ];
+    case 'figure':
+      return [`[${block.title}: ${block.shapes.length} shapes] ${block.alt}`];
+    case 'sources':
+      return block.items.map(({ number, text, status }) => `[${number}] ${text} (${status})`);
+    case 'pageBreak':
+      return [`--- ${block.orientation}`];
+  }
+}
