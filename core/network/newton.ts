@@ -7,6 +7,7 @@
  * (no negative pivot) certifies that it is that branch.
  */
 import { analyseSymmetric } from '../linear/analyseSymmetric.ts';
+import type { LowRankUpdate } from '../linear/lowRankUpdate.ts';
 import type { Factorisation } from '../linear/matrix.ts';
 import { patternFromEntries } from '../linear/patternFromEntries.ts';
 import { openCircuitV } from '../solar/arrayCurve.ts';
@@ -84,6 +85,24 @@ export class Assembled {
         return this.isHighBranch();
       best = Math.min(best, norm);
       if (!this.newtonStep()) return false;
+    }
+    return false;
+  }
+
+  /**
+   * From a nearby solution, steps with a fixed (updated) factorisation until the balance holds; false where that does not
+   * get there. The elements may have changed since the factors were made: only the speed depends on them, not the answer.
+   */
+  solveByChord(update: LowRankUpdate): boolean {
+    for (let pass = 0; pass < 60; pass++) {
+      this.evaluateAll(1);
+      const moved = this.coupling.update(1);
+      const { norm, floor } = this.residual();
+      if (norm <= 4 * floor && moved <= 16 * floor) return true;
+      const { r, step } = this;
+      for (let k = 0; k < r.length; k++) r[k] = -r[k]!;
+      update.solve(r, step);
+      this.move(step, 1);
     }
     return false;
   }

@@ -209,7 +209,7 @@ function giveWay(
 }
 
 /** Valves whose state contradicts the solution, in job order. */
-function disagreements(circuit: Circuit, assembled: Assembled): Change[] {
+export function disagreements(circuit: Circuit, assembled: Assembled): Change[] {
   const { volts, coupling } = assembled;
   const changes: Change[] = [];
   // Rounding must not flip a valve: currents and volts closer than this to a corner are on it.

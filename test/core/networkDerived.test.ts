@@ -3,9 +3,10 @@ import { caseById } from '../../core/job/job.ts';
 import { parseJob } from '../../core/job/parseJob.ts';
 import type { JunctionId, PartId } from '../../core/job/part.ts';
 import { solveCircuit } from '../../core/network/operatingPoint.ts';
-import { sensitivities } from '../../core/network/sensitivity.ts';
 import type { Target } from '../../core/network/sensitivity.ts';
+import { sensitivities } from '../../core/network/sensitivity.ts';
 import { theveninAt } from '../../core/network/thevenin.ts';
+import { whatIf } from '../../core/network/whatIf.ts';
 import { tables } from '../../data/index.ts';
 
 type RawPart = Record<string, unknown> & { id: string };
@@ -155,5 +156,58 @@ describe('a Thévenin source', () => {
     const more = solve([...coupled, { id: 'X', kind: 'load', plus: 'lp', minus: 'n', currentA: added }]);
     const fall = seen.openV - more.point.junctions.get('lp' as JunctionId)!;
     expect(Math.abs(fall / added / seen.resistanceOhm - 1)).toBeLessThan(1e-5); // first order in a 0.1 mA step
+  });
+});
+
+describe('a what-if by low-rank update gives what a new solve gives', () => {
+  const changed = (parts: RawPart[], id: string, resistanceOhm: number) =>
+    parts.map((part) => (part.id === id ? { ...part, resistanceOhm } : part));
+  const cases: [string, RawPart[], string, number][] = [
+    ['a worn cable beside a constant-power load', twoStrings, 'C1', 0.009],
+    ['a sick string', twoStrings, 'B', 0.05],
+    ['a better lead', twoStrings, 'LB', 0.0002],
+    ['a bad return before a converter', coupled, 'C2', 0.09],
+  ];
+  test.each(cases)('%s', (_, parts, id, resistanceOhm) => {
+    const solved = solve(parts);
+    const before = [...solved.point.junctions];
+    const quick = whatIf(solved, [{ part: id as PartId, resistanceOhm }])!;
+    const anew = solve(changed(parts, id, resistanceOhm)).point;
+    for (const [junction, volts] of anew.junctions) {
+      expect(Math.abs(quick.volts.get(junction)! - volts!), junction).toBeLessThan(1e-10); // rounding of 12 V over 1e-4 S
+    }
+    for (const [part, amps] of quick.currentA) {
+      expect(Math.abs(amps - anew.parts.get(part)!.currentA!), part).toBeLessThan(1e-7); // the same volts over some 0.2 mohm
+    }
+    // The solved circuit is as it was.
+    const again = whatIf(solved, [])!;
+    for (const [junction, volts] of before) expect(again.volts.get(junction)).toBeCloseTo(volts!, 11);
+  });
+
+  test('an opened lead', () => {
+    const solved = solve(twoStrings);
+    const quick = whatIf(solved, [{ part: 'LB' as PartId, resistanceOhm: 'open' }])!;
+    expect(Math.abs(quick.currentA.get('B' as PartId)!)).toBeLessThan(1e-9);
+    expect(quick.volts.get('b' as JunctionId)).toBeCloseTo(12.7, 9); // the string at rest
+  });
+
+  test('two changes at once, and none where a charger would change its state', () => {
+    const solved = solve(twoStrings);
+    const both = whatIf(solved, [
+      { part: 'C1' as PartId, resistanceOhm: 0.004 },
+      { part: 'A' as PartId, resistanceOhm: 0.02 },
+    ])!;
+    const anew = solve(changed(changed(twoStrings, 'C1', 0.004), 'A', 0.02)).point;
+    expect(both.volts.get('y' as JunctionId)).toBeCloseTo(anew.junctions.get('y' as JunctionId)!, 10);
+    const held: RawPart[] = [
+      battery('A', 'a', 'n', 13.5, 0.1),
+      cable('C', 'a', 'p', 0.05),
+      { id: 'CH', kind: 'charger', plus: 'p', minus: 'n', outputA: 10, setpointV: 14.4 },
+    ];
+    // 0.9 V over 0.15 ohm is 6 A, within the charger's 10 A; over 0.06 ohm it would be 15 A.
+    expect(whatIf(solve(held), [{ part: 'A' as PartId, resistanceOhm: 0.01 }])).toBeNull();
+    expect(
+      whatIf(solve(held), [{ part: 'A' as PartId, resistanceOhm: 0.2 }])!.currentA.get('CH' as PartId),
+    ).toBeCloseTo(3.6, 9);
   });
 });
