@@ -135,6 +135,17 @@ export function partName(job: CheckedJob, id: string): string {
   return part?.label === undefined || part.label === '' || part.label === id ? id : `${id} (${part.label})`;
 }
 
+/** Several parts by name; the two conductors of a run are told as one. */
+export function partNames(job: CheckedJob, ids: readonly string[]): string {
+  const told = ids.flatMap((id) => {
+    const run = id.replace(/\.(?:plus|minus)$/, '');
+    const isBoth = run !== id && ids.includes(`${run}.plus`) && ids.includes(`${run}.minus`);
+    if (!isBoth) return [partName(job, id)];
+    return id.endsWith('.plus') ? [`${partName(job, run)}, both conductors`] : [];
+  });
+  return told.join(', ');
+}
+
 /** The state of a part in plain words; the engine's own words read well, only the hyphens go. */
 export function stateText({ state }: PartAnswer): string {
   return state === undefined ? '' : state.replaceAll('-', ' ');

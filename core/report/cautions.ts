@@ -41,27 +41,27 @@ const withSeveralStrings = (job: CheckedJob): boolean => job.parts.filter((part)
 const aboard = (job: CheckedJob): boolean => job.practice === 'us-marine' || job.practice === 'iso-marine';
 
 const BATTERY_HANDLING: Basis = {
-  source: 'SRC-CFR29-1926.441',
+  source: 'SRC-CFR29-1926-441',
   text: '29 CFR 1926.441, batteries and battery charging: face, hand and body protection; water for flushing within 25 ft (7.6 m)',
   status: 'published',
 };
 const ACID_AND_TOOLS: Basis = {
-  source: 'SRC-CFR29-1910.178',
+  source: 'SRC-CFR29-1910-178',
   text: '29 CFR 1910.178(g), changing and charging storage batteries: acid into water, tools kept off uncovered batteries',
   status: 'published',
 };
 const HYDROGEN: Basis = {
-  source: 'SRC-IEC62485-2',
+  source: 'SRC-CAUTION-HYDROGEN',
   text: 'IEC 62485-2, stationary batteries: hydrogen in air explosive from 4 % by volume',
   status: 'published',
 };
 const METER_CATEGORY: Basis = {
   source: 'SRC-IEC61010-1',
-  text: 'IEC 61010-1, measurement categories CAT II to CAT IV',
-  status: 'from-memory',
+  text: 'measurement categories of IEC 61010-1, as explained in a trade journal',
+  status: 'published',
 };
 const IGNITION: Basis = {
-  source: 'SRC-CFR33-183',
+  source: 'SRC-CFR33-183-410',
   text: '33 CFR 183.410, ignition protection in petrol spaces',
   status: 'published',
 };
@@ -70,6 +70,16 @@ const TOUCH_VOLTS: Basis = {
   text: 'Direct voltages at which codes begin to ask for protection against shock: 50, 60 or 120 V, by code',
   status: 'from-memory',
 };
+
+/** What the cautions lean on. */
+export const cautionBases: readonly Basis[] = [
+  BATTERY_HANDLING,
+  ACID_AND_TOOLS,
+  HYDROGEN,
+  METER_CATEGORY,
+  IGNITION,
+  TOUCH_VOLTS,
+];
 
 const CAUTIONS: readonly Caution[] = [
   {

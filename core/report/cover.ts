@@ -7,7 +7,7 @@ import { CHEMISTRY_WORDS, count, join, MODEL_WORDS } from './wording.ts';
 
 /** What the paper is and is not; repeated in one sentence at the foot of each page and at the end. */
 export const LIMITS: readonly string[] = [
-  "This is arithmetic on the figures that were entered. It takes nothing from the local code, the makers' instructions, the inspector or the licensed electrician: where they differ from this paper, they prevail.",
+  "This is arithmetic on the figures that were entered. It replaces neither the local code nor the makers' instructions, neither the inspector nor the licensed electrician: where they differ from this paper, they prevail.",
   'A dash in the place of a figure means that it was not given; a check listed as not done was not made. Figures marked as assumed are assumed, and the verdicts that lean on them are no better.',
 ];
 

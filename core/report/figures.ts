@@ -1,5 +1,7 @@
 /** How the report prints its figures: at most the digits that the figure deserves, a real minus sign, both units for lengths. */
 
+import { formatQuantity } from '../units/formatQuantity.ts';
+
 /** Exact by definition of the international foot. */
 const METRES_PER_FOOT = 0.3048;
 /** What stands where a figure was not given; every table that uses it says so below. */
@@ -77,11 +79,9 @@ function superscript(exponent: string): string {
   return sign + exponent.replaceAll(/\D/g, '').replaceAll(/\d/g, (digit) => SUPERSCRIPTS.charAt(Number(digit)));
 }
 
-/** A measured or limiting value in the unit that the engine names, e.g. `{ value: 0.041, unit: '1' }` → `4.1 %`. */
-export function withUnit({ value, unit }: { readonly value: number; readonly unit: string }): string {
-  if (unit === '1') return `${percent(value)}\u00a0%`;
-  if (unit === 'ohm' && Math.abs(value) < 1) return `${milliohms(value)}\u00a0mΩ`;
-  return `${plain(Number(value.toPrecision(unit === 'V' || Math.abs(value) >= 1000 ? 4 : 3)))}\u00a0${unitWord(unit)}`;
+/** A measured or limiting value as the findings themselves write it, e.g. `{ value: 0.041, unit: '1' }` → `4.1 %`. */
+export function withUnit(quantity: { readonly value: number; readonly unit: string }): string {
+  return formatQuantity(quantity).replaceAll(' ', NO_BREAK_SPACE).replace(/^-/, MINUS);
 }
 
 /** Units of assumptions and measures as they are printed; any other is printed as it stands. */

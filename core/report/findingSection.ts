@@ -1,7 +1,7 @@
 /** The verdicts worst first, then what could not be judged, then what was compared and held. */
 import type { CheckReport, Finding } from '../checks/finding.ts';
 import { rules } from '../checks/rules.ts';
-import { partName } from './caseWords.ts';
+import { partNames } from './caseWords.ts';
 import { cautionsAt } from './cautions.ts';
 import type { Citations } from './citations.ts';
 import type { Block, EntryBlock, TableBlock } from './document.ts';
@@ -55,7 +55,7 @@ export function findingSection(input: ReportInput, citations: Citations): readon
 }
 
 function entryOf(finding: Finding, number: number, { job, points }: ReportInput, citations: Citations): EntryBlock {
-  const where = finding.parts.map((id) => partName(job, id)).join(', ');
+  const where = partNames(job, finding.parts);
   const caseLabel = job.cases.find(({ id }) => id === finding.case)?.label ?? finding.case.replaceAll(/[-_]/g, ' ');
   const status = STATUS_WORDS[finding.basisStatus];
   const cited = citations.short({ text: finding.basis, status: finding.basisStatus });
@@ -99,7 +99,7 @@ function notDone({ checkReport, job }: ReportInput): readonly Block[] {
     rows: checkReport.notChecked.map(({ rule, missing, parts }) => [
       comparedBy(rule),
       plainFields(missing),
-      parts.map((id) => partName(job, id)).join(', '),
+      partNames(job, parts),
       '',
     ]),
     notes: [],

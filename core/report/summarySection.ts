@@ -1,7 +1,7 @@
 /** The first pages, for the owner and for the one who signs: what matters most, each case in a line, the proof, how to switch off. */
 import type { CheckedJob } from '../job/job.ts';
 import { countAssumptions } from './assumptionSection.ts';
-import { answerLine, balanceLine, hasFigures, partName } from './caseWords.ts';
+import { answerLine, balanceLine, hasFigures, partName, partNames } from './caseWords.ts';
 import { cautionsAt } from './cautions.ts';
 import type { Citations } from './citations.ts';
 import { caseTitle } from './cover.ts';
@@ -74,7 +74,7 @@ function topFindings({ checkReport, job, points }: ReportInput): readonly Block[
         String(index + 1),
         { text: SEVERITY_WORDS[finding.severity].word, mark: finding.severity },
         plainFields(finding.message),
-        finding.parts.map((id) => partName(job, id)).join(', '),
+        partNames(job, finding.parts),
         ...(severalCases
           ? [job.cases.find(({ id }) => id === finding.case)?.label ?? finding.case.replaceAll(/[-_]/g, ' ')]
           : []),

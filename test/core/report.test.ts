@@ -3,9 +3,11 @@ import { describe, expect, test } from 'vitest';
 import type { CheckReport } from '../../core/checks/finding.ts';
 import type { PartId } from '../../core/job/part.ts';
 import { buildReport } from '../../core/report/buildReport.ts';
+import { cautionBases } from '../../core/report/cautions.ts';
 import type { Block, EntryBlock, HeadingBlock, ReportDocument, TableBlock } from '../../core/report/document.ts';
 import { cellText } from '../../core/report/document.ts';
 import { worstFirst } from '../../core/report/findingSection.ts';
+import sourcesPage from '../../data/SOURCES.md?raw';
 import { solvedInput } from './reportInput.ts';
 import { cabin, van } from './reportJobs.ts';
 import { assumption, cabinChecks, cabinInput, point, REMEMBERED } from './reportSample.ts';
@@ -133,11 +135,16 @@ describe('what stands in a report', () => {
         .map(({ label, value }) => `${label}: ${value}`)
         .join('\n')
         .replaceAll('\u00a0', ' ') ?? '';
-    expect(facts(entries[0])).toContain('Measured: 8120 A, limit 5000 A');
+    expect(facts(entries[0])).toContain('Measured: 8.12 kA, limit 5 kA');
     expect(facts(entries[0])).toContain('Basis: IEC 60364-4-43:2008, clause 434.5.1 (published)');
-    expect(facts(entries[2])).toContain('Measured: 4.1 %, limit 3.0 %');
+    expect(facts(entries[2])).toContain('Measured: 4.1 %, limit 3 %');
     expect(facts(entries[1])).toContain('Basis: common practice, no source');
     expect(facts(entries[3])).toContain('from memory — confirm against the text');
+  });
+
+  test('the two conductors of a run are named once', () => {
+    const look = ofKind(sampleReport, 'entry').find(({ word }) => word === 'LOOK');
+    expect(look?.facts[0]?.value).toBe('W-FRIDGE (Run to the refrigerator in the back kitchen), both conductors');
   });
 
   test('findings of one severity keep the order in which the checks ranked them', () => {
@@ -321,6 +328,10 @@ describe('cautions', () => {
 });
 
 describe('sources', () => {
+  test('of the cautions are described among the sources under the same printed phrase', () => {
+    for (const { source, text } of cautionBases) expect(sourcesPage).toContain(`| ${source} | ${text} |`);
+  });
+
   test('every number in brackets leads to an entry of the list, and every entry is cited', () => {
     const items = ofKind(cabinReport, 'sources').flatMap((block) => block.items);
     const cited = new Set([...wordsOf(cabinReport).matchAll(/\[(\d+)\]/g)].map((match) => Number(match[1])));

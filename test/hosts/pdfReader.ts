@@ -41,8 +41,8 @@ export async function readPdf(bytes: Uint8Array): Promise<ReadPdf> {
     pages.push({
       width,
       height,
-      texts: drawnTexts(content.items as readonly RawItem[]),
-      structure: await page.getStructTree(),
+      texts: drawnTexts(content.items),
+      structure: (await page.getStructTree()) as unknown as StructureNode,
     });
   }
   const { info, metadata } = await document.getMetadata();

@@ -1,0 +1,238 @@
+/** The one-line diagram: everything is drawn, nothing runs over anything else, and what cannot be drawn says why. */
+import { describe, expect, test } from 'vitest';
+import { buildReport } from '../../core/report/buildReport.ts';
+import { diagramSection } from '../../core/report/diagramSection.ts';
+import type { FigureBlock, Shape } from '../../core/report/document.ts';
+import { wiringGraph } from '../../core/report/wiringGraph.ts';
+import { type Layout, layWiring } from '../../core/report/wiringLayout.ts';
+import { checked } from './reportInput.ts';
+import { cabin, van } from './reportJobs.ts';
+import { largeJob } from './reportLargeJob.ts';
+import { cabinInput, point } from './reportSample.ts';
+
+function layoutOf(file: object): Layout {
+  const graph = wiringGraph(checked(file));
+  if ('reason' in graph) throw new Error(graph.reason);
+  const layout = layWiring(graph);
+  if ('reason' in layout) throw new Error(layout.reason);
+  return layout;
+}
+const figureOf = (file: object): FigureBlock | undefined =>
+  diagramSection(checked(file)).find((block) => block.kind === 'figure');
+const textsOf = (figure: FigureBlock | undefined): readonly string[] =>
+  figure?.shapes.flatMap((shape: Shape) => (shape.shape === 'text' ? [shape.text] : [])) ?? [];
+const reasonOf = (file: object): string => {
+  const paragraph = diagramSection(checked(file)).find((block) => block.kind === 'paragraph');
+  return paragraph?.kind === 'paragraph' ? paragraph.text : '';
+};
+const job = (parts: readonly object[]) => ({
+  format: 'ohmwright-job',
+  version: 1,
+  title: 'Invented',
+  practice: 'iec-land',
+  parts,
+});
+const string = (id: string, plus: string, minus: string) => ({
+  id,
+  kind: 'string',
+  plus,
+  minus,
+  chemistry: 'agm',
+  blocksInSeries: 1,
+  blockNominalV: 12,
+  capacityAh: 100,
+});
+const cable = (id: string, from: string, to: string) => ({ id, kind: 'cable', from, to, lengthM: 1, size: '16 mm2' });
+const load = (id: string, plus: string, minus: string) => ({ id, kind: 'load', plus, minus, powerW: 50 });
+
+describe('a cabin of three strings', () => {
+  const layout = layoutOf(cabin);
+
+  test('batteries stand at the left, what they feed at the right', () => {
+    const sides = new Map<string, string>(layout.devices.map(({ device, side }) => [device.part.id, side]));
+    expect([sides.get('S-A'), sides.get('S-B'), sides.get('S-C')]).toEqual(['left', 'left', 'left']);
+    expect([sides.get('INV1'), sides.get('FRIDGE'), sides.get('PV'), sides.get('GEN')]).toEqual([
+      'right',
+      'right',
+      'right',
+      'right',
+    ]);
+  });
+
+  test('every conductor and device is drawn, both poles in full', () => {
+    const texts = textsOf(figureOf(cabin));
+    for (const { id, kind } of checked(cabin).parts) {
+      const names = kind === 'pair' ? [`${id}.plus`, `${id}.minus`] : [id];
+      for (const name of names) expect(texts).toContain(name);
+    }
+  });
+
+  test('the plus line of a row lies above its minus line', () => {
+    for (const { plusY, minusY } of layout.devices) expect(plusY).toBeLessThan(minusY);
+  });
+
+  test('the controller stands over both its lines', () => {
+    expect(layout.boxes.map(({ twoPort }) => twoPort.part.id)).toEqual(['MPPT']);
+  });
+});
+
+describe('the wiring as people do it', () => {
+  test('a bank tapped at opposite ends is drawn as a chain on each pole', () => {
+    const layout = layoutOf(
+      job([
+        string('S1', 'P1', 'N1'),
+        string('S2', 'P2', 'N2'),
+        string('S3', 'P3', 'N3'),
+        cable('P12', 'P1', 'P2'),
+        cable('P23', 'P2', 'P3'),
+        cable('N12', 'N1', 'N2'),
+        cable('N23', 'N2', 'N3'),
+        load('L', 'P1', 'N3'),
+      ]),
+    );
+    expect(layout.links).toHaveLength(4);
+    const x = new Map(layout.points.map((one) => [one.name, one.x]));
+    // Plus grows away from S1, minus away from S3: the taps of the load are the innermost points of their poles.
+    expect(x.get('P1')).toBeGreaterThan(x.get('P2') ?? Number.NaN);
+    expect(x.get('P2')).toBeGreaterThan(x.get('P3') ?? Number.NaN);
+    expect(x.get('N3')).toBeGreaterThan(x.get('N2') ?? Number.NaN);
+    expect(x.get('N2')).toBeGreaterThan(x.get('N1') ?? Number.NaN);
+  });
+
+  test('a ring of conductors is closed by a line of its own', () => {
+    const layout = layoutOf(
+      job([
+        string('S', 'P', 'N'),
+        cable('A', 'P', 'Q'),
+        cable('B', 'Q', 'R'),
+        cable('C', 'R', 'P'),
+        load('L', 'R', 'N'),
+      ]),
+    );
+    expect(new Set(layout.links.map(({ link }) => link.id))).toEqual(new Set(['A', 'B', 'C']));
+  });
+
+  test('two systems that share nothing stand one below the other', () => {
+    const layout = layoutOf(
+      job([string('S', 'P', 'N'), load('L', 'P', 'N'), string('T', 'U', 'V'), load('M', 'U', 'V')]),
+    );
+    const row = new Map<string, number>(layout.devices.map(({ device, plusY }) => [device.part.id, plusY]));
+    expect(row.get('T')).toBeGreaterThan(row.get('S') ?? Number.NaN);
+    expect(row.get('M')).toBe(row.get('T'));
+  });
+});
+
+describe('what cannot be drawn is said, and the connections are listed', () => {
+  test('strings that are joined in series point by point', () => {
+    const file = job([string('S1', 'M', 'N'), string('S2', 'P', 'M'), load('L', 'P', 'N')]);
+    expect(figureOf(file)).toBeUndefined();
+    expect(reasonOf(file)).toContain('No diagram is drawn: point M belongs to both poles');
+    const table = diagramSection(checked(file)).find((block) => block.kind === 'table');
+    expect(table?.kind === 'table' ? table.rows.map(([name]) => name) : []).toEqual([
+      { text: 'S1', under: '' },
+      { text: 'S2', under: '' },
+      { text: 'L', under: '' },
+    ]);
+  });
+
+  test('a job too large for one sheet', () => {
+    const large = checked(largeJob(300));
+    const blocks = buildReport({ ...cabinInput(), job: large, points: [point(large, { case: 'as-drawn' })] }).blocks;
+    expect(blocks.some(({ kind }) => kind === 'figure')).toBe(false);
+    const table = blocks.find((block) => block.kind === 'table' && block.caption === 'Connections');
+    // 3 parts, and 99 branches whose run is two conductors.
+    expect(table?.kind === 'table' ? table.rows.length : 0).toBe(3 + 99 * 4);
+  });
+});
+
+describe('random wiring', () => {
+  /** Small linear congruential generator, so that a failure can be seen again (constants of Numerical Recipes). */
+  function generator(seed: number): (below: number) => number {
+    let state = seed;
+    return (below) => {
+      state = (Math.imul(state, 1_664_525) + 1_013_904_223) >>> 0;
+      return Math.floor((state / 2 ** 32) * below);
+    };
+  }
+  /** A tree of cables on each pole with strings and loads hung anywhere, and now and then a cable that closes a ring. */
+  function randomJob(seed: number): object {
+    const pick = generator(seed);
+    const points = 2 + pick(6);
+    const parts: object[] = [];
+    for (const pole of ['P', 'N']) {
+      for (let index = 1; index < points; index += 1)
+        parts.push(cable(`${pole}c${index}`, `${pole}${pick(index)}`, `${pole}${index}`));
+      if (pick(4) === 0) parts.push(cable(`${pole}ring`, `${pole}0`, `${pole}${points - 1}`));
+    }
+    for (let index = 0; index < 1 + pick(3); index += 1)
+      parts.push(string(`S${index}`, `P${pick(points)}`, `N${pick(points)}`));
+    for (let index = 0; index < 1 + pick(4); index += 1)
+      parts.push(load(`L${index}`, `P${pick(points)}`, `N${pick(points)}`));
+    return job(parts);
+  }
+
+  test('is drawn whole without a line over another, or refused with a reason', () => {
+    let drawn = 0;
+    for (let seed = 1; seed <= 300; seed += 1) {
+      const graph = wiringGraph(checked(randomJob(seed)));
+      if ('reason' in graph) continue;
+      const layout = layWiring(graph);
+      if ('reason' in layout) continue;
+      drawn += 1;
+      expect([seed, layout.links.length, layout.devices.length]).toEqual([
+        seed,
+        graph.links.length,
+        graph.devices.length,
+      ]);
+      expect([seed, ...levelClashes(layout)]).toEqual([seed]);
+      expect([seed, ...uprightClashes(layout)]).toEqual([seed]);
+      for (const { x, top, bottom } of layout.points) {
+        expect(x).toBeGreaterThan(0);
+        expect(x).toBeLessThan(layout.width);
+        expect(top).toBeGreaterThan(0);
+        expect(bottom).toBeLessThan(layout.height);
+      }
+    }
+    // Most random wiring must be drawable, or the property above says little.
+    expect(drawn).toBeGreaterThan(150);
+  });
+
+  function levelClashes(layout: Layout): readonly string[] {
+    const lines = [
+      ...layout.links.map((line) => ({ ...line, name: line.link.id })),
+      ...layout.wires.map((line) => ({ ...line, name: 'wire' })),
+    ];
+    return clashes(
+      lines.map(({ x1, x2, y, name }) => ({ at: y, low: Math.min(x1, x2), high: Math.max(x1, x2), name })),
+      0,
+    );
+  }
+  function uprightClashes(layout: Layout): readonly string[] {
+    // Upright lines that touch end to end would read as one: they may not even touch.
+    return clashes(
+      layout.points.map(({ x, top, bottom, name }) => ({ at: x, low: top, high: bottom, name })),
+      -0.01,
+    );
+  }
+  function clashes(
+    lines: readonly { readonly at: number; readonly low: number; readonly high: number; readonly name: string }[],
+    leastPt: number,
+  ): readonly string[] {
+    return lines.flatMap((one, index) =>
+      lines
+        .slice(index + 1)
+        .filter(
+          (other) =>
+            Math.abs(one.at - other.at) < 0.01 &&
+            Math.min(one.high, other.high) - Math.max(one.low, other.low) > leastPt,
+        )
+        .map((other) => `${one.name} over ${other.name}`),
+    );
+  }
+});
+
+test('the words under the picture name every device for those who cannot see it', () => {
+  const alt = figureOf(van)?.alt ?? '';
+  expect(alt).toContain('battery lithium iron phosphate B1 between B1+ and B1-');
+  expect(alt).toContain('inverter INV between I+ and I-');
+});
