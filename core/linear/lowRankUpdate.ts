@@ -11,7 +11,7 @@ import { scaledResidual, startResidual, takeProduct } from './residual.ts';
 import { scratch } from './scratch.ts';
 
 /** A vector with few entries: entry k is coefficients[k], in row rows[k]. */
-export interface SparseVector {
+interface SparseVector {
   readonly rows: readonly number[];
   readonly coefficients: readonly number[];
 }

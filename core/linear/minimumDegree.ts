@@ -23,7 +23,7 @@ export interface QuotientGraph {
   readonly end: number;
 }
 
-/** A remaining graph with at least this share of its possible edges is factored as a full block: measured to cost least. */
+/** A rest whose lowest degree is at least this share of the highest possible is factored as a full block. Between 0.3 and 1 it hardly matters. */
 const FULL_ENOUGH = 0.6;
 
 /** What a node is: still to be eliminated; eliminated, its list a column; eliminated, its column covered by that of a later one. */

@@ -1,4 +1,4 @@
-/** Vectors lent out for the length of one call, so that solving many times allocates nothing. */
+/** Vectors lent out for the length of one call, so that solving a system many times allocates nothing. */
 
 function lender(): (size: number) => Float64Array {
   let vector = new Float64Array(0);

@@ -4,8 +4,8 @@
 export type Code = readonly number[];
 
 export const I32 = 0x7f;
-export const F64 = 0x7c;
-export const V128 = 0x7b;
+const F64 = 0x7c;
+const V128 = 0x7b;
 
 /** Unsigned LEB128. */
 function unsigned(n: number): number[] {

@@ -1,6 +1,6 @@
 /** The few members of WebAssembly that are used here, and what happens where a host has none or forbids it. */
 
-export interface WasmMemory {
+interface WasmMemory {
   readonly buffer: ArrayBuffer;
   grow(pages: number): number;
 }
@@ -38,16 +38,23 @@ export class WasmProgram {
 
   instantiate(pages: number): WasmKernel | null {
     if (typeof WebAssembly === 'undefined') return null;
+    if (this.module === undefined) this.module = compiled(WebAssembly, this.write());
+    if (this.module === null) return null;
     try {
-      // A content policy may forbid compilation, and a machine may be short of address space: both throw.
-      if (this.module === undefined) this.module = new WebAssembly.Module(this.write());
-      if (this.module === null) return null;
       const memory = new WebAssembly.Memory({ initial: pages });
       const { exports } = new WebAssembly.Instance(this.module, { host: { memory } });
       return { memory, functions: exports };
     } catch {
-      this.module ??= null;
-      return null;
+      return null; // short of memory or of address space
     }
+  }
+}
+
+/** Null where a content policy forbids compilation, or a host does not know the instructions. */
+function compiled(host: WasmHost, bytes: Uint8Array): object | null {
+  try {
+    return new host.Module(bytes);
+  } catch {
+    return null;
   }
 }

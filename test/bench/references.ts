@@ -28,6 +28,7 @@ export function writeSystems(file: string, { starts, rows, values, rightHandSide
 }
 
 const SOURCES = join(process.cwd(), 'test', 'bench', 'reference');
+const COMPILER = 'gcc';
 const HEADERS = '/usr/include/suitesparse';
 
 /** Compiles the harness for KLU and CHOLMOD; null where that is not possible. */
@@ -39,7 +40,17 @@ export function compileSparse(report: Report): string | null {
   const program = join(report.folder, 'sparse');
   const source = join(SOURCES, 'sparse.c');
   try {
-    execFileSync('gcc', ['-O2', '-march=native', `-I${HEADERS}`, source, '-o', program, '-lklu', '-lcholmod', '-lm']);
+    execFileSync(COMPILER, [
+      '-O2',
+      '-march=native',
+      `-I${HEADERS}`,
+      source,
+      '-o',
+      program,
+      '-lklu',
+      '-lcholmod',
+      '-lm',
+    ]);
     return program;
   } catch {
     report.missing('KLU and CHOLMOD', 'the C harness did not compile');

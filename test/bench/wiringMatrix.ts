@@ -4,7 +4,7 @@ import type { Pattern } from '../../core/linear/matrix.ts';
 import { patternFromEntries } from '../../core/linear/patternFromEntries.ts';
 
 /** A seeded generator of numbers in 0 to 1 (mulberry32). */
-export function seeded(seed: number): () => number {
+function seeded(seed: number): () => number {
   let s = seed >>> 0;
   return () => {
     s = (s + 0x6d2b79f5) >>> 0;
