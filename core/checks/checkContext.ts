@@ -3,7 +3,7 @@ import { type Ampacity, ampacity } from '../conductor/ampacity.ts';
 import type { Missing } from '../conductor/size.ts';
 import { Defect } from '../job/issue.ts';
 import type { CheckedJob, OperatingCase } from '../job/job.ts';
-import { caseById, partsInCase } from '../job/job.ts';
+import { partsInCase } from '../job/job.ts';
 import type { CablePart, JunctionId, Part, PartId } from '../job/part.ts';
 import type { BatteryModel, OperatingPoint, PartAnswer } from '../network/answer.ts';
 import { ambientOf } from '../network/circuit.ts';
@@ -82,7 +82,6 @@ export class CheckContext implements Judge {
   readonly nets: Nets;
   readonly meetings: ReadonlyMap<JunctionId, readonly PartEnd[]>;
   readonly volts: SystemVolts;
-  private restCase: SolvedCase | undefined;
   private readonly ampacities = new WeakMap<CablePart, Map<number, Ampacity | Missing>>();
 
   constructor(request: CheckRequest) {
@@ -122,16 +121,6 @@ export class CheckContext implements Judge {
     const changed = new Map(operatingCase.changed);
     for (const part of changes) changed.set(part.id, part);
     return this.solve({ ...operatingCase, changed }, model);
-  }
-
-  /** Everything off: what flows then flows between the sources alone. */
-  atRest(): SolvedCase {
-    if (this.restCase === undefined) {
-      const operatingCase = caseById(this.job, 'at-rest');
-      if (operatingCase === undefined) throw new Defect('the case at rest exists in every job');
-      this.restCase = new SolvedCase(this.job, operatingCase, this.solve(operatingCase, 'slow'));
-    }
-    return this.restCase;
   }
 
   /** Ampacity of a cable in the air of a case; system volts by the net that it lies on. */

@@ -3,11 +3,12 @@ import { currentLimits } from '../battery/limits.ts';
 import { stringSource } from '../battery/stringSource.ts';
 import type { StringPart } from '../job/part.ts';
 import { CIRCUIT_LAW, FUSE_AT_SOURCE } from './bases.ts';
-import { type CheckContext, SolvedCase } from './checkContext.ts';
+import type { CheckContext } from './checkContext.ts';
+import { type Quiet, quietStates } from './quiet.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { banksOf } from './systemVolts.ts';
 import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { isDevice, isOpen, isWiring, netsOf, polesOf } from './wiring.ts';
+import { isDevice, netsOf, polesOf } from './wiring.ts';
 import { amps, apart, nameOf, ohms, percent, shortList, titleOf } from './wording.ts';
 
 /**
@@ -68,35 +69,6 @@ function runDeadShort(context: CheckContext): RuleOutcome {
     tally.judge([drawn.id], verdicts);
   }
   return tally.outcome();
-}
-
-interface Quiet {
-  /** The case with everything off but its switches as they stand. */
-  readonly rest: SolvedCase;
-  readonly joins: (a: StringPart['plus'], b: StringPart['plus']) => boolean;
-}
-
-/** The quiet state of each case; cases that differ only in what is off in it share one. */
-function quietStates(context: CheckContext): readonly Quiet[] {
-  const known = new Map<string, Quiet>();
-  for (const one of context.cases) {
-    const lasting = one.parts.filter((part) => part.kind === 'string' || isWiring(part));
-    const key = JSON.stringify([one.ambientDegC, lasting]);
-    if (!known.has(key)) known.set(key, quiet(context, one));
-  }
-  return [...known.values()];
-}
-
-function quiet(context: CheckContext, one: SolvedCase): Quiet {
-  const changed = new Map(one.operatingCase.changed);
-  for (const part of context.job.parts) {
-    const now = changed.get(part.id) ?? part;
-    if ('on' in now) changed.set(now.id, { ...now, on: false });
-  }
-  const operatingCase = { ...one.operatingCase, surge: undefined, irradianceWPerM2: 0, changed };
-  const rest = new SolvedCase(context.job, operatingCase, context.solve(operatingCase, 'slow'));
-  const nets = netsOf(rest.parts, (part) => !isOpen(part) && part.kind !== 'diode');
-  return { rest, joins: nets.same };
 }
 
 function stringVerdict(

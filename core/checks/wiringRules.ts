@@ -4,10 +4,11 @@ import type { GraphRemark } from '../network/answer.ts';
 import { assumedSources } from './assumed.ts';
 import { CIRCUIT_LAW } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
+import { quietStates } from './quiet.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { ELSEWHERE, PASS, Tally, type Verdict } from './tally.ts';
 import { ANY_KIND, isOpen, type SinglePart } from './wiring.ts';
-import { list, nameOf, shortList, titleOf } from './wording.ts';
+import { list, nameOf, shortList, titleOf, volts } from './wording.ts';
 
 /** One part too many where none is allowed. */
 const NONE_ALLOWED = {
@@ -234,10 +235,10 @@ export const polarityCrossed: Rule = {
   kinds: ['load', 'inverter', 'charger', 'array', 'string', 'controller', 'converter'],
   title: 'Plus and minus crossed',
   compares:
-    'volts from plus to minus of each load, inverter, charger, controller, converter, array and string, at rest and in every case, with nought; plus and minus of each string and array with those of the others that it is joined to',
+    'volts from plus to minus of each load, inverter, charger, controller, converter, array and string, with everything off (where no string reaches: while it runs), with nought; plus and minus of each string and array with those of the others that it is joined to',
   remedy: 'Swap the leads, and check with a meter before anything is closed.',
   byPractice: false,
-  reads: 'every-case',
+  reads: 'drawing',
   basisFor: () => CIRCUIT_LAW,
   run: runPolarity,
 };
@@ -247,23 +248,34 @@ const CROSSED_BELOW_V = -1e-3;
 
 function runPolarity(context: CheckContext): RuleOutcome {
   const tally = new Tally(polarityCrossed, CIRCUIT_LAW);
-  const answered = [context.atRest(), ...context.solved].filter((one) => one.isSolved);
+  const atRest = quietStates(context)
+    .map(({ rest }) => rest)
+    .filter((rest) => rest.isSolved);
   for (const part of context.drawn) {
     const pole = polesToTest(part);
     if (pole.length === 0) continue;
-    const verdicts: Verdict[] = pole.flatMap(({ plus, minus, which }) =>
-      answered.flatMap((one): readonly Verdict[] => {
-        const [high, low] = [one.point.junctions.get(plus), one.point.junctions.get(minus)];
-        if (typeof high !== 'number' || typeof low !== 'number') return [];
-        const acrossV = high - low;
-        if (acrossV >= CROSSED_BELOW_V) return [PASS];
-        return [crossed(part, one.id, acrossV, `has ${acrossV.toPrecision(4)} V from plus to minus${which}`)];
-      }),
-    );
+    const verdicts: Verdict[] = pole.flatMap(({ plus, minus, which }) => {
+      // At rest the sign tells how the leads lie; only what no string reaches is judged while it runs.
+      const resting = signsAt({ part, plus, minus, which }, atRest);
+      return resting.length > 0 ? resting : signsAt({ part, plus, minus, which }, context.solved);
+    });
     verdicts.push(...againstOthers(context, part));
     tally.judge([part.id], verdicts);
   }
   return tally.outcome();
+}
+
+function signsAt(
+  { part, plus, minus, which }: { part: SinglePart; plus: JunctionId; minus: JunctionId; which: string },
+  answered: readonly SolvedCase[],
+): readonly Verdict[] {
+  return answered.flatMap((one): readonly Verdict[] => {
+    const [high, low] = [one.point.junctions.get(plus), one.point.junctions.get(minus)];
+    if (typeof high !== 'number' || typeof low !== 'number') return [];
+    const acrossV = high - low;
+    if (acrossV >= CROSSED_BELOW_V) return [PASS];
+    return [crossed(part, one.id, acrossV, `has ${volts(acrossV)} from plus to minus${which}`)];
+  });
 }
 
 function polesToTest(part: SinglePart): readonly { plus: JunctionId; minus: JunctionId; which: string }[] {
@@ -316,12 +328,11 @@ function againstOthers(context: CheckContext, part: SinglePart): readonly Verdic
   if (wrong.length === 0) return [];
   const what = `is joined plus to minus and minus to plus with ${list(wrong.map(nameOf))}`;
   const caseId = context.cases[0]?.id ?? '';
-  const found = context.atRest().point.parts.get(part.id)?.voltageV ?? 0;
   return [
     crossed(
       part,
       caseId,
-      Math.min(found, 0),
+      0,
       what,
       wrong.map(({ id }) => id),
     ),
