@@ -36,6 +36,8 @@ export { factsOf, stringEmf, stringEmfAtCharge, stringSource } from './battery/s
 export type { GassingCells, Ventilation } from './battery/ventilation.ts';
 export { ventilation } from './battery/ventilation.ts';
 export type { CheckReport, Finding, Measure, NotChecked, Passed, Severity } from './checks/finding.ts';
+export type { Rule as CheckRule, RuleFamily } from './checks/rule.ts';
+export { rules as checkRules } from './checks/rules.ts';
 export type { CheckRequest } from './checks/runChecks.ts';
 export { runChecks } from './checks/runChecks.ts';
 export type { Ampacity } from './conductor/ampacity.ts';
@@ -102,7 +104,15 @@ export type {
   Proof,
 } from './network/answer.ts';
 export type { CircuitRequest } from './network/circuit.ts';
-export { operatingPoint } from './network/operatingPoint.ts';
+export { missingFigures } from './network/figures.ts';
+export type { SolvedCircuit } from './network/operatingPoint.ts';
+export { operatingPoint, solveCircuit } from './network/operatingPoint.ts';
+export type { Sensitivity, Target } from './network/sensitivity.ts';
+export { sensitivities } from './network/sensitivity.ts';
+export type { Thevenin as TheveninSource } from './network/thevenin.ts';
+export { theveninAt } from './network/thevenin.ts';
+export type { ResistanceChange, WhatIf } from './network/whatIf.ts';
+export { whatIf } from './network/whatIf.ts';
 export { buildReport } from './report/buildReport.ts';
 export type { ReportDocument } from './report/document.ts';
 export type { ReportInput, ReportOptions } from './report/input.ts';

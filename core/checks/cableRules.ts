@@ -7,7 +7,7 @@ import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { demandsOf } from './continuousCurrent.ts';
 import type { Judge, Rule, RuleOutcome } from './rule.ts';
 import { ELSEWHERE, isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { amps, apart, field, list, percent, titleOf, together, withEdition } from './wording.ts';
+import { amps, apart, field, list, percent, shortList, titleOf, together, withEdition } from './wording.ts';
 
 export const cableOverloaded: Rule = {
   id: 'cable-overloaded',
@@ -108,7 +108,7 @@ const withoutMargin: Judgement = (context, { cable, one, ampacity }) => {
   if (isOver(demand.runningA, ampacity.finalA)) return ELSEWHERE;
   if (!isOver(demand.leastA, baseA)) {
     return missing(
-      `${list(demand.unmarked.map((load) => field(load, 'continuous')))}: it decides whether cable ${cable.id} has margin enough`,
+      `${shortList(demand.unmarked.map((load) => field(load, 'continuous')))}: it decides whether cable ${cable.id} has margin enough`,
     );
   }
   const [need, base] = apart(demand.leastA, baseA, 'A');

@@ -7,12 +7,12 @@ import { isOpen, netsOf, polesOf, throughDiodes } from './wiring.ts';
 
 export type ChargingPart = ChargerPart | ControllerPart | ConverterPart;
 
-export function isCharging(part: SinglePart): part is ChargingPart {
+function isCharging(part: SinglePart): part is ChargingPart {
   return part.kind === 'charger' || part.kind === 'controller' || part.kind === 'converter';
 }
 
 /** A string that a charging part reaches, and the diodes on the way. */
-export interface ChargedString {
+interface ChargedString {
   readonly string: StringPart;
   readonly diodes: readonly DiodePart[];
 }

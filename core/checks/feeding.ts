@@ -4,7 +4,7 @@ import type { SolvedCase } from './checkContext.ts';
 import type { Nets, PoledPart } from './wiring.ts';
 import { isOpen, netsOf, polesOf, throughDiodes } from './wiring.ts';
 
-export interface Feed {
+interface Feed {
   /** Volts between the source terminals that feed the part, at the sources. */
   readonly volts: number;
   /** The sources whose terminals those are. */

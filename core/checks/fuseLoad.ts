@@ -6,7 +6,7 @@ import type { Rule, RuleOutcome } from './rule.ts';
 import { ELSEWHERE, isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
 import type { Device } from './wiring.ts';
 import { isDevice } from './wiring.ts';
-import { amps, apart, field, list, percent, titleOf, withEdition } from './wording.ts';
+import { amps, apart, field, percent, shortList, titleOf, withEdition } from './wording.ts';
 
 export const fuseUnderCurrent: Rule = {
   id: 'fuse-under-current',
@@ -58,7 +58,7 @@ export const fuseUnderContinuous: Rule = {
       if (!isOver(demand.mostA, device.ratingA)) return PASS;
       if (!isOver(demand.leastA, device.ratingA)) {
         return missing(
-          `${list(demand.unmarked.map((load) => field(load, 'continuous')))}: it decides whether ${device.kind} ${device.id} has margin enough`,
+          `${shortList(demand.unmarked.map((load) => field(load, 'continuous')))}: it decides whether ${device.kind} ${device.id} has margin enough`,
         );
       }
       const [needed, rated] = apart(demand.leastA, device.ratingA, 'A');

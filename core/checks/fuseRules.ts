@@ -5,7 +5,7 @@ import type { Basis } from '../tables/status.ts';
 import type { Tables } from '../tables/tables.ts';
 import { sizeText } from '../units/conductorSize.ts';
 import type { CheckContext } from './checkContext.ts';
-import { ProtectedCables } from './protectedCables.ts';
+import { protectedCablesOf } from './protectedCables.ts';
 import type { Judge, Rule } from './rule.ts';
 import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
 import type { Device } from './wiring.ts';
@@ -59,7 +59,7 @@ interface Place {
 
 function eachProtectedCable(context: CheckContext, rule: Rule, judgement: Judgement) {
   const tally = new Tally(rule, rule.basisFor(context));
-  const cables = new ProtectedCables(context.drawn, context.meetings);
+  const cables = protectedCablesOf(context);
   const hottest = context.cases.reduce<Place>(
     (most, { id, ambientDegC }) => (ambientDegC > most.ambientDegC ? { id, ambientDegC } : most),
     { id: '', ambientDegC: Number.NEGATIVE_INFINITY },

@@ -12,6 +12,8 @@
  * Where no string reaches either side, chargers, arrays, controllers and converters take the part of the strings.
  */
 import type { CablePart, JunctionId, PartId } from '../job/part.ts';
+import type { CheckContext } from './checkContext.ts';
+import { type LiveSides, liveSides } from './deviceSides.ts';
 import type { Device, Nets, PartEnd, Poles, SinglePart } from './wiring.ts';
 import { isDevice, isWiring, joined, netsOf, polesOf } from './wiring.ts';
 
@@ -21,7 +23,7 @@ export class ProtectedCables {
   private readonly nets: Nets;
   private readonly cablesOf = new Map<number, CablePart[]>();
   private readonly polesOn = new Map<number, Poles[]>();
-  private readonly devicesOf = new Map<number, Device[]>();
+  private readonly sides: readonly ReadonlyMap<PartId, LiveSides>[];
   private readonly stringNets = new Set<number>();
   private readonly sourceNets = new Set<number>();
 
@@ -30,16 +32,17 @@ export class ProtectedCables {
     this.nets = netsOf(parts, (part) => !isDevice(part));
     for (const part of parts) {
       if (part.kind === 'cable') this.add(this.cablesOf, part.from, part);
-      else if (isDevice(part)) for (const end of [part.from, part.to]) this.add(this.devicesOf, end, part);
       else for (const poles of polesOf(part)) this.addPoles(poles);
     }
+    const edges = parts.filter(isDevice).map(({ id, from, to }) => ({ id, from: this.net(from), to: this.net(to) }));
+    this.sides = [this.stringNets, this.sourceNets].map((nets) => liveSides(edges, (net) => nets.has(net)));
   }
 
   /** Every cable that the device protects, its `from` side first. */
   of(device: Device): readonly CablePart[] {
     const found = new Set<CablePart>();
     const [from, to] = [this.net(device.from), this.net(device.to)];
-    const live = this.liveSides(device, from, to);
+    const live = this.sides.map((sides) => sides.get(device.id)!).find((side) => side.from || side.to) ?? DEAD;
     for (const [end, net, isLive] of [
       [device.from, from, live.from],
       [device.to, to, live.to],
@@ -48,28 +51,6 @@ export class ProtectedCables {
       else this.allOf(net, found);
     }
     return [...found];
-  }
-
-  private liveSides(device: Device, from: number, to: number): { readonly from: boolean; readonly to: boolean } {
-    for (const sources of [this.stringNets, this.sourceNets]) {
-      const sides = { from: this.reaches(from, sources, device), to: this.reaches(to, sources, device) };
-      if (sides.from || sides.to) return sides;
-    }
-    return { from: true, to: true };
-  }
-
-  /** Can a net be reached from one of the source nets with this device open? */
-  private reaches(start: number, sources: ReadonlySet<number>, without: Device): boolean {
-    const seen = new Set([start]);
-    for (const net of seen) {
-      if (sources.has(net)) return true;
-      for (const device of this.devicesOf.get(net) ?? []) {
-        if (device.id === without.id) continue;
-        seen.add(this.net(device.from));
-        seen.add(this.net(device.to));
-      }
-    }
-    return false;
   }
 
   private allOf(net: number, found: Set<CablePart>): void {
@@ -87,9 +68,9 @@ export class ProtectedCables {
     let junction = start;
     let last = behind.id;
     for (;;) {
-      const others = (this.meetings.get(junction) ?? []).filter(({ part }) => part.id !== last);
-      const next = others[0]?.part;
-      if (others.length !== 1 || next === undefined || passed.has(next.id) || isDevice(next)) return;
+      const ends = this.meetings.get(junction) ?? [];
+      const next = ends.find(({ part }) => part.id !== last)?.part;
+      if (ends.length !== 2 || next === undefined || passed.has(next.id) || isDevice(next)) return;
       passed.add(next.id);
       const beyond = isWiring(next) ? otherEnd(joined(next), junction) : throughPart(next, junction);
       if (beyond === undefined) return;
@@ -122,6 +103,9 @@ export class ProtectedCables {
   }
 }
 
+/** No source reaches the device at all: what is in series with it counts on both sides. */
+const DEAD: LiveSides = { from: true, to: true };
+
 /** The far junction of a part with two ends; `undefined` for a bar with more, which is a branch. */
 function otherEnd(ends: readonly JunctionId[], near: JunctionId): JunctionId | undefined {
   if (ends.length !== 2) return undefined;
@@ -134,4 +118,16 @@ function throughPart(part: SinglePart, near: JunctionId): JunctionId | undefined
   const poles = polesOf(part).find(({ plus, minus }) => plus === near || minus === near);
   if (poles === undefined) return undefined;
   return poles.plus === near ? poles.minus : poles.plus;
+}
+
+const ofContext = new WeakMap<CheckContext, ProtectedCables>();
+
+/** The protected cables of a job as drawn, found once for all rules that ask. */
+export function protectedCablesOf(context: CheckContext): ProtectedCables {
+  let known = ofContext.get(context);
+  if (known === undefined) {
+    known = new ProtectedCables(context.drawn, context.meetings);
+    ofContext.set(context, known);
+  }
+  return known;
 }

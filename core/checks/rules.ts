@@ -6,11 +6,12 @@ import { fuseUnderContinuous, fuseUnderCurrent } from './fuseLoad.ts';
 import { fuseOverCable, smallWireCap } from './fuseRules.ts';
 import { loadOverfed, loadStarved } from './loadVolts.ts';
 import { ratingUnderCurrent, shuntSmall, voltsRatingLow } from './partRatings.ts';
+import { polarityCrossed } from './polarityRule.ts';
 import type { Rule } from './rule.ts';
 import { deadShort, noFuseOnSource } from './shortRules.ts';
 import { chargeTooStrong, stringChargeHigh, stringDischargeHigh } from './stringRules.ts';
 import { surgeSag } from './surgeRules.ts';
-import { endOpen, groupUnconnected, loadCollapse, loadUnfed, partNeverUsed, polarityCrossed } from './wiringRules.ts';
+import { endOpen, groupUnconnected, loadCollapse, loadUnfed, partNeverUsed } from './wiringRules.ts';
 
 export const rules: readonly Rule[] = [
   deadShort,

@@ -6,7 +6,7 @@ import type { PoledPart, Poles, SinglePart } from './wiring.ts';
 import { type Nets, polesOf } from './wiring.ts';
 
 /** Nominal volts of a whole string: blocks in series times the block's label. */
-export function nominalOf(string: StringPart): number {
+function nominalOf(string: StringPart): number {
   return string.blocksInSeries * string.blockNominalV;
 }
 

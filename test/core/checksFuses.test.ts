@@ -1,8 +1,11 @@
 /** Fuses and breakers against the cables that they protect and the current that they carry. */
+import { array, assert, nat, property, record, tuple, uniqueArray } from 'fast-check';
 import { describe, expect, test } from 'vitest';
+import { liveSides } from '../../core/checks/deviceSides.ts';
 import { largestDevice } from '../../core/checks/fuseRules.ts';
 import { ProtectedCables } from '../../core/checks/protectedCables.ts';
 import { type Device, isDevice, meetings, withoutPairs } from '../../core/checks/wiring.ts';
+import type { PartId } from '../../core/job/part.ts';
 import { tables } from '../../data/index.ts';
 import { battery, check, found, gaps, jobOf, oneCircuit, passes, type RawPart } from './checksJob.ts';
 
@@ -335,5 +338,42 @@ describe('fuse-under-current and fuse-under-continuous', () => {
     const twin = { id: 'F2', kind: 'fuse', from: 'P', to: 'Q', ratingA: 200 };
     const report = check(oneCircuit({ more: [twin] }));
     expect(gaps(report, 'fuse-under-current')[0]).toMatch(/current in fuse F1 .*side by side/);
+  });
+});
+
+describe('which sides of a device the sources still reach once it is open', () => {
+  interface Drawn {
+    readonly edges: readonly (readonly [number, number])[];
+    readonly sources: readonly number[];
+  }
+  const drawings = record({
+    edges: array(tuple(nat({ max: 7 }), nat({ max: 7 })), { minLength: 1, maxLength: 12 }),
+    sources: uniqueArray(nat({ max: 7 }), { maxLength: 3 }),
+  });
+
+  /** The plain way: open the one device and follow the others. */
+  function reached({ edges, sources }: Drawn, without: number, start: number): boolean {
+    const seen = new Set([start]);
+    for (const net of seen) {
+      edges.forEach(([a, b], index) => {
+        if (index === without) return;
+        if (a === net) seen.add(b);
+        if (b === net) seen.add(a);
+      });
+    }
+    return sources.some((net) => seen.has(net));
+  }
+
+  test('one walk over all devices agrees with opening each in turn, on any drawing with rings and devices side by side', () => {
+    assert(
+      property(drawings, (drawn) => {
+        const edges = drawn.edges.map(([from, to], index) => ({ id: `F${index}` as PartId, from, to }));
+        const sides = liveSides(edges, (net) => drawn.sources.includes(net));
+        edges.forEach(({ id, from, to }, index) => {
+          expect(sides.get(id)).toEqual({ from: reached(drawn, index, from), to: reached(drawn, index, to) });
+        });
+      }),
+      { seed: 20_250_101, numRuns: 2000 },
+    );
   });
 });
