@@ -1,6 +1,8 @@
 /** A string of blocks as a source behind a resistance, for one model of the battery. */
+
 import type { StringPart } from '../job/part.ts';
 import type { ChemistryTables } from '../tables/chemistryTables.ts';
+import { Memory } from '../tables/memory.ts';
 import type { Banded, EntryBand } from './banded.ts';
 import { bandedEntry } from './banded.ts';
 import type { CellCount } from './cells.ts';
@@ -48,6 +50,13 @@ export interface StringFacts {
  * tables, as a default with its band. Sources: see `emfOfCells` and `defaultResistance`.
  */
 export function stringSource(string: StringPart, context: StringContext): StringSource {
+  const detail = `${context.model} ${context.ambientDegC}`;
+  return found.of(context.tables, string, detail, () => findSource(string, context));
+}
+
+const found = new Memory<StringPart, StringSource>();
+
+function findSource(string: StringPart, context: StringContext): StringSource {
   const facts = factsOf(string, context);
   const emfV = stringEmf(facts, context.tables);
   const resistanceOhm = stringResistance(facts, emfV, context);

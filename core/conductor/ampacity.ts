@@ -1,5 +1,7 @@
 /** The current that a conductor may carry all day, by the practice in force, with every factor listed. */
+
 import type { ConductorSize } from '../job/part.ts';
+import { Memory } from '../tables/memory.ts';
 import type { Basis, Status } from '../tables/status.ts';
 import { weakest } from '../tables/status.ts';
 import { boatRating } from './boatRating.ts';
@@ -51,6 +53,14 @@ export function ampacity(cable: RatedConductor, context: AmpacityContext): Ampac
 
 /** The practice's rating of one conductor, before it is multiplied out. */
 export function ratingOf(cable: RatedConductor, context: AmpacityContext): Rating | Missing {
+  const { practice, ambientDegC, systemV, terminalDegC, tables } = context;
+  const detail = `${practice} ${ambientDegC} ${systemV} ${terminalDegC}`;
+  return found.of(tables, cable, detail, () => findRating(cable, context));
+}
+
+const found = new Memory<RatedConductor, Rating | Missing>();
+
+function findRating(cable: RatedConductor, context: AmpacityContext): Rating | Missing {
   const { size } = cable;
   if (size === undefined) return { missing: 'size of the conductor' };
   const sized: RatedConductor & { readonly size: ConductorSize } = { ...cable, size };

@@ -1,7 +1,9 @@
 /** Direct-current resistance of a conductor, from the table of the practice in force, and at any temperature. */
+
 import type { Practice } from '../job/job.ts';
 import type { ConductorSize, Metal, Stranding } from '../job/part.ts';
 import type { ConductorTables } from '../tables/conductorTables.ts';
+import { Memory } from '../tables/memory.ts';
 import type { Basis } from '../tables/status.ts';
 import { sizeText } from '../units/conductorSize.ts';
 import { numberText } from '../units/numberText.ts';
@@ -45,6 +47,12 @@ export interface ResistanceContext {
  * Sources SRC-IEC60228, SRC-NEC-CH9-T8, SRC-ASTM-B258, SRC-IACS.
  */
 export function conductorResistance(run: ConductorRun, context: ResistanceContext): ConductorResistance | Missing {
+  return found.of(context.tables, run, context.practice, () => findResistance(run, context));
+}
+
+const found = new Memory<ConductorRun, ConductorResistance | Missing>();
+
+function findResistance(run: ConductorRun, context: ResistanceContext): ConductorResistance | Missing {
   if (run.size === undefined) return { missing: 'size of the conductor' };
   const make = makeOf(run, context.practice);
   const perKm = ohmPerKmAt20(run.size, make, context);

@@ -273,6 +273,18 @@ export function originOf(part: Part, field: string): Origin {
 
 /** The two cables that an out-and-back run stands for: `<id>.plus` out from source to load, `<id>.minus` back. */
 export function cablesOfPair(pair: PairPart): readonly [CablePart, CablePart] {
+  let cables = pairCables.get(pair);
+  if (cables === undefined) {
+    cables = splitPair(pair);
+    pairCables.set(pair, cables);
+  }
+  return cables;
+}
+
+/** One pair always gives the same two cables, so that what is found out about them is found out once. */
+const pairCables = new WeakMap<PairPart, readonly [CablePart, CablePart]>();
+
+function splitPair(pair: PairPart): readonly [CablePart, CablePart] {
   const { kind: _kind, from, to, minusSize, minusLengthM, ...conductor } = pair;
   const plus: CablePart = {
     ...conductor,

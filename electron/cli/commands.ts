@@ -4,6 +4,7 @@ import {
   buildReport,
   type CheckedJob,
   type CheckReport,
+  missingFigures,
   type OperatingCase,
   type OperatingPoint,
   operatingPoint,
@@ -16,7 +17,7 @@ import { jsonText } from './jsonText.ts';
 import { type CommandOptions, chosenCases, judgedJob } from './options.ts';
 import { programVersion } from './programVersion.ts';
 import { type JobRead, readJob } from './readJob.ts';
-import { exitStatus, Refusal } from './refusal.ts';
+import { exitStatus, JobRefusal, Refusal } from './refusal.ts';
 import { solveAnswer } from './solveAnswer.ts';
 import { solveText } from './solveText.ts';
 import { checkPlace, writeOut } from './writeOut.ts';
@@ -80,6 +81,8 @@ interface Begun {
 async function begin(path: string, options: CommandOptions, io: Io): Promise<Begun> {
   const read = await readJob(path, io);
   const job = judgedJob(read.job, options);
+  const missing = missingFigures({ job, tables });
+  if (missing.length > 0) throw new JobRefusal(read.name, missing);
   const cases = chosenCases(job, options);
   if (options.out !== undefined) checkPlace({ path: options.out, input: read.file });
   if (job.practiceAssumed === true && options.quiet !== true) {
