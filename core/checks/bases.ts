@@ -20,21 +20,21 @@ export const COMMON_PRACTICE: Basis = {
 /** Devices are to be rated for the volts at which they open; testing against the highest volts is ours and stricter. */
 export const VOLTS_RATING: Basis = {
   source: 'SRC-VOLTS-RATING',
-  text: '33 CFR 183.455(d); ISO 13590:2018 (at least nominal); NEC (NFPA 70) 110.4; tested here against the highest volts, which is stricter (common practice)',
+  text: '33 CFR 183.455(d); ISO 13590:2018 (at least nominal); NEC (NFPA 70), numbering of 2023, 110.4; tested here against the highest volts, which is stricter (common practice)',
   status: 'common-practice',
 };
 
 /** Why a part may not carry more than its own rating. */
 export const PART_RATING: Basis = {
   source: 'SRC-NEC-110-3B',
-  text: "the part's own rating; NEC (NFPA 70) 110.3(B), use as listed and labelled, second-hand",
+  text: "the part's own rating; NEC (NFPA 70), numbering of 2023, 110.3(B), use as listed and labelled, second-hand",
   status: 'published',
 };
 
 /** Protection at the source. */
 export const FUSE_AT_SOURCE: Basis = {
   source: 'SRC-CFR33-183-455',
-  text: '33 CFR 183.455(a); NEC (NFPA 70) 240.21; 46 CFR 111.15-25(a); IEC 60364-4-43 (text not seen)',
+  text: '33 CFR 183.455(a); NEC (NFPA 70), numbering of 2023, 240.21; 46 CFR 111.15-25(a)',
   status: 'published',
 };
 

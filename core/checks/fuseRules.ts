@@ -12,6 +12,12 @@ import type { Device } from './wiring.ts';
 import { isDevice } from './wiring.ts';
 import { amps, apart, titleOf, together, withEdition } from './wording.ts';
 
+/** For a practice without caps: where caps come from, and that none apply. */
+const NO_CAPS: Basis = {
+  source: 'SRC-NEC-240-4',
+  text: 'NEC (NFPA 70) 240.4(D); the chosen practice has no such caps',
+  status: 'published',
+};
 /** Above this multiple of the ampacity no book of ours allows a device at all. */
 const STOP_FACTOR = 1.5;
 /** From these nominal volts on, boat law asks for more (33 CFR 183.455(c)). */
@@ -41,8 +47,7 @@ export const smallWireCap: Rule = {
   remedy: 'Fit a fuse no larger than the cap for the gauge, or a larger wire.',
   byPractice: true,
   reads: 'drawing',
-  basisFor: (judge) =>
-    withEdition(capsOf(judge.practice, 'copper')?.basis ?? judge.practice.fuseOverCableBelow50V.basis, judge),
+  basisFor: (judge) => withEdition(capsOf(judge.practice, 'copper')?.basis ?? NO_CAPS, judge),
   run: (context) => eachProtectedCable(context, smallWireCap, overCap),
 };
 

@@ -13,6 +13,7 @@ export type { CheckRequest } from './checkContext.ts';
  * starting load; or answers handed in), then every rule runs. Of one rule and part the worst case is told. Findings stand worst
  * first: by severity, then by how far beyond the limit. What lacks a figure, a case without an operating point, and every rule
  * of a book when the job names no practice, stand among the not checked, never among the passed.
+ * A job for which `missingFigures` has issues cannot be solved, so it must not come here.
  */
 export function runChecks(request: CheckRequest): CheckReport {
   const context = new CheckContext(request);
