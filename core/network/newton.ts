@@ -65,6 +65,8 @@ export class Assembled {
       if (change === null) return false;
       if (change <= 1e-10 * scaleOf(this.volts)) return true;
       this.evaluateAll(0);
+      // A power that nothing takes has no volts: here it stays as it is near its set point.
+      for (const element of this.active) if (element.law === Law.powerSource) evaluate(element, element.b);
     }
     return true;
   }
