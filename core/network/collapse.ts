@@ -49,6 +49,8 @@ export function settleOrCollapse(circuit: Circuit, graph: GraphView): { assemble
 function weakest(circuit: Circuit, assembled: Assembled): Sink | null {
   const { node, size } = assembled.reduction;
   const sinks = circuit.sinks.filter((sink) => sink.state === 'on' && isDemand(sink));
+  const dead = sinks.find((sink) => !(sink.element.v > 1e-9));
+  if (dead !== undefined) return dead;
   assembled.isHighBranch();
   const b = new Float64Array(size);
   for (const { element } of sinks) {

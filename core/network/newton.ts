@@ -76,6 +76,7 @@ export class Assembled {
    * Returns false where it does not settle on the high-voltage branch.
    */
   solve(share: number): boolean {
+    if (share > 0 && this.power.some((element) => this.isShorted(element))) return false;
     let best = Number.POSITIVE_INFINITY;
     let stalled = 0;
     for (let pass = 0; pass < 80; pass++) {
@@ -89,6 +90,12 @@ export class Assembled {
       if (!this.newtonStep()) return false;
     }
     return false;
+  }
+
+  /** A constant power between two points that ties hold at no volts, or the wrong way round, can never be had. */
+  private isShorted({ from, to, a }: Element): boolean {
+    const { node, offset } = this.reduction;
+    return a > 0 && node[from] === node[to] && offset[from]! - offset[to]! <= 0;
   }
 
   /**
@@ -122,8 +129,9 @@ export class Assembled {
     for (const element of this.active) {
       evaluate(element, volts[element.from]! - volts[element.to]!);
       if (share !== 1 && isSink(element)) {
-        element.i *= share;
-        element.slope *= share;
+        // Not 0 times infinity: a load of no share takes nothing, even from a short.
+        element.i = share === 0 ? 0 : element.i * share;
+        element.slope = share === 0 ? 0 : element.slope * share;
       }
     }
   }

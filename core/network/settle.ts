@@ -123,7 +123,7 @@ function pivot(circuit: Circuit, graph: GraphView, share: number, patience: numb
     }
     assembled.coupling.balance();
     const changes = disagreements(circuit, assembled);
-    if (changes.length === 0) return { ok: true, assembled };
+    if (changes.length === 0) return { ok: !pushesBack(circuit), assembled };
     if (changes.length < fewest) {
       fewest = changes.length;
       left = patience;
@@ -149,6 +149,13 @@ function unpark(circuit: Circuit): void {
     sink.parkedLaw = null;
     sink.state = 'on';
   }
+}
+
+/** A set current that only flows because the sums turn the volts round is no operating point. */
+function pushesBack(circuit: Circuit): boolean {
+  return circuit.sinks.some(
+    ({ element, state }) => state === 'on' && element.law === Law.current && element.a > 0 && element.v < -1e-9,
+  );
 }
 
 /** Sources that give nothing although the volts across them lie below their set point, and diodes that block forwards. */
