@@ -30,7 +30,12 @@ export type Law =
   /** i = 0 with v <= forward, or v = forward + slope i with i >= 0. */
   | { readonly type: 'diode'; readonly forwardV: number; readonly slopeOhm: number }
   /** 0 <= i <= limit below the set point, any such i at it, 0 above it. `harvestW` also limits i to harvestW / u. */
-  | { readonly type: 'feed'; readonly outputA: number; readonly setpointV: number; readonly harvestW: number | undefined }
+  | {
+      readonly type: 'feed';
+      readonly outputA: number;
+      readonly setpointV: number;
+      readonly harvestW: number | undefined;
+    }
   /** i = (u i of the feed / efficiency + standby) / v: the input of a converter, whose output is branch `feed`. */
   | { readonly type: 'draw'; readonly feed: number; readonly efficiency: number; readonly standbyW: number }
   /** A direct controller: joined below the set point of (out - outMinus), never backwards, never above its limit. */
@@ -46,7 +51,13 @@ export interface Branch {
 
 /** Laws whose current is an unknown of its own; the others give their current from the volts. */
 export function hasOwnCurrent(law: Law): boolean {
-  return !(law.type === 'ohm' || law.type === 'amps' || law.type === 'watts' || law.type === 'panel' || law.type === 'draw');
+  return !(
+    law.type === 'ohm' ||
+    law.type === 'amps' ||
+    law.type === 'watts' ||
+    law.type === 'panel' ||
+    law.type === 'draw'
+  );
 }
 
 /**

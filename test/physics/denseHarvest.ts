@@ -18,10 +18,7 @@ export interface ArraySide {
 const HOLD = 'controller input';
 
 /** Branches reached from the controller's input plus without passing through its input minus. */
-export function arraySideOf(
-  controller: ControllerPart,
-  planned: readonly PlannedBranch[],
-): ArraySide {
+export function arraySideOf(controller: ControllerPart, planned: readonly PlannedBranch[]): ArraySide {
   const { plus, minus } = controller.from;
   const reached = new Set<JunctionId>([plus]);
   const branches = new Set<PlannedBranch>();
@@ -35,7 +32,11 @@ export function arraySideOf(
     }
   }
   const side = [...branches];
-  if (side.some(({ law }) => !['panel', 'ohm', 'short', 'warm', 'diode'].includes(law.type) || reached.has(controller.to.plus))) {
+  if (
+    side.some(
+      ({ law }) => !['panel', 'ohm', 'short', 'warm', 'diode'].includes(law.type) || reached.has(controller.to.plus),
+    )
+  ) {
     throw new Error(`the array side of ${controller.id} is not a network of its own`);
   }
   return { controller, branches: side, ...bestPoint(side, controller) };

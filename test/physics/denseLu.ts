@@ -11,7 +11,7 @@ export interface Dense {
 /** Solves by the library's LU; undefined where it finds the matrix singular. */
 export function solveExactly(matrix: Dense, right: Float64Array): Float64Array | undefined {
   const { size, entries } = matrix;
-  const lu = new LuDecomposition(Matrix.from1DArray(size, size, entries as unknown as number[]));
+  const lu = new LuDecomposition(Matrix.from1DArray(size, size, entries));
   if (lu.isSingular()) return undefined;
   const x = Float64Array.from(lu.solve(Matrix.columnVector(right)).to1DArray());
   return x.every(Number.isFinite) ? x : undefined;

@@ -31,8 +31,6 @@ const MOST_STEPS = 30;
 const NEAR = 1e-6;
 
 const MOST_PIVOTS = 40;
-/** No network here has as many volts or amps. */
-const ABSURD = 1e4;
 
 /** All unknowns, and the piece that each piecewise branch is on. */
 export interface Found {
@@ -74,16 +72,22 @@ export class DenseSolver {
    * Solves from `start` (all unknowns); undefined where Newton does not settle or the states go on contradicting themselves.
    * A start that is a solution for a smaller share brings its states; without them they are searched from soft to sharp.
    */
-  solve(start: Float64Array, wanted: { readonly share: number; readonly states?: readonly BranchState[] }): Found | undefined {
+  solve(
+    start: Float64Array,
+    wanted: { readonly share: number; readonly states?: readonly BranchState[] },
+  ): Found | undefined {
     const { share, states } = wanted;
-    if (states === undefined) {
-      const softened = this.sharpen(start, share);
-      return softened && this.pivot(softened.x, { share, states: softened.states });
+    if (states !== undefined) {
+      const guessed = this.pivot(start, { share, states: this.readyToGive(start, states) });
+      if (guessed !== undefined) return guessed;
+      const near = this.newton(start, { share, parts: { sharp: SHARPEST } });
+      const found = near && this.pivot(near.x, { share, states: near.states });
+      if (found !== undefined) return found;
     }
-    const guessed = this.pivot(start, { share, states: this.readyToGive(start, states) });
-    if (guessed !== undefined) return guessed;
-    const near = this.newton(start, { share, parts: { sharp: SHARPEST } });
-    return near && this.pivot(near.x, { share, states: near.states });
+    const plain = this.network.branches.map((): BranchState => 'none');
+    if (!this.network.branches.some(({ law }) => hasStates(law))) return this.pivot(start, { share, states: plain });
+    const softened = this.sharpen(start, share);
+    return softened && this.pivot(softened.x, { share, states: softened.states });
   }
 
   /** A source that gives nothing only because nothing is drawn stands at its set point all the same. */
@@ -113,7 +117,7 @@ export class DenseSolver {
   }
 
   /**
-   * With states fixed, exact. Where a solution contradicts its states, tries them all flipped, then one by one, worst first;
+   * With states fixed, exact. Where a solution contradicts its states, tries them all flipped, then one by one;
    * a set of states that has no solution, or was seen before, is a dead end.
    */
   private pivot(
@@ -129,16 +133,16 @@ export class DenseSolver {
       const solved = this.newton(guess.x, { share: from.share, parts: { fixed: guess.states } });
       if (solved === undefined) {
         // A set point below what the rest of the network holds cannot be held by any current that an array gives.
-        const idle = guess.states.map((state) => (state === 'held' ? 'lower' : state));
-        if (guess.states.includes('held')) waiting.push({ x: guess.x, states: idle });
+        guess.states.forEach((state, k) => {
+          if (state === 'held') waiting.push({ x: start, states: flipped(guess.states, [[k, 'lower']]) });
+        });
         continue;
       }
       const wrong = this.contradictions(solved.x, guess.states);
       if (wrong.length === 0) return solved;
-      const choices = [...wrong.map((flip) => [flip]).toReversed(), wrong];
-      // Wrong states may have absurd solutions (a limited source with no load): those are no place to start from.
-      const x = solved.x.every((value) => Math.abs(value) < ABSURD) ? solved.x : start;
-      for (const flips of choices) waiting.push({ x, states: flipped(guess.states, flips) });
+      const choices = [...wrong.map((flip) => [flip]), wrong];
+      // Wrong states may have absurd solutions (a limited source with no load): no place to start from.
+      for (const flips of choices) waiting.push({ x: start, states: flipped(guess.states, flips) });
     }
     return undefined;
   }
@@ -158,7 +162,7 @@ export class DenseSolver {
   }
 
   private newton(start: Float64Array, settings: Settings): Found | undefined {
-    let x = Float64Array.from(start);
+    let x: Float64Array = Float64Array.from(start);
     let settled = 0;
     for (let step = 0; step < MOST_STEPS; step++) {
       const equations = this.equations(x, settings);
@@ -199,7 +203,8 @@ export class DenseSolver {
     for (const { a, b, law } of this.network.branches) {
       const v = x[a]! - x[b]!;
       const dv = delta[a]! - delta[b]!;
-      if ((law.type === 'watts' || law.type === 'draw') && v > 0 && dv > 0.5 * v) factor = Math.min(factor, (0.5 * v) / dv);
+      if ((law.type === 'watts' || law.type === 'draw') && v > 0 && dv > 0.5 * v)
+        factor = Math.min(factor, (0.5 * v) / dv);
       if (law.type === 'panel') {
         const { openCircuitV } = law.curve;
         const roomV = openCircuitV + v;
@@ -219,7 +224,10 @@ export class DenseSolver {
     const grounded = new Set(network.grounds);
     network.branches.forEach((branch, k) => {
       const flow = this.flow(x, k, settings.share);
-      for (const [node, sign] of [[branch.a, 1], [branch.b, -1]] as const) {
+      for (const [node, sign] of [
+        [branch.a, 1],
+        [branch.b, -1],
+      ] as const) {
         if (grounded.has(node)) continue;
         residual[node]! += sign * flow.amps;
         for (const [column, slope] of flow.slopes) {
@@ -236,12 +244,20 @@ export class DenseSolver {
   }
 
   /** The current of a branch and its derivatives by unknown. */
-  private flow(x: Float64Array, k: number, share: number): { amps: number; slopes: readonly (readonly [number, number])[] } {
+  private flow(
+    x: Float64Array,
+    k: number,
+    share: number,
+  ): { amps: number; slopes: readonly (readonly [number, number])[] } {
     const { a, b, law } = this.network.branches[k]!;
     const own = this.currentIndex[k]!;
     if (own >= 0) return { amps: x[own]!, slopes: [[own, 1]] };
     const v = x[a]! - x[b]!;
-    const both = (slope: number) => [[a, slope], [b, -slope]] as const;
+    const both = (slope: number) =>
+      [
+        [a, slope],
+        [b, -slope],
+      ] as const;
     if (law.type === 'ohm') return { amps: (v - law.emfV) / law.ohm, slopes: both(1 / law.ohm) };
     if (law.type === 'amps') return { amps: law.amps, slopes: [] };
     if (share === 0 && (law.type === 'watts' || law.type === 'draw')) return { amps: 0, slopes: [] };
@@ -283,38 +299,57 @@ export class DenseSolver {
     };
     if (law.type === 'short') {
       if (this.network.redundant.has(k)) write(i, [[row, 1]]);
-      else write(v, [[a, 1], [b, -1]]);
+      else
+        write(v, [
+          [a, 1],
+          [b, -1],
+        ]);
       return 'none';
     }
     if (law.type === 'hold') {
-      write(v - law.volts, [[a, 1], [b, -1]]);
+      write(v - law.volts, [
+        [a, 1],
+        [b, -1],
+      ]);
       return 'none';
     }
     if (law.type === 'warm') {
-      write(v - (law.ohm + law.ohmPerA2 * i * i) * i, [[a, 1], [b, -1], [row, -law.ohm - 3 * law.ohmPerA2 * i * i]]);
+      write(v - (law.ohm + law.ohmPerA2 * i * i) * i, [
+        [a, 1],
+        [b, -1],
+        [row, -law.ohm - 3 * law.ohmPerA2 * i * i],
+      ]);
       return 'none';
     }
     const { parts } = settings;
-    const state = 'sharp' in parts ? softState({ branch: this.network.branches[k]!, x, i, sharp: parts.sharp }) : parts.fixed[k]!;
-    const { value, slopes } = pieceEquation({ branch: this.network.branches[k]!, x, i, row, state, sharp: 'sharp' in parts ? parts.sharp : undefined });
+    const state =
+      'sharp' in parts ? softState({ branch: this.network.branches[k]!, x, i, sharp: parts.sharp }) : parts.fixed[k]!;
+    const { value, slopes } = pieceEquation({
+      branch: this.network.branches[k]!,
+      x,
+      i,
+      row,
+      state,
+      sharp: 'sharp' in parts ? parts.sharp : undefined,
+    });
     write(value, slopes);
     return state;
   }
 
-  /** Branches whose state is not borne out by the solution, worst first, with the state they should take. */
+  /** Branches whose state is not borne out by the solution, with the state they should take. */
   private contradictions(x: Float64Array, states: readonly BranchState[]): (readonly [number, BranchState])[] {
-    return this.network.branches
-      .flatMap((branch, k) => {
-        if (!hasStates(branch.law)) return [];
-        const wrong = contradiction({ branch, x, i: x[this.currentIndex[k]!]! }, states[k]!);
-        return wrong === undefined ? [] : [{ k, ...wrong }];
-      })
-      .toSorted((one, other) => other.by - one.by)
-      .map(({ k, next }) => [k, next]);
+    return this.network.branches.flatMap((branch, k) => {
+      if (!hasStates(branch.law)) return [];
+      const next = contradiction({ branch, x, i: x[this.currentIndex[k]!]! }, states[k]!);
+      return next === undefined ? [] : [[k, next] as const];
+    });
   }
 }
 
-function flipped(states: readonly BranchState[], flips: readonly (readonly [number, BranchState])[]): readonly BranchState[] {
+function flipped(
+  states: readonly BranchState[],
+  flips: readonly (readonly [number, BranchState])[],
+): readonly BranchState[] {
   const next = new Map(flips);
   return states.map((state, k) => next.get(k) ?? state);
 }

@@ -32,14 +32,24 @@ interface Piece {
 function pieceOf({ branch, x }: Omit<At, 'i'>, state: BranchState): Piece {
   const { a, b, law } = branch;
   const v = x[a]! - x[b]!;
-  const across = [[a, 1], [b, -1]] as const;
+  const across = [
+    [a, 1],
+    [b, -1],
+  ] as const;
   if (law.type === 'diode') {
     return { limitA: Infinity, limitSlopes: [], gapV: v - law.forwardV, gapSlopes: across, slopeOhm: law.slopeOhm };
   }
   if (law.type === 'pass') {
     const limit = { limitA: law.outputA, limitSlopes: [], slopeOhm: 0 };
     if (state !== 'held') return { ...limit, gapV: v, gapSlopes: across };
-    return { ...limit, gapV: roomBelowSetpoint({ branch, x }), gapSlopes: [[b, -1], [law.outMinus, 1]] };
+    return {
+      ...limit,
+      gapV: roomBelowSetpoint({ branch, x }),
+      gapSlopes: [
+        [b, -1],
+        [law.outMinus, 1],
+      ],
+    };
   }
   if (law.type !== 'feed') throw new Error(`${law.type} has no pieces`);
   const u = Math.max(-v, 1e-3 * law.setpointV);
@@ -47,7 +57,12 @@ function pieceOf({ branch, x }: Omit<At, 'i'>, state: BranchState): Piece {
   const byHarvest = harvestedA < law.outputA;
   return {
     limitA: Math.min(law.outputA, harvestedA),
-    limitSlopes: byHarvest ? [[a, harvestedA / u], [b, -harvestedA / u]] : [],
+    limitSlopes: byHarvest
+      ? [
+          [a, harvestedA / u],
+          [b, -harvestedA / u],
+        ]
+      : [],
     gapV: law.setpointV + v,
     gapSlopes: across,
     slopeOhm: 0,
@@ -90,11 +105,8 @@ export function softState(at: At & { readonly sharp: number }): BranchState {
   return wantedA >= limitA ? 'upper' : 'middle';
 }
 
-/** The state that an exact solution asks for instead of the one it was made with, and by how much (V or A). */
-export function contradiction(
-  at: At,
-  state: BranchState,
-): { readonly by: number; readonly next: BranchState } | undefined {
+/** The state that an exact solution asks for instead of the one it was made with: that of the largest breach, V or A. */
+export function contradiction(at: At, state: BranchState): BranchState | undefined {
   const { i } = at;
   const { gapV, slopeOhm, limitA } = pieceOf(at, 'middle');
   const askedV = gapV - slopeOhm * i;
@@ -105,6 +117,6 @@ export function contradiction(
   if (state === 'middle' || state === 'held') wrong.push([-i, 'lower'], [i - limitA, 'upper']);
   if (state === 'middle') wrong.push([-roomV, 'held']);
   if (state === 'held') wrong.push([-askedV, 'middle']);
-  const [worst] = wrong.toSorted(([one], [other]) => other - one);
-  return worst !== undefined && worst[0] > EDGE ? { by: worst[0], next: worst[1] } : undefined;
+  const worst = Math.max(EDGE, ...wrong.map(([by]) => by));
+  return worst === EDGE ? undefined : wrong.find(([by]) => by === worst)?.[1];
 }

@@ -30,7 +30,10 @@ export type PlannedLaw =
 /** Laws that stand on published tables or on the sun; they come from outside the reference. */
 export interface OutsideLaws {
   /** Resistance of a cable (its parallel conductors together, ends left out) as `ohm + ohmPerA2 · I²`. */
-  readonly conductor: (cable: CablePart, operatingCase: OperatingCase) => { readonly ohm: number; readonly ohmPerA2: number };
+  readonly conductor: (
+    cable: CablePart,
+    operatingCase: OperatingCase,
+  ) => { readonly ohm: number; readonly ohmPerA2: number };
   readonly panel: (array: ArrayPart, operatingCase: OperatingCase) => PanelCurve;
 }
 
@@ -82,19 +85,37 @@ function branchesOf(part: Part, input: PlanInput): readonly PlannedBranch[] {
     case 'load':
       return draws ? [{ key: part.id, a: part.plus, b: part.minus, law: loadLaw(part) }] : [];
     case 'inverter':
-      return draws ? [{ key: part.id, a: part.plus, b: part.minus, law: { type: 'watts', watts: inverterW(part) } }] : [];
+      return draws
+        ? [{ key: part.id, a: part.plus, b: part.minus, law: { type: 'watts', watts: inverterW(part) } }]
+        : [];
     case 'charger':
       return part.on ? [feed(part.id, part, { ...part, harvestW: undefined })] : [];
     case 'array':
       return isLit(input.operatingCase)
-        ? [{ key: part.id, a: part.minus, b: part.plus, law: { type: 'panel', curve: input.laws.panel(part, input.operatingCase) } }]
+        ? [
+            {
+              key: part.id,
+              a: part.minus,
+              b: part.plus,
+              law: { type: 'panel', curve: input.laws.panel(part, input.operatingCase) },
+            },
+          ]
         : [];
     default:
-      return draws ? twoPortBranches(part, input) : [];
+      return [...(draws ? twoPortBranches(part, input) : []), ...returnOf(part)];
   }
 }
 
-function between(part: { readonly id: PartId; readonly from: JunctionId; readonly to: JunctionId }, law: PlannedLaw): PlannedBranch {
+/** A direct controller joins the two minus poles. */
+function returnOf(part: Part): readonly PlannedBranch[] {
+  if (part.kind !== 'controller' || part.type === 'mppt' || part.from.minus === part.to.minus) return [];
+  return [{ key: `${part.id}#return`, a: part.to.minus, b: part.from.minus, law: { type: 'short' } }];
+}
+
+function between(
+  part: { readonly id: PartId; readonly from: JunctionId; readonly to: JunctionId },
+  law: PlannedLaw,
+): PlannedBranch {
   return { key: part.id, a: part.from, b: part.to, law };
 }
 
@@ -104,7 +125,8 @@ function resistor(ohm: number): PlannedLaw {
 
 function stringBranches(part: StringPart): readonly PlannedBranch[] {
   const { emfV, resistanceOhm, linkOhm, plus, minus, midpoint } = part;
-  if (emfV === undefined || resistanceOhm === undefined) throw new Error('the reference wants strings with their figures given');
+  if (emfV === undefined || resistanceOhm === undefined)
+    throw new Error('the reference wants strings with their figures given');
   const ohm = resistanceOhm + linkOhm;
   if (midpoint === undefined) return [{ key: part.id, a: minus, b: plus, law: { type: 'ohm', ohm, emfV: -emfV } }];
   const half: PlannedLaw = { type: 'ohm', ohm: ohm / 2, emfV: -emfV / 2 };
@@ -167,12 +189,6 @@ function twoPortBranches(part: Part, input: PlanInput): readonly PlannedBranch[]
     const harvestW = (part.efficiency ?? 0.95) * (input.harvestW.get(part.id) ?? 0);
     return [feed(`${part.id}#out`, part.to, { outputA, setpointV, harvestW })];
   }
-  const pass: PlannedBranch = {
-    key: part.id,
-    a: part.from.plus,
-    b: part.to.plus,
-    law: { type: 'pass', outputA, setpointV, outMinus: part.to.minus },
-  };
-  if (part.from.minus === part.to.minus) return [pass];
-  return [pass, { key: `${part.id}#return`, a: part.to.minus, b: part.from.minus, law: { type: 'short' } }];
+  const law: PlannedLaw = { type: 'pass', outputA, setpointV, outMinus: part.to.minus };
+  return [{ key: part.id, a: part.from.plus, b: part.to.plus, law }];
 }

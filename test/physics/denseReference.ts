@@ -64,7 +64,8 @@ interface Solved {
 /** Array sides first (what could be harvested), then the rest, then the array sides with what is really taken. */
 function solveOnce(input: Omit<Parameters<typeof planBranches>[0], 'harvestW'>): Solved {
   const trackers = input.parts.filter(
-    (part): part is ControllerPart => part.kind === 'controller' && part.type === 'mppt' && input.screening.fed.has(part.id),
+    (part): part is ControllerPart =>
+      part.kind === 'controller' && part.type === 'mppt' && input.screening.fed.has(part.id),
   );
   const first = planBranches({ ...input, harvestW: new Map() });
   const sides = trackers.map((controller) => arraySideOf(controller, first));
@@ -103,7 +104,8 @@ function finish(
 ): DenseAnswer {
   const { job, parts, screening, dropped, planned, main } = solved;
   const { volts, zeros, adrift } = againstReference({ job, parts, screening, volts: solved.volts });
-  for (const junction of floatingBehindBlocking({ planned, amps: solved.amps, states: main.states, zeros })) volts.delete(junction);
+  for (const junction of floatingBehindBlocking({ planned, amps: solved.amps, states: main.states, zeros }))
+    volts.delete(junction);
   const kept = parts
     .filter((part): part is LoadPart | InverterPart => part.kind === 'load' || part.kind === 'inverter')
     .filter((part) => screening.fed.has(part.id) && !dropped.has(part.id))
@@ -147,7 +149,9 @@ function againstReference(at: {
     adrift.add(group(junction));
     zeroOf.set(group(junction), junction);
   }
-  const shifted = [...at.volts].map(([junction, volts]) => [junction, volts - at.volts.get(zeroOf.get(group(junction))!)!] as const);
+  const shifted = [...at.volts].map(
+    ([junction, volts]) => [junction, volts - at.volts.get(zeroOf.get(group(junction))!)!] as const,
+  );
   return { volts: new Map(shifted), zeros: [...zeroOf.values()], adrift };
 }
 

@@ -57,6 +57,9 @@ export function conductorLinks(part: Part): readonly Link[] {
       ];
     case 'busbar':
       return part.junctions.slice(1).map((other, k) => ({ one: part.junctions[k]!, other }));
+    case 'controller':
+      // The return of a direct controller is a conductor, by day and by night.
+      return part.type === 'pwm' ? [{ one: part.from.minus, other: part.to.minus }] : [];
     default:
       return [];
   }
@@ -123,7 +126,6 @@ function passOn(state: {
       changed = true;
       if (part.kind === 'controller' && part.type === 'pwm') {
         groups.join(part.from.plus, part.to.plus);
-        groups.join(part.from.minus, part.to.minus);
       } else {
         groups.join(part.to.plus, part.to.minus);
         sources.push(part.to.plus);

@@ -35,7 +35,8 @@ export function solvePlanned(planned: readonly PlannedBranch[], share = 1): Name
   const solver = new DenseSolver({ nodeCount: names.length, branches, grounds, redundant });
   const unloaded = solver.solve(startingPoint(solver, branches), { share: 0 });
   if (unloaded === undefined) throw new NoSolution('the network without its power loads does not settle');
-  const solved = loadUp(solver, { from: unloaded, share });
+  const powered = branches.some(({ law }) => law.type === 'watts' || law.type === 'draw');
+  const solved = powered ? loadUp(solver, { from: unloaded, share }) : unloaded;
   const voltsOf = (x: Float64Array) => new Map(names.map((name, k) => [name, x[k]!]));
   const amps = new Map(branches.map((branch, k) => [branch.key, solver.branchAmps(solved.x, k, share)]));
   return {

@@ -38,7 +38,7 @@ export function addCable(draft: Draft, ends: Ends): number {
   if (draft.sized && random.chance(0.5)) return addSizedCable(draft, ends);
   const resistanceOhm = random.logBetween(CABLE_OHM);
   const endOhm = random.chance(0.4) ? random.logBetween([5e-5, 1e-3]) : undefined;
-  const inParallel = process.env["PAR"] && random.chance(0.2) ? random.whole([2, 3]) : undefined;
+  const inParallel = random.chance(0.2) ? random.whole([2, 3]) : undefined;
   const lengthM = random.between([0.2, 8]);
   draft.add('cable', { ...ends, lengthM, resistanceOhm, ...given({ endOhm, inParallel }) });
   return (resistanceOhm + (endOhm ?? 0)) / (inParallel ?? 1);
@@ -51,6 +51,7 @@ function addSizedCable(draft: Draft, ends: Ends): number {
   const lengthM = random.between([0.3, 5]);
   const conductorDegC = random.chance(0.5) ? random.between([0, 80]) : undefined;
   const endOhm = random.chance(0.4) ? random.logBetween([5e-5, 1e-3]) : undefined;
+  const inParallel = random.chance(0.2) ? 2 : undefined;
   draft.add('cable', {
     ...ends,
     lengthM,
@@ -60,9 +61,9 @@ function addSizedCable(draft: Draft, ends: Ends): number {
     insulationDegC: random.pick([70, 90]),
     run: 'free-air',
     ambientDegC: random.between([5, 40]),
-    ...given({ conductorDegC, endOhm }),
+    ...given({ conductorDegC, endOhm, inParallel }),
   });
-  return (ROUGH_OHM_MM2_PER_M * lengthM) / Number.parseFloat(size) + (endOhm ?? 0);
+  return ((ROUGH_OHM_MM2_PER_M * lengthM) / Number.parseFloat(size) + (endOhm ?? 0)) / (inParallel ?? 1);
 }
 
 function addDevice(draft: Draft, kind: 'fuse' | 'breaker' | 'switch', ends: Ends): number {

@@ -45,7 +45,9 @@ function randomCase(draft: Draft): JobValue['cases'][number] {
     id: 'drawn',
     ambientDegC: random.between([-5, 40]),
     irradianceWPerM2: random.chance(0.1) ? 0 : random.between([100, 1050]),
-    ...(switchedOff !== undefined && random.chance(0.2) ? { set: { [switchedOff.id]: { on: false } } } : {}),
+    ...(!draft.linear && switchedOff !== undefined && random.chance(0.2)
+      ? { set: { [switchedOff.id]: { on: false } } }
+      : {}),
   };
 }
 
@@ -146,7 +148,9 @@ function addLoad(draft: Draft, point: SupplyPoint): void {
   const { nominalV } = point.root;
   const amps = book(point, random.logBetween([0.1, 25]));
   if (amps === 0) return;
-  const kind = draft.linear ? random.pick(['current', 'resistance']) : random.pick(['power', 'power', 'current', 'resistance']);
+  const kind = draft.linear
+    ? random.pick(['current', 'resistance'])
+    : random.pick(['power', 'power', 'current', 'resistance']);
   const figure =
     kind === 'power'
       ? { powerW: amps * nominalV }
@@ -170,7 +174,12 @@ function addInverter(draft: Draft, point: SupplyPoint): void {
   const amps = book(point, random.logBetween([0.5, 40]));
   if (amps === 0) return;
   const acPowerW = random.chance(0.2) ? 0 : 0.8 * amps * nominalV;
-  const curve = [[0.05, 0.72], [0.2, 0.88], [0.5, 0.92], [1, 0.87]];
+  const curve = [
+    [0.05, 0.72],
+    [0.2, 0.88],
+    [0.5, 0.92],
+    [1, 0.87],
+  ];
   draft.add('inverter', {
     plus: point.plus,
     minus: point.minus,
@@ -203,7 +212,8 @@ function addSideBySide(draft: Draft, point: SupplyPoint): void {
 /** An open switch between any two points, of the same tree or not: it must change nothing. */
 function addOpenLink(draft: Draft, point: SupplyPoint, points: readonly SupplyPoint[]): void {
   const to = draft.random.pick(points).plus;
-  if (to !== point.plus) draft.add(draft.random.pick(['switch', 'breaker', 'fuse']), { from: point.plus, to, ratingA: 60, state: 'open' });
+  if (to !== point.plus)
+    draft.add(draft.random.pick(['switch', 'breaker', 'fuse']), { from: point.plus, to, ratingA: 60, state: 'open' });
 }
 
 /** A load behind an open breaker, or with no way back. */
@@ -212,7 +222,11 @@ function addDeadEnd(draft: Draft, point: SupplyPoint): void {
   const amps = draft.random.between([1, 5]);
   draft.add('breaker', { from: point.plus, to: lost, ratingA: 20, state: 'open' });
   const [plus, minus] = draft.random.chance(0.5) ? [lost, point.minus] : [point.plus, lost];
-  draft.add('load', { plus, minus, ...draft.random.pick([{ powerW: 12 * amps }, { currentA: amps }, { resistanceOhm: 12 / amps }]) });
+  draft.add('load', {
+    plus,
+    minus,
+    ...draft.random.pick([{ powerW: 12 * amps }, { currentA: amps }, { resistanceOhm: 12 / amps }]),
+  });
 }
 
 /** Loads and wires without any source. */
@@ -229,7 +243,10 @@ export function seeds(run: { readonly first: number; readonly count: number }): 
 }
 
 /** Rewrites every junction name of a part value. */
-export function renameJunctions(part: JobValue['parts'][number], rename: (name: string) => string): JobValue['parts'][number] {
+export function renameJunctions(
+  part: JobValue['parts'][number],
+  rename: (name: string) => string,
+): JobValue['parts'][number] {
   const renamed = { ...part };
   for (const field of ['plus', 'minus', 'midpoint', 'from', 'to', 'junctions']) {
     const value = part[field];

@@ -126,7 +126,10 @@ function randomModule(draft: Draft): Record<string, unknown> {
 }
 
 /** A converter and the point that it feeds: nothing but its own loads, or a small second bank. */
-export function addConverter(draft: Draft, feed: { readonly point: SupplyPoint; readonly inputA: number }): SupplyPoint {
+export function addConverter(
+  draft: Draft,
+  feed: { readonly point: SupplyPoint; readonly inputA: number },
+): SupplyPoint {
   const { random } = draft;
   const { point, inputA } = feed;
   const outputNominalV = random.pick([12, 24]);
