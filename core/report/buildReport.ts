@@ -22,7 +22,7 @@ export function buildReport(input: ReportInput): ReportDocument {
   const citations = new Citations();
   const body: readonly Block[] = [
     ...summarySection(input, citations),
-    ...diagramSection(job),
+    ...diagramSection(job, options.paper ?? 'A4'),
     ...assumptionSection(input, citations),
     ...partSections(input, citations),
     ...caseSection(input),

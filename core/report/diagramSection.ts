@@ -2,27 +2,40 @@
 import type { CheckedJob } from '../job/job.ts';
 import type { Part } from '../job/part.ts';
 import { cablesOfPair } from '../job/part.ts';
-import type { Block, Cell, FigureBlock, TableBlock } from './document.ts';
-import { drawWiring } from './drawWiring.ts';
+import type { Block, Cell, FigureBlock, Paper, TableBlock } from './document.ts';
+import type { Band } from './drawWiring.ts';
+import { drawWiring, sheetHeightPt } from './drawWiring.ts';
 import { wiringGraph } from './wiringGraph.ts';
+import type { Layout } from './wiringLayout.ts';
 import { layWiring } from './wiringLayout.ts';
 import { KIND_WORDS } from './wording.ts';
 
-/** Width and height left for a figure below its heading, in points, on the smaller of A4 and Letter in each direction. */
-const ROOM_PT = { portrait: { width: 499, height: 560 }, landscape: { width: 696, height: 366 } } as const;
-/** Below this scale the smallest words of the drawing could not be read: 5.5 pt at full size 7. */
-const SMALLEST_SCALE = 0.79;
+type Orientation = 'portrait' | 'landscape';
 
-type Orientation = keyof typeof ROOM_PT;
+/** Width and height left for a figure below its heading, in points. */
+const ROOM_PT: Readonly<
+  Record<Paper, Readonly<Record<Orientation, { readonly width: number; readonly height: number }>>>
+> = {
+  A4: { portrait: { width: 499, height: 614 }, landscape: { width: 745, height: 367 } },
+  Letter: { portrait: { width: 516, height: 564 }, landscape: { width: 696, height: 384 } },
+};
+/** Below this scale the words of the drawing, 7 pt at full size, could not be read. */
+const SMALLEST_SCALE = 0.77;
+/** More sheets than this are no drawing to find one's way in. */
+const MOST_SHEETS = 4;
 
-export function diagramSection(job: CheckedJob): readonly Block[] {
-  const drawn = diagram(job);
+export function diagramSection(job: CheckedJob, paper: Paper): readonly Block[] {
+  const drawn = diagram(job, paper);
   const heading: Block = { kind: 'heading', level: 1, text: 'One-line diagram' };
   if ('reason' in drawn) {
     const text = `No diagram is drawn: ${drawn.reason}. The connections stand in the table instead.`;
     return [heading, { kind: 'paragraph', tone: 'body', text }, connectionTable(job)];
   }
-  const section: readonly Block[] = [heading, { kind: 'paragraph', tone: 'small', text: HOW_TO_READ }, drawn.figure];
+  const section: readonly Block[] = [
+    heading,
+    { kind: 'paragraph', tone: 'small', text: HOW_TO_READ },
+    ...drawn.figures,
+  ];
   if (drawn.orientation === 'portrait') return section;
   return [{ kind: 'pageBreak', orientation: 'landscape' }, ...section, { kind: 'pageBreak', orientation: 'portrait' }];
 }
@@ -30,20 +43,43 @@ export function diagramSection(job: CheckedJob): readonly Block[] {
 const HOW_TO_READ =
   'Symbols after IEC 60617. Lines that cross without a dot are not joined. Contacts are drawn open, as is usual; their state stands in the schedules. Not to scale, and no plan of places.';
 
-function diagram(
-  job: CheckedJob,
-): { readonly figure: FigureBlock; readonly orientation: Orientation } | { readonly reason: string } {
+interface Drawn {
+  readonly figures: readonly FigureBlock[];
+  readonly orientation: Orientation;
+}
+
+function diagram(job: CheckedJob, paper: Paper): Drawn | { readonly reason: string } {
   const graph = wiringGraph(job);
   if ('reason' in graph) return graph;
   const layout = layWiring(graph);
   if ('reason' in layout) return layout;
-  const figure = drawWiring(graph, layout);
-  const scaleIn = (orientation: Orientation): number =>
-    Math.min(ROOM_PT[orientation].width / figure.width, ROOM_PT[orientation].height / figure.height);
-  const orientation = scaleIn('portrait') >= Math.min(1, scaleIn('landscape')) ? 'portrait' : 'landscape';
-  if (scaleIn(orientation) < SMALLEST_SCALE)
-    return { reason: 'the job is larger than what can be read on one sheet of this paper' };
-  return { figure, orientation };
+  const ways = (['portrait', 'landscape'] as const).flatMap((orientation) => {
+    const bands = bandsFor(layout, ROOM_PT[paper][orientation]);
+    return bands === undefined ? [] : [{ orientation, bands }];
+  });
+  const [first, second] = ways;
+  if (first === undefined) return { reason: 'the job is larger than what can be read on a few sheets of this paper' };
+  const { orientation, bands } = second !== undefined && second.bands.length < first.bands.length ? second : first;
+  return { figures: drawWiring(graph, layout, bands), orientation };
+}
+
+/** How the rows divide into sheets, evenly; `undefined` where the drawing would be too small to read or need too many. */
+function bandsFor(
+  { width, rowCount }: Layout,
+  room: { readonly width: number; readonly height: number },
+): readonly Band[] | undefined {
+  const widthScale = Math.min(1, room.width / width);
+  if (widthScale < SMALLEST_SCALE) return undefined;
+  for (let sheets = 1; sheets <= MOST_SHEETS; sheets += 1) {
+    const rows = Math.ceil(rowCount / sheets);
+    if (room.height / sheetHeightPt(rows) < SMALLEST_SCALE) continue;
+    const bands = Array.from({ length: sheets }, (_, index) => ({
+      from: index * rows,
+      to: Math.min((index + 1) * rows, rowCount),
+    }));
+    return bands.filter(({ from, to }) => to > from);
+  }
+  return undefined;
 }
 
 function connectionTable(job: CheckedJob): TableBlock {

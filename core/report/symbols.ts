@@ -63,6 +63,22 @@ export function dot(at: At): Shape {
 export function terminal(at: At): Shape {
   return ring(at, U * 0.3);
 }
+/** The line goes on on another sheet: a small triangle at its cut end, `way` −1 upwards and +1 downwards. */
+export function goesOn({ x, y }: At, way: 1 | -1): Shape {
+  const half = U * 0.5;
+  return {
+    shape: 'polyline',
+    points: [
+      [x - half, y],
+      [x + half, y],
+      [x, y + way * U * 0.9],
+    ],
+    closed: true,
+    filled: true,
+    stroke: 'hair',
+    tone: INK,
+  };
+}
 /** Rectangle with the conductor running straight through. */
 export function fuseSymbol({ x, y }: At): readonly Shape[] {
   return [box({ x, y }, 3 * U, U * 1.2), line(x - 1.5 * U, y, x + 1.5 * U, y)];

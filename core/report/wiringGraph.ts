@@ -5,7 +5,7 @@ import { cablesOfPair } from '../job/part.ts';
 
 export type Pole = 'plus' | 'minus';
 
-/** A part, or one segment or one side of it, between two points of the same pole. */
+/** A part, or one side of it, between two points of the same pole. */
 export interface Link {
   readonly id: string;
   readonly part: Part;
@@ -31,12 +31,16 @@ export interface WiringGraph {
   /** Points that are bonded to earth, with the bond. */
   readonly earths: readonly { readonly part: Part; readonly junction: string }[];
   readonly poleOf: ReadonlyMap<string, Pole>;
+  /** Points that stand for all taps of a busbar, with the bar (or the bars that share a tap). */
+  readonly bars: ReadonlyMap<string, readonly Part[]>;
 }
 
 const EARTH = 'earth';
 
 /** The graph, or why this job does not go into two poles. */
 export function wiringGraph(job: CheckedJob): WiringGraph | { readonly reason: string } {
+  const bars = new Bars(job);
+  const at = (junction: string): string => bars.pointFor(junction);
   const devices: Device[] = [];
   const links: Link[] = [];
   const twoPorts: TwoPort[] = [];
@@ -48,36 +52,61 @@ export function wiringGraph(job: CheckedJob): WiringGraph | { readonly reason: s
       case 'inverter':
       case 'array':
       case 'charger':
-        devices.push({ part, plus: part.plus, minus: part.minus });
+        devices.push({ part, plus: at(part.plus), minus: at(part.minus) });
         break;
       case 'controller':
       case 'converter': {
-        const plus = { id: part.id, part, from: part.from.plus, to: part.to.plus };
-        const minus = { id: part.id, part, from: part.from.minus, to: part.to.minus };
+        const plus = { id: part.id, part, from: at(part.from.plus), to: at(part.to.plus) };
+        const minus = { id: part.id, part, from: at(part.from.minus), to: at(part.to.minus) };
         links.push(plus, minus);
         twoPorts.push({ part, plus, minus });
         break;
       }
       case 'pair':
-        for (const cable of cablesOfPair(part))
-          links.push({ id: cable.id, part: cable, from: cable.from, to: cable.to });
+        for (const cable of cablesOfPair(part)) {
+          links.push({ id: cable.id, part: cable, from: at(cable.from), to: at(cable.to) });
+        }
         break;
       case 'busbar':
-        links.push(...segmentsOf(part.id, part, part.junctions));
         break;
       default: {
         const isEarth = part.from === EARTH || part.to === EARTH;
-        if (isEarth) earths.push({ part, junction: part.from === EARTH ? part.to : part.from });
-        else links.push({ id: part.id, part, from: part.from, to: part.to });
+        if (isEarth) earths.push({ part, junction: at(part.from === EARTH ? part.to : part.from) });
+        else links.push({ id: part.id, part, from: at(part.from), to: at(part.to) });
       }
     }
   }
   const poleOf = polesOf(devices, links);
-  return 'reason' in poleOf ? poleOf : { devices, links, twoPorts, earths, poleOf: poleOf.poles };
+  return 'reason' in poleOf ? poleOf : { devices, links, twoPorts, earths, poleOf: poleOf.poles, bars: bars.byPoint() };
 }
 
-function segmentsOf(id: string, part: Part, junctions: readonly string[]): readonly Link[] {
-  return junctions.slice(1).map((to, index) => ({ id: index === 0 ? id : '', part, from: junctions[index] ?? to, to }));
+/** All taps of a busbar are one point of the drawing; bars that share a tap are one. */
+class Bars {
+  private readonly points = new Map<string, string>();
+  private readonly bars = new Map<string, Part[]>();
+
+  constructor(job: CheckedJob) {
+    for (const part of job.parts) {
+      if (part.kind === 'busbar') this.add(part);
+    }
+  }
+
+  private add(bar: Extract<Part, { kind: 'busbar' }>): void {
+    const point = bar.id as string;
+    const joined = new Set(bar.junctions.flatMap((junction) => this.points.get(junction) ?? []));
+    const parts = [...[...joined].flatMap((other) => this.bars.get(other) ?? []), bar];
+    for (const [junction, other] of this.points) if (joined.has(other)) this.points.set(junction, point);
+    for (const other of joined) this.bars.delete(other);
+    for (const junction of bar.junctions) this.points.set(junction, point);
+    this.bars.set(point, parts);
+  }
+
+  pointFor(junction: string): string {
+    return this.points.get(junction) ?? junction;
+  }
+  byPoint(): ReadonlyMap<string, readonly Part[]> {
+    return this.bars;
+  }
 }
 
 /** Every point takes the pole of the devices that it is connected with. */
