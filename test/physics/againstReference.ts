@@ -22,15 +22,29 @@ const POWER_TOLERANCE = 1e-9;
 /** A part's own law, of the volts, amps or watts at stake. */
 const LAW_TOLERANCE = 1e-9;
 
-/** All that is wrong with the answer about one random job; nothing for a right one. */
-export function complaints(options: RandomJobOptions): readonly string[] {
-  const name = `seed ${options.seed}, ${options.partCount} parts`;
-  const found = complaintsAbout(randomJob(options));
-  if (found === 'no reference') throw new Error(`${name}: the reference has no solution`);
-  return found.map((text) => `${name}: ${text}`);
+/** Random jobs through engine and reference: all that is wrong, and how many of them the reference could judge. */
+export function heldAgainstReference(list: readonly RandomJobOptions[]): {
+  readonly found: readonly string[];
+  readonly compared: number;
+} {
+  let compared = 0;
+  const found = list.flatMap((options) => {
+    const value = randomJob(options);
+    const about = complaintsAbout(value);
+    if (about !== 'no reference') compared += 1;
+    const texts = about === 'no reference' ? complaintsWithoutReference(value) : about;
+    return texts.map((text) => `seed ${options.seed}, ${options.partCount} parts: ${text}`);
+  });
+  return { found, compared };
 }
 
-/** As `complaints`, of a given job; a job that even the reference cannot solve has none to be held against. */
+/** A job that draws more than a limited source gives has no solution: an answer that claims one must at least keep the laws. */
+function complaintsWithoutReference(value: JobValue): readonly string[] {
+  const answer = answered(value);
+  return answer.point.outcome === 'solved' ? ownComplaints(answer) : badNumbers(answer.point);
+}
+
+/** All that is wrong with the answer about a job; a job that the reference cannot solve has nothing to be held against. */
 export function complaintsAbout(value: JobValue): readonly string[] | 'no reference' {
   const { job, operatingCase } = checked(value);
   const reference = referenceFor({ job, operatingCase });

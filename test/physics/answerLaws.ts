@@ -130,7 +130,7 @@ function cableBreach(cable: CablePart, { point, job, operatingCase }: Answered):
   const volts = voltsBetween(point, cable.from, cable.to);
   const { inParallel, endOhm, resistanceOhm } = cable;
   const metal = resistanceOhm === undefined ? outsideLaws(job).conductor(cable, operatingCase) : undefined;
-  const ohm = metal === undefined ? resistanceOhm! / inParallel : metal.ohm + metal.ohmPerA2 * currentA! ** 2;
+  const ohm = metal === undefined ? resistanceOhm! : metal.ohm + metal.ohmPerA2 * currentA! ** 2;
   return ohmic({
     part: cable.id,
     volts,

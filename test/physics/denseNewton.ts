@@ -31,6 +31,7 @@ const MOST_STEPS = 30;
 const NEAR = 1e-6;
 
 const MOST_PIVOTS = 40;
+const DIRECT_STATES: readonly BranchState[] = ['middle', 'held', 'lower'];
 
 /** All unknowns, and the piece that each piecewise branch is on. */
 export interface Found {
@@ -132,8 +133,11 @@ export class DenseSolver {
       seen.add(guess.states.join());
       const solved = this.newton(guess.x, { share: from.share, parts: { fixed: guess.states } });
       if (solved === undefined) {
-        // A set point below what the rest of the network holds cannot be held by any current that an array gives.
+        // No current of its array may hold a direct controller's set point, or join it to the rest: any other state may.
         guess.states.forEach((state, k) => {
+          if (this.network.branches[k]!.law.type !== 'pass') return;
+          const others = DIRECT_STATES.filter((other) => other !== state);
+          for (const other of others) waiting.unshift({ x: start, states: flipped(guess.states, [[k, other]]) });
           if (state === 'held') waiting.push({ x: start, states: flipped(guess.states, [[k, 'lower']]) });
         });
         continue;

@@ -138,7 +138,7 @@ function stringBranches(part: StringPart): readonly PlannedBranch[] {
 
 function cableBranch(cable: CablePart, input: PlanInput): PlannedBranch {
   const { inParallel, endOhm } = cable;
-  if (cable.resistanceOhm !== undefined) return between(cable, resistor((cable.resistanceOhm + endOhm) / inParallel));
+  if (cable.resistanceOhm !== undefined) return between(cable, resistor(cable.resistanceOhm + endOhm / inParallel));
   const { ohm, ohmPerA2 } = input.laws.conductor(cable, input.operatingCase);
   return between(cable, { type: 'warm', ohm: ohm + endOhm / inParallel, ohmPerA2 });
 }

@@ -41,7 +41,7 @@ export function addCable(draft: Draft, ends: Ends): number {
   const inParallel = random.chance(0.2) ? random.whole([2, 3]) : undefined;
   const lengthM = random.between([0.2, 8]);
   draft.add('cable', { ...ends, lengthM, resistanceOhm, ...given({ endOhm, inParallel }) });
-  return (resistanceOhm + (endOhm ?? 0)) / (inParallel ?? 1);
+  return resistanceOhm + (endOhm ?? 0) / (inParallel ?? 1);
 }
 
 /** A cable by its size: at a fixed temperature, or as warm as its own current makes it. */
