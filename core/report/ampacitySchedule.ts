@@ -10,10 +10,14 @@ import { hasFigures } from './caseWords.ts';
 import type { Citations } from './citations.ts';
 import { caseTitle, nominalVolts } from './cover.ts';
 import type { Cell, TableBlock } from './document.ts';
+import { cellText } from './document.ts';
 import { amps, fixed, NOT_GIVEN, percent } from './figures.ts';
 import type { ReportInput } from './input.ts';
 import { id, number, text } from './schedule.ts';
-import { sentenceCase } from './wording.ts';
+import { STATUS_WORDS, sentenceCase } from './wording.ts';
+
+/** Short in the rows, in full below the table. */
+const FROM_MEMORY = 'from memory';
 
 /** A conductor in the case that uses most of what it may carry there. */
 interface HeaviestCase {
@@ -51,8 +55,12 @@ export function ampacitySchedule(input: ReportInput, citations: Citations): read
         text('Basis'),
       ],
       rows,
+      dense: true,
       notes: [
-        'May carry: figure of the table times the factors, all conductors in parallel together. Heaviest case: the solved case that uses most of it.',
+        'May carry: figure of the table times the factors (those that are not 1), all conductors in parallel together. Heaviest case: the solved case that uses most of it, cases in which something starts left out.',
+        ...(rows.some((row) => cellText(row.at(-1) ?? '').endsWith(FROM_MEMORY))
+          ? [`“${FROM_MEMORY}”: ${STATUS_WORDS['from-memory']}.`]
+          : []),
         ...reasons.map((reason, index) => `[${letter(index)}] ${reason}.`),
       ],
     },
@@ -60,7 +68,9 @@ export function ampacitySchedule(input: ReportInput, citations: Citations): read
 }
 
 function ratedRow(cable: CablePart, { rated, currentA, title }: HeaviestCase, citations: Citations): readonly Cell[] {
-  const factors = rated.factors.map(({ name, factor }) => `${name} × ${fixed(factor, 2)}`);
+  const factors = rated.factors
+    .filter(({ factor }) => factor !== 1)
+    .map(({ name, factor }) => `${name} × ${fixed(factor, 2)}`);
   const said = [...rated.assumed.map((words) => `assumed: ${words}`), ...rated.remarks].join('; ');
   return [
     cable.id,
@@ -70,7 +80,7 @@ function ratedRow(cable: CablePart, { rated, currentA, title }: HeaviestCase, ci
     amps(currentA),
     rated.finalA === 0 ? NOT_GIVEN : percent(currentA / rated.finalA),
     title,
-    citations.mark({ ...rated.basis, status: rated.status }),
+    `${citations.short({ text: rated.basis.text, status: rated.status })} ${rated.status === 'from-memory' ? FROM_MEMORY : STATUS_WORDS[rated.status]}`,
   ];
 }
 
@@ -79,11 +89,13 @@ function heaviestCase(
   { job, tables, points }: ReportInput,
 ): HeaviestCase | { readonly missing: string } {
   let heaviest: HeaviestCase | { readonly missing: string } = {
-    missing: `current in ${cable.id}: no solved case determines it`,
+    missing: `current in ${cable.id}: no solved case without a start determines it`,
   };
   const nominal = nominalVolts(job);
   for (const point of points.filter(hasFigures)) {
     const operatingCase = caseById(job, point.case);
+    // What lasts a second does not warm a cable.
+    if (operatingCase?.surge !== undefined) continue;
     const current = point.parts.get(cable.id)?.currentA;
     if (operatingCase === undefined || current === undefined || current === null) continue;
     const rated = ampacity(cable, {

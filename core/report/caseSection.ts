@@ -116,6 +116,7 @@ class CaseTables {
   private readonly point: OperatingPoint;
   private readonly title: string;
   private reasons: string[] = [];
+  private idle: readonly string[] = [];
 
   constructor(job: CheckedJob, point: OperatingPoint, title: string) {
     this.job = job;
@@ -123,8 +124,11 @@ class CaseTables {
     this.title = title;
   }
 
-  all(): readonly TableBlock[] {
-    return [this.ends(), this.converters(), this.between()].filter((table) => table.rows.length > 0);
+  all(): readonly Block[] {
+    return [this.ends(), this.converters(), this.between()].flatMap((table): readonly Block[] => {
+      if (table.rows.length > 0) return [table];
+      return table.notes.map((note) => ({ kind: 'paragraph', tone: 'small', text: note }));
+    });
   }
 
   private answered<P extends Part>(parts: readonly P[]): readonly { readonly part: P; readonly answer: PartAnswer }[] {
@@ -134,15 +138,27 @@ class CaseTables {
     });
   }
 
+  /** Parts that carry current, or of which it is not known; the others are gathered in one line below the table. */
+  private working<P extends Part>(parts: readonly P[]): readonly { readonly part: P; readonly answer: PartAnswer }[] {
+    const answered = this.answered(parts);
+    const isIdle = ({ answer }: { readonly answer: PartAnswer }): boolean =>
+      answer.currentA !== null && Math.abs(answer.currentA) < NO_CURRENT_A;
+    this.idle = answered.filter(isIdle).map(({ part, answer }) => {
+      const state = stateText(answer);
+      return state === '' ? part.id : `${part.id} (${state})`;
+    });
+    return answered.filter((one) => !isIdle(one));
+  }
+
   /** Sources and loads: what hangs between the poles. */
   private ends(): TableBlock {
     this.reasons = [];
     const parts = this.job.parts.filter((part) =>
       ['string', 'array', 'charger', 'load', 'inverter'].includes(part.kind),
     );
-    const rows = this.answered(parts).map(({ part, answer }): readonly Cell[] => [
-      { text: part.id, under: part.label ?? '' },
-      KIND_WORDS[part.kind],
+    const rows = this.working(parts).map(({ part, answer }): readonly Cell[] => [
+      part.id,
+      part.label ?? KIND_WORDS[part.kind],
       this.figure(answer.currentA, amps, answer),
       this.figure(answer.voltageV, volts, answer),
       this.figure(answer.powerW, watts, answer),
@@ -152,7 +168,7 @@ class CaseTables {
       'Sources and loads',
       [
         { head: 'Part', kind: 'id', align: 'left' },
-        { head: 'Kind', kind: 'text', align: 'left' },
+        { head: 'What', kind: 'text', align: 'left' },
         { head: 'Current', unit: 'A', kind: 'number', align: 'decimal' },
         { head: 'Voltage', unit: 'V', kind: 'number', align: 'decimal' },
         { head: 'Power', unit: 'W', kind: 'number', align: 'decimal' },
@@ -165,10 +181,11 @@ class CaseTables {
 
   private converters(): TableBlock {
     this.reasons = [];
+    this.idle = [];
     const parts = this.job.parts.filter((part) => part.kind === 'controller' || part.kind === 'converter');
     const rows = this.answered(parts).map(({ part, answer }): readonly Cell[] => [
-      { text: part.id, under: part.label ?? '' },
-      KIND_WORDS[part.kind],
+      part.id,
+      part.label ?? KIND_WORDS[part.kind],
       this.figure(answer.inputV, volts, answer),
       this.figure(answer.inputA, amps, answer),
       this.figure(answer.outputV, volts, answer),
@@ -180,7 +197,7 @@ class CaseTables {
       'Controllers and converters',
       [
         { head: 'Part', kind: 'id', align: 'left' },
-        { head: 'Kind', kind: 'text', align: 'left' },
+        { head: 'What', kind: 'text', align: 'left' },
         { head: 'In', unit: 'V', kind: 'number', align: 'decimal' },
         { head: 'In', unit: 'A', kind: 'number', align: 'decimal' },
         { head: 'Out', unit: 'V', kind: 'number', align: 'decimal' },
@@ -198,10 +215,10 @@ class CaseTables {
     this.reasons = [];
     const nominal = nominalVolts(this.job);
     const base = nominal.length === 1 ? nominal[0] : undefined;
-    const parts = this.job.parts.flatMap((part): readonly Part[] =>
-      part.kind === 'pair' ? cablesOfPair(part) : [part],
-    );
-    const rows = this.answered(parts).flatMap(({ part, answer }): readonly (readonly Cell[])[] => {
+    const parts = this.job.parts
+      .flatMap((part): readonly Part[] => (part.kind === 'pair' ? cablesOfPair(part) : [part]))
+      .filter((part) => part.kind === 'busbar' || isTwoEnded(part));
+    const rows = this.working(parts).flatMap(({ part, answer }): readonly (readonly Cell[])[] => {
       if (part.kind === 'busbar') return [this.busbarRow(part, answer)];
       return isTwoEnded(part) ? [this.twoEndedRow(part, answer, base)] : [];
     });
@@ -227,7 +244,7 @@ class CaseTables {
 
   private twoEndedRow(part: TwoEndedPart, answer: PartAnswer, nominalV: number | undefined): readonly Cell[] {
     return [
-      { text: part.id, under: part.label ?? '' },
+      part.id,
       `${part.from} → ${part.to}`,
       this.figure(answer.currentA, amps, answer),
       this.figure(answer.dropV, millivolts, answer),
@@ -243,7 +260,7 @@ class CaseTables {
       currentA === null ? this.letter(answer) : amps(currentA),
     );
     return [
-      { text: part.id, under: part.label ?? '' },
+      part.id,
       segments.length > 1
         ? { text: part.junctions.join(' → '), under: `A in each segment: ${segments.join(', ')}` }
         : part.junctions.join(' → '),
@@ -278,15 +295,19 @@ class CaseTables {
     const lettered = this.reasons.map(
       (reason, index) => `[${String.fromCharCode(FIRST_LETTER + (index % LETTERS))}] not determined: ${reason}.`,
     );
+    const idle = this.idle.length === 0 ? [] : [`Without current: ${this.idle.join(', ')}.`];
     const unused = columns.map((_, column) => rows.every((row) => row[column] === ''));
     return {
       kind: 'table',
       caption: `${caption} — ${this.title}`,
       columns: columns.filter((_, column) => unused[column] !== true),
       rows: rows.map((row) => row.filter((_, column) => unused[column] !== true)),
-      notes: [...notes, ...lettered],
+      dense: true,
+      notes: [...(rows.length === 0 ? [] : notes), ...idle, ...lettered],
     };
   }
 }
+/** Less than a meter of this trade shows; solved figures of dead branches end up somewhere below. */
+const NO_CURRENT_A = 0.0005;
 const FIRST_LETTER = 'a'.charCodeAt(0);
 const LETTERS = 26;

@@ -8,6 +8,7 @@ import { drawWiring, sheetHeightPt } from './drawWiring.ts';
 import { wiringGraph } from './wiringGraph.ts';
 import type { Layout } from './wiringLayout.ts';
 import { layWiring } from './wiringLayout.ts';
+import { LONGEST_PT } from './wiringWords.ts';
 import { KIND_WORDS } from './wording.ts';
 
 type Orientation = 'portrait' | 'landscape';
@@ -51,16 +52,27 @@ interface Drawn {
 function diagram(job: CheckedJob, paper: Paper): Drawn | { readonly reason: string } {
   const graph = wiringGraph(job);
   if ('reason' in graph) return graph;
-  const layout = layWiring(graph);
-  if ('reason' in layout) return layout;
+  for (const longestPt of [LONGEST_PT.roomy, LONGEST_PT.tight]) {
+    const layout = layWiring(graph, longestPt);
+    if ('reason' in layout) return layout;
+    const sheets = sheetsFor(layout, paper);
+    if (sheets !== undefined)
+      return { figures: drawWiring(graph, layout, sheets.bands), orientation: sheets.orientation };
+  }
+  return { reason: 'the job is larger than what can be read on a few sheets of this paper' };
+}
+
+/** Upright or across, whichever takes fewer sheets; upright where both take as many. */
+function sheetsFor(
+  layout: Layout,
+  paper: Paper,
+): { readonly bands: readonly Band[]; readonly orientation: Orientation } | undefined {
   const ways = (['portrait', 'landscape'] as const).flatMap((orientation) => {
     const bands = bandsFor(layout, ROOM_PT[paper][orientation]);
     return bands === undefined ? [] : [{ orientation, bands }];
   });
   const [first, second] = ways;
-  if (first === undefined) return { reason: 'the job is larger than what can be read on a few sheets of this paper' };
-  const { orientation, bands } = second !== undefined && second.bands.length < first.bands.length ? second : first;
-  return { figures: drawWiring(graph, layout, bands), orientation };
+  return first !== undefined && second !== undefined && second.bands.length < first.bands.length ? second : first;
 }
 
 /** How the rows divide into sheets, evenly; `undefined` where the drawing would be too small to read or need too many. */

@@ -114,6 +114,8 @@ export interface TableBlock {
   readonly caption: string;
   readonly columns: readonly Column[];
   readonly rows: readonly (readonly Cell[])[];
+  /** Set closer: for long lists of figures. */
+  readonly dense?: true;
   /** Remarks that belong to the table, one line each. */
   readonly notes: readonly string[];
 }

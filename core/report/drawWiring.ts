@@ -140,7 +140,7 @@ class SheetOfRows {
     const onlyRow = rows.length === 1 ? rows[0] : undefined;
     const marks =
       dots.length === 0 && onlyRow !== undefined ? [symbols.terminal({ x, y: this.y({ row: onlyRow, pole }) })] : dots;
-    const text = cut(name, nameWidthPt(name) + 1);
+    const text = cut(name, nameWidthPt(name, this.layout.longestPt) + 1);
     const place = this.placer.choose(text, placesFor(pole, { x, ...stretch }));
     if (place === undefined) return [];
     const words = label(text, place, {

@@ -5,7 +5,7 @@
 import type { Device, Link, Pole, TwoPort, WiringGraph } from './wiringGraph.ts';
 import type { Side, Spot, WiringPlan } from './wiringPlan.ts';
 import { planWiring } from './wiringPlan.ts';
-import { linkWidthPt, nameWidthPt } from './wiringWords.ts';
+import { LONGEST_PT, linkWidthPt, nameWidthPt } from './wiringWords.ts';
 
 export const ROW_PT = 76;
 /** Between the plus line and the minus line of a row. */
@@ -60,6 +60,8 @@ export interface Wire {
 }
 export interface Layout {
   readonly width: number;
+  /** Width to which names of points were cut. */
+  readonly longestPt: number;
   readonly rowCount: number;
   readonly links: readonly PlacedLink[];
   readonly devices: readonly PlacedDevice[];
@@ -75,23 +77,28 @@ export function yOf({ row, pole }: { readonly row: number; readonly pole: Pole }
   return TOP_PT + row * ROW_PT + (pole === 'plus' ? 0 : POLES_PT);
 }
 
-export function layWiring(graph: WiringGraph): Layout | { readonly reason: string } {
+export function layWiring(
+  graph: WiringGraph,
+  longestPt: number = LONGEST_PT.roomy,
+): Layout | { readonly reason: string } {
   const plan = planWiring(graph);
   if ('reason' in plan) return plan;
-  const drafter = new Drafter(graph, plan);
+  const drafter = new Drafter(graph, plan, longestPt);
   return drafter.untangle() ? drafter.layout() : { reason: 'its lines would run over one another' };
 }
 
 class Drafter {
   private readonly graph: WiringGraph;
   private readonly plan: WiringPlan;
+  private readonly longestPt: number;
   /** Left edge of each layer's upright lines, by layer. */
   private layerX = new Map<number, number>();
   private right = 0;
 
-  constructor(graph: WiringGraph, plan: WiringPlan) {
+  constructor(graph: WiringGraph, plan: WiringPlan, longestPt: number) {
     this.graph = graph;
     this.plan = plan;
+    this.longestPt = longestPt;
   }
 
   /** Lines that would share a stretch of a row are moved to rows of their own, until none does. */
@@ -121,6 +128,7 @@ class Drafter {
     const links = this.links();
     return {
       width: this.right + SIDE_PT,
+      longestPt: this.longestPt,
       rowCount: this.plan.rowCount,
       links,
       wires: [...this.plan.deviceAt.keys()].flatMap((device) => this.wiresOf(device)),
@@ -180,7 +188,7 @@ class Drafter {
       const slots = Math.max(...inLayer(layer).map(({ slot }) => slot));
       const next = layers[index + 1];
       const names = [layer, next ?? layer].map((each) =>
-        Math.max(...inLayer(each).map(({ name }) => nameWidthPt(name))),
+        Math.max(...inLayer(each).map(({ name }) => nameWidthPt(name, this.longestPt))),
       );
       const wordsPt =
         next === undefined
@@ -197,7 +205,7 @@ class Drafter {
         const [a, b] = [layerOf(from), layerOf(to)];
         return (a === layer && b === next) || (a === next && b === layer);
       })
-      .map(linkWidthPt);
+      .map((link) => linkWidthPt(link, this.longestPt));
     return Math.max(0, ...widths);
   }
 

@@ -8,8 +8,8 @@ import type { Link } from './wiringGraph.ts';
 export const WORD_PT = 7;
 /** Mean width of a character of the report's typeface as a fraction of its size, on the wide side. */
 const CHARACTER = 0.53;
-/** Longest name that a layer makes room for; longer ones are cut. */
-const LONGEST_PT = 62;
+/** Longest name that a layer makes room for, by preference and where the drawing is too wide; longer ones are cut. */
+export const LONGEST_PT = { roomy: 62, tight: 44 } as const;
 /** Room for a symbol alone. */
 const SYMBOL_PT = 30;
 const BOX_PT = 44;
@@ -23,13 +23,13 @@ export function cut(text: string, widthPt: number): string {
   return text.length <= characters ? text : `${text.slice(0, Math.max(1, characters - 1))}…`;
 }
 
-export function nameWidthPt(name: string): number {
-  return Math.min(textWidthPt(name), LONGEST_PT);
+export function nameWidthPt(name: string, longestPt: number): number {
+  return Math.min(textWidthPt(name), longestPt);
 }
 /** Room between the two points of a link. */
-export function linkWidthPt({ id, part }: Link): number {
+export function linkWidthPt({ id, part }: Link, longestPt: number): number {
   if (part.kind === 'controller' || part.kind === 'converter') return BOX_PT;
-  const wordsPt = Math.min(Math.max(textWidthPt(id), textWidthPt(linkDetail(part))), LONGEST_PT);
+  const wordsPt = Math.min(Math.max(textWidthPt(id), textWidthPt(linkDetail(part))), longestPt);
   return Math.max(SYMBOL_PT, wordsPt + 8);
 }
 

@@ -7,7 +7,7 @@ import { FINE, HAIR, PEN } from './sheet.ts';
 import type { TextStyle } from './style.ts';
 import { ascent, STYLES } from './style.ts';
 import type { LaidCell, LaidColumn, LaidRow, LaidTable } from './tableLayout.ts';
-import { layTable, MARK_PT, ROW_PAD_PT, splitNumber } from './tableLayout.ts';
+import { layTable, MARK_PT, splitNumber } from './tableLayout.ts';
 import { flowText } from './textBlocks.ts';
 
 /** A table shorter than this fraction of a page is not divided while it fits a page. */
@@ -75,7 +75,7 @@ function repeatedHead(sheet: Sheet, block: TableBlock, table: LaidTable): void {
 function drawHeadCell(sheet: Sheet, table: LaidTable, index: number, column: LaidColumn): void {
   const lines = table.head.cells[index]?.lines ?? [];
   const ownPt = lines.reduce((sum, { style }) => sum + style.leadingPt, 0);
-  let y = sheet.y + table.head.heightPt - ROW_PAD_PT - ownPt;
+  let y = sheet.y + table.head.heightPt - table.padPt - ownPt;
   for (const { text, style } of lines) {
     place(sheet, text, style, column, y + ascent(style));
     y += style.leadingPt;
@@ -131,24 +131,28 @@ function drawRow(sheet: Sheet, table: LaidTable, element: Element, row: LaidRow)
   table.columns.forEach((column, index) => {
     const cell = row.cells[index];
     const holder = sheet.child(tagged, 'TD');
-    if (cell !== undefined && cell.lines.length > 0) drawCell(sheet, holder, column, cell);
+    if (cell !== undefined && cell.lines.length > 0) drawCell(sheet, table, { holder, column, cell });
   });
   sheet.y += row.heightPt;
   underline(sheet, table);
 }
 
-function drawCell(sheet: Sheet, holder: Element, column: LaidColumn, cell: LaidCell): void {
+function drawCell(
+  sheet: Sheet,
+  { padPt }: LaidTable,
+  { holder, column, cell }: { readonly holder: Element; readonly column: LaidColumn; readonly cell: LaidCell },
+): void {
   const indent = cell.mark === undefined ? 0 : MARK_PT;
   const first = cell.lines[0];
   if (cell.mark !== undefined && first !== undefined) {
     drawMark(sheet, cell.mark, {
       x: sheet.left + column.x + 4.5,
-      y: sheet.y + ROW_PAD_PT + ascent(first.style) - 3,
+      y: sheet.y + padPt + ascent(first.style) - 3,
       radius: 4.5,
     });
   }
   sheet.tagged(holder, 'TD', () => {
-    let y = sheet.y + ROW_PAD_PT;
+    let y = sheet.y + padPt;
     for (const { text, style } of cell.lines) {
       const baselineY = y + ascent(style);
       if (column.column.align === 'decimal') placeDecimal(sheet, text, style, column, baselineY);
@@ -190,7 +194,7 @@ function drawTallRow(sheet: Sheet, block: TableBlock, table: LaidTable, element:
   let from = 0;
   while (from < lineCount) {
     const leadingPt = table.styles.text.leadingPt;
-    const fits = Math.floor((sheet.room - 2 * ROW_PAD_PT) / leadingPt);
+    const fits = Math.floor((sheet.room - 2 * table.padPt) / leadingPt);
     if (fits < 2) {
       sheet.newPage();
       repeatedHead(sheet, block, table);
@@ -203,9 +207,9 @@ function drawTallRow(sheet: Sheet, block: TableBlock, table: LaidTable, element:
       const holder = holders[index];
       const lines = cell?.lines.slice(start, to) ?? [];
       if (holder !== undefined && lines.length > 0)
-        drawCell(sheet, holder, column, { lines, mark: start === 0 ? cell?.mark : undefined });
+        drawCell(sheet, table, { holder, column, cell: { lines, mark: start === 0 ? cell?.mark : undefined } });
     });
-    sheet.y += (to - from) * leadingPt + 2 * ROW_PAD_PT;
+    sheet.y += (to - from) * leadingPt + 2 * table.padPt;
     from = to;
   }
   underline(sheet, table);

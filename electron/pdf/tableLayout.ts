@@ -10,7 +10,8 @@ import type { Typeface } from './typeface.ts';
 const GUTTER_PT = 9;
 const GUTTER_AFTER_FIGURES_PT = 17;
 /** Above and below the text of a row. */
-export const ROW_PAD_PT = 2.75;
+const ROW_PAD_PT = 2.75;
+const DENSE_PAD_PT = 1.5;
 /** Height of a row that a pen writes in. */
 const PEN_ROW_PT = 20;
 /** Room for a severity shape in front of a text. */
@@ -48,6 +49,8 @@ export interface LaidColumn {
   readonly fractionPt: number;
 }
 export interface LaidTable {
+  /** Above and below the text of a row. */
+  readonly padPt: number;
   readonly styles: TableStyles;
   readonly columns: readonly LaidColumn[];
   readonly head: LaidRow;
@@ -63,9 +66,11 @@ interface Need {
 export function layTable(face: Typeface, block: TableBlock, widthPt: number): LaidTable {
   const gaps = block.columns.map((column, index) => gapBefore(column, block.columns[index - 1]));
   const gutters = total(gaps);
-  let styles = stylesAt(TABLE_SIZES_PT[0] ?? 8);
+  const padPt = block.dense === true ? DENSE_PAD_PT : ROW_PAD_PT;
+  const sizes = block.dense === true ? TABLE_SIZES_PT.slice(1) : TABLE_SIZES_PT;
+  let styles = stylesAt(sizes[0] ?? 8);
   let needs: readonly Need[] = [];
-  for (const sizePt of TABLE_SIZES_PT) {
+  for (const sizePt of sizes) {
     styles = stylesAt(sizePt);
     needs = block.columns.map((column, index) =>
       needOf(
@@ -86,16 +91,17 @@ export function layTable(face: Typeface, block: TableBlock, widthPt: number): La
     return laid;
   });
   return {
+    padPt,
     styles,
     columns,
     head: layRow(
       columns.map(({ column, widthPt }) => headLines(face, column, widthPt, styles)),
-      0,
+      { padPt, minimumPt: 0 },
     ),
     rows: block.rows.map((row) =>
       layRow(
         columns.map((column, index) => layCell(face, row[index] ?? '', column, styles)),
-        minimumHeight(block),
+        { padPt, minimumPt: minimumHeight(block) },
       ),
     ),
   };
@@ -253,7 +259,10 @@ function layCell(face: Typeface, cell: Cell, { widthPt }: LaidColumn, styles: Ta
   return { lines: [...lines, ...quiet], mark };
 }
 
-function layRow(cells: readonly LaidCell[], minimumPt: number): LaidRow {
+function layRow(
+  cells: readonly LaidCell[],
+  { padPt, minimumPt }: { readonly padPt: number; readonly minimumPt: number },
+): LaidRow {
   const tallest = Math.max(0, ...cells.map(({ lines }) => total(lines.map(({ style }) => style.leadingPt))));
-  return { cells, heightPt: Math.max(tallest + 2 * ROW_PAD_PT, minimumPt) };
+  return { cells, heightPt: Math.max(tallest + 2 * padPt, minimumPt) };
 }

@@ -4,7 +4,8 @@ import { buildReport } from '../../core/report/buildReport.ts';
 import { diagramSection } from '../../core/report/diagramSection.ts';
 import type { FigureBlock, Shape } from '../../core/report/document.ts';
 import { wiringGraph } from '../../core/report/wiringGraph.ts';
-import { type Layout, layWiring } from '../../core/report/wiringLayout.ts';
+import { type Layout, layWiring, yOf } from '../../core/report/wiringLayout.ts';
+import { examples } from '../../data/examples/index.ts';
 import { checked } from './reportInput.ts';
 import { cabin, van } from './reportJobs.ts';
 import { largeJob } from './reportLargeJob.ts';
@@ -17,12 +18,13 @@ function layoutOf(file: object): Layout {
   if ('reason' in layout) throw new Error(layout.reason);
   return layout;
 }
-const figureOf = (file: object): FigureBlock | undefined =>
-  diagramSection(checked(file)).find((block) => block.kind === 'figure');
-const textsOf = (figure: FigureBlock | undefined): readonly string[] =>
-  figure?.shapes.flatMap((shape: Shape) => (shape.shape === 'text' ? [shape.text] : [])) ?? [];
+const figuresOf = (file: object): readonly FigureBlock[] =>
+  diagramSection(checked(file), 'A4').flatMap((block) => (block.kind === 'figure' ? [block] : []));
+const figureOf = (file: object): FigureBlock | undefined => figuresOf(file)[0];
+const textsOf = (figures: readonly FigureBlock[]): readonly string[] =>
+  figures.flatMap(({ shapes }) => shapes.flatMap((shape: Shape) => (shape.shape === 'text' ? [shape.text] : [])));
 const reasonOf = (file: object): string => {
-  const paragraph = diagramSection(checked(file)).find((block) => block.kind === 'paragraph');
+  const paragraph = diagramSection(checked(file), 'A4').find((block) => block.kind === 'paragraph');
   return paragraph?.kind === 'paragraph' ? paragraph.text : '';
 };
 const job = (parts: readonly object[]) => ({
@@ -60,15 +62,24 @@ describe('a cabin of three strings', () => {
   });
 
   test('every conductor and device is drawn, both poles in full', () => {
-    const texts = textsOf(figureOf(cabin));
+    const texts = textsOf(figuresOf(cabin));
     for (const { id, kind } of checked(cabin).parts) {
       const names = kind === 'pair' ? [`${id}.plus`, `${id}.minus`] : [id];
-      for (const name of names) expect(texts).toContain(name);
+      for (const name of names)
+        expect(texts.some((text) => text === name || (text.endsWith('…') && name.startsWith(text.slice(0, -1))))).toBe(
+          true,
+        );
     }
   });
 
-  test('the plus line of a row lies above its minus line', () => {
-    for (const { plusY, minusY } of layout.devices) expect(plusY).toBeLessThan(minusY);
+  test('a busbar is one upright bar at which all its taps meet', () => {
+    const bars = layout.points.filter(({ isBar }) => isBar);
+    expect(bars.map(({ name }) => name)).toEqual(['BAR+']);
+    // Three strings at the left; the main switch, the solar controller and the generator charger at the right.
+    const ends = [...layout.links, ...layout.wires].filter(
+      ({ x1, x2, pole }) => pole === 'plus' && (x1 === bars[0]?.x || x2 === bars[0]?.x),
+    );
+    expect(ends).toHaveLength(6);
   });
 
   test('the controller stands over both its lines', () => {
@@ -116,7 +127,7 @@ describe('the wiring as people do it', () => {
     const layout = layoutOf(
       job([string('S', 'P', 'N'), load('L', 'P', 'N'), string('T', 'U', 'V'), load('M', 'U', 'V')]),
     );
-    const row = new Map<string, number>(layout.devices.map(({ device, plusY }) => [device.part.id, plusY]));
+    const row = new Map<string, number>(layout.devices.map(({ device, row }) => [device.part.id, row]));
     expect(row.get('T')).toBeGreaterThan(row.get('S') ?? Number.NaN);
     expect(row.get('M')).toBe(row.get('T'));
   });
@@ -127,7 +138,7 @@ describe('what cannot be drawn is said, and the connections are listed', () => {
     const file = job([string('S1', 'M', 'N'), string('S2', 'P', 'M'), load('L', 'P', 'N')]);
     expect(figureOf(file)).toBeUndefined();
     expect(reasonOf(file)).toContain('No diagram is drawn: point M belongs to both poles');
-    const table = diagramSection(checked(file)).find((block) => block.kind === 'table');
+    const table = diagramSection(checked(file), 'A4').find((block) => block.kind === 'table');
     expect(table?.kind === 'table' ? table.rows.map(([name]) => name) : []).toEqual([
       { text: 'S1', under: '' },
       { text: 'S2', under: '' },
@@ -143,6 +154,29 @@ describe('what cannot be drawn is said, and the connections are listed', () => {
     // 3 parts, and 99 branches whose run is two conductors.
     expect(table?.kind === 'table' ? table.rows.length : 0).toBe(3 + 99 * 4);
   });
+});
+
+test('a drawing of many rows is divided into sheets on which every device stands once', () => {
+  const boat = job([
+    string('S', 'P', 'N'),
+    ...Array.from({ length: 15 }, (_, index) => [
+      cable(`W${index}`, 'P', `Q${index}`),
+      load(`L${index}`, `Q${index}`, 'N'),
+    ]).flat(),
+  ]);
+  const figures = figuresOf(boat);
+  expect(figures.length).toBeGreaterThan(1);
+  expect(figures[0]?.title).toBe(`One-line diagram, both poles in full, sheet 1 of ${figures.length}`);
+  const texts = textsOf(figures);
+  for (let index = 0; index < 15; index += 1) expect(texts.filter((text) => text === `L${index}`)).toHaveLength(1);
+  expect(texts).toContain('goes on on another sheet');
+});
+
+test.each(examples)('the example $name is drawn on both papers', ({ text }) => {
+  const example = checked(JSON.parse(text) as object);
+  for (const paper of ['A4', 'Letter'] as const) {
+    expect(diagramSection(example, paper).filter(({ kind }) => kind === 'figure').length).toBeGreaterThan(0);
+  }
 });
 
 describe('random wiring', () => {
@@ -186,32 +220,49 @@ describe('random wiring', () => {
       ]);
       expect([seed, ...levelClashes(layout)]).toEqual([seed]);
       expect([seed, ...uprightClashes(layout)]).toEqual([seed]);
-      for (const { x, top, bottom } of layout.points) {
+      expect([seed, ...falseTouches(layout)]).toEqual([seed]);
+      for (const { x, rows } of layout.points) {
         expect(x).toBeGreaterThan(0);
         expect(x).toBeLessThan(layout.width);
-        expect(top).toBeGreaterThan(0);
-        expect(bottom).toBeLessThan(layout.height);
+        expect(rows[0]).toBeGreaterThanOrEqual(0);
+        expect(rows.at(-1)).toBeLessThan(layout.rowCount);
       }
     }
     // Most random wiring must be drawable, or the property above says little.
     expect(drawn).toBeGreaterThan(150);
   });
 
+  type Level = { readonly x1: number; readonly x2: number; readonly y: number; readonly name: string };
+  function levelsOf(layout: Layout): readonly Level[] {
+    return [
+      ...layout.links.map((placed) => ({ ...placed, y: yOf(placed), name: placed.link.id })),
+      ...layout.wires.map((wire) => ({ ...wire, y: yOf(wire), name: 'wire' })),
+    ].map(({ x1, x2, y, name }) => ({ x1: Math.min(x1, x2), x2: Math.max(x1, x2), y, name }));
+  }
   function levelClashes(layout: Layout): readonly string[] {
-    const lines = [
-      ...layout.links.map((line) => ({ ...line, name: line.link.id })),
-      ...layout.wires.map((line) => ({ ...line, name: 'wire' })),
-    ];
     return clashes(
-      lines.map(({ x1, x2, y, name }) => ({ at: y, low: Math.min(x1, x2), high: Math.max(x1, x2), name })),
+      levelsOf(layout).map(({ x1, x2, y, name }) => ({ at: y, low: x1, high: x2, name })),
       0,
     );
   }
   function uprightClashes(layout: Layout): readonly string[] {
     // Upright lines that touch end to end would read as one: they may not even touch.
-    return clashes(
-      layout.points.map(({ x, top, bottom, name }) => ({ at: x, low: top, high: bottom, name })),
-      -0.01,
+    const uprights = layout.points.map(({ x, rows, pole, name }) => {
+      const ys = rows.map((row) => yOf({ row, pole }));
+      return { at: x, low: Math.min(...ys), high: Math.max(...ys), name };
+    });
+    return clashes(uprights, -0.01);
+  }
+  /** An upright line that ends on a level line would seem joined to it: only the lines that end there may be there. */
+  function falseTouches(layout: Layout): readonly string[] {
+    const levels = levelsOf(layout);
+    return layout.points.flatMap(({ x, rows, pole, name }) =>
+      [rows[0] ?? 0, rows.at(-1) ?? 0].flatMap((row) => {
+        const y = yOf({ row, pole });
+        return levels
+          .filter((level) => Math.abs(level.y - y) < 0.01 && level.x1 < x - 0.01 && level.x2 > x + 0.01)
+          .map((level) => `${name} touches ${level.name}`);
+      }),
     );
   }
   function clashes(

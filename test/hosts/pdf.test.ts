@@ -2,6 +2,7 @@
 import { describe, expect, test } from 'vitest';
 import { buildReport } from '../../core/report/buildReport.ts';
 import type { Block, Paper, ReportDocument } from '../../core/report/document.ts';
+import { examples } from '../../data/examples/index.ts';
 import { renderPdf } from '../../electron/pdf/renderPdf.ts';
 import { MARGINS_PT } from '../../electron/pdf/style.ts';
 import { checked, solvedInput } from '../core/reportInput.ts';
@@ -11,6 +12,10 @@ import { cabinInput, point } from '../core/reportSample.ts';
 import type { DrawnText, ReadPdf } from './pdfReader.ts';
 import { elementsWith, readPdf, spokenText, squeeze } from './pdfReader.ts';
 
+/** The most tangled of the invented examples: two banks, a relay between them, isolators, three sheets of diagram. */
+const sloop = JSON.parse(examples.find(({ name }) => name === 'two-bank-sloop')?.text ?? '') as object;
+const sloopReport = buildReport(solvedInput(sloop, { paper: 'Letter' }));
+const sloopPdf = await readPdf(await renderPdf(sloopReport));
 const cabinReport = buildReport(solvedInput(cabin));
 const cabinBytes = await renderPdf(cabinReport);
 const cabinPdf = await readPdf(cabinBytes);
@@ -66,6 +71,7 @@ describe.each([
   ['the cabin on A4', cabinReport, cabinPdf],
   ['the van on Letter', vanReport, vanPdf],
   ['the hand-made sample on Letter', sampleReport, samplePdf],
+  ['the two-bank sloop on Letter', sloopReport, sloopPdf],
   ['a job of 300 parts', largeReport(), largePdf],
 ] as const)('%s', (_name, report, pdf) => {
   test('says every word of the report', () => {
@@ -123,7 +129,8 @@ describe.each([
     expect(roles('LI')).toBeGreaterThan(20);
     const drawn = pdf.pages.flatMap(({ structure }) => elementsWith(structure, 'Figure'));
     expect(drawn).toHaveLength(figures.length);
-    for (const figure of drawn) expect(figure.alt).toMatch(/^Diagram of the wiring, both poles\. /);
+    for (const figure of drawn)
+      expect(figure.alt).toMatch(/^Diagram of the wiring, both poles(?:, sheet \d of \d)?\. /);
   });
 });
 /** Half a point: less than a hairline on paper; rounding of widths. */
