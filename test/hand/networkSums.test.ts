@@ -221,6 +221,21 @@ describe('a charger with a bank of 13 V behind 0.1 ohm and a load of 5 A', () =>
   });
 });
 
+describe('several limited sources with no bank', () => {
+  it('on one pair of posts: 7 A at the limit of the higher charger, the rest from the lower one, which holds 12.4 V', () => {
+    // At 12.4 V: 12.4/4 + 50/12.4 = 3.1 + 4.0323 = 7.1323 A, more than the 7 A of the charger set to 12.5 V.
+    const found = point([
+      { id: 'high', kind: 'charger', plus: 'P', minus: 'N', outputA: 7, setpointV: 12.5 },
+      { id: 'low', kind: 'charger', plus: 'P', minus: 'N', outputA: 18, setpointV: 12.4 },
+      load({ powerW: 50 }),
+      { id: 'lamp', kind: 'load', plus: 'P', minus: 'N', resistanceOhm: 4 },
+    ]);
+    expect(voltsAt(found, 'P')).toBeCloseTo(12.4, DECIMALS);
+    expect(ampsIn(found, 'high')).toBeCloseTo(7, DECIMALS);
+    expect(ampsIn(found, 'low')).toBeCloseTo(3.1 + 50 / 12.4 - 7, DECIMALS);
+  });
+});
+
 describe('a converter from a bank of 25 V behind 0.1 ohm', () => {
   const from = [stringOf('S', { plus: 'P', minus: 'N', emfV: 25, resistanceOhm: 0.1 })];
   const converter = (more: Record<string, unknown>): PartValue => ({
@@ -319,6 +334,44 @@ describe('an array of 20 V and 5 A at its best point, in full sun, its cells at 
     const found = harvest('mppt', { setpointV: 13 });
     expect(voltsAt(found, 'P')).toBeCloseTo(13, DECIMALS);
     expect(answerOf(found, 'MC').outputA).toBeCloseTo(5, DECIMALS);
+  });
+
+  const array2 = { ...array, minus: 'a' };
+  const tracker = (more: Record<string, unknown>): PartValue => {
+    const ports = { from: { plus: 'A', minus: 'a' }, to: { plus: 'O', minus: 'o' } };
+    return { id: 'MC', kind: 'controller', ...ports, type: 'mppt', outputA: 30, maxInputV: 100, ...more };
+  };
+
+  it('gives its 95 W to a bare resistor of 4 ohm at sqrt(95 · 4) = 19.49 V, below the set point, whatever else there is', () => {
+    const found = point(
+      [
+        array2,
+        tracker({ setpointV: 30 }),
+        { id: 'heater', kind: 'load', plus: 'O', minus: 'o', resistanceOhm: 4 },
+        stringOf('S', { plus: 'P', minus: 'N', emfV: 25, resistanceOhm: 0.1 }),
+        load({ currentA: 2 }),
+      ],
+      sun,
+    );
+    expect(voltsAt(found, 'O') - voltsAt(found, 'o')).toBeCloseTo(Math.sqrt(380), 6);
+    expect(voltsAt(found, 'P')).toBeCloseTo(24.8, DECIMALS);
+  });
+
+  it('holds its set point of 15 V alone, with 52.5 of its 95 W, where a charger is set lower', () => {
+    // 15 V: 15/10 + 2 = 3.5 A, 52.5 W of the 95 W; the charger at 14 V stands idle.
+    const found = point(
+      [
+        array2,
+        tracker({ setpointV: 15 }),
+        { id: 'C', kind: 'charger', plus: 'O', minus: 'o', outputA: 20, setpointV: 14 },
+        { id: 'lamp', kind: 'load', plus: 'O', minus: 'o', resistanceOhm: 10 },
+        load({ currentA: 2 }, 'O', 'o'),
+      ],
+      sun,
+    );
+    expect(voltsAt(found, 'O') - voltsAt(found, 'o')).toBeCloseTo(15, DECIMALS);
+    expect(ampsIn(found, 'C')).toBe(0);
+    expect(answerOf(found, 'MC').outputA).toBeCloseTo(3.5, DECIMALS);
   });
 
   it('works at the volts of the bank through a direct controller', () => {

@@ -217,7 +217,7 @@ function converterBreaches(
   const wantedW = (outputA! * outputV) / (part.efficiency ?? 0.9) + (part.standbyW ?? 0);
   return [
     ...feedBreaches({ id: part.id, setpointV: part.outputV }, { amps: outputA!, volts: outputV, limitA: part.outputA }),
-    breach(part, 'input power pays for output power', inputA! * inputV - wantedW, Math.max(1, wantedW)),
+    breach(part, 'input power pays for output power', inputA! * inputV - wantedW, Math.max(inputV, outputV, wantedW)),
   ];
 }
 
@@ -234,6 +234,11 @@ function controllerBreaches(part: ControllerPart, at: PortAnswer): readonly Brea
   const inputW = inputA! * inputV * (part.efficiency ?? 0.95);
   return [
     ...never,
-    breach(part, 'output power is input power times efficiency', outputA! * outputV - inputW, Math.max(1, inputW)),
+    breach(
+      part,
+      'output power is input power times efficiency',
+      outputA! * outputV - inputW,
+      Math.max(inputV, outputV, inputW),
+    ),
   ];
 }
