@@ -96,7 +96,9 @@ export class Reader {
     const first = elements[0];
     const through = first === undefined ? 0 : this.currentIn(first);
     const currentA = through === null ? null : positive(sign * through);
-    const powerW = currentA === 0 ? 0 : voltageV === null || currentA === null ? null : voltageV * currentA;
+    // The halves of a string with a midpoint may carry different currents: the power is that of both.
+    let powerW: number | null = 0;
+    for (const element of elements) powerW = plusPower(powerW, sign, this.currentIn(element), this.voltsAcross(element));
     return {
       id: part.id,
       currentA,
@@ -232,6 +234,11 @@ const STATE_WORDS: Record<Valve['state'], (valve: Valve) => string> = {
 
 function arrayState(circuit: Circuit, index: number): string | undefined {
   return circuit.parts[index]!.kind === 'array' && circuit.elementsOfPart[index]!.length === 0 ? 'dark' : undefined;
+}
+
+function plusPower(sum: number | null, sign: 1 | -1, i: number | null, v: number | null): number | null {
+  if (i === 0) return sum;
+  return sum === null || i === null || v === null ? null : positive(sum + sign * i * v);
 }
 
 /** No minus zero in an answer. */

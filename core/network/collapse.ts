@@ -45,7 +45,11 @@ export function settleOrCollapse(circuit: Circuit, graph: GraphView): { assemble
   return { nose: { share: low, assembled: best, sink } };
 }
 
-/** The sink whose volts fall fastest, in proportion, as all sinks grow together. */
+/**
+ * The sink that tips the network over. As all sinks grow together the volts change by z = dV/d(share); near the nose z is the
+ * direction in which the conductance matrix loses its grip, and a constant power P at v volts takes P / v^2 times z^2 of it.
+ * The largest such share names the load; among set currents alone, the largest drop of power.
+ */
 function weakest(circuit: Circuit, assembled: Assembled): Sink | null {
   const { node, size } = assembled.reduction;
   const sinks = circuit.sinks.filter((sink) => sink.state === 'on' && isDemand(sink));
@@ -58,14 +62,16 @@ function weakest(circuit: Circuit, assembled: Assembled): Sink | null {
     if (node[element.to]! >= 0) b[node[element.to]!]! += element.i;
   }
   assembled.solveLinear(b, b);
+  const powers = sinks.some((sink) => sink.element.law === Law.power);
   let worst: Sink | null = null;
   let steepest = Number.NEGATIVE_INFINITY;
   for (const sink of sinks) {
     const p = node[sink.element.from]!;
     const q = node[sink.element.to]!;
-    const fall = -((p >= 0 ? b[p]! : 0) - (q >= 0 ? b[q]! : 0)) / Math.max(Math.abs(sink.element.v), 1e-9);
-    if (fall > steepest) {
-      steepest = fall;
+    const z = (p >= 0 ? b[p]! : 0) - (q >= 0 ? b[q]! : 0);
+    const share = powers ? -sink.element.slope * z * z : Math.abs(sink.element.i * z);
+    if (share > steepest) {
+      steepest = share;
       worst = sink;
     }
   }

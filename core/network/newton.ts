@@ -73,17 +73,22 @@ export class Assembled {
 
   /**
    * Newton from the present volts with every constant-power and constant-current sink at `share` (0 to 1) of its figure.
-   * Returns false where it does not settle on the high-voltage branch.
+   * Returns false where it does not settle on the high-voltage branch. `heldMoved`: a held voltage has just been changed.
    */
-  solve(share: number): boolean {
+  solve(share: number, heldMoved = false): boolean {
     if (share > 0 && this.power.some((element) => this.isShorted(element))) return false;
     let best = Number.POSITIVE_INFINITY;
     let stalled = 0;
+    let lastMoved = Number.POSITIVE_INFINITY;
     for (let pass = 0; pass < 80; pass++) {
       this.evaluateAll(share);
-      const moved = this.coupling.update(share);
+      // Just after a held voltage was moved the currents at it mean nothing yet: nothing is told across before one step.
+      const moved = heldMoved && pass === 0 ? Number.POSITIVE_INFINITY : this.coupling.update(share);
       const { norm, floor } = this.residual();
-      if (norm <= floor && moved <= 16 * floor) return this.isHighBranch();
+      // Coupled sides go on telling each other until that no longer brings them closer.
+      const agreed = moved === 0 || (moved <= 16 * floor && moved > 0.25 * lastMoved);
+      lastMoved = moved;
+      if (norm <= floor && agreed) return this.isHighBranch();
       if (norm >= 0.5 * best && norm <= 64 * floor && moved <= 256 * floor && ++stalled >= 2)
         return this.isHighBranch();
       best = Math.min(best, norm);

@@ -203,15 +203,17 @@ function giveWay(
     if (valve.kind === 'diode') enter(valve, 'off');
     else enter(valve, above ? 'off' : 'limited');
   }
+  // A source that pushes into a group of its own is what is wrong there: loads are set aside only where there is none.
+  const pushing = circuit.valves.filter((valve) => adrift.includes(valve.element));
+  for (const valve of pushing) enter(valve, valve.state === 'limited' ? 'held' : 'off');
+  if (pushing.length > 0) return;
   for (const element of adrift) {
-    const valve = circuit.valves.find((candidate) => candidate.element === element);
     const sink = circuit.sinks.find((candidate) => candidate.element === element);
-    if (valve !== undefined) enter(valve, valve.state === 'limited' ? 'held' : 'off');
-    else if (sink !== undefined) {
+    if (sink !== undefined) {
       sink.state = 'unfed';
       sink.parkedLaw = element.law;
-      element.law = Law.none;
-    } else element.law = Law.none;
+    }
+    element.law = Law.none;
   }
 }
 

@@ -20,7 +20,7 @@ export function trackMaximumPower(assembled: Assembled, share: number): boolean 
     for (const search of searches) moved = Math.max(moved, search.advance(assembled));
     if (moved <= 1e-14) break;
     for (const { valve, changeV } of searches) shiftHeld(assembled, valve.input, changeV);
-    if (!assembled.solve(share)) return false;
+    if (!assembled.solve(share, true)) return false;
   }
   assembled.coupling.balance();
   for (const { valve } of searches) {
@@ -28,6 +28,9 @@ export function trackMaximumPower(assembled: Assembled, share: number): boolean 
   }
   return true;
 }
+
+/** I + V dI/dV below this part of I is rounding: the volts are the best to the same part. */
+const BEST = 1e-12;
 
 class Search {
   readonly valve: TrackerValve;
@@ -51,7 +54,7 @@ class Search {
     else this.high = Math.min(this.high, v);
     const secant = v - (f * (v - this.lastV)) / (f - this.lastF);
     let next = Number.isFinite(secant) ? secant : v * (1 + 1e-3 * Math.sign(f));
-    if (Math.abs(f) <= 1e-13 * Math.abs(inputA)) next = v;
+    if (Math.abs(f) <= BEST * Math.abs(inputA)) next = v;
     else if (!(next > this.low && next < this.high)) {
       next = this.high === Number.POSITIVE_INFINITY ? v * 1.1 : 0.5 * (this.low + this.high);
     }

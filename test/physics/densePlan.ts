@@ -22,7 +22,7 @@ export interface PlannedBranch {
   /** A `draw` names its feed by key until the branches are numbered; a `pass` its output minus by junction. */
   readonly law: PlannedLaw;
 }
-export type PlannedLaw =
+type PlannedLaw =
   | Exclude<Law, { type: 'draw' | 'pass' }>
   | { readonly type: 'draw'; readonly feed: string; readonly efficiency: number; readonly standbyW: number }
   | { readonly type: 'pass'; readonly outputA: number; readonly setpointV: number; readonly outMinus: JunctionId };

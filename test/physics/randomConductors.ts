@@ -33,7 +33,7 @@ export function addConductor(draft: Draft, ends: Ends): number {
   return resistanceOhm;
 }
 
-export function addCable(draft: Draft, ends: Ends): number {
+function addCable(draft: Draft, ends: Ends): number {
   const { random } = draft;
   if (draft.sized && random.chance(0.5)) return addSizedCable(draft, ends);
   const resistanceOhm = random.logBetween(CABLE_OHM);
