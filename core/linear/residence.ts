@@ -11,7 +11,10 @@ export interface Tenant {
   leave(): void;
 }
 
-/** Most bytes taken: some thousand networks of wiring size. */
+/**
+ * Bytes of memory, enough for some thousand networks of wiring size. Reserved at once (the system provides pages as they are used), because
+ * growing the memory would detach its old buffer, and the first detached buffer slows down every typed array of a process.
+ */
 const LIMIT = 256 * PAGE;
 
 class Residence {
@@ -21,11 +24,10 @@ class Residence {
 
   /** The kernel, or null where the host has no WebAssembly or forbids it. */
   get functions(): WasmKernel['functions'] | null {
-    if (this.kernel === undefined) this.kernel = symmetricProgram.instantiate(1);
+    if (this.kernel === undefined) this.kernel = symmetricProgram.instantiate(LIMIT / PAGE);
     return this.kernel === null ? null : this.kernel.functions;
   }
 
-  /** The memory as it is now: growing it makes a new buffer and leaves arrays on the old one empty. */
   get buffer(): ArrayBuffer {
     return this.kernel!.memory.buffer;
   }
@@ -34,27 +36,10 @@ class Residence {
   admit(tenant: Tenant, bytes: number): number {
     if (this.functions === null || bytes > LIMIT) return -1;
     if (this.top + bytes > LIMIT) this.clear();
-    const missing = this.top + bytes - this.buffer.byteLength;
-    if (missing > 0) {
-      const pages = Math.min(
-        Math.ceil(missing / PAGE) + this.buffer.byteLength / PAGE,
-        (LIMIT - this.buffer.byteLength) / PAGE,
-      );
-      if (!this.grow(pages)) return -1;
-    }
     const address = this.top;
     this.top += bytes;
     this.tenants.push(tenant);
     return address;
-  }
-
-  private grow(pages: number): boolean {
-    try {
-      this.kernel!.memory.grow(pages);
-      return true;
-    } catch {
-      return false; // out of memory: the plain steps do the same work
-    }
   }
 
   private clear(): void {

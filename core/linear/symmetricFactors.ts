@@ -4,6 +4,7 @@ import { inspectPivots } from './inspectPivots.ts';
 import { type BlockLayout, layOutBlock, writeBlock } from './kernelBlock.ts';
 import type { FactorReport, FusedFactorisation, Pattern } from './matrix.ts';
 import { residence, type Tenant } from './residence.ts';
+import { newNumbers } from './slab.ts';
 import type { SymmetricPlan } from './symmetricPlan.ts';
 import { eliminate, solveBackward, solveForward } from './symmetricSteps.ts';
 
@@ -36,10 +37,11 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
     this.plain = plain;
     this.pattern = plan.pattern;
     this.plan = plan;
-    this.w = new Float64Array(plan.storage);
+    this.w = newNumbers(plan.storage);
   }
 
   refactor(values: Float64Array): FactorReport {
+    this.expect(values, this.pattern.rowIndices.length);
     if (this.moveIn()) {
       this.values.set(values);
       if (residence.functions!['refactor']!(this.address) === 1) return this.allWell();
@@ -52,8 +54,9 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
 
   solve(b: Float64Array, x: Float64Array): void {
     if (!this.report.regular) throw new Defect('a regular factorisation before a solve');
+    this.expect(b, this.pattern.size);
+    this.expect(x, this.pattern.size);
     if (this.address >= 0) {
-      this.lookAgain();
       this.y.set(b);
       // The place behind the right-hand side stands for known volts: what an earlier, hopeless matrix left there must go.
       this.w[2 * this.pattern.size + 1] = 0;
@@ -74,6 +77,9 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
   }
 
   refactorAndSolve(values: Float64Array, b: Float64Array, x: Float64Array): FactorReport {
+    this.expect(values, this.pattern.rowIndices.length);
+    this.expect(b, this.pattern.size);
+    this.expect(x, this.pattern.size);
     if (this.moveIn()) return this.refactorAndSolveResident(values, b, x);
     const { w } = this;
     const { size } = this.pattern;
@@ -105,6 +111,11 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
     return report;
   }
 
+  /** An array of another length would be copied over its neighbours. */
+  private expect(array: Float64Array, length: number): void {
+    if (array.length !== length) throw new Defect(`an array of length ${length}, not ${array.length}`);
+  }
+
   private load(values: Float64Array): void {
     const { table, slots } = this.plan;
     const { w } = this;
@@ -128,35 +139,25 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
 
   /** Whether this is in the kernel's memory; moves there if this is not the first use. */
   private moveIn(): boolean {
-    if (this.address >= 0) {
-      this.lookAgain();
-      return true;
-    }
+    if (this.address >= 0) return true;
     if (this.plain || !this.used) {
       this.used = true;
       return false;
     }
     this.layout ??= layOutBlock(this.plan, 1);
-    this.address = residence.admit(this, this.layout.bytes);
-    if (this.address < 0) return false;
-    writeBlock(this.plan, this.layout, residence.buffer, this.address);
-    this.lookAgain();
-    return true;
-  }
-
-  /** Makes the views on the kernel's memory anew if it has grown. */
-  private lookAgain(): void {
+    const { parts, bytes } = this.layout;
+    const address = residence.admit(this, bytes);
+    if (address < 0) return false;
     const { buffer } = residence;
-    if (this.w.buffer === buffer) return;
-    const { parts } = this.layout!;
-    const { address } = this;
+    writeBlock(this.plan, this.layout, buffer, address);
     this.w = new Float64Array(buffer, address + parts.w, this.plan.storage);
     this.y = new Float64Array(buffer, address + parts.y, this.pattern.size);
     this.values = new Float64Array(buffer, address + parts.values, this.pattern.rowIndices.length);
+    this.address = address;
+    return true;
   }
 
   leave(): void {
-    this.lookAgain();
     this.w = this.w.slice();
     this.address = -1;
   }

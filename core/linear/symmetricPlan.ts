@@ -2,6 +2,7 @@
 import type { Pattern } from './matrix.ts';
 import { type ColumnPlan, planColumns } from './planColumns.ts';
 import { reduceLinks } from './reduceLinks.ts';
+import { newInts } from './slab.ts';
 import { stripLeaves } from './stripLeaves.ts';
 import { reserve, workspace } from './workspace.ts';
 
@@ -124,7 +125,7 @@ export function symmetricPlan(pattern: Pattern): SymmetricPlan {
 function collect({ rowIndices }: Pattern, at: Layout, core: ColumnPlan, chainEnd: number): Int32Array {
   const { ints } = workspace;
   const slots = chainEnd + core.end - core.start;
-  const table = new Int32Array(slots + rowIndices.length);
+  const table = newInts(slots + rowIndices.length);
   table.set(ints.subarray(at.program, at.program + chainEnd));
   table.set(ints.subarray(core.start, core.end), chainEnd);
   table.set(ints.subarray(at.slot, at.slot + rowIndices.length), slots);

@@ -2,13 +2,12 @@
 
 interface WasmMemory {
   readonly buffer: ArrayBuffer;
-  grow(pages: number): number;
 }
 
 type WasmFunction = (...parameters: number[]) => number;
 
 interface WasmHost {
-  readonly Memory: new (size: { initial: number; maximum?: number }) => WasmMemory;
+  readonly Memory: new (size: { initial: number }) => WasmMemory;
   readonly Module: new (bytes: Uint8Array) => object;
   readonly Instance: new (
     module: object,

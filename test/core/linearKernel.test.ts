@@ -1,5 +1,6 @@
 /** Compiled and plain code, one system and many side by side: the same bits. */
 import { afterEach, describe, expect, it, vi } from 'vitest';
+import { Defect } from '../../core/job/issue.ts';
 import { analyseBatch, type Batch } from '../../core/linear/analyseBatch.ts';
 import { analyseSymmetric } from '../../core/linear/analyseSymmetric.ts';
 import { residence } from '../../core/linear/residence.ts';
@@ -69,6 +70,19 @@ describe('the compiled kernel', () => {
     expect(compiled.refactorAndSolve(values, s.b, x)).toEqual({ regular: false, negativePivots: 0, failedColumn: 7 });
     expect(x).toEqual(new Float64Array(12));
   });
+
+  it.each([false, true])(
+    'refuses arrays of another length, which would be copied over their neighbours; plain code: %s',
+    (plain) => {
+      const s = wiring(9, 1, 4);
+      const factorisation = analyseSymmetric(s.pattern, { plain });
+      for (let use = 0; use < 3; use++) {
+        factorisation.refactor(s.values);
+        expect(() => factorisation.solve(new Float64Array(10), new Float64Array(9))).toThrow(Defect);
+        expect(() => factorisation.refactor(new Float64Array(s.values.length + 1))).toThrow(Defect);
+      }
+    },
+  );
 
   it('serves many factorisations in turn, even when its memory has been cleared between factoring and solving', () => {
     const s = wiring(3000, 150, 2);
