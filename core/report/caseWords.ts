@@ -42,9 +42,10 @@ function stringsLine(job: CheckedJob, point: OperatingPoint): string {
   });
   if (currents.length === 0) return '';
   const totalA = currents.reduce((sum, { currentA }) => sum + currentA, 0);
-  const verb = totalA < 0 ? 'is charged with' : 'delivers';
-  const bank = `The bank ${verb} ${amps(Math.abs(totalA))} A`;
-  if (currents.length === 1 || currents.length > STRINGS_TOLD) return `${bank}.`;
+  const isOne = currents.length === 1;
+  const verb = totalA < 0 ? (isOne ? 'is charged with' : 'are charged with') : isOne ? 'delivers' : 'deliver';
+  const bank = `The ${isOne ? 'battery' : 'battery strings'} ${verb} ${amps(Math.abs(totalA))} A${isOne ? '' : ' together'}`;
+  if (isOne || currents.length > STRINGS_TOLD) return `${bank}.`;
   const agree = currents.every(({ currentA }) => currentA >= 0 === totalA >= 0);
   return `${bank} (${currents.map(({ id, currentA }) => `${id} ${amps(agree ? Math.abs(currentA) : currentA)} A`).join(', ')}).`;
 }

@@ -1,6 +1,6 @@
 import type { Basis, Status } from '../tables/status.ts';
 import type { SourceItem } from './document.ts';
-import { STATUS_WORDS } from './wording.ts';
+import { plainFields, STATUS_WORDS, withoutStatus } from './wording.ts';
 
 /** Numbers the sources in the order in which the report first leans on them. */
 export class Citations {
@@ -27,7 +27,7 @@ export class Citations {
     if (known !== undefined) return known;
     const number = this.list.length + 1;
     this.numbers.set(key, number);
-    this.list.push({ number, text, status: STATUS_WORDS[status] });
+    this.list.push({ number, text: plainFields(withoutStatus(text)), status: STATUS_WORDS[status] });
     return number;
   }
 }

@@ -92,9 +92,7 @@ function readingTable(job: CheckedJob, points: readonly OperatingPoint[]): reado
         .join(', '),
       `${text(value)} ${READING_UNITS[reading.quantity]}`,
       computed === undefined ? NOT_GIVEN : `${text(computed)} ${READING_UNITS[reading.quantity]}`,
-      computed === undefined
-        ? NOT_GIVEN
-        : `${value >= computed ? '+' : ''}${text(value - computed)} ${READING_UNITS[reading.quantity]}`,
+      computed === undefined ? NOT_GIVEN : `${signed(text(value - computed))} ${READING_UNITS[reading.quantity]}`,
       reading.standardUncertainty === undefined
         ? (reading.meter ?? NOT_GIVEN)
         : `± ${text(reading.standardUncertainty)} ${READING_UNITS[reading.quantity]}`,
@@ -122,6 +120,11 @@ function readingTable(job: CheckedJob, points: readonly OperatingPoint[]): reado
       ],
     },
   ];
+}
+
+/** A difference that rounds to nothing has no sign. */
+function signed(text: string): string {
+  return text.startsWith('−') || !/[1-9]/.test(text) ? text : `+${text}`;
 }
 
 const READING_UNITS: Readonly<Record<Reading['quantity'], string>> = { voltage: 'V', current: 'A', temperature: '°C' };

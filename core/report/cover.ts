@@ -73,7 +73,7 @@ function stringsOf(job: CheckedJob): readonly StringPart[] {
 }
 
 /** Strings of the same make-up are told once: `3 strings of 2 × 12 V, 100 Ah, lead-acid, AGM`. */
-export function bankText(job: CheckedJob): string {
+function bankText(job: CheckedJob): string {
   const strings = stringsOf(job);
   if (strings.length === 0) return 'no battery in the job';
   const groups = new Map<string, number>();

@@ -95,7 +95,7 @@ export interface EntryBlock {
 }
 
 /** `id`: names, kept in one line where possible; `number`: aligned at the decimal point; `text`; `blank`: left empty for a pen. */
-export type ColumnKind = 'id' | 'text' | 'number' | 'blank';
+type ColumnKind = 'id' | 'text' | 'number' | 'blank';
 
 export interface Column {
   readonly head: string;
@@ -197,7 +197,7 @@ export interface SourcesBlock {
   readonly items: readonly SourceItem[];
 }
 
-export interface PageBreakBlock {
+interface PageBreakBlock {
   readonly kind: 'pageBreak';
   /** Of the pages that follow, until the next break. */
   readonly orientation: 'portrait' | 'landscape';

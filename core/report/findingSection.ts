@@ -7,7 +7,15 @@ import type { Citations } from './citations.ts';
 import type { Block, EntryBlock, TableBlock } from './document.ts';
 import { withUnit } from './figures.ts';
 import type { ReportInput } from './input.ts';
-import { count, plainFields, SEVERITIES, SEVERITY_WORDS, STATUS_WORDS, sentenceCase } from './wording.ts';
+import {
+  count,
+  plainFields,
+  SEVERITIES,
+  SEVERITY_WORDS,
+  STATUS_WORDS,
+  sentenceCase,
+  withoutStatus,
+} from './wording.ts';
 
 /** Worst first; among equals in the order in which the checks gave them. */
 export function worstFirst(findings: readonly Finding[]): readonly Finding[] {
@@ -72,7 +80,10 @@ function entryOf(finding: Finding, number: number, { job, points }: ReportInput,
       { label: 'Remedy', value: plainFields(finding.remedy) },
       {
         label: 'Basis',
-        value: finding.basis.includes(status) ? `${finding.basis} ${cited}` : `${finding.basis} (${status}) ${cited}`,
+        value:
+          finding.basis === status
+            ? `${status} ${cited}`
+            : `${plainFields(withoutStatus(finding.basis))} (${status}) ${cited}`,
       },
     ],
   };

@@ -92,7 +92,7 @@ export function shuntSymbol({ x, y }: At): readonly Shape[] {
   ];
 }
 /** Make contact: the blade stands off the fixed end. */
-export function contactSymbol({ x, y }: At): readonly Shape[] {
+function contactSymbol({ x, y }: At): readonly Shape[] {
   return [gap({ x, y }, 2.4 * U), line(x - 1.2 * U, y, x + 1.1 * U, y - 0.9 * U)];
 }
 /** Disconnector: make contact with a bar across the fixed end; a small ring where it may be opened under load. */

@@ -150,7 +150,7 @@ function spreadPole(
   return undefined;
 }
 
-export function neighboursOf(links: readonly Link[]): ReadonlyMap<string, readonly string[]> {
+function neighboursOf(links: readonly Link[]): ReadonlyMap<string, readonly string[]> {
   const neighbours = new Map<string, string[]>();
   const add = (a: string, b: string): void => {
     const list = neighbours.get(a);

@@ -52,7 +52,7 @@ export interface PlacedBox {
   readonly x: number;
 }
 /** From a point to the device at the end of its row. */
-export interface Wire {
+interface Wire {
   readonly pole: Pole;
   readonly row: number;
   readonly x1: number;

@@ -18,7 +18,7 @@ export interface Spot {
   slot: number;
   readonly rows: Set<number>;
 }
-export interface DevicePlace {
+interface DevicePlace {
   row: number;
   readonly side: Side;
 }
@@ -36,7 +36,7 @@ export function planWiring(graph: WiringGraph): WiringPlan | { readonly reason: 
   return new Planner(graph).plan();
 }
 
-export function isBattery({ part }: Device): boolean {
+function isBattery({ part }: Device): boolean {
   return part.kind === 'string';
 }
 

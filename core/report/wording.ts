@@ -16,6 +16,12 @@ export const SEVERITY_WORDS: Readonly<Record<Severity, { readonly word: string; 
   look: { word: 'LOOK', meaning: 'a person has to judge this' },
   note: { word: 'NOTE', meaning: 'for information' },
 };
+/** A source's text without the status that it may end in already, since the status is printed after it. */
+export function withoutStatus(text: string): string {
+  const bare = text.replace(/[,;:]?\s*(?:from memory|common practice(?:, no (?:published )?source)?)$/, '').trim();
+  return bare === '' ? text : bare;
+}
+
 /** Worst first. */
 export const SEVERITIES: readonly Severity[] = ['stop', 'fix', 'look', 'note'];
 

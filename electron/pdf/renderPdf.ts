@@ -100,8 +100,11 @@ function companionPt(sheet: Sheet, following: readonly Block[]): number {
 /** A table or figure that a few lines introduce stays with them. */
 function afterParagraphPt(sheet: Sheet, next: Block | undefined): number {
   if (next?.kind === 'table') return tableStartPt(sheet, next);
+  if (next?.kind === 'sources') return FEW_SOURCES_PT;
   return next?.kind === 'figure' ? figureHeightPt(sheet, next, INTRODUCTION_PT) : 0;
 }
+/** Height of the first few sources of the list. */
+const FEW_SOURCES_PT = 48;
 /** Heading and introduction above a figure. */
 const INTRODUCTION_PT = 100;
 

@@ -17,18 +17,18 @@ const PEN_ROW_PT = 20;
 /** Room for a severity shape in front of a text. */
 export const MARK_PT = 13;
 /** No column asks for more than this fraction of the table before the others have what they need. */
-const GREEDIEST = 0.42;
+const GREEDIEST = 0.5;
 /** Narrowest column that a pen can write in. */
 const PEN_COLUMN_PT = 54;
 
-export interface TableStyles {
+interface TableStyles {
   readonly text: TextStyle;
   readonly under: TextStyle;
   readonly head: TextStyle;
   readonly unit: TextStyle;
 }
 
-export interface LaidLine {
+interface LaidLine {
   readonly text: string;
   readonly style: TextStyle;
 }
@@ -60,6 +60,8 @@ export interface LaidTable {
 interface Need {
   readonly minimumPt: number;
   readonly naturalPt: number;
+  /** Mean width of the cells, each in one line: how much there is to set. */
+  readonly meanPt: number;
   readonly fractionPt: number;
 }
 
@@ -147,11 +149,13 @@ function needOf(face: Typeface, column: Column, cells: readonly Cell[], styles: 
     return {
       minimumPt: Math.max(headMinimum, PEN_COLUMN_PT),
       naturalPt: Math.max(headNatural, PEN_COLUMN_PT),
+      meanPt: 0,
       fractionPt: 0,
     };
   if (column.align === 'decimal') return decimalNeed(face, cells, styles, { headMinimum });
   let minimumPt = headMinimum;
   let naturalPt = headNatural;
+  let sumPt = 0;
   for (const cell of cells) {
     const { text, under, mark } = parts(cell);
     const markPt = mark === undefined ? 0 : MARK_PT;
@@ -159,6 +163,7 @@ function needOf(face: Typeface, column: Column, cells: readonly Cell[], styles: 
     const underPt = Math.min(face.width(face.drawable(under), styles.under), UNDER_LIMIT_PT);
     const whole = Math.max(face.width(drawn, styles.text) + markPt, underPt);
     naturalPt = Math.max(naturalPt, whole);
+    sumPt += whole;
     const words = Math.max(widestWord(face, text, styles.text) + markPt, widestWord(face, under, styles.under));
     minimumPt = Math.max(
       minimumPt,
@@ -167,7 +172,7 @@ function needOf(face: Typeface, column: Column, cells: readonly Cell[], styles: 
         : Math.max(face.width(drawn, styles.text) + markPt, Math.min(words, WORD_LIMIT_PT)),
     );
   }
-  return { minimumPt, naturalPt, fractionPt: 0 };
+  return { minimumPt, naturalPt, meanPt: sumPt / Math.max(1, cells.length), fractionPt: 0 };
 }
 /** A second line asks for no more than this; beyond it, it wraps. */
 const UNDER_LIMIT_PT = 96;
@@ -190,7 +195,12 @@ function decimalNeed(
     fractionPt = Math.max(fractionPt, face.width(fraction, styles.text));
   }
   const numbersPt = wholePt + fractionPt;
-  return { minimumPt: Math.max(headMinimum, numbersPt), naturalPt: Math.max(headMinimum, numbersPt), fractionPt };
+  return {
+    minimumPt: Math.max(headMinimum, numbersPt),
+    naturalPt: Math.max(headMinimum, numbersPt),
+    meanPt: numbersPt,
+    fractionPt,
+  };
 }
 
 /** `-12.75` → `-12` and `.75`; words and marks count as whole numbers. */
@@ -210,7 +220,38 @@ function share(needs: readonly Need[], columns: readonly Column[], widthPt: numb
   const left = widthPt - total(minimum);
   if (left < 0) return minimum.map((need) => (need * widthPt) / total(minimum));
   const lacking = natural.map((wish, index) => wish - (minimum[index] ?? 0));
-  return minimum.map((need, index) => need + (left * (lacking[index] ?? 0)) / total(lacking));
+  const weights = lacking.map((lack, index) => (lack <= 0 ? 0 : Math.max(needs[index]?.meanPt ?? 0, 1)));
+  return pour(left, { onto: minimum, upTo: natural, weights });
+}
+
+/** Shares a width out by weight; what one column does not need goes to the others. */
+function pour(
+  leftPt: number,
+  {
+    onto,
+    upTo,
+    weights,
+  }: { readonly onto: readonly number[]; readonly upTo: readonly number[]; readonly weights: readonly number[] },
+): readonly number[] {
+  const widths = [...onto];
+  let left = leftPt;
+  let open = weights.map((weight, index) => (weight > 0 ? index : -1)).filter((index) => index >= 0);
+  while (left > 0.01 && open.length > 0) {
+    const whole = total(open.map((index) => weights[index] ?? 0));
+    const full = open.filter(
+      (index) => (upTo[index] ?? 0) - (widths[index] ?? 0) <= (left * (weights[index] ?? 0)) / whole,
+    );
+    if (full.length === 0) {
+      for (const index of open) widths[index] = (widths[index] ?? 0) + (left * (weights[index] ?? 0)) / whole;
+      return widths;
+    }
+    for (const index of full) {
+      left -= (upTo[index] ?? 0) - (widths[index] ?? 0);
+      widths[index] = upTo[index] ?? 0;
+    }
+    open = open.filter((index) => !full.includes(index));
+  }
+  return widths;
 }
 
 /** With so few columns the rest of the line stays empty rather than the columns far apart. */

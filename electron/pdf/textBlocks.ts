@@ -119,7 +119,7 @@ function listItem(
   sheet.y += 2;
 }
 
-const FACT_LABEL_PT = 128;
+const FACT_LABEL_PT = 148;
 /** Height of a line that a pen is to fill. */
 const PEN_LINE_PT = 16;
 

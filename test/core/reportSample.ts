@@ -10,12 +10,12 @@ import { tables } from '../../data/index.ts';
 import { checked } from './reportInput.ts';
 import { cabin } from './reportJobs.ts';
 
-export const PUBLISHED: Basis = {
+const PUBLISHED: Basis = {
   source: 'SRC-IEC60228',
   text: 'IEC 60228:2004, conductors of insulated cables, table 3',
   status: 'published',
 };
-export const CUSTOM: Basis = { source: 'SRC-PRACTICE', text: 'common practice, no source', status: 'common-practice' };
+const CUSTOM: Basis = { source: 'SRC-PRACTICE', text: 'common practice, no source', status: 'common-practice' };
 export const REMEMBERED: Basis = {
   source: 'SRC-ISO13297',
   text: 'ISO 13297:2020, electrical systems of small craft, clause 12',

@@ -11,7 +11,7 @@ export interface DrawnText {
   /** Head, foot, repeated table header: not part of what is read aloud. */
   readonly isArtifact: boolean;
 }
-export interface ReadPage {
+interface ReadPage {
   readonly width: number;
   readonly height: number;
   readonly texts: readonly DrawnText[];
