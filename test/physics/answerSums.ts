@@ -20,7 +20,7 @@ interface Through {
 }
 
 /** Every way through every part, with the current that the answer gives it. */
-export function throughs({ job, operatingCase, point }: Answered): readonly Through[] {
+function throughs({ job, operatingCase, point }: Answered): readonly Through[] {
   const current = (id: string): number | null => {
     const answer = point.parts.get(id as Part['id']);
     if (answer === undefined) throw new Error(`no answer about ${id}`);

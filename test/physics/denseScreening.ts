@@ -38,7 +38,7 @@ export class Groups<T> {
 }
 
 /** Conductors of a part that always join junctions (not the sources and loads). */
-export function conductorLinks(part: Part): readonly Link[] {
+function conductorLinks(part: Part): readonly Link[] {
   switch (part.kind) {
     case 'cable':
     case 'shunt':

@@ -1,9 +1,11 @@
 /** Numbers the planned branches, solves them, and gives volts and amps back by name. */
 import type { JunctionId } from '../../core/job/part.ts';
 import type { Branch, BranchState, Law } from './denseBranch.ts';
-import { DenseSolver } from './denseNewton.ts';
+import { DenseEquations } from './denseEquations.ts';
+import { type Found, sensitivity } from './denseNewton.ts';
 import type { PlannedBranch } from './densePlan.ts';
 import { Groups } from './denseScreening.ts';
+import { solveFresh, solveOnwards } from './denseStates.ts';
 
 export interface NamedSolution {
   readonly volts: ReadonlyMap<JunctionId, number>;
@@ -18,7 +20,7 @@ export interface NamedSolution {
 /** The reference has no answer: beyond what can be delivered, or its own failure. */
 export class NoSolution extends Error {}
 
-export function solvePlanned(planned: readonly PlannedBranch[], share = 1): NamedSolution {
+export function solvePlanned(planned: readonly PlannedBranch[]): NamedSolution {
   const names = [...new Set(planned.flatMap(({ a, b }) => [a, b]))];
   const nodes = new Map(names.map((name, k) => [name, k]));
   const order = new Map(planned.map(({ key }, k) => [key, k]));
@@ -31,45 +33,44 @@ export function solvePlanned(planned: readonly PlannedBranch[], share = 1): Name
           : law;
     return { key, a: nodes.get(a)!, b: nodes.get(b)!, law: numbered };
   });
-  const { grounds, redundant } = ringsAndGrounds(names.length, branches);
-  const solver = new DenseSolver({ nodeCount: names.length, branches, grounds, redundant });
-  const unloaded = solver.solve(startingPoint(solver, branches), { share: 0 });
+  const equations = new DenseEquations({
+    nodeCount: names.length,
+    branches,
+    ...ringsAndGrounds(names.length, branches),
+  });
+  const unloaded = solveFresh(equations, startingPoint(equations), 0);
   if (unloaded === undefined) throw new NoSolution('the network without its power loads does not settle');
   const powered = branches.some(({ law }) => law.type === 'watts' || law.type === 'draw');
-  const solved = powered ? loadUp(solver, { from: unloaded, share }) : unloaded;
+  const solved = powered ? loadUp(equations, unloaded) : unloaded;
   const voltsOf = (x: Float64Array) => new Map(names.map((name, k) => [name, x[k]!]));
-  const amps = new Map(branches.map((branch, k) => [branch.key, solver.branchAmps(solved.x, k, share)]));
   return {
     volts: voltsOf(solved.x),
-    amps,
+    amps: new Map(branches.map(({ key }, k) => [key, equations.flow(solved.x, k, 1).value])),
     states: new Map(branches.map(({ key }, k) => [key, solved.states[k]!])),
     unloadedVolts: voltsOf(unloaded.x),
     holdSlope: (key) => {
-      const row = solver.currentIndex[order.get(key)!]!;
-      return solver.sensitivity(solved, row)[row]!;
+      const row = equations.currentIndex[order.get(key)!]!;
+      return sensitivity(equations, solved, row)[row]!;
     },
   };
 }
 
-/** From no power to the wanted share of it, in one step or, where that does not settle, in shorter ones. */
-function loadUp(
-  solver: DenseSolver,
-  to: { readonly from: { x: Float64Array; states: readonly BranchState[] }; readonly share: number },
-): { x: Float64Array; states: readonly BranchState[] } {
+/** From no power to all of it, in one step or, where that does not settle, in shorter ones. */
+function loadUp(equations: DenseEquations, unloaded: Found): Found {
   for (const steps of [1, 4, 16]) {
-    let at: { x: Float64Array; states: readonly BranchState[] } | undefined = to.from;
+    let at: Found | undefined = unloaded;
     for (let step = 1; step <= steps && at !== undefined; step++) {
-      at = solver.solve(at.x, { share: (to.share * step) / steps, states: at.states });
+      at = solveOnwards(equations, at, step / steps);
     }
     if (at !== undefined) return at;
   }
   throw new NoSolution('the power loads cannot be fed');
 }
 
-/** Every plus a little above its minus, so that no constant-power part starts at 0 V. */
-function startingPoint(solver: DenseSolver, branches: readonly Branch[]): Float64Array {
-  const x = new Float64Array(solver.size);
-  for (const { a, b, law } of branches) {
+/** Every plus above its minus, so that no constant-power part starts at 0 V; arrays a little below open circuit. */
+function startingPoint({ size, network }: DenseEquations): Float64Array {
+  const x = new Float64Array(size);
+  for (const { a, b, law } of network.branches) {
     if (law.type === 'ohm' && law.emfV < 0) x[b] = x[a]! - law.emfV;
     if (law.type === 'panel') x[b] = x[a]! + 0.97 * law.curve.openCircuitV;
   }

@@ -6,7 +6,7 @@
 import { addPoint, book, type Draft, type JobValue, newDraft, type SupplyPoint } from './jobDraft.ts';
 import { addBar, addChain, addConductor, addDiode, given } from './randomConductors.ts';
 import { addBank, addCharger, addChargerIsland, addConverter, addHarvest } from './randomSources.ts';
-import { type SeededRandom, seededRandom } from './seededRandom.ts';
+import { seededRandom } from './seededRandom.ts';
 
 export interface RandomJobOptions {
   readonly seed: number;
@@ -259,5 +259,3 @@ export function renameJunctions(
   }
   return renamed;
 }
-
-export type { SeededRandom };
