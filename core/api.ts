@@ -114,7 +114,27 @@ export { theveninAt } from './network/thevenin.ts';
 export type { ResistanceChange, WhatIf } from './network/whatIf.ts';
 export { whatIf } from './network/whatIf.ts';
 export { buildReport } from './report/buildReport.ts';
-export type { ReportDocument } from './report/document.ts';
+export type {
+  Block,
+  CautionBlock,
+  Cell,
+  Column,
+  CoverBlock,
+  EntryBlock,
+  Fact,
+  FactsBlock,
+  FigureBlock,
+  HeadingBlock,
+  ListBlock,
+  Paper,
+  ParagraphBlock,
+  ReportDocument,
+  Shape,
+  SourcesBlock,
+  Stroke,
+  TableBlock,
+  Tone,
+} from './report/document.ts';
 export type { ReportInput, ReportOptions } from './report/input.ts';
 export type { ArrayConditions, ArrayCurve } from './solar/arrayCurve.ts';
 export { arrayCurve, currentAt, maximumPower, openCircuitV, shortCircuitA } from './solar/arrayCurve.ts';

@@ -1,5 +1,6 @@
 /** From the places of the plan to lines, symbols and words; a drawing of many rows is divided into sheets, row by row. */
 import type { Part } from '../job/part.ts';
+import { drawLegend } from './diagramLegend.ts';
 import type { FigureBlock, Shape } from './document.ts';
 import { plain } from './figures.ts';
 import type { Place } from './labelPlacer.ts';
@@ -9,7 +10,7 @@ import { label, line, U } from './symbols.ts';
 import type { Pole, WiringGraph } from './wiringGraph.ts';
 import type { Layout, PlacedBox, PlacedDevice, PlacedLink, PlacedPoint } from './wiringLayout.ts';
 import { POLES_PT, ROW_PT, SIDE_PT, TOP_PT, yOf } from './wiringLayout.ts';
-import { cut, deviceDetail, linkDetail, nameWidthPt, textWidthPt, WORD_PT } from './wiringWords.ts';
+import { cut, deviceDetail, linkDetail, nameWidthPt, WORD_PT } from './wiringWords.ts';
 import { CHEMISTRY_WORDS, KIND_WORDS } from './wording.ts';
 
 const LEGEND_PT = 26;
@@ -37,7 +38,14 @@ export function drawWiring(graph: WiringGraph, layout: Layout, bands: readonly B
       alt: altText(graph, layout, band, isOneOf),
       width: layout.width,
       height: sheetHeightPt(band.to - band.from),
-      shapes: [...new SheetOfRows(layout, band).shapes(), ...drawLegend(graph, layout, band, bands.length > 1)],
+      shapes: [
+        ...new SheetOfRows(layout, band).shapes(),
+        ...drawLegend(graph, {
+          widthPt: layout.width,
+          y: sheetHeightPt(band.to - band.from) - 8,
+          isDivided: bands.length > 1,
+        }),
+      ],
     };
   });
 }
@@ -311,55 +319,6 @@ function deviceSymbol(part: Part, x: number, plusY: number, minusY: number): rea
     default:
       return symbols.loadSymbol(x, plusY, minusY);
   }
-}
-
-interface LegendEntry {
-  readonly isShown: (kinds: ReadonlySet<Part['kind']>, isDivided: boolean) => boolean;
-  readonly word: string;
-  readonly draw: (at: { readonly x: number; readonly y: number }) => readonly Shape[];
-}
-const onLine =
-  (symbol: LegendEntry['draw']): LegendEntry['draw'] =>
-  ({ x, y }) => [line(x - 2 * U, y, x + 2 * U, y), ...symbol({ x, y })];
-
-const LEGEND: readonly LegendEntry[] = [
-  { isShown: (kinds) => kinds.has('fuse'), word: KIND_WORDS.fuse, draw: onLine(symbols.fuseSymbol) },
-  { isShown: (kinds) => kinds.has('breaker'), word: KIND_WORDS.breaker, draw: onLine(symbols.breakerSymbol) },
-  {
-    isShown: (kinds) => kinds.has('switch'),
-    word: 'switch (ring: breaks load)',
-    draw: onLine((at) => symbols.switchSymbol(at, true)),
-  },
-  { isShown: (kinds) => kinds.has('shunt'), word: KIND_WORDS.shunt, draw: onLine(symbols.shuntSymbol) },
-  { isShown: (kinds) => kinds.has('diode'), word: KIND_WORDS.diode, draw: onLine((at) => symbols.diodeSymbol(at, 1)) },
-  { isShown: (kinds) => kinds.has('joint'), word: KIND_WORDS.joint, draw: onLine(symbols.jointSymbol) },
-  {
-    isShown: (kinds) => kinds.has('busbar'),
-    word: 'busbar with its taps',
-    draw: ({ x, y }) => [line(x, y - 6, x, y + 4, 'heavy')],
-  },
-  {
-    isShown: (_kinds, isDivided) => isDivided,
-    word: 'goes on on another sheet',
-    draw: ({ x, y }) => [line(x, y - 5, x, y + 2), symbols.goesOn({ x, y: y + 2 }, 1)],
-  },
-];
-
-/** A reader then needs no standard beside the sheet. */
-function drawLegend(graph: WiringGraph, layout: Layout, band: Band, isDivided: boolean): readonly Shape[] {
-  const kinds = new Set(
-    [...graph.links.map(({ part }) => part), ...[...graph.bars.values()].flat()].map(({ kind }) => kind),
-  );
-  const y = sheetHeightPt(band.to - band.from) - 8;
-  let x = 4;
-  return LEGEND.filter(({ isShown }) => isShown(kinds, isDivided)).flatMap(({ word, draw }) => {
-    const entry = [
-      ...draw({ x: x + 2 * U, y }),
-      label(word, { x: x + 4 * U + 4, y: y + 2.4 }, { sizePt: WORD_PT, align: 'left', tone: 'quiet' }),
-    ];
-    x += 4 * U + 18 + textWidthPt(word);
-    return x > layout.width ? [] : entry;
-  });
 }
 
 /** Each device of the sheet with its kind and its two points. */

@@ -1,5 +1,5 @@
 /** The cover: a sheet as from a drawing board, with its title block at the foot for the pen. */
-import type { CoverBlock } from '../../core/report/document.ts';
+import type { CoverBlock } from '../../core/api.ts';
 import { breakLines, truncate } from './lines.ts';
 import type { Element, Sheet } from './sheet.ts';
 import { FINE, HAIR } from './sheet.ts';

@@ -1,5 +1,5 @@
 /** Figures: vector shapes brought to the width of the page, with words for those who cannot see them. */
-import type { FigureBlock } from '../../core/report/document.ts';
+import type { FigureBlock } from '../../core/api.ts';
 import type { Sheet } from './sheet.ts';
 import { STYLES } from './style.ts';
 import { flowText } from './textBlocks.ts';

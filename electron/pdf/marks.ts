@@ -1,5 +1,5 @@
 /** Severity as a shape, so that it reads in grey and from across the table: octagon, triangle, lens, dot. */
-import type { Severity } from '../../core/checks/finding.ts';
+import type { Severity } from '../../core/api.ts';
 import type { Sheet } from './sheet.ts';
 import { COPPER, INK } from './style.ts';
 

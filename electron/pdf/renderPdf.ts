@@ -1,4 +1,4 @@
-import type { Block, CoverBlock, HeadingBlock, ReportDocument } from '../../core/report/document.ts';
+import type { Block, CoverBlock, HeadingBlock, ReportDocument } from '../../core/api.ts';
 import type { ContentsPlace } from './cover.ts';
 import { drawContents, drawCover } from './cover.ts';
 import { drawFigure, figureHeightPt } from './figure.ts';

@@ -1,6 +1,6 @@
 /** The paper under the pen: pages, the place reached, text and lines on it, and the tags that say what each stroke means. */
 import PDFDocument from 'pdfkit';
-import type { ReportDocument, Shape } from '../../core/report/document.ts';
+import type { ReportDocument, Shape } from '../../core/api.ts';
 import type { TitledDocumentInfo } from './pdfkitTypes.ts';
 import type { TextStyle } from './style.ts';
 import { HAIRLINE, INK, MARGINS_PT, PAGE_SIZES_PT, STROKES, TONES } from './style.ts';

@@ -1,5 +1,5 @@
 /** How the paper looks: a drawing board. Ink and hairlines on white, one copper accent, everything on a grid of 4 points. */
-import type { Stroke, Tone } from '../../core/report/document.ts';
+import type { Stroke, Tone } from '../../core/api.ts';
 
 export type Face = 'regular' | 'light' | 'strong';
 

@@ -1,5 +1,5 @@
 /** Tables: the header comes again on every page, rows stay whole, the last row never goes over alone. */
-import type { TableBlock } from '../../core/report/document.ts';
+import type { TableBlock } from '../../core/api.ts';
 import { breakLines } from './lines.ts';
 import { drawMark } from './marks.ts';
 import type { Element, Sheet } from './sheet.ts';

@@ -1,6 +1,5 @@
 /** How wide the columns of a table are, at which size its text fits, and what stands in each cell, line by line. */
-import type { Severity } from '../../core/checks/finding.ts';
-import type { Cell, Column, TableBlock } from '../../core/report/document.ts';
+import type { Cell, Column, Severity, TableBlock } from '../../core/api.ts';
 import { breakLines, widestWord } from './lines.ts';
 import type { TextStyle } from './style.ts';
 import { INK, QUIET, TABLE_LEADING, TABLE_SIZES_PT } from './style.ts';

@@ -8,7 +8,7 @@ import type {
   ListBlock,
   ParagraphBlock,
   SourcesBlock,
-} from '../../core/report/document.ts';
+} from '../../core/api.ts';
 import { breakLines } from './lines.ts';
 import { drawCautionSign, drawMark } from './marks.ts';
 import type { Element, Sheet } from './sheet.ts';
