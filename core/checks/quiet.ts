@@ -17,7 +17,9 @@ export function quietStates(context: CheckContext): readonly Quiet[] {
   if (found !== undefined) return found;
   const known = new Map<string, Quiet>();
   for (const one of context.cases) {
-    const lasting = one.parts.filter((part) => part.kind === 'string' || isWiring(part));
+    // What a case does not change is the same in all of them.
+    const { changed } = one.operatingCase;
+    const lasting = [...changed.values()].filter((part) => part.kind === 'string' || isWiring(part));
     const key = JSON.stringify([one.ambientDegC, lasting]);
     if (!known.has(key)) known.set(key, quiet(context, one));
   }

@@ -1,7 +1,7 @@
 /** From a solved circuit to the answer about each part and junction. */
 import type { JunctionId, Part, PartId } from '../job/part.ts';
 import type { PartAnswer } from './answer.ts';
-import type { Circuit } from './circuit.ts';
+import type { Circuit, Sink } from './circuit.ts';
 import type { Element } from './element.ts';
 import { Law } from './element.ts';
 import type { GraphView } from './graph.ts';
@@ -15,11 +15,15 @@ export class Reader {
   readonly circuit: Circuit;
   readonly graph: GraphView;
   readonly assembled: Assembled | null;
+  private readonly valveOfPart: ReadonlyMap<number, Valve>;
+  private readonly sinkOf: ReadonlyMap<Element, Sink>;
 
   constructor(circuit: Circuit, graph: GraphView, assembled: Assembled | null) {
     this.circuit = circuit;
     this.graph = graph;
     this.assembled = assembled;
+    this.valveOfPart = new Map(circuit.valves.map((valve) => [valve.partIndex, valve]));
+    this.sinkOf = new Map(circuit.sinks.map((sink) => [sink.element, sink]));
     assembled?.coupling.balance();
   }
 
@@ -98,7 +102,8 @@ export class Reader {
     const currentA = through === null ? null : positive(sign * through);
     // The halves of a string with a midpoint may carry different currents: the power is that of both.
     let powerW: number | null = 0;
-    for (const element of elements) powerW = plusPower(powerW, sign, this.currentIn(element), this.voltsAcross(element));
+    for (const element of elements)
+      powerW = plusPower(powerW, sign, this.currentIn(element), this.voltsAcross(element));
     return {
       id: part.id,
       currentA,
@@ -132,13 +137,11 @@ export class Reader {
     };
   }
 
-  /** Conductor temperature: fixed, or ambient + rise with the square of the current. */
+  /** Conductor temperature: ambient + rise with the square of the current. */
   private temperature(index: number, currentA: number | null): { conductorDegC?: number } {
-    const fixed = this.circuit.fixedDegC.get(index);
-    if (fixed !== undefined) return { conductorDegC: fixed };
-    const warming = this.circuit.warming.get(index);
-    if (warming === undefined || currentA === null) return {};
-    return { conductorDegC: warming.ambientDegC + warming.kelvinPerA2 * currentA * currentA };
+    const law = this.circuit.temperatures.get(index);
+    if (law === undefined || (currentA === null && law.kelvinPerA2 > 0)) return {};
+    return { conductorDegC: law.ambientDegC + law.kelvinPerA2 * (currentA ?? 0) ** 2 };
   }
 
   private busbar(part: Extract<Part, { kind: 'busbar' }>, elements: readonly Element[]): PartAnswer {
@@ -204,7 +207,7 @@ export class Reader {
 
   private sinkState(part: Part, elements: readonly Element[]): string | undefined {
     if (elements.length === 0) return 'off';
-    const sink = this.circuit.sinks.find((candidate) => candidate.element === elements[0]);
+    const sink = this.sinkOf.get(elements[0]!);
     if (sink !== undefined && sink.state !== 'on') return sink.state;
     if (this.assembled === null || this.graph.island[elements[0]!.from]! < 0) return 'unfed';
     return part.kind === 'inverter' && part.acPowerW === undefined ? 'idle' : undefined;
@@ -213,7 +216,7 @@ export class Reader {
   /** What a valve is doing, in words. */
   private stateOf(index: number): string | undefined {
     const part = this.circuit.parts[index]!;
-    const valve = this.circuit.valves.find((candidate) => candidate.partIndex === index);
+    const valve = this.valveOfPart.get(index);
     if (valve === undefined)
       return part.kind === 'charger' || part.kind === 'converter' ? 'off' : arrayState(this.circuit, index);
     return STATE_WORDS[valve.state](valve);

@@ -40,41 +40,44 @@ export class Assumptions {
     });
   }
 
-  ofString(part: StringPart, source: StringSource): void {
-    const figures = [
-      { field: 'emfV', unit: 'V', banded: source.emfV },
-      { field: 'resistanceOhm', unit: 'ohm', banded: source.resistanceOhm },
-    ];
-    for (const { field, unit, banded } of figures) {
-      if (banded.origin !== 'default' && banded.origin !== 'guess') continue;
-      this.list.push({
-        part: part.id,
-        field,
-        value: banded.value,
-        unit,
-        range: [banded.low, banded.high],
-        origin: banded.origin,
-        basis: banded.basis,
-        text: `${field} of ${part.id} from its chemistry, size and charge`,
-      });
-    }
-    for (const text of source.assumed) this.say(part, 'string', text, PRACTICE);
+  add(more: readonly Assumption[]): void {
+    for (const assumption of more) this.list.push(assumption);
   }
+}
 
-  ofConductor(part: CablePart, conductor: ConductorResistance): void {
-    for (const text of conductor.assumed) this.say(part, 'conductor', text, conductor.basis);
+/** What a string's EMF and resistance rest on where the job does not give them. */
+export function stringAssumptions(part: StringPart, source: StringSource): readonly Assumption[] {
+  const figures = [
+    { field: 'emfV', unit: 'V', banded: source.emfV },
+    { field: 'resistanceOhm', unit: 'ohm', banded: source.resistanceOhm },
+  ];
+  const list: Assumption[] = [];
+  for (const { field, unit, banded } of figures) {
+    if (banded.origin !== 'default' && banded.origin !== 'guess') continue;
+    list.push({
+      part: part.id,
+      field,
+      value: banded.value,
+      unit,
+      range: [banded.low, banded.high],
+      origin: banded.origin,
+      basis: banded.basis,
+      text: `${field} of ${part.id} from its chemistry, size and charge`,
+    });
   }
+  return [...list, ...source.assumed.map((text) => said(part, 'string', text, PRACTICE))];
+}
 
-  noHeating(part: CablePart, degC: number, missing: string): void {
-    this.say(
-      part,
-      'conductorDegC',
-      `conductor of ${part.id} taken at ${degC} degC, its own warming left out: ${missing}`,
-      PRACTICE,
-    );
-  }
+/** What was filled in to find a conductor's resistance. */
+export function conductorAssumptions(part: CablePart, conductor: ConductorResistance): readonly Assumption[] {
+  return conductor.assumed.map((text) => said(part, 'conductor', text, conductor.basis));
+}
 
-  private say(part: Part, field: string, text: string, basis: Basis): void {
-    this.list.push({ part: part.id, field, value: text, unit: '', range: null, origin: 'default', basis, text });
-  }
+export function noHeatingAssumption(part: CablePart, degC: number, missing: string): Assumption {
+  const text = `conductor of ${part.id} taken at ${degC} degC, its own warming left out: ${missing}`;
+  return said(part, 'conductorDegC', text, PRACTICE);
+}
+
+function said(part: Part, field: string, text: string, basis: Basis): Assumption {
+  return { part: part.id, field, value: text, unit: '', range: null, origin: 'default', basis, text };
 }

@@ -1,7 +1,6 @@
 /** A job in one operating case as an electrical circuit: junctions, two-terminal elements, valves. */
 import { stringSource } from '../battery/stringSource.ts';
 import { conductorResistance } from '../conductor/resistance.ts';
-import { heatingLaw } from '../conductor/temperature.ts';
 import { Defect } from '../job/issue.ts';
 import type { CheckedJob, OperatingCase } from '../job/job.ts';
 import { partsInCase } from '../job/job.ts';
@@ -10,7 +9,8 @@ import { cablesOfPair, junctionsOf } from '../job/part.ts';
 import { arrayCurve } from '../solar/arrayCurve.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { Assumption, BatteryModel } from './answer.ts';
-import { Assumptions } from './assumptions.ts';
+import { Assumptions, stringAssumptions } from './assumptions.ts';
+import { type ConductorContext, conductorModel } from './conductorModel.ts';
 import { Element, Law } from './element.ts';
 import { inverterDcPowerW } from './inverter.ts';
 import type { Valve } from './valve.ts';
@@ -38,13 +38,8 @@ export interface Circuit {
   readonly elementsOfPart: readonly (readonly Element[])[];
   readonly valves: readonly Valve[];
   readonly sinks: readonly Sink[];
-  /** Cables that warm with their load: part index to [temperature without load, kelvin per A^2]. */
-  readonly warming: ReadonlyMap<
-    number,
-    { readonly ambientDegC: number; readonly kelvinPerA2: number; readonly endOhm: number }
-  >;
-  /** Cables whose conductor temperature is fixed. */
-  readonly fixedDegC: ReadonlyMap<number, number>;
+  /** Conductor temperature by part index: ambient + kelvinPerA2 i^2. */
+  readonly temperatures: ReadonlyMap<number, { readonly ambientDegC: number; readonly kelvinPerA2: number }>;
   readonly assumptions: readonly Assumption[];
 }
 
@@ -83,8 +78,8 @@ class CircuitBuilder {
   readonly elementsOfPart: Element[][] = [];
   readonly valves: Valve[] = [];
   readonly sinks: Sink[] = [];
-  readonly warming = new Map<number, { ambientDegC: number; kelvinPerA2: number; endOhm: number }>();
-  readonly fixedDegC = new Map<number, number>();
+  readonly temperatures = new Map<number, { readonly ambientDegC: number; readonly kelvinPerA2: number }>();
+  readonly conductors: ConductorContext;
   readonly assumptions: Assumptions;
   readonly ambientDegC: number;
 
@@ -92,6 +87,9 @@ class CircuitBuilder {
     this.request = request;
     this.ambientDegC = ambientOf(request.job, request.operatingCase);
     this.assumptions = new Assumptions(request, this.ambientDegC);
+    const { practice } = request.job;
+    const detail = `${practice} ${this.ambientDegC}`;
+    this.conductors = { practice, ambientDegC: this.ambientDegC, tables: request.tables, detail };
   }
 
   addParts(): void {
@@ -117,8 +115,7 @@ class CircuitBuilder {
       elementsOfPart: this.elementsOfPart,
       valves: this.valves,
       sinks: this.sinks,
-      warming: this.warming,
-      fixedDegC: this.fixedDegC,
+      temperatures: this.temperatures,
       assumptions: this.assumptions.list,
     };
   }
@@ -134,7 +131,12 @@ class CircuitBuilder {
 
   private add(role: string, from: JunctionId, to: JunctionId, law: Law, a: number, b = 0): Element {
     const partIndex = this.parts.length - 1;
-    const element = new Element({ partIndex, role, from: this.junction(from), to: this.junction(to) }, law, a, b);
+    const element = new Element(
+      { index: this.elements.length, partIndex, role, from: this.junction(from), to: this.junction(to) },
+      law,
+      a,
+      b,
+    );
     this.elements.push(element);
     this.elementsOfPart[partIndex]!.push(element);
     return element;
@@ -233,7 +235,7 @@ class CircuitBuilder {
   private addString(part: StringPart): void {
     const { tables, model } = this.request;
     const source = stringSource(part, { model, ambientDegC: this.ambientDegC, tables: tables.chemistry });
-    this.assumptions.ofString(part, source);
+    this.assumptions.add(stringAssumptions(part, source));
     const emfV = source.emfV.value;
     const ohm = source.resistanceOhm.value + part.linkOhm;
     if (part.midpoint === undefined) {
@@ -245,36 +247,11 @@ class CircuitBuilder {
   }
 
   private addCable(part: CablePart): void {
-    const { job, tables } = this.request;
-    const endOhm = part.endOhm / part.inParallel;
-    if (part.resistanceOhm !== undefined) {
-      this.resistor('', part.from, part.to, part.resistanceOhm + endOhm);
-      return;
-    }
-    const conductor = conductorResistance(part, { practice: job.practice, tables: tables.conductors });
-    if ('missing' in conductor)
-      throw new Defect(`figures are checked before a solve (${part.id}: ${conductor.missing})`);
-    this.assumptions.ofConductor(part, conductor);
-    const { at20Ohm, alphaPerK } = conductor;
-    const ohmAt = (degC: number) => at20Ohm * (1 + alphaPerK * (degC - 20)) + endOhm;
-    const partIndex = this.parts.length - 1;
-    const ambientDegC = part.ambientDegC ?? this.ambientDegC;
-    const heating =
-      part.conductorDegC === undefined
-        ? heatingLaw(part, { practice: job.practice, ambientDegC, tables: tables.conductors })
-        : undefined;
-    if (heating === undefined || 'missing' in heating) {
-      const degC = part.conductorDegC ?? ambientDegC;
-      if (part.conductorDegC === undefined) this.assumptions.noHeating(part, degC, heating?.missing ?? '');
-      this.fixedDegC.set(partIndex, degC);
-      this.resistor('', part.from, part.to, ohmAt(degC));
-      return;
-    }
-    const kelvinPerA2 = heating.riseAtRatedK / (heating.ampacityA * heating.ampacityA);
-    const cold = ohmAt(heating.ambientDegC);
-    this.warming.set(partIndex, { ambientDegC: heating.ambientDegC, kelvinPerA2, endOhm });
-    if (cold === 0) this.add('', part.from, part.to, Law.tie, 0);
-    else this.add('', part.from, part.to, Law.warming, cold, at20Ohm * alphaPerK * kelvinPerA2);
+    const { coldOhm, warmingOhmPerA2, temperature, assumptions } = conductorModel(part, this.conductors);
+    this.assumptions.add(assumptions);
+    if (temperature !== undefined) this.temperatures.set(this.parts.length - 1, temperature);
+    if (warmingOhmPerA2 > 0 && coldOhm > 0) this.add('', part.from, part.to, Law.warming, coldOhm, warmingOhmPerA2);
+    else this.resistor('', part.from, part.to, coldOhm);
   }
 
   private addBond(part: Extract<Part, { kind: 'bond' }>): void {

@@ -30,6 +30,8 @@ export const Law = {
 export type Law = (typeof Law)[keyof typeof Law];
 
 export class Element {
+  /** Place in the circuit's list. */
+  readonly index: number;
   readonly partIndex: number;
   /** Which piece of the part: ``, `upper`, `lower`, `segment 0`, `input`, `output`, `plus-link`, `minus-link`. */
   readonly role: string;
@@ -44,7 +46,13 @@ export class Element {
   i = 0;
   slope = 0;
 
-  constructor(at: { partIndex: number; role: string; from: number; to: number }, law: Law, a: number, b: number) {
+  constructor(
+    at: { index: number; partIndex: number; role: string; from: number; to: number },
+    law: Law,
+    a: number,
+    b: number,
+  ) {
+    this.index = at.index;
     this.partIndex = at.partIndex;
     this.role = at.role;
     this.from = at.from;

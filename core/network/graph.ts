@@ -55,13 +55,12 @@ function findLiveBlocks(circuit: Circuit, block: Int32Array, blockCount: number)
   const live = new Array<boolean>(blockCount).fill(false);
   for (const index of sourceElements(circuit)) live[block[index]!] = true;
   // A converter or controller makes its output's block live once its input's block is: repeat until nothing changes.
-  const place = new Map(circuit.elements.map((element, index) => [element, index]));
   const couplers = circuit.valves.filter(isCoupler);
   for (let changed = true; changed; ) {
     changed = false;
     for (const valve of couplers) {
-      const output = block[place.get(valve.element)!]!;
-      if (!live[output] && live[block[place.get(valve.input)!]!]) {
+      const output = block[valve.element.index]!;
+      if (!live[output] && live[block[valve.input.index]!]) {
         live[output] = true;
         changed = true;
       }
@@ -71,10 +70,9 @@ function findLiveBlocks(circuit: Circuit, block: Int32Array, blockCount: number)
 }
 
 function switchOffDeadSinks(circuit: Circuit, block: Int32Array, live: readonly boolean[]): GraphRemark[] {
-  const place = new Map(circuit.elements.map((element, index) => [element, index]));
   const dead: number[] = [];
   for (const sink of circuit.sinks) {
-    const index = place.get(sink.element)!;
+    const index = sink.element.index;
     if (live[block[index]!]) continue;
     sink.state = 'unfed';
     sink.element.law = Law.none;

@@ -24,9 +24,8 @@ export type Settled =
 /** Starting states: diodes conduct, sources hold their volts, trackers track, joiners join. Dead valves stay off. */
 export function startStates(circuit: Circuit, graph: GraphView): void {
   unpark(circuit);
-  const place = new Map(circuit.elements.map((element, index) => [element, index]));
   const isLive = (element: Element) =>
-    graph.island[element.from]! >= 0 && graph.blockIsLive[graph.block[place.get(element)!]!]!;
+    graph.island[element.from]! >= 0 && graph.blockIsLive[graph.block[element.index]!]!;
   for (const valve of circuit.valves) {
     if (valve.kind === 'tracker' || valve.kind === 'joiner') startController(circuit, graph, valve, isLive);
     else if (!isLive(valve.element)) {
@@ -174,7 +173,7 @@ function idleSources(circuit: Circuit, assembled: Assembled): Valve[] {
  * A trial without a solution may only mean wrong states: volts that give way call on whatever source stands idle above them;
  * failing that, once, sources that push a set current or power hold their volts instead. False when there is nothing to try.
  */
-function callOnOthers(circuit: Circuit, assembled: Assembled, rescues: number): boolean {
+export function callOnOthers(circuit: Circuit, assembled: Assembled, rescues: number): boolean {
   const idle = idleSources(circuit, assembled);
   for (const valve of idle) enter(valve, startOf(valve));
   if (idle.length > 0) return true;
@@ -194,7 +193,7 @@ interface Change {
   readonly state: ValveState;
 }
 
-function giveWay(
+export function giveWay(
   circuit: Circuit,
   conflicts: readonly { readonly valve: Valve; readonly above: boolean }[],
   adrift: readonly Element[],
