@@ -89,14 +89,14 @@ describe('wires', () => {
     expect(voltsAt(found, 'n')).toBeCloseTo(0.1, DECIMALS);
   });
 
-  it('of two side by side, each 0.010 ohm with ends of 0.002 ohm, drop (0.012/2) · 10 A = 0.06 V', () => {
+  it('of two side by side, 0.010 ohm as measured with each its ends of 0.002 ohm, drop (0.010 + 0.002/2) · 10 A = 0.11 V', () => {
     const found = point([
       bank,
       { id: 'W', kind: 'cable', from: 'P', to: 'L', lengthM: 2, resistanceOhm: 0.01, endOhm: 0.002, inParallel: 2 },
       load({ currentA: 10 }, 'L'),
     ]);
-    expect(voltsAt(found, 'P') - voltsAt(found, 'L')).toBeCloseTo(0.06, DECIMALS);
-    expect(answerOf(found, 'W').powerW).toBeCloseTo(0.6, DECIMALS);
+    expect(voltsAt(found, 'P') - voltsAt(found, 'L')).toBeCloseTo(0.11, DECIMALS);
+    expect(answerOf(found, 'W').powerW).toBeCloseTo(1.1, DECIMALS);
   });
 
   it('warmed by their own current: T = ambient + rise (I/ampacity)², V = I R20 (1 + alpha (T - 20))', () => {
@@ -412,6 +412,35 @@ describe('an array of 20 V and 5 A at its best point, in full sun, its cells at 
     );
     expect(voltsAt(found, 'P')).toBeCloseTo(12.5, DECIMALS);
     expect(answerOf(found, 'MC').outputA).toBe(0);
+  });
+});
+
+describe('a part with one side dead', () => {
+  const bank = stringOf('S', { plus: 'P', minus: 'N', emfV: 12.5, resistanceOhm: 0.1 });
+
+  it('a converter with nothing at its input gives a bank at its output nothing', () => {
+    const ports = { from: { plus: 'X', minus: 'x' }, to: { plus: 'P', minus: 'N' } };
+    const found = point([
+      bank,
+      { id: 'DC', kind: 'converter', ...ports, outputV: 13.5, outputA: 10 },
+      load({ currentA: 2 }),
+    ]);
+    // The bank alone: 12.5 - 0.1 · 2.
+    expect(voltsAt(found, 'P')).toBeCloseTo(12.3, DECIMALS);
+    expect(answerOf(found, 'DC').outputA).toBe(0);
+  });
+
+  it('a direct controller whose array has lost its return leaves the bank alone', () => {
+    const label = { modulesInSeries: 1, stringsInParallel: 1, vocV: 22, iscA: 5.4, vmpV: 18, impA: 5 };
+    const ports = { from: { plus: 'A', minus: 'a' }, to: { plus: 'P', minus: 'N' } };
+    const found = point([
+      { id: 'PV', kind: 'array', plus: 'A', minus: 'torn off', ...label },
+      { id: 'MC', kind: 'controller', ...ports, type: 'pwm', outputA: 30, maxInputV: 100, setpointV: 12 },
+      bank,
+      load({ currentA: 2 }),
+    ]);
+    expect(voltsAt(found, 'P') - voltsAt(found, 'N')).toBeCloseTo(12.3, DECIMALS);
+    expect(answerOf(found, 'MC').outputA).toBeCloseTo(0, DECIMALS);
   });
 });
 
