@@ -77,9 +77,6 @@ const QUASI_STEADY_EXTRA_RESISTANCE = 0.1;
 /** T_B and tau_2B of the standard, seconds (tau_2B from memory). */
 const BATTERY_TIME_S = 0.03;
 const DECAY_S = 0.1;
-/** A discharged battery has this many times its charged resistance, and at least this part of its nominal volts (from memory). */
-export const DISCHARGED_RESISTANCE_FACTOR = 1.7;
-export const LEAST_EMF_FACTOR = 0.9;
 
 /**
  * Battery branch of a short circuit after IEC 61660-1:

@@ -19,7 +19,9 @@ export function quietStates(context: CheckContext): readonly Quiet[] {
   for (const one of context.cases) {
     // What a case does not change is the same in all of them.
     const { changed } = one.operatingCase;
-    const lasting = [...changed.values()].filter((part) => part.kind === 'string' || isWiring(part));
+    const lasting = [...changed.values()].filter(
+      (part) => part.kind === 'pair' || part.kind === 'string' || isWiring(part),
+    );
     const key = JSON.stringify([one.ambientDegC, lasting]);
     if (!known.has(key)) known.set(key, quiet(context, one));
   }

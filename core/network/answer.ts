@@ -5,11 +5,6 @@ import type { Basis } from '../tables/status.ts';
 /** Battery resistance over minutes (`slow`, sharing and drops) or in the first second (`fast`, faults and surges). */
 export type BatteryModel = 'slow' | 'fast';
 
-/** Why a figure is not given. */
-export interface Undetermined {
-  readonly reason: string;
-}
-
 /**
  * The answer about one part; signs as in `core/job/part.ts`. `null` with an entry in `undetermined` where the network does not
  * determine a figure. A `pair` answers as its two cables, under their own ids.

@@ -52,7 +52,7 @@ function sourceElements(circuit: Circuit): number[] {
 }
 
 function findLiveBlocks(circuit: Circuit, block: Int32Array, blockCount: number): boolean[] {
-  const live = new Array<boolean>(blockCount).fill(false);
+  const live = Array.from({ length: blockCount }, () => false);
   for (const index of sourceElements(circuit)) live[block[index]!] = true;
   // A converter or controller makes its output's block live once its input's block is: repeat until nothing changes.
   const couplers = circuit.valves.filter(isCoupler);

@@ -173,7 +173,7 @@ function idleSources(circuit: Circuit, assembled: Assembled): Valve[] {
  * A trial without a solution may only mean wrong states: volts that give way call on whatever source stands idle above them;
  * failing that, once, sources that push a set current or power hold their volts instead. False when there is nothing to try.
  */
-export function callOnOthers(circuit: Circuit, assembled: Assembled, rescues: number): boolean {
+function callOnOthers(circuit: Circuit, assembled: Assembled, rescues: number): boolean {
   const idle = idleSources(circuit, assembled);
   for (const valve of idle) enter(valve, startOf(valve));
   if (idle.length > 0) return true;
@@ -193,7 +193,7 @@ interface Change {
   readonly state: ValveState;
 }
 
-export function giveWay(
+function giveWay(
   circuit: Circuit,
   conflicts: readonly { readonly valve: Valve; readonly above: boolean }[],
   adrift: readonly Element[],

@@ -87,8 +87,8 @@ function join(circuit: Circuit, graph: GraphView, sets: OffsetSets, valveOf: Rea
   };
   const ties = circuit.elements
     .filter((element) => element.law === Law.tie && graph.island[element.from]! >= 0)
-    .map((element) => ({ element, rank: rank(element) }))
-    .sort((p, q) => p.rank - q.rank || (p.rank === 3 ? q.element.b - p.element.b : p.element.b - q.element.b));
+    .map((element) => ({ element, rank: rank(element) }));
+  ties.sort((p, q) => p.rank - q.rank || (p.rank === 3 ? q.element.b - p.element.b : p.element.b - q.element.b));
   const accepted: Element[] = [];
   const closing: Element[] = [];
   const conflicts: TieConflict[] = [];
@@ -152,7 +152,7 @@ function buildForest(
       neighbours.get(j)!.push(tie);
     }
   }
-  const parentTie = new Array<Element | null>(n).fill(null);
+  const parentTie: (Element | null)[] = Array.from({ length: n }, () => null);
   const parentJunction = new Int32Array(n).fill(-1);
   const depth = new Int32Array(n).fill(-1);
   const down: number[] = [];
@@ -186,7 +186,7 @@ function buildForest(
       for (const element of path) undetermined.add(element);
     }
   }
-  return { order: Int32Array.from(down.reverse()), parentTie, parentJunction, undetermined, shared };
+  return { order: Int32Array.from(down).reverse(), parentTie, parentJunction, undetermined, shared };
 }
 
 function isSource(valve: Valve | undefined): boolean {

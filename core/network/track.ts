@@ -78,7 +78,7 @@ function movedBy(assembled: Assembled, tie: Element): Float64Array {
     const parent = parentJunction[j]!;
     if (parent < 0) continue;
     share[j] = share[parent]!;
-    if (parentTie[j] === tie) share[j]! += tie.from === j ? 1 : -1;
+    if (parentTie[j] === tie) share[j] = share[parent]! + (tie.from === j ? 1 : -1);
   }
   // The junction whose volts define the group's offset must not move: known volts first, else the forest's root.
   const { node, offset } = assembled.reduction;

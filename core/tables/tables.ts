@@ -1,9 +1,10 @@
 /** All published tables that the engine needs, handed in as one argument (the rows live in `data/`). */
+
+import type { Practice } from '../job/job.ts';
 import type { ChemistryTables } from './chemistryTables.ts';
 import type { ConductorTables } from './conductorTables.ts';
 import type { DeviceTables } from './deviceTables.ts';
 import type { PracticeTable } from './practiceTable.ts';
-import type { Practice } from '../job/job.ts';
 
 export interface Tables {
   readonly conductors: ConductorTables;

@@ -29,7 +29,10 @@ const mayImport: Record<string, { ours: string[]; outside: RegExp }> = {
   core: { ours: ['core'], outside: /^(zod|mathjs)$/ },
   data: { ours: ['data', 'core/api.ts'], outside: /^papaparse$/ },
   electron: { ours: ['electron', 'data', 'core/api.ts'], outside: /^(node:|commander$|pdfkit$|fontkit$|electron$)/ },
-  renderer: { ours: ['renderer', 'data', 'core/api.ts', 'core/host.ts'], outside: /^(react|react-dom|@mui\/|@emotion\/|@xyflow\/)/ },
+  renderer: {
+    ours: ['renderer', 'data', 'core/api.ts', 'core/host.ts'],
+    outside: /^(react|react-dom|@mui\/|@emotion\/|@xyflow\/)/,
+  },
 };
 
 function sources(folder: string): string[] {
@@ -55,7 +58,9 @@ function importsOf(path: string): Import[] {
   return found.map((what) => ({
     file: relative(root, path),
     what,
-    target: what.startsWith('.') ? normalize(relative(root, join(dirname(path), what.replace(/\?raw$/, '')))) : undefined,
+    target: what.startsWith('.')
+      ? normalize(relative(root, join(dirname(path), what.replace(/\?raw$/, ''))))
+      : undefined,
   }));
 }
 
@@ -91,8 +96,11 @@ describe('layers', () => {
   });
 
   test('core has no clock, no randomness, no ways out', () => {
-    const forbidden = /\bDate\.now\b|\bnew Date\b|\bMath\.random\b|\bperformance\b|\bprocess\.|\bglobalThis\b|\beval\(|\bnew Function\b/;
-    const wrong = sources(join(root, 'core')).filter((path) => forbidden.test(stripComments(readFileSync(path, 'utf8'))));
+    const forbidden =
+      /\bDate\.now\b|\bnew Date\b|\bMath\.random\b|\bperformance\b|\bprocess\.|\bglobalThis\b|\beval\(|\bnew Function\b/;
+    const wrong = sources(join(root, 'core')).filter((path) =>
+      forbidden.test(stripComments(readFileSync(path, 'utf8'))),
+    );
     expect(wrong.map((path) => relative(root, path))).toEqual([]);
   });
 

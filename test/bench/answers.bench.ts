@@ -1,6 +1,6 @@
 /** Whole answers: from the text of a job to its checked operating points, and how the parts of that grow with the job. */
 
-import type { CheckedJob, JunctionId, PartId } from '../../core/api.ts';
+import type { CheckedJob, JunctionId } from '../../core/api.ts';
 import {
   caseById,
   operatingPoint,
@@ -73,7 +73,7 @@ function derived(report: Report): void {
     const operatingCase = caseById(job, job.cases[0]!.id)!;
     const solved = solveCircuit({ job, operatingCase, tables, model: 'slow' });
     const bus = { plus: 'bus+' as JunctionId, minus: 'bus-' as JunctionId };
-    const joint = job.parts.find((part) => part.kind === 'joint')!.id as PartId;
+    const joint = job.parts.find((part) => part.kind === 'joint')!.id;
     const again = microseconds(() => operatingPoint({ job, operatingCase, tables, model: 'slow' }), report.seconds);
     const each = {
       thevenin: microseconds(() => theveninAt(solved, bus), report.seconds),

@@ -24,8 +24,8 @@ const files = readdirSync(here)
 
 const missing = [];
 const report = {
-  seconds: quick ? 0.02 : 0.1,
-  rounds: quick ? 3 : 9,
+  seconds: quick ? 0.02 : 0.05,
+  rounds: quick ? 3 : 7,
   folder,
   table(title, head, rows) {
     console.log(`\n### ${title}\n`);

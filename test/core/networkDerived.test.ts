@@ -121,7 +121,7 @@ describe('sensitivities by the adjoint equal what small changes of the job do', 
         const adjoint = found.find((s) => s.part === part.id && s.quantity === field)!.perUnit;
         const difference = byDifference(parts, part.id, field, target);
         // Central differences of step 1e-5: truncation about 1e-9, rounding about 1e-9 of the answer over the step.
-        const scale = Math.max(Math.abs(adjoint), (1e-4 * Math.abs(read(solved, target))) / (part[field] as number));
+        const scale = Math.max(Math.abs(adjoint), (1e-4 * Math.abs(read(solved, target))) / part[field]);
         expect(Math.abs(adjoint - difference), `${part.id}.${field}`).toBeLessThan(1e-4 * scale);
         compared++;
       }
