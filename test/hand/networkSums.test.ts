@@ -392,6 +392,30 @@ describe('an array of 20 V and 5 A at its best point, in full sun, its cells at 
     expect(currentAt(curve, voltsAt(found, 'A')).currentA).toBeCloseTo(3, 6);
   });
 
+  it('holds 19.5 V by itself rather than 12 V with the charger’s help: of two answers the one of higher volts', () => {
+    // 95 W at 19.5 V are 4.87 A, and the array gives 5 A at 20 V. At 12 V they would be 7.92 A: 5.4 A of sun, 2.5 A of charger.
+    const found = point(
+      [
+        array,
+        {
+          id: 'MC',
+          kind: 'controller',
+          from: { plus: 'A', minus: 'N' },
+          to: { plus: 'P', minus: 'N' },
+          type: 'pwm',
+          outputA: 30,
+          maxInputV: 100,
+          setpointV: 19.5,
+        },
+        { id: 'C', kind: 'charger', plus: 'P', minus: 'N', outputA: 20, setpointV: 12 },
+        load({ powerW: 95 }),
+      ],
+      sun,
+    );
+    expect(voltsAt(found, 'P')).toBeCloseTo(19.5, DECIMALS);
+    expect(ampsIn(found, 'C')).toBe(0);
+  });
+
   it('takes nothing back at night', () => {
     const found = point(
       [
