@@ -186,7 +186,8 @@ function buildForest(
       for (const element of path) undetermined.add(element);
     }
   }
-  return { order: Int32Array.from(down).reverse(), parentTie, parentJunction, undetermined, shared };
+  const order = Int32Array.from(down, (_, k) => down[down.length - 1 - k]!);
+  return { order, parentTie, parentJunction, undetermined, shared };
 }
 
 function isSource(valve: Valve | undefined): boolean {

@@ -82,8 +82,12 @@ function withoutPart({ text, part, field, value }: Assumption): string {
   const name = `${fieldWords(field)} `;
   return plainly.startsWith(name) ? plainly.slice(name.length) : plainly;
 }
+
 function withoutName(text: string, part: string): string {
-  return text.replaceAll(` of ${part}`, '').replaceAll(` "${part}"`, '').replaceAll(part, 'the part');
+  // Only whole words: a string called C must not eat the C of a field's name.
+  const name = part.replaceAll(/[.*+?^${}()|[\]\\]/g, '\\$&');
+  const whole = new RegExp(`(?: of |(?<![\\w.+-]))"?${name}"?(?![\\w+-])`, 'g');
+  return text.replaceAll(whole, (found) => (/^ of |^"/.test(found) ? '' : 'the part')).replaceAll('  ', ' ');
 }
 
 function assumptionTable(lines: readonly AssumptionLine[], { points }: ReportInput, citations: Citations): TableBlock {

@@ -1,13 +1,11 @@
 /** The sparse solvers against general-purpose libraries, on matrices that look like wiring. */
 import { join } from 'node:path';
-import { lup, lusolve, slu, sparse } from 'mathjs';
-import { LuDecomposition, Matrix } from 'ml-matrix';
 import { analyseBatch } from '../../core/linear/analyseBatch.ts';
 import { analyseGeneral } from '../../core/linear/analyseGeneral.ts';
 import { analyseSymmetric } from '../../core/linear/analyseSymmetric.ts';
 import type { Factorisation } from '../../core/linear/matrix.ts';
 import { residual } from '../../core/linear/residual.ts';
-import { compileSparse, runLapack, runSparse, type Timing, writeSystems } from './references.ts';
+import { compileSparse, runSparse, type Timing, writeSystems } from './references.ts';
 import { figure, type Report } from './report.ts';
 import { median, microseconds } from './stopwatch.ts';
 import {
@@ -22,8 +20,6 @@ import {
 const SIZES = [50, 200, 1000, 5000];
 /** Sets of values used in turn, so that no solver sees the same numbers twice running. */
 const SETS = 8;
-/** The largest size given to solvers of full matrices, and to the sparse one that is slowest. */
-const LARGEST_FULL = 1000;
 
 /** Rounds of timings by solver; all solvers ran in turn in each round. */
 type Rounds = Record<string, Timing[]>;
@@ -36,7 +32,6 @@ export function run(report: Report): void {
     againTable(report, shape, results);
     allTable(report, shape, results);
     batchTable(report, shape, results);
-    libraryTable(report, shape, results);
   }
   generalTable(report, program);
   report.remark(
@@ -113,8 +108,6 @@ function symmetricRounds(report: Report, program: string | null, shape: Shape, s
     add('plain', oursTiming(matrix, report.seconds, true));
     add('batch', batchTiming(matrix, report.seconds));
   }
-  for (const [name, timing] of libraryTimings(matrix, report.seconds)) add(name, timing);
-  if (size <= LARGEST_FULL) add('LAPACK dgesv', runLapack(report, file, report.seconds));
   return rounds;
 }
 
@@ -166,44 +159,6 @@ function batchTiming({ pattern, values, rightHandSides, size }: WiringMatrix, se
   return { all: all / lanes, again: again / lanes, solve: Number.NaN, residual: Number.NaN };
 }
 
-/** Libraries for JavaScript, as far as they are bearable at this size. One round: they are far off. */
-function* libraryTimings(
-  { pattern, values, rightHandSides, size }: WiringMatrix,
-  seconds: number,
-): Generator<[string, Timing]> {
-  const once = (step: () => void): Timing => ({
-    all: microseconds(step, seconds),
-    again: Number.NaN,
-    solve: Number.NaN,
-    residual: Number.NaN,
-  });
-  const right = [...rightHandSides[0]!].map((v) => [v]);
-  const entries: [number, number, number][] = [];
-  for (let j = 0; j < size; j++) {
-    for (let e = pattern.columnStarts[j]!; e < pattern.columnStarts[j + 1]!; e++) {
-      entries.push([pattern.rowIndices[e]!, j, values[0]![e]!]);
-    }
-  }
-  const bySparse = sparse();
-  bySparse.resize([size, size]);
-  for (const [i, j, v] of entries) {
-    bySparse.set([i, j], v);
-    bySparse.set([j, i], v);
-  }
-  yield ['mathjs slu', once(() => void lusolve(slu(bySparse, 1, 1), right))];
-  if (size > LARGEST_FULL) return;
-  const full = Matrix.zeros(size, size);
-  for (const [i, j, v] of entries) {
-    full.set(i, j, v);
-    full.set(j, i, v);
-  }
-  const column = new Matrix(right);
-  yield ['ml-matrix LU', once(() => void new LuDecomposition(full).solve(column))];
-  if (size > LARGEST_FULL / 5) return;
-  const rows = full.to2DArray();
-  yield ['mathjs lusolve, full', once(() => void lusolve(lup(rows), right))];
-}
-
 function againTable(report: Report, shape: Shape, results: Rounds[]): void {
   const rows = results.map((r, k) => [
     String(SIZES[k]),
@@ -250,18 +205,6 @@ function batchTable(report: Report, shape: Shape, results: Rounds[]): void {
   const head = ['n', 'batch, µs a system', 'with copying in and out, µs', 'KLU refactor and solve, µs'];
   const ratios = ['throughput over KLU', 'over KLU unscaled', 'with copying, over KLU'];
   report.table(`Eight systems side by side, ${shape}`, [...head, ...ratios], rows);
-}
-
-function libraryTable(report: Report, shape: Shape, results: Rounds[]): void {
-  const names = ['mathjs slu', 'mathjs lusolve, full', 'ml-matrix LU', 'LAPACK dgesv'];
-  const rows = results.map((r, k) => [
-    String(SIZES[k]),
-    ...names.map((name) => {
-      const times = middle(r[name], 'all') / middle(r['ours'], 'all');
-      return Number.isNaN(times) ? 'not run' : `${cell(middle(r[name], 'all'))} (${cell(times)} ×)`;
-    }),
-  ]);
-  report.table(`General-purpose libraries from start to end, µs, and times ours, ${shape}`, ['n', ...names], rows);
 }
 
 function generalTable(report: Report, program: string | null): void {
