@@ -3,8 +3,11 @@
  * A piece lives as long as any array cut from it.
  */
 
-/** Bytes in a piece. */
-const PIECE = 65_536;
+/**
+ * Bytes in a piece. Each one that is asked for may make the garbage collector take a step, so they are not small; but one small array that
+ * is kept keeps its piece, so they are not large either.
+ */
+const PIECE = 524_288;
 /** Arrays above this share of a piece get memory of their own, so that little is wasted at a piece's end. */
 const LARGE = PIECE / 8;
 

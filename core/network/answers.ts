@@ -38,9 +38,9 @@ export class Reader {
   voltsAcross(element: { readonly from: number; readonly to: number }): number | null {
     const { assembled } = this;
     if (assembled === null) return null;
-    const { node, drifting } = assembled.reduction;
+    const { node, group } = assembled.reduction;
     if (node[element.from] === -2 || node[element.to] === -2) return null;
-    if (drifting[element.from] !== drifting[element.to]) return null;
+    if (group[element.from] !== group[element.to]) return null;
     if (this.graph.island[element.from] !== this.graph.island[element.to]) return null;
     return assembled.volts[element.from]! - assembled.volts[element.to]!;
   }

@@ -28,11 +28,57 @@ export function startStates(circuit: Circuit, graph: GraphView): void {
     graph.island[element.from]! >= 0 && graph.blockIsLive[graph.block[element.index]!]!;
   for (const valve of circuit.valves) {
     if (valve.kind === 'tracker' || valve.kind === 'joiner') startController(circuit, graph, valve, isLive);
-    else if (!isLive(valve.element)) {
-      enter(valve, 'off');
-      if (valve.kind === 'converter' && !isLive(valve.input)) valve.input.law = Law.none;
-    } else enter(valve, 'held');
+    else {
+      enter(valve, isLive(valve.element) ? 'held' : 'off');
+      // A converter that nothing feeds gives nothing, and takes nothing from a bank at its output.
+      if (valve.kind === 'converter' && !isLive(valve.input)) {
+        enter(valve, 'off');
+        valve.input.law = Law.none;
+      }
+    }
   }
+  startFromAbove(circuit);
+}
+
+/**
+ * Constant-power loads on a bus without a battery can have a lower and a higher operating point. There only the sources of
+ * the highest set point start; lower ones come in when the volts fall to them. So the higher point is found first.
+ */
+function startFromAbove(circuit: Circuit): void {
+  if (circuit.valves.filter((valve) => valve.kind !== 'diode' && valve.state !== 'off').length < 2) return;
+  const buses = busesOf(circuit);
+  const key = (element: Element) => `${buses[element.from]} ${buses[element.to]}`;
+  const banks = new Set<string>();
+  for (const element of circuit.elements) {
+    if (element.law === Law.emf && circuit.parts[element.partIndex]!.kind === 'string') banks.add(key(element));
+  }
+  const highest = new Map<string, number>();
+  for (const valve of circuit.valves) {
+    if (valve.kind === 'diode' || valve.state === 'off') continue;
+    highest.set(key(valve.element), Math.max(valve.setpointV, highest.get(key(valve.element)) ?? 0));
+  }
+  for (const valve of circuit.valves) {
+    if (valve.kind === 'diode' || valve.state === 'off' || banks.has(key(valve.element))) continue;
+    if (valve.setpointV < highest.get(key(valve.element))!) enter(valve, 'off');
+  }
+}
+
+/** Junctions that conductors, fuses and switches join, by one of them. */
+function busesOf(circuit: Circuit): Int32Array {
+  const bus = Int32Array.from(circuit.junctions, (_, j) => j);
+  const find = (j: number): number => {
+    let at = j;
+    while (bus[at] !== at) {
+      bus[at] = bus[bus[at]!]!;
+      at = bus[at]!;
+    }
+    return at;
+  };
+  for (const element of circuit.elements) {
+    const { kind } = circuit.parts[element.partIndex]!;
+    if (isTwoEnded(kind) || kind === 'busbar') bus[find(element.from)] = find(element.to);
+  }
+  return bus.map((_, j) => find(j));
 }
 
 function startController(
@@ -104,7 +150,7 @@ export function settle(circuit: Circuit, graph: GraphView, share: number): Settl
 function pivot(circuit: Circuit, graph: GraphView, share: number, patience: number): Settled | null {
   let fewest = patience === 0 ? 0 : Number.POSITIVE_INFINITY;
   let left = patience;
-  let rescues = 0;
+  const called = new Set<Valve>();
   // Constant-power loads can make two states each point to the other: on a return the next valve in line changes instead.
   const visits = new Map<string, number>();
   const limit = 60 + 12 * circuit.valves.length;
@@ -117,7 +163,7 @@ function pivot(circuit: Circuit, graph: GraphView, share: number, patience: numb
     const assembled = new Assembled(circuit, reduction.value);
     if (!assembled.solveUnloaded()) return { ok: false, assembled };
     if (!assembled.solve(share) || !trackMaximumPower(assembled, share)) {
-      if (!callOnOthers(circuit, assembled, rescues++)) return { ok: false, assembled };
+      if (!callOnOthers(circuit, assembled, called)) return { ok: false, assembled };
       continue;
     }
     assembled.coupling.balance();
@@ -160,27 +206,46 @@ function pushesBack(circuit: Circuit): boolean {
 /** Sources that give nothing although the volts across them lie below their set point, and diodes that block forwards. */
 function idleSources(circuit: Circuit, assembled: Assembled): Valve[] {
   return circuit.valves.filter((valve) => {
-    if (valve.state !== 'off' || assembled.reduction.node[valve.element.from] === -2) return false;
-    if (valve.kind === 'diode') return voltsAcross(valve.element, assembled) > valve.forwardV;
-    if (valve.kind === 'tracker' && valve.availableW <= 0) return false;
-    if (valve.kind === 'joiner' && valve.availableA <= 0) return false;
-    if (valve.kind === 'converter' && valve.input.law === Law.none) return false;
-    return voltsAcross(valve.element, assembled) < valve.setpointV * (1 - 1e-9);
+    if (valve.state !== 'off' || !canGive(valve, assembled)) return false;
+    const v = voltsAcross(valve.element, assembled);
+    return valve.kind === 'diode' ? v > valve.forwardV : v < valve.setpointV * (1 - 1e-9);
   });
 }
 
+/** Whether a valve has anything behind it to give. */
+function canGive(valve: Valve, assembled: Assembled): boolean {
+  if (assembled.reduction.node[valve.element.from] === -2) return false;
+  if (valve.kind === 'tracker') return valve.availableW > 0;
+  if (valve.kind === 'joiner') return valve.availableA > 0;
+  return valve.kind !== 'converter' || valve.input.law !== Law.none;
+}
+
 /**
- * A trial without a solution may only mean wrong states: volts that give way call on whatever source stands idle above them;
- * failing that, once, sources that push a set current or power hold their volts instead. False when there is nothing to try.
+ * A trial without a solution may only mean wrong states: volts that give way call on every source that stands idle above
+ * them, then on the others that give nothing, from the highest set point, then sources that push a set current or power hold
+ * their volts instead. The last two once a valve (`called`). False when there is nothing left to try.
  */
-function callOnOthers(circuit: Circuit, assembled: Assembled, rescues: number): boolean {
+function callOnOthers(circuit: Circuit, assembled: Assembled, called: Set<Valve>): boolean {
   const idle = idleSources(circuit, assembled);
   for (const valve of idle) enter(valve, startOf(valve));
   if (idle.length > 0) return true;
-  const pushing = circuit.valves.filter((valve) => valve.state === 'tracking' || valve.state === 'limited');
-  if (rescues > 0 || pushing.length === 0) return false;
-  for (const valve of pushing) enter(valve, 'held');
-  return true;
+  const fresh = circuit.valves.filter((valve) => !called.has(valve));
+  let next: Exclude<Valve, { kind: 'diode' }> | null = null;
+  for (const valve of fresh) {
+    if (valve.kind === 'diode' || valve.state !== 'off' || !canGive(valve, assembled)) continue;
+    if (next === null || valve.setpointV > next.setpointV) next = valve;
+  }
+  if (next !== null) {
+    called.add(next);
+    enter(next, startOf(next));
+    return true;
+  }
+  const pushing = fresh.filter((valve) => valve.state === 'tracking' || valve.state === 'limited');
+  for (const valve of pushing) {
+    called.add(valve);
+    enter(valve, 'held');
+  }
+  return pushing.length > 0;
 }
 
 function startOf(valve: Valve): ValveState {
@@ -228,7 +293,7 @@ export function disagreements(circuit: Circuit, assembled: Assembled): Change[] 
     const { element } = valve;
     const node = assembled.reduction.node;
     if (node[element.from] === -2) continue;
-    const drifts = assembled.reduction.drifting[element.from] !== assembled.reduction.drifting[element.to];
+    const drifts = assembled.reduction.group[element.from] !== assembled.reduction.group[element.to];
     const v = volts[element.from]! - volts[element.to]!;
     const tieA = coupling.ties.get(element) ?? 0;
     const state =

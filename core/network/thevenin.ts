@@ -25,8 +25,8 @@ export function theveninAt(
   const minus = circuit.junctionIndex.get(between.minus);
   if (assembled === null || plus === undefined || minus === undefined) return null;
   if (graph.island[plus]! < 0 || graph.island[plus] !== graph.island[minus]) return null;
-  const { node, size, drifting } = assembled.reduction;
-  if (drifting[plus] !== drifting[minus]) return null;
+  const { node, size, group } = assembled.reduction;
+  if (group[plus] !== group[minus]) return null;
   const b = new Float64Array(size);
   const p = node[plus]!;
   const q = node[minus]!;

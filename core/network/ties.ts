@@ -16,7 +16,9 @@ export interface Reduction {
   readonly offset: Float64Array;
   readonly size: number;
   readonly forest: TieForest;
-  /** Junctions of groups that no conducting element joins to their island's 0 V in the present states. */
+  /** Conducting group of each junction in the present states; volts between two groups are not defined. */
+  readonly group: Int32Array;
+  /** 1 for junctions of groups that have neither their island's 0 V nor a source of their own: their volts mean nothing. */
   readonly drifting: Uint8Array;
 }
 
@@ -57,7 +59,7 @@ export function reduce(circuit: Circuit, graph: GraphView): ReductionOutcome {
   const drifting = new Uint8Array(n);
   const groundOf = new Map<number, number>(); // root of a set → junction at known volts
   for (const j of graph.reference) groundOf.set(sets.find(j), j);
-  const adrift = groundDriftingGroups(circuit, graph, sets, groundOf, drifting);
+  const { adrift, group } = groundDriftingGroups(circuit, graph, sets, groundOf, drifting);
   if (adrift.length > 0) return { ok: false, conflicts: [], adrift };
 
   const node = new Int32Array(n).fill(-2);
@@ -75,7 +77,7 @@ export function reduce(circuit: Circuit, graph: GraphView): ReductionOutcome {
     }
   }
   const forest = buildForest(n, accepted, closing, valveOf);
-  return { ok: true, value: { node, offset, size: nodeOf.size, forest, drifting } };
+  return { ok: true, value: { node, offset, size: nodeOf.size, forest, group, drifting } };
 }
 
 /** Zero-ohm parts first, then diodes from the lowest drop, then held sources from the highest volts: the later gives way. */
@@ -103,8 +105,9 @@ function join(circuit: Circuit, graph: GraphView, sets: OffsetSets, valveOf: Rea
 }
 
 /**
- * Groups cut off from their island's 0 V by closed valves float: they get a 0 V of their own, marked as drifting. If an
- * element pushes a set current across the gap there is no such answer; the elements are returned.
+ * Groups cut off from their island's 0 V by closed valves stand for themselves: 0 V is the minus of their first source; one
+ * without a source gets some 0 V to be solved by, and is marked as drifting. If an element pushes a set current across the
+ * gap there is no such answer; the elements are returned.
  */
 function groundDriftingGroups(
   circuit: Circuit,
@@ -112,31 +115,32 @@ function groundDriftingGroups(
   sets: OffsetSets,
   groundOf: Map<number, number>,
   drifting: Uint8Array,
-): Element[] {
+): { adrift: Element[]; group: Int32Array } {
   const n = circuit.junctions.length;
-  const group = new OffsetSets(n);
-  for (let j = 0; j < n; j++) group.join(sets.find(j), j, 0);
-  for (const element of circuit.elements) if (conducts(element)) group.join(element.from, element.to, 0);
-  const grounded = new Set([...groundOf.values()].map((j) => group.find(j)));
-  const floats = (j: number) => graph.island[j]! >= 0 && !grounded.has(group.find(j));
+  const joined = new OffsetSets(n);
+  for (let j = 0; j < n; j++) joined.join(sets.find(j), j, 0);
+  for (const element of circuit.elements) if (conducts(element)) joined.join(element.from, element.to, 0);
+  const group = Int32Array.from({ length: n }, (_, j) => joined.find(j));
+  const grounded = new Set([...groundOf.values()].map((j) => group[j]!));
+  const floats = (j: number) => graph.island[j]! >= 0 && !grounded.has(group[j]!);
   const adrift: Element[] = [];
   for (const element of circuit.elements) {
-    if (element.law === Law.none || conducts(element) || group.find(element.from) === group.find(element.to)) continue;
+    if (element.law === Law.none || conducts(element) || group[element.from] === group[element.to]) continue;
     if (element.a !== 0 && (floats(element.from) || floats(element.to))) adrift.push(element);
   }
-  if (adrift.length > 0) return adrift;
-  for (let j = 0; j < n; j++) {
-    if (!floats(j)) continue;
-    drifting[j] = 1;
+  if (adrift.length > 0) return { adrift, group };
+  const ground = (j: number): void => {
+    grounded.add(group[j]!);
+    groundOf.set(sets.find(j), j);
+  };
+  for (const part of circuit.parts) {
+    if (part.kind !== 'string' && part.kind !== 'array' && part.kind !== 'charger') continue;
+    const j = circuit.junctionIndex.get(part.minus)!;
+    if (floats(j)) ground(j);
   }
-  for (let j = 0; j < n; j++) {
-    const root = group.find(j);
-    if (drifting[j] === 1 && !grounded.has(root)) {
-      grounded.add(root);
-      groundOf.set(sets.find(j), j);
-    }
-  }
-  return [];
+  for (let j = 0; j < n; j++) if (floats(j)) drifting[j] = 1;
+  for (let j = 0; j < n; j++) if (floats(j)) ground(j);
+  return { adrift, group };
 }
 
 function buildForest(
