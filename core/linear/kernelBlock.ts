@@ -13,11 +13,11 @@ const up = (bytes: number): number => Math.ceil(bytes / 16) * 16;
 
 /** Works out a block for so many systems side by side. */
 export function layOutBlock(plan: SymmetricPlan, lanes: number): BlockLayout {
-  const { leafCount, linkCount, fullNodes, slots, table, pattern, storage, fullPlace } = plan;
+  const { leafCount, linkCount, fullNodes, slots, tableLength, pattern, storage, fullPlace } = plan;
   const { size, rowIndices } = pattern;
   const leaves = up(4 * HEADER.length);
   const integers = (count: number): number => leaves + 4 * count;
-  const w = up(integers(table.length + size));
+  const w = up(integers(tableLength + size));
   const numbers = (count: number): number => w + 8 * lanes * count;
   const leafPlace = 2 * (size + 1);
   const values = up(numbers(storage));
@@ -28,7 +28,7 @@ export function layOutBlock(plan: SymmetricPlan, lanes: number): BlockLayout {
       columns: integers(2 * leafCount + 4 * linkCount),
       fullNodes: integers(fullNodes),
       slots: integers(slots),
-      ends: integers(table.length),
+      ends: integers(tableLength),
       w,
       y: numbers(size + 1),
       leafEntries: numbers(leafPlace),
@@ -46,6 +46,6 @@ export function layOutBlock(plan: SymmetricPlan, lanes: number): BlockLayout {
 export function writeBlock(plan: SymmetricPlan, { parts }: BlockLayout, buffer: ArrayBuffer, address: number): void {
   const ints = new Int32Array(buffer);
   for (let k = 0; k < HEADER.length; k++) ints[address / 4 + k] = address + parts[HEADER[k]!];
-  ints.set(plan.table, (address + parts.leaves) / 4);
+  ints.set(plan.table.subarray(0, plan.tableLength), (address + parts.leaves) / 4);
   ints.set(plan.pattern.columnStarts.subarray(1), (address + parts.ends) / 4);
 }

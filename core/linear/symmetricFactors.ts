@@ -4,7 +4,7 @@ import { inspectPivots } from './inspectPivots.ts';
 import { type BlockLayout, layOutBlock, writeBlock } from './kernelBlock.ts';
 import type { FactorReport, FusedFactorisation, Pattern } from './matrix.ts';
 import { residence, type Tenant } from './residence.ts';
-import { newNumbers } from './slab.ts';
+import { giveBack, takeNumbers } from './slab.ts';
 import type { SymmetricPlan } from './symmetricPlan.ts';
 import { eliminate, solveBackward, solveForward } from './symmetricSteps.ts';
 
@@ -18,13 +18,14 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
   readonly pattern: Pattern;
   private readonly plan: SymmetricPlan;
   /**
-   * Length plan.storage. First size + 1: the diagonal d, after elimination 1/d. Next size + 1: the right-hand side, then the solution.
+   * At least plan.storage long. First size + 1: the diagonal d, after elimination 1/d. Next size + 1: the right-hand side, then the solution.
    * Then the off-diagonal entries, after elimination those of L. Lies in the kernel's memory while this is resident there.
    */
   private w: Float64Array;
   private readonly report = { regular: false, negativePivots: 0, failedColumn: -1 };
   private readonly plain: boolean;
   private used = false;
+  private released = false;
   /** Where this lives in the kernel's memory, or -1. */
   private address = -1;
   private layout: BlockLayout | null = null;
@@ -37,7 +38,7 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
     this.plain = plain;
     this.pattern = plan.pattern;
     this.plan = plan;
-    this.w = newNumbers(plan.storage);
+    this.w = takeNumbers(plan.storage);
   }
 
   refactor(values: Float64Array): FactorReport {
@@ -117,10 +118,10 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
   }
 
   private load(values: Float64Array): void {
-    const { table, slots } = this.plan;
+    const { table, slots, storage, pattern } = this.plan;
     const { w } = this;
-    w.fill(0);
-    const count = table.length - slots;
+    w.fill(0, 0, storage);
+    const count = pattern.rowIndices.length;
     for (let e = 0; e < count; e++) w[table[slots + e]!] = values[e]!;
   }
 
@@ -139,6 +140,7 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
 
   /** Whether this is in the kernel's memory; moves there if this is not the first use. */
   private moveIn(): boolean {
+    if (this.released) throw new Defect('no use of a factorisation after its release');
     if (this.address >= 0) return true;
     if (this.plain || !this.used) {
       this.used = true;
@@ -158,7 +160,17 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
   }
 
   leave(): void {
-    this.w = this.w.slice();
+    if (this.released) return;
+    const own = takeNumbers(this.plan.storage);
+    own.set(this.w);
+    this.w = own;
     this.address = -1;
+  }
+
+  release(): void {
+    if (this.released) return;
+    this.released = true;
+    this.report.regular = false;
+    if (this.address < 0) giveBack(this.plan.table, this.w);
   }
 }

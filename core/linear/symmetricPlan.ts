@@ -2,7 +2,7 @@
 import type { Pattern } from './matrix.ts';
 import { type ColumnPlan, planColumns } from './planColumns.ts';
 import { reduceLinks } from './reduceLinks.ts';
-import { newInts } from './slab.ts';
+import { takeInts } from './slab.ts';
 import { stripLeaves } from './stripLeaves.ts';
 import { reserve, workspace } from './workspace.ts';
 
@@ -25,6 +25,8 @@ export interface SymmetricPlan {
   readonly columnCount: number;
   readonly fullSize: number;
   readonly table: Int32Array;
+  /** Integers of the table that are used. */
+  readonly tableLength: number;
   /** Where the full block's nodes begin in the table. */
   readonly fullNodes: number;
   /** Where the places of the pattern's entries begin in the table. */
@@ -114,6 +116,7 @@ export function symmetricPlan(pattern: Pattern): SymmetricPlan {
     columnCount: core.columnCount,
     fullSize: core.fullSize,
     table: collect(pattern, at, core, chainEnd),
+    tableLength: slots + pattern.rowIndices.length,
     fullNodes: slots - core.fullSize,
     slots,
     fullPlace: core.fullPlace,
@@ -125,7 +128,7 @@ export function symmetricPlan(pattern: Pattern): SymmetricPlan {
 function collect({ rowIndices }: Pattern, at: Layout, core: ColumnPlan, chainEnd: number): Int32Array {
   const { ints } = workspace;
   const slots = chainEnd + core.end - core.start;
-  const table = newInts(slots + rowIndices.length);
+  const table = takeInts(slots + rowIndices.length);
   table.set(ints.subarray(at.program, at.program + chainEnd));
   table.set(ints.subarray(core.start, core.end), chainEnd);
   table.set(ints.subarray(at.slot, at.slot + rowIndices.length), slots);

@@ -7,7 +7,7 @@ import type { Circuit, Sink } from './circuit.ts';
 import { Law } from './element.ts';
 import type { GraphView } from './graph.ts';
 import type { Assembled } from './newton.ts';
-import { settle, startStates } from './settle.ts';
+import { isDemand, settle, startStates } from './settle.ts';
 
 export interface Nose {
   /** The largest share of all sinks' figures that still has a solution, within 1e-3. */
@@ -76,11 +76,6 @@ function weakest(circuit: Circuit, assembled: Assembled): Sink | null {
     }
   }
   return worst;
-}
-
-/** A sink that asks for a set power or current, and so can ask for too much. */
-export function isDemand(sink: Sink): boolean {
-  return (sink.element.law === Law.power || sink.element.law === Law.current) && sink.element.a > 0;
 }
 
 /**

@@ -5,13 +5,13 @@ import { Reader } from './answers.ts';
 import type { Circuit, CircuitRequest, Sink } from './circuit.ts';
 import { buildCircuit } from './circuit.ts';
 import type { Nose } from './collapse.ts';
-import { isDemand, largestDeliverableW, settleOrCollapse } from './collapse.ts';
+import { largestDeliverableW, settleOrCollapse } from './collapse.ts';
 import { Law } from './element.ts';
 import type { GraphView } from './graph.ts';
 import { readGraph } from './graph.ts';
 import type { Assembled } from './newton.ts';
 import { proveAnswer } from './proof.ts';
-import { settle, startStates } from './settle.ts';
+import { isDemand, settle, startStates } from './settle.ts';
 
 /** The circuit at its operating point, kept for what is derived from it (Thévenin sources, sensitivities, what-ifs). */
 export interface SolvedCircuit {

@@ -6,7 +6,7 @@
 import { Defect } from '../job/issue.ts';
 import type { Part } from '../job/part.ts';
 import { currentAt, maximumPower } from '../solar/arrayCurve.ts';
-import type { Circuit } from './circuit.ts';
+import type { Circuit, Sink } from './circuit.ts';
 import { SHORT_OF_NOSE } from './coupling.ts';
 import type { Element } from './element.ts';
 import { Law } from './element.ts';
@@ -142,8 +142,17 @@ export function settle(circuit: Circuit, graph: GraphView, share: number): Settl
   if (together !== null && (together.ok || circuit.valves.length === 0)) return together;
   startStates(circuit, graph);
   const singly = pivot(circuit, graph, share, 0);
-  if (singly === null) throw new Defect('the states of chargers, diodes and controllers settle');
-  return singly;
+  if (singly !== null) return singly;
+  // Resistances alone always settle. Constant powers may leave no state that agrees: a source too weak to hold its volts, and
+  // nothing between that and volts above them. That is a network that cannot deliver.
+  if (share > 0 && circuit.sinks.some((sink) => sink.state === 'on' && isDemand(sink)))
+    return { ok: false, assembled: null };
+  throw new Defect('the states of chargers, diodes and controllers settle');
+}
+
+/** A sink that asks for a set power or current, and so can ask for too much. */
+export function isDemand(sink: Sink): boolean {
+  return (sink.element.law === Law.power || sink.element.law === Law.current) && sink.element.a > 0;
 }
 
 /** Principal pivoting; `patience` is how often all changes together may fail to lessen their number. Null: no end found. */
@@ -348,7 +357,8 @@ function sourceState(valve: Exclude<Valve, { kind: 'diode' }>, seen: Seen, assem
     case 'direct': {
       const linkA = valve.kind === 'joiner' ? (assembled.coupling.ties.get(valve.plusLink) ?? 0) : 0;
       if (over) return 'held';
-      if (linkA > valve.limitA + smallA) return 'limited';
+      // The band matches OFF_THE_PLATEAU: at its corner the array's volts are not fixed by its current.
+      if (linkA > valve.limitA * (3 - 2 * OFF_THE_PLATEAU) + smallA) return 'limited';
       return linkA < -smallA ? 'off' : null;
     }
     default:
