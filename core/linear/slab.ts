@@ -34,10 +34,14 @@ export function takeNumbers(length: number): Float64Array {
   return new Float64Array(current.piece, at, rounded);
 }
 
-/** Gives back arrays that came from here; nobody may use them any more. */
-export function giveBack(ints: Int32Array, numbers: Float64Array): void {
-  keep(freeInts, ints);
-  keep(freeNumbers, numbers);
+/** Gives back an array that came from here; nobody may use it any more. */
+export function giveBackInts(array: Int32Array): void {
+  keep(freeInts, array);
+}
+
+/** Gives back an array that came from here; nobody may use it any more. */
+export function giveBackNumbers(array: Float64Array): void {
+  keep(freeNumbers, array);
 }
 
 function keep<T extends Int32Array | Float64Array>(free: Map<number, T[]>, array: T): void {

@@ -4,7 +4,7 @@ import { inspectPivots } from './inspectPivots.ts';
 import { type BlockLayout, layOutBlock, writeBlock } from './kernelBlock.ts';
 import type { FactorReport, FusedFactorisation, Pattern } from './matrix.ts';
 import { residence, type Tenant } from './residence.ts';
-import { giveBack, takeNumbers } from './slab.ts';
+import { giveBackInts, giveBackNumbers, takeNumbers } from './slab.ts';
 import type { SymmetricPlan } from './symmetricPlan.ts';
 import { eliminate, solveBackward, solveForward } from './symmetricSteps.ts';
 
@@ -152,6 +152,7 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
     if (address < 0) return false;
     const { buffer } = residence;
     writeBlock(this.plan, this.layout, buffer, address);
+    giveBackNumbers(this.w);
     this.w = new Float64Array(buffer, address + parts.w, this.plan.storage);
     this.y = new Float64Array(buffer, address + parts.y, this.pattern.size);
     this.values = new Float64Array(buffer, address + parts.values, this.pattern.rowIndices.length);
@@ -171,6 +172,7 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
     if (this.released) return;
     this.released = true;
     this.report.regular = false;
-    if (this.address < 0) giveBack(this.plan.table, this.w);
+    giveBackInts(this.plan.table);
+    if (this.address < 0) giveBackNumbers(this.w);
   }
 }

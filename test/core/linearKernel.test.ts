@@ -4,6 +4,7 @@ import { Defect } from '../../core/job/issue.ts';
 import { analyseBatch, type Batch } from '../../core/linear/analyseBatch.ts';
 import { analyseSymmetric } from '../../core/linear/analyseSymmetric.ts';
 import { residence } from '../../core/linear/residence.ts';
+import { residual } from '../../core/linear/residual.ts';
 import { solveRefined } from '../../core/linear/solveRefined.ts';
 import { type System, seeded, wiring, wiringWithSources } from './linearSystems.ts';
 
@@ -83,6 +84,26 @@ describe('the compiled kernel', () => {
       }
     },
   );
+
+  it('may be released: then it refuses work, and the next one uses its memory without harm', () => {
+    const kept = wiring(40, 5, 2);
+    const keeper = analyseSymmetric(kept.pattern);
+    keeper.refactor(kept.values);
+    for (let round = 0; round < 60; round++) {
+      const s = wiring(5 + round, round % 7, round);
+      const other = analyseSymmetric(s.pattern);
+      const x = new Float64Array(s.size);
+      for (let use = 0; use <= round % 3; use++) expect(other.refactorAndSolve(s.values, s.b, x).regular).toBe(true);
+      expect(residual(s.pattern, s.values, s.b, x, new Float64Array(s.size))).toBeLessThan(1e-14);
+      other.release();
+      other.release();
+      expect(() => other.solve(s.b, x)).toThrow(Defect);
+      expect(() => other.refactor(s.values)).toThrow(Defect);
+    }
+    const x = new Float64Array(40);
+    keeper.solve(kept.b, x);
+    expect(residual(kept.pattern, kept.values, kept.b, x, new Float64Array(40))).toBeLessThan(1e-14);
+  });
 
   it('serves many factorisations in turn, even when its memory has been cleared between factoring and solving', () => {
     const s = wiring(3000, 150, 2);
