@@ -1,9 +1,10 @@
 /** The numbers of an L U factorisation with row pivoting (Gilbert and Peierls: time in proportion to the arithmetic). */
 import { Defect } from '../job/issue.ts';
-import type { GeneralPlan } from './generalPlan.ts';
+import { type GeneralPlan, releasePlan } from './generalPlan.ts';
 import { SINGULAR } from './inspectPivots.ts';
 import type { Factorisation, FactorReport, Pattern } from './matrix.ts';
 import { Reach } from './reach.ts';
+import { giveBackInts, giveBackNumbers, takeInts, takeNumbers } from './slab.ts';
 
 /** The matched entry is taken as pivot when it is at least this share of the largest candidate (*common practice, no source*). */
 const PREFER_MATCHED = 0.1;
@@ -13,72 +14,87 @@ const KEEP_PIVOT = 1e-3;
 export class GeneralFactors implements Factorisation {
   readonly pattern: Pattern;
   private readonly plan: GeneralPlan;
+  // Arrays are at least as long as said.
   /** Length size: row k of the factors is row rowOf[k] of A; pivotOf is the inverse, -1 for a row that has not been a pivot yet. */
   private readonly rowOf: Int32Array;
   private readonly pivotOf: Int32Array;
   /** L by columns, unit diagonal left out; rows of A while factoring, pivot numbers afterwards. */
   private readonly lStarts: Int32Array;
-  private lRows = new Int32Array(16);
-  private l = new Float64Array(16);
+  private lRows: Int32Array;
+  private l: Float64Array;
   /** U by columns, above the diagonal, in an order in which the column can be solved for; rows are pivot numbers. */
   private readonly uStarts: Int32Array;
-  private uRows = new Int32Array(16);
-  private u = new Float64Array(16);
+  private uRows: Int32Array;
+  private u: Float64Array;
   /** Length size: the diagonal of U. */
   private readonly d: Float64Array;
-  /** The entries above the diagonal blocks, and the pivot numbers of the rows of all entries. */
+  /** Parallel to plan.entries: their values, for those above the diagonal blocks; the pivot numbers of their rows, for all. */
   private readonly above: Float64Array;
-  private readonly abovePivots: Int32Array;
-  private readonly insidePivots: Int32Array;
+  private readonly pivotRows: Int32Array;
   /** Length size: the column in hand, zero between columns; and a right-hand side. */
   private readonly x: Float64Array;
   private readonly y: Float64Array;
   private readonly reach: Reach;
   private pivoted = false;
+  private released = false;
   private readonly report = { regular: false, negativePivots: 0, failedColumn: -1 };
 
   constructor(plan: GeneralPlan) {
-    const { size } = plan.pattern;
+    const { size, rowIndices } = plan.pattern;
+    const entries = rowIndices.length;
     this.pattern = plan.pattern;
     this.plan = plan;
-    this.rowOf = new Int32Array(size);
-    this.pivotOf = new Int32Array(size);
-    this.lStarts = new Int32Array(size + 1);
-    this.uStarts = new Int32Array(size + 1);
-    this.d = new Float64Array(size);
-    this.above = new Float64Array(plan.above.length);
-    this.abovePivots = new Int32Array(plan.above.length);
-    this.insidePivots = new Int32Array(plan.inside.length);
-    this.x = new Float64Array(size);
-    this.y = new Float64Array(size);
+    this.rowOf = takeInts(size);
+    this.pivotOf = takeInts(size);
+    this.lStarts = takeInts(size + 1);
+    this.uStarts = takeInts(size + 1);
+    this.lStarts[0] = 0;
+    this.uStarts[0] = 0;
+    this.lRows = takeInts(entries);
+    this.l = takeNumbers(entries);
+    this.uRows = takeInts(entries);
+    this.u = takeNumbers(entries);
+    this.d = takeNumbers(size);
+    this.above = takeNumbers(entries);
+    this.pivotRows = takeInts(entries);
+    this.x = takeNumbers(size);
+    this.y = takeNumbers(size);
     this.reach = new Reach(size);
   }
 
   refactor(values: Float64Array): FactorReport {
+    if (this.released) throw new Defect('no use of a factorisation after its release');
     const { plan, report } = this;
     report.negativePivots = 0;
     report.failedColumn = plan.hopelessColumn;
     if (plan.hopelessColumn < 0 && !(this.pivoted && this.refactorKept(values))) this.factor(values);
     report.regular = report.failedColumn < 0;
-    if (report.regular) for (let p = 0; p < this.above.length; p++) this.above[p] = values[plan.above[p]!]!;
     return report;
+  }
+
+  release(): void {
+    if (this.released) return;
+    this.released = true;
+    this.report.regular = false;
+    releasePlan(this.plan);
+    this.reach.release();
+    const { rowOf, pivotOf, lStarts, uStarts, lRows, uRows, pivotRows, l, u, d, above, x, y } = this;
+    for (const array of [rowOf, pivotOf, lStarts, uStarts, lRows, uRows, pivotRows]) giveBackInts(array);
+    for (const array of [l, u, d, above, x, y]) giveBackNumbers(array);
   }
 
   /** Full factorisation with a free choice of pivots. */
   private factor(values: Float64Array): void {
-    const { columnOf, blockStarts } = this.plan;
+    const { size } = this.pattern;
     this.pivotOf.fill(-1);
     this.reach.forget();
     this.x.fill(0);
     this.pivoted = false;
     this.report.negativePivots = 0;
-    for (let m = 0; m + 1 < blockStarts.length; m++) {
-      for (let k = blockStarts[m]!; k < blockStarts[m + 1]!; k++) {
-        this.makeRoom(k);
-        if (this.factorColumn(k, values)) continue;
-        this.report.failedColumn = columnOf[k]!;
-        return;
-      }
+    for (let k = 0; k < size; k++) {
+      if (this.factorColumn(k, values)) continue;
+      this.report.failedColumn = this.plan.columnOf[k]!;
+      return;
     }
     this.renumber();
     this.pivoted = true;
@@ -86,23 +102,27 @@ export class GeneralFactors implements Factorisation {
 
   /** Solves L x = A(:, k) over the rows that the column reaches through L, and chooses its pivot. False when there is none. */
   private factorColumn(k: number, values: Float64Array): boolean {
-    const { inside, insideRows, insideStarts, matchedRow } = this.plan;
-    const { pivotOf, lStarts, uStarts, x, lRows, l, uRows, u } = this;
+    const { entries, rows, starts, matchedRow, columnOf } = this.plan;
+    const { pivotOf, lStarts, uStarts, x, above } = this;
+    const from = starts[2 * k]!;
+    const to = starts[2 * k + 1]!;
+    for (let p = to; p < starts[2 * k + 2]!; p++) above[p] = values[entries[p]!]!;
+    const top = this.reach.find(k, rows, from, to, pivotOf, lStarts, this.lRows);
     const { reached } = this.reach;
-    const from = insideStarts[k]!;
-    const to = insideStarts[k + 1]!;
-    const top = this.reach.find(k, insideRows, from, to, pivotOf, lStarts, lRows);
+    const { size } = this.pattern;
+    this.makeRoom(lStarts[k]!, uStarts[k]!, size - top);
+    const { lRows, l, uRows, u } = this;
     let columnMost = 0;
     for (let p = from; p < to; p++) {
-      const a = values[inside[p]!]!;
-      x[insideRows[p]!] = a;
+      const a = values[entries[p]!]!;
+      x[rows[p]!] = a;
       columnMost = Math.max(columnMost, Math.abs(a));
     }
     let uEnd = uStarts[k]!;
     let lEnd = lStarts[k]!;
     let most = -1;
     let best = -1;
-    for (let s = top; s < reached.length; s++) {
+    for (let s = top; s < size; s++) {
       const i = reached[s]!;
       const xi = x[i]!;
       const c = pivotOf[i]!;
@@ -119,7 +139,7 @@ export class GeneralFactors implements Factorisation {
       x[i] = 0;
     }
     if (!(most > SINGULAR * columnMost && most < Number.POSITIVE_INFINITY)) return false;
-    const matched = matchedRow[k]!;
+    const matched = matchedRow[columnOf[k]!]!;
     if (pivotOf[matched]! < 0 && Math.abs(x[matched]!) >= PREFER_MATCHED * most) best = matched;
     uStarts[k + 1] = uEnd;
     this.divideColumn(k, best, lEnd);
@@ -148,27 +168,29 @@ export class GeneralFactors implements Factorisation {
 
   /** Rows of A become pivot numbers, now that all are known. */
   private renumber(): void {
-    const { pivotOf, lRows } = this;
-    const { insideRows, aboveRows } = this.plan;
-    const end = this.lStarts[this.pattern.size]!;
+    const { pivotOf, lRows, pivotRows } = this;
+    const { rows } = this.plan;
+    const { size, rowIndices } = this.pattern;
+    const end = this.lStarts[size]!;
     for (let p = 0; p < end; p++) lRows[p] = pivotOf[lRows[p]!]!;
-    for (let p = 0; p < insideRows.length; p++) this.insidePivots[p] = pivotOf[insideRows[p]!]!;
-    for (let p = 0; p < aboveRows.length; p++) this.abovePivots[p] = pivotOf[aboveRows[p]!]!;
+    for (let p = 0; p < rowIndices.length; p++) pivotRows[p] = pivotOf[rows[p]!]!;
   }
 
   /** Refactors with the pivots and patterns of the last full factorisation; false when a pivot has become too small for that. */
   private refactorKept(values: Float64Array): boolean {
-    const { inside, insideStarts } = this.plan;
-    const { insidePivots, lStarts, uStarts, lRows, uRows, l, u, d, x } = this;
+    const { entries, starts } = this.plan;
+    const { pivotRows, lStarts, uStarts, lRows, uRows, l, u, d, x, above } = this;
     const { size } = this.pattern;
     let negative = 0;
     for (let k = 0; k < size; k++) {
       let columnMost = 0;
-      for (let p = insideStarts[k]!; p < insideStarts[k + 1]!; p++) {
-        const a = values[inside[p]!]!;
-        x[insidePivots[p]!] = a;
+      const inner = starts[2 * k + 1]!;
+      for (let p = starts[2 * k]!; p < inner; p++) {
+        const a = values[entries[p]!]!;
+        x[pivotRows[p]!] = a;
         columnMost = Math.max(columnMost, Math.abs(a));
       }
+      for (let p = inner; p < starts[2 * k + 2]!; p++) above[p] = values[entries[p]!]!;
       for (let p = uStarts[k]!; p < uStarts[k + 1]!; p++) {
         const c = uRows[p]!;
         const xc = x[c]!;
@@ -193,27 +215,26 @@ export class GeneralFactors implements Factorisation {
     return true;
   }
 
-  /** Makes room for one more column, of at most `size` entries each. */
-  private makeRoom(k: number): void {
-    const { size } = this.pattern;
-    if (this.lStarts[k]! + size > this.l.length) {
-      this.lRows = copied(this.lRows, new Int32Array(2 * this.l.length + size));
-      this.l = copied(this.l, new Float64Array(this.lRows.length));
+  /** Makes room for `more` entries in L and in U. */
+  private makeRoom(lUsed: number, uUsed: number, more: number): void {
+    if (lUsed + more > Math.min(this.l.length, this.lRows.length)) {
+      this.lRows = grownInts(this.lRows, 2 * lUsed + more);
+      this.l = grownNumbers(this.l, 2 * lUsed + more);
     }
-    if (this.uStarts[k]! + size > this.u.length) {
-      this.uRows = copied(this.uRows, new Int32Array(2 * this.u.length + size));
-      this.u = copied(this.u, new Float64Array(this.uRows.length));
+    if (uUsed + more > Math.min(this.u.length, this.uRows.length)) {
+      this.uRows = grownInts(this.uRows, 2 * uUsed + more);
+      this.u = grownNumbers(this.u, 2 * uUsed + more);
     }
   }
 
   /** Blocks from last to first: L and U within the block, then its solution goes into the rows above. */
   solve(b: Float64Array, x: Float64Array): void {
     if (!this.report.regular) throw new Defect('a regular factorisation before a solve');
-    const { columnOf, blockStarts, aboveStarts } = this.plan;
-    const { rowOf, lStarts, uStarts, lRows, uRows, l, u, d, y, above, abovePivots } = this;
+    const { columnOf, blockStarts, blockCount, starts } = this.plan;
+    const { rowOf, lStarts, uStarts, lRows, uRows, l, u, d, y, above, pivotRows } = this;
     const { size } = this.pattern;
     for (let k = 0; k < size; k++) y[k] = b[rowOf[k]!]!;
-    for (let m = blockStarts.length - 2; m >= 0; m--) {
+    for (let m = blockCount - 1; m >= 0; m--) {
       const start = blockStarts[m]!;
       const end = blockStarts[m + 1]!;
       for (let k = start; k < end; k++) {
@@ -224,7 +245,7 @@ export class GeneralFactors implements Factorisation {
         const xk = y[k]! / d[k]!;
         x[columnOf[k]!] = xk;
         for (let p = uStarts[k]!; p < uStarts[k + 1]!; p++) y[uRows[p]!]! -= u[p]! * xk;
-        for (let p = aboveStarts[k]!; p < aboveStarts[k + 1]!; p++) y[abovePivots[p]!]! -= above[p]! * xk;
+        for (let p = starts[2 * k + 1]!; p < starts[2 * k + 2]!; p++) y[pivotRows[p]!]! -= above[p]! * xk;
       }
     }
   }
@@ -232,15 +253,15 @@ export class GeneralFactors implements Factorisation {
   /** Blocks from first to last: what the blocks above contribute, then Uᵀ and Lᵀ within the block. */
   solveTransposed(b: Float64Array, x: Float64Array): void {
     if (!this.report.regular) throw new Defect('a regular factorisation before a solve');
-    const { columnOf, blockStarts, aboveStarts } = this.plan;
-    const { rowOf, lStarts, uStarts, lRows, uRows, l, u, d, y, above, abovePivots } = this;
+    const { columnOf, blockStarts, blockCount, starts } = this.plan;
+    const { rowOf, lStarts, uStarts, lRows, uRows, l, u, d, y, above, pivotRows } = this;
     const { size } = this.pattern;
-    for (let m = 0; m + 1 < blockStarts.length; m++) {
+    for (let m = 0; m < blockCount; m++) {
       const start = blockStarts[m]!;
       const end = blockStarts[m + 1]!;
       for (let k = start; k < end; k++) {
         let s = b[columnOf[k]!]!;
-        for (let p = aboveStarts[k]!; p < aboveStarts[k + 1]!; p++) s -= above[p]! * y[abovePivots[p]!]!;
+        for (let p = starts[2 * k + 1]!; p < starts[2 * k + 2]!; p++) s -= above[p]! * y[pivotRows[p]!]!;
         for (let p = uStarts[k]!; p < uStarts[k + 1]!; p++) s -= u[p]! * y[uRows[p]!]!;
         y[k] = s / d[k]!;
       }
@@ -254,7 +275,16 @@ export class GeneralFactors implements Factorisation {
   }
 }
 
-function copied<T extends Int32Array | Float64Array>(from: T, to: T): T {
+function grownInts(from: Int32Array, length: number): Int32Array {
+  const to = takeInts(Math.max(length, from.length));
   to.set(from);
+  giveBackInts(from);
+  return to;
+}
+
+function grownNumbers(from: Float64Array, length: number): Float64Array {
+  const to = takeNumbers(Math.max(length, from.length));
+  to.set(from);
+  giveBackNumbers(from);
   return to;
 }

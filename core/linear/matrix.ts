@@ -39,15 +39,15 @@ export interface Factorisation {
   solve(b: Float64Array, x: Float64Array): void;
   /** Solves the transposed system; for a symmetric matrix the same as `solve`. */
   solveTransposed(b: Float64Array, x: Float64Array): void;
+  /**
+   * Gives its memory back for the next analysis; it cannot be used after that. Nobody has to: what is not released is collected like any
+   * other object. It pays where thousands of patterns are analysed in a row.
+   */
+  release(): void;
 }
 
 /** A factorisation that can also carry the right-hand side along while it factors, which costs less than `refactor` and `solve` in turn. */
 export interface FusedFactorisation extends Factorisation {
   /** `refactor(values)`, then `solve(b, x)` with the same result bit for bit. When the matrix is singular, x is set to zero. */
   refactorAndSolve(values: Float64Array, b: Float64Array, x: Float64Array): FactorReport;
-  /**
-   * Gives its memory back for the next analysis; it cannot be used after that. Nobody has to: what is not released is collected like any
-   * other object. It pays where thousands of patterns are analysed in a row.
-   */
-  release(): void;
 }

@@ -1,23 +1,24 @@
 /** Duff's maximum transversal: as many entries as possible, no two in a row or a column. */
 import type { Pattern } from './matrix.ts';
+import { takeInts } from './slab.ts';
 
 /** A row or column without a partner. */
 export const UNMATCHED = -1;
 
 /**
- * Returns the row matched to each column, UNMATCHED where there is none: then the matrix is singular whatever its values. Diagonal entries
+ * Returns the row matched to each column (at least `size` long), UNMATCHED where there is none: then the matrix is singular whatever its values. Diagonal entries
  * are taken where they are not empty, and given up only for a larger matching. Empty diagonals do not count as entries.
  */
 export function maximumTransversal(pattern: Pattern): Int32Array {
   const { size, emptyDiagonal } = pattern;
-  const rowOf = new Int32Array(size).fill(UNMATCHED);
-  const columnOf = new Int32Array(size).fill(UNMATCHED);
+  const rowOf = takeInts(size);
+  let unmatched = 0;
   for (let j = 0; j < size; j++) {
-    if (emptyDiagonal[j] === 1) continue;
-    rowOf[j] = j;
-    columnOf[j] = j;
+    rowOf[j] = emptyDiagonal[j] === 1 ? UNMATCHED : j;
+    unmatched += emptyDiagonal[j]!;
   }
-  const search = new Search(pattern, rowOf, columnOf);
+  if (unmatched === 0) return rowOf;
+  const search = new Search(pattern, rowOf, rowOf.slice());
   for (let j = 0; j < size; j++) if (rowOf[j] === UNMATCHED) search.augment(j);
   return rowOf;
 }

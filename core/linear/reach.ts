@@ -1,17 +1,27 @@
 /** The rows that a column reaches through L: depth-first search, after Gilbert and Peierls. */
+import { giveBackInts, takeInts } from './slab.ts';
+
 export class Reach {
-  /** The rows reached end this list, in topological order. */
+  /** The rows reached, in topological order, end at place `size` of this list. */
   readonly reached: Int32Array;
   /** seen[i] = k: row i is reached by column k. */
   private readonly seen: Int32Array;
   private readonly stack: Int32Array;
   private readonly resume: Int32Array;
 
+  private readonly size: number;
+
   constructor(size: number) {
-    this.reached = new Int32Array(size);
-    this.seen = new Int32Array(size);
-    this.stack = new Int32Array(size);
-    this.resume = new Int32Array(size);
+    this.size = size;
+    this.reached = takeInts(size);
+    this.seen = takeInts(size);
+    this.stack = takeInts(size);
+    this.resume = takeInts(size);
+  }
+
+  /** Gives its memory back. */
+  release(): void {
+    for (const array of [this.reached, this.seen, this.stack, this.resume]) giveBackInts(array);
   }
 
   /** Before a new factorisation. */
@@ -33,7 +43,7 @@ export class Reach {
     lRows: Int32Array,
   ): number {
     const { reached, seen, stack, resume } = this;
-    let top = reached.length;
+    let top = this.size;
     for (let s = from; s < to; s++) {
       if (seen[rows[s]!] === k) continue;
       let depth = 0;

@@ -1,4 +1,5 @@
 /** Tarjan's strongly connected components. */
+import { giveBackInts, takeInts } from './slab.ts';
 
 /** A directed graph: node v leads to targets[starts[v] .. starts[v + 1]). */
 export interface Digraph {
@@ -7,43 +8,42 @@ export interface Digraph {
   readonly targets: Int32Array;
 }
 
-/** The components, numbered so that edges between them lead from higher to lower numbers. */
-export interface Components {
-  readonly count: number;
-  /** Length size: the component of each node. */
-  readonly of: Int32Array;
-}
+const NONE = -1;
 
-/** Finds the strongly connected components without recursion. */
-export function strongComponents({ size, starts, targets }: Digraph): Components {
-  const of = new Int32Array(size).fill(-1);
-  const found = new Int32Array(size).fill(-1); // when each node was first met
-  const low = new Int32Array(size); // the earliest node on the stack that it is known to reach
-  const resume = new Int32Array(size);
-  const path = new Int32Array(size);
-  const stack = new Int32Array(size);
+/**
+ * Writes the component of each node to `of` and returns how many there are. They are numbered so that edges between them lead from higher to
+ * lower numbers.
+ */
+export function strongComponents({ size, starts, targets }: Digraph, of: Int32Array): number {
+  const found = takeInts(size); // when each node was first met
+  const low = takeInts(size); // the earliest node on the stack that it is known to reach
+  const resume = takeInts(size); // the edge to follow next
+  const path = takeInts(size);
+  const stack = takeInts(size);
+  found.fill(NONE);
+  of.fill(NONE);
   let stacked = 0;
   let time = 0;
   let count = 0;
   for (let root = 0; root < size; root++) {
-    if (found[root] !== -1) continue;
+    if (found[root] !== NONE) continue;
     let depth = -1;
     let entering = root;
     for (;;) {
-      if (entering >= 0) {
-        const v = entering;
-        path[++depth] = v;
-        stack[stacked++] = v;
-        found[v] = time;
-        low[v] = time++;
-        resume[v] = starts[v]!;
-        entering = -1;
+      if (entering !== NONE) {
+        path[++depth] = entering;
+        stack[stacked++] = entering;
+        found[entering] = time;
+        low[entering] = time++;
+        resume[entering] = starts[entering]!;
+        entering = NONE;
       }
       const v = path[depth]!;
       if (resume[v]! < starts[v + 1]!) {
-        const u = targets[resume[v]!++]!;
-        if (found[u] === -1) entering = u;
-        else if (of[u] === -1 && found[u]! < low[v]!) low[v] = found[u]!;
+        const u = targets[resume[v]!]!;
+        resume[v]!++;
+        if (found[u] === NONE) entering = u;
+        else if (of[u] === NONE && found[u]! < low[v]!) low[v] = found[u]!;
         continue;
       }
       if (low[v] === found[v]) {
@@ -59,5 +59,6 @@ export function strongComponents({ size, starts, targets }: Digraph): Components
       if (low[v]! < low[above]!) low[above] = low[v]!;
     }
   }
-  return { count, of };
+  for (const array of [found, low, resume, path, stack]) giveBackInts(array);
+  return count;
 }

@@ -318,7 +318,7 @@ class CircuitBuilder {
     if (part.type === 'pwm') {
       const plusLink = this.add('plus-link', part.from.plus, part.to.plus, Law.none, 0);
       const minusLink = this.add('minus-link', part.from.minus, part.to.minus, Law.tie, 0);
-      this.valve({ kind: 'joiner', state: 'off', plusLink, minusLink, availableA: 0, ...limits });
+      this.valve({ kind: 'joiner', state: 'off', plusLink, minusLink, availableA: 0, shortA: 0, ...limits });
       return;
     }
     if (part.efficiency === undefined) this.assumptions.plain(part, 'efficiency', DEFAULT_TRACKER_EFFICIENCY, '1');

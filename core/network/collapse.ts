@@ -6,8 +6,10 @@
 import type { Circuit, Sink } from './circuit.ts';
 import { Law } from './element.ts';
 import type { GraphView } from './graph.ts';
-import type { Assembled } from './newton.ts';
-import { isDemand, settle, startStates } from './settle.ts';
+import { Assembled } from './newton.ts';
+import { disagreements, isDemand, settle, startStates } from './settle.ts';
+import { reduce } from './ties.ts';
+import { trackMaximumPower } from './track.ts';
 
 export interface Nose {
   /** The largest share of all sinks' figures that still has a solution, within 1e-3. */
@@ -83,22 +85,64 @@ function weakest(circuit: Circuit, assembled: Assembled): Sink | null {
  * g v(g)^2, by a coarse scan of g on a logarithmic scale and golden-section search around its best point. For one source of
  * EMF E behind R this is E^2 / (4 R). Units W; 0 when nothing can be delivered.
  */
-export function largestDeliverableW(circuit: Circuit, graph: GraphView, sink: Sink, share: number): number {
+export function largestDeliverableW(circuit: Circuit, graph: GraphView, sink: Sink, share: number): Peak {
   const { element } = sink;
   const { law, a } = element;
-  const powerAt = (logG: number): number => {
-    element.law = Law.conductance;
-    element.a = Math.exp(logG);
-    startStates(circuit, graph);
-    const trial = settle(circuit, graph, share);
-    if (!trial.ok) return -1;
-    const v = trial.assembled.volts[element.from]! - trial.assembled.volts[element.to]!;
-    return element.a * v * v;
-  };
-  const best = maximise(powerAt, Math.log(SMALLEST_SIEMENS), Math.log(LARGEST_SIEMENS));
+  const powerAt = (logG: number) => asConductance(circuit, graph, sink, { logG, share }).powerW;
+  const peak = maximise(powerAt, Math.log(SMALLEST_SIEMENS), Math.log(LARGEST_SIEMENS));
   element.law = law;
   element.a = a;
-  return Math.max(0, best);
+  return { powerW: Math.max(0, peak.value), logG: peak.x };
+}
+
+/** The most power, and the logarithm of the conductance in siemens that takes it. */
+export interface Peak {
+  readonly powerW: number;
+  readonly logG: number;
+}
+
+function asConductance(
+  circuit: Circuit,
+  graph: GraphView,
+  { element }: Sink,
+  { logG, share }: { readonly logG: number; readonly share: number },
+): { powerW: number; assembled: Assembled | null } {
+  element.law = Law.conductance;
+  element.a = Math.exp(logG);
+  startStates(circuit, graph);
+  const trial = settle(circuit, graph, share);
+  if (!trial.ok) return { powerW: -1, assembled: null };
+  const v = trial.assembled.volts[element.from]! - trial.assembled.volts[element.to]!;
+  return { powerW: element.a * v * v, assembled: trial.assembled };
+}
+
+/**
+ * The operating point of a network whose one awkward constant-power sink asks for less than the most it could have: the conductance that
+ * takes as much, on the side of the higher volts, shows the states and the volts; from there the sink itself is solved.
+ * Null where the states do not hold with the sink as it is.
+ */
+export function solveFromConductance(circuit: Circuit, graph: GraphView, sink: Sink, peak: Peak): Assembled | null {
+  const { element } = sink;
+  const { law, a } = element;
+  let low = Math.log(SMALLEST_SIEMENS);
+  let high = peak.logG;
+  let near: Assembled | null = null;
+  for (let pass = 0; pass < 60; pass++) {
+    const middle = 0.5 * (low + high);
+    const { powerW, assembled } = asConductance(circuit, graph, sink, { logG: middle, share: 1 });
+    if (assembled !== null) near = assembled;
+    if (powerW < a) low = middle;
+    else high = middle;
+  }
+  element.law = law;
+  element.a = a;
+  const reduction = near === null ? null : reduce(circuit, graph);
+  if (near === null || reduction === null || !reduction.ok) return null;
+  const assembled = new Assembled(circuit, reduction.value);
+  assembled.volts.set(near.volts);
+  if (!assembled.solve(1) || !trackMaximumPower(assembled, 1)) return null;
+  assembled.coupling.balance();
+  return disagreements(circuit, assembled).length === 0 ? assembled : null;
 }
 
 /** From one microampere a volt to a micro-ohm short: every load of this trade lies between. */
@@ -107,7 +151,7 @@ const LARGEST_SIEMENS = 1e6;
 const SCAN_POINTS = 40;
 const GOLDEN = (Math.sqrt(5) - 1) / 2;
 
-function maximise(f: (x: number) => number, low: number, high: number): number {
+function maximise(f: (x: number) => number, low: number, high: number): { value: number; x: number } {
   const width = (high - low) / SCAN_POINTS;
   let bestX = low;
   let best = Number.NEGATIVE_INFINITY;
@@ -135,5 +179,6 @@ function maximise(f: (x: number) => number, low: number, high: number): number {
       fq = f(q);
     }
   }
-  return Math.max(best, fp, fq);
+  if (best >= fp && best >= fq) return { value: best, x: bestX };
+  return fp >= fq ? { value: fp, x: p } : { value: fq, x: q };
 }

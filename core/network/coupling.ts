@@ -81,7 +81,7 @@ export class Coupling {
     // While states are being tried a held output may ask for more than its limit: the input is never asked for that.
     const heldA = Math.min(valve.limitA, Math.max(0, -(this.ties.get(valve.element) ?? 0)));
     const outputA = valve.state === 'held' ? heldA : valve.limitA;
-    if (valve.kind === 'joiner') return Math.min(outputA, valve.availableA);
+    if (valve.kind === 'joiner') return Math.min(outputA, valve.state === 'held' ? valve.availableA : valve.shortA);
     const outputV = valve.state === 'held' ? valve.setpointV : Math.min(valve.setpointV, Math.max(0, valve.element.v));
     const inputW = (outputV * outputA) / valve.efficiency;
     return valve.kind === 'converter' ? inputW + valve.standbyW : Math.min(inputW, valve.availableW * SHORT_OF_NOSE);

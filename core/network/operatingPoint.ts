@@ -5,7 +5,7 @@ import { Reader } from './answers.ts';
 import type { Circuit, CircuitRequest, Sink } from './circuit.ts';
 import { buildCircuit } from './circuit.ts';
 import type { Nose } from './collapse.ts';
-import { largestDeliverableW, settleOrCollapse } from './collapse.ts';
+import { largestDeliverableW, settleOrCollapse, solveFromConductance } from './collapse.ts';
 import { Law } from './element.ts';
 import type { GraphView } from './graph.ts';
 import { readGraph } from './graph.ts';
@@ -59,7 +59,14 @@ export function solveCircuit(request: CircuitRequest): SolvedCircuit {
       dropOut(starved);
       continue;
     }
-    return { circuit, graph, assembled: null, point: collapsed(circuit, graph, nose) };
+    const ending = withoutPoint(circuit, graph, nose);
+    if (!('assembled' in ending)) {
+      return { circuit, graph, assembled: null, point: answer(circuit, graph, null, 'collapse', ending) };
+    }
+    const { assembled } = ending;
+    const late = mostStarved(circuit, assembled);
+    if (late === null) return { circuit, graph, assembled, point: answer(circuit, graph, assembled, 'solved') };
+    dropOut(late);
   }
 }
 
@@ -109,22 +116,30 @@ function answer(
   };
 }
 
-/** No answer to invent: names the load that gives way and the most it could have. */
-function collapsed(circuit: Circuit, graph: GraphView, nose: Nose): OperatingPoint {
-  const sink = nose.sink ?? circuit.sinks.find(isDemand);
+/**
+ * Where creeping up from no load does not arrive: either there is no answer to invent, and the load that gives way is named
+ * with the most it could have; or the point is there and only the way to it was blocked.
+ */
+function withoutPoint(circuit: Circuit, graph: GraphView, nose: Nose): Collapse | { readonly assembled: Assembled } {
+  const sink = nose.sink ?? circuit.sinks.find((candidate) => candidate.state === 'on' && isDemand(candidate));
   if (sink === undefined) throw new Defect('a case without constant-power or constant-current sinks has a solution');
   const part = circuit.parts[sink.element.partIndex]!;
   const wantedW = sink.element.law === Law.power ? sink.element.a : sink.element.a * Math.abs(sink.element.v);
-  const othersAt = othersSolve(circuit, graph, sink) ? 1 : nose.share;
-  const mostW = largestDeliverableW(circuit, graph, sink, othersAt);
-  const others =
-    othersAt === 1
-      ? 'with everything else as drawn'
-      : `even with everything else at ${Math.floor(100 * othersAt)} % of its draw`;
   const name = part.label === undefined ? part.id : `${part.id} (${part.label})`;
-  const message = `${name} asks for ${wantedW.toPrecision(4)} W at its terminals; the network can deliver at most ${mostW.toPrecision(4)} W to it, ${others}. There is no operating point.`;
-  const collapse: Collapse = { load: part.id, wantedW, largestDeliverableW: mostW, message };
-  return answer(circuit, graph, null, 'collapse', collapse);
+  const asks = `${name} asks for ${wantedW.toPrecision(4)} W at its terminals`;
+  if (othersSolve(circuit, graph, sink)) {
+    const peak = largestDeliverableW(circuit, graph, sink, 1);
+    const isPower = sink.element.law === Law.power;
+    const assembled = isPower && peak.powerW > wantedW ? solveFromConductance(circuit, graph, sink, peak) : null;
+    if (assembled !== null) return { assembled };
+    const most = isPower ? Math.min(peak.powerW, wantedW) : peak.powerW;
+    const message = `${asks}; the network can deliver at most ${most.toPrecision(4)} W to it with everything else as drawn. There is no operating point.`;
+    return { load: part.id, wantedW, largestDeliverableW: most, message };
+  }
+  const percent = Math.floor(100 * nose.share);
+  const shareW = nose.share * wantedW;
+  const message = `The loads together ask for more than the network can deliver: at most ${percent} % of it all. ${asks} and gives way first; it could have ${shareW.toPrecision(4)} W then. There is no operating point.`;
+  return { load: part.id, wantedW, largestDeliverableW: shareW, message };
 }
 
 function othersSolve(circuit: Circuit, graph: GraphView, sink: Sink): boolean {

@@ -93,8 +93,9 @@ function startController(
     return;
   }
   if (valve.kind === 'joiner') {
-    const atSetpointA = arrays.reduce((sum, e) => sum + currentAt(e.curve!, valve.setpointV).currentA, 0);
-    valve.availableA = Math.max(0, atSetpointA * OFF_THE_PLATEAU);
+    const given = (volts: number) => arrays.reduce((sum, e) => sum + currentAt(e.curve!, volts).currentA, 0);
+    valve.availableA = Math.max(0, given(valve.setpointV) * OFF_THE_PLATEAU);
+    valve.shortA = given(0) * OFF_THE_PLATEAU;
     enter(valve, 'direct');
     return;
   }
@@ -376,7 +377,8 @@ function beyondInput(
     return (v * outputA) / valve.efficiency > valve.availableW * SHORT_OF_NOSE ? 'tracking' : null;
   }
   if (valve.kind !== 'joiner') return null;
-  if (outputA > valve.availableA * (1 + 1e-10)) return 'direct';
+  const most = valve.state === 'held' ? valve.availableA : valve.shortA;
+  if (outputA > most * (1 + 1e-10)) return 'direct';
   const inputV = voltsAcross(valve.input, assembled);
   const outputV = voltsAcross(valve.element, assembled);
   return inputV < outputV - 1e-10 * Math.max(1, outputV) ? 'direct' : null;

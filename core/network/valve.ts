@@ -57,8 +57,9 @@ export interface JoinerValve extends ValveBase {
   readonly minusLink: Element;
   readonly setpointV: number;
   readonly limitA: number;
-  /** What the arrays give at the set point's volts: no agreeing state asks for more while it holds or limits. */
+  /** What the arrays give at the set point's volts, and at none: no state that agrees asks for more while holding, or limiting. */
   availableA: number;
+  shortA: number;
 }
 export type Valve = DiodeValve | ChargerValve | ConverterValve | TrackerValve | JoinerValve;
 
@@ -89,7 +90,7 @@ export function enter(valve: Valve, state: ValveState): void {
       valve.plusLink.law = state === 'direct' ? Law.tie : Law.none;
       if (state === 'direct') valve.element.law = Law.none;
       valve.input.law = state === 'held' || state === 'limited' ? Law.current : Law.none;
-      valve.input.a = state === 'limited' ? Math.min(valve.limitA, valve.availableA) : 0;
+      valve.input.a = state === 'limited' ? Math.min(valve.limitA, valve.shortA) : 0;
       return;
     default:
       return;

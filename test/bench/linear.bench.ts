@@ -72,6 +72,7 @@ function warmUp(report: Report): void {
       const factors = analyseGeneral(general.pattern);
       for (let i = 0; i < 2; i++) factors.refactor(general.values[i]!);
       factors.solve(x, x);
+      factors.release();
     }
   }
 }
@@ -242,7 +243,11 @@ function generalTiming({ pattern, values, rightHandSides }: GeneralMatrix, secon
     f.refactor(values[i % SETS]!);
     f.solve(rightHandSides[i % SETS]!, x);
   };
-  const all = microseconds((i) => step(analyseGeneral(pattern), i), seconds);
+  const all = microseconds((i) => {
+    const factors = analyseGeneral(pattern);
+    step(factors, i);
+    factors.release();
+  }, seconds);
   const factors = analyseGeneral(pattern);
   const again = microseconds((i) => step(factors, i), seconds);
   const solve = microseconds((i) => factors.solve(rightHandSides[i % SETS]!, x), seconds);

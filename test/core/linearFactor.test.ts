@@ -292,4 +292,21 @@ describe('general systems', () => {
     const s = system(3, triplets, false, seeded(1));
     expect(analyseGeneral(s.pattern).refactor(s.values)).toMatchObject({ regular: false });
   });
+
+  it('may be released: the next ones use their memory without harm', () => {
+    const kept = shuffled(25, 77);
+    const keeper = analyseGeneral(kept.pattern);
+    keeper.refactor(kept.values);
+    for (let seed = 1; seed <= 40; seed++) {
+      const s = shuffled(5 + seed, seed);
+      const other = analyseGeneral(s.pattern);
+      expectSolved(s, other);
+      other.release();
+      expect(() => other.solve(s.b, s.b)).toThrow(Defect);
+      expect(() => other.refactor(s.values)).toThrow(Defect);
+    }
+    const x = new Float64Array(25);
+    keeper.solve(kept.b, x);
+    expect(relativeDifference(x, reference(kept))).toBeLessThan(1e-8); // not refined, condition up to 1e6
+  });
 });
