@@ -4,7 +4,7 @@ import { inspectPivots, type PivotReport } from './inspectPivots.ts';
 import { layOutBlock, writeBlock } from './kernelBlock.ts';
 import type { FactorReport, Pattern } from './matrix.ts';
 import { SymmetricFactors } from './symmetricFactors.ts';
-import { LANES, symmetricProgram } from './symmetricKernel.ts';
+import { batchProgram, LANES } from './symmetricKernel.ts';
 import { type SymmetricPlan, symmetricPlan } from './symmetricPlan.ts';
 import { PAGE, type WasmKernel } from './webAssembly.ts';
 
@@ -28,7 +28,7 @@ export function analyseBatch(pattern: Pattern, { plain = false }: { readonly pla
   if (!pattern.symmetric) throw new Defect('a symmetric pattern for a batch');
   const plan = symmetricPlan(pattern);
   const layout = layOutBlock(plan, LANES);
-  const kernel = plain ? null : symmetricProgram.instantiate(Math.ceil(layout.bytes / PAGE));
+  const kernel = plain ? null : batchProgram.instantiate(Math.ceil(layout.bytes / PAGE));
   if (kernel === null) return new PlainBatch(plan);
   writeBlock(plan, layout, kernel.memory.buffer, 0);
   return new CompiledBatch(plan, kernel, layout.parts);
@@ -66,8 +66,8 @@ class CompiledBatch implements Batch {
 
   refactorAndSolve(count: number = LANES): readonly FactorReport[] {
     repeatFirst(this.values, count);
-    const sound = this.kernel.functions['refactorAndSolveLanes']!(0) === 1;
-    if (!sound) this.kernel.functions['substituteLanes']!(0);
+    const sound = this.kernel.functions['refactorAndSolve']!(0) === 1;
+    if (!sound) this.kernel.functions['substitute']!(0);
     for (let s = 0; s < count; s++) {
       const report = this.reports[s]!;
       if (sound) {

@@ -86,7 +86,7 @@ export class KernelWriter {
 
   /** Code for each vector in turn, given its index and its offset in bytes. */
   each(code: (j: number, offset: number) => Code): Code {
-    return Array.from({ length: this.vectors }, (_, j) => code(j, j * this.arithmetic.bytes)).flat();
+    return Array.from({ length: this.vectors }, (_, j) => code(j, j * this.arithmetic.bytes));
   }
 
   /** The address of the number, counted from `base`, whose index stands at `tableAt` + offset. */
@@ -125,20 +125,20 @@ export class KernelWriter {
     };
     const move = (bytes: number): Code => [target, u0, u1].flatMap((at) => this.advance(at, bytes));
     const single = this.loop(u0, end, [
-      ...this.each((j, o) => step(this.arithmetic, l0[j]!.get, l1[j]!.get, o)),
-      ...move(this.stride),
+      this.each((j, o) => step(this.arithmetic, l0[j]!.get, l1[j]!.get, o)),
+      move(this.stride),
     ]);
     if (this.vectors > 1) return single;
     const [m0, m1] = [this.writer.local(pair.type), this.writer.local(pair.type)];
     const last = this.writer.local(I32);
     return [
-      ...m0.set(twice(l0[0]!.get)),
-      ...m1.set(twice(l1[0]!.get)),
-      ...last.set(i32.subtract(end.get, i32.constant(2 * pair.bytes - 1))),
-      ...this.loop(u0, last, [
-        ...step(pair, m0.get, m1.get, 0),
-        ...step(pair, m0.get, m1.get, pair.bytes),
-        ...move(2 * pair.bytes),
+      m0.set(twice(l0[0]!.get)),
+      m1.set(twice(l1[0]!.get)),
+      last.set(i32.subtract(end.get, i32.constant(2 * pair.bytes - 1))),
+      this.loop(u0, last, [
+        step(pair, m0.get, m1.get, 0),
+        step(pair, m0.get, m1.get, pair.bytes),
+        move(2 * pair.bytes),
       ]),
       ...single,
     ];
@@ -147,7 +147,7 @@ export class KernelWriter {
   /** r = 1 / d, also stored in place of d. */
   invert(dAt: Local, r: readonly Local[]): Code {
     const { constant, divide, load, store } = this.arithmetic;
-    return this.each((j, o) => [...r[j]!.set(divide(constant(1), load(dAt.get, o))), ...store(dAt.get, r[j]!.get, o)]);
+    return this.each((j, o) => [r[j]!.set(divide(constant(1), load(dAt.get, o))), store(dAt.get, r[j]!.get, o)]);
   }
 
   /** Runs the body while `at` is below `end`. */

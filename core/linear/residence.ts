@@ -17,12 +17,19 @@ export interface Tenant {
  */
 const LIMIT = 256 * PAGE;
 
+/**
+ * Numbers worked on in plain JavaScript before the kernel is compiled: about ten milliseconds' worth, some thousand factorisations of a network
+ * of 200 junctions. A short run never pays for a compilation that it would not earn back.
+ */
+const WORK_BEFORE_COMPILING = 2_000_000;
+
 class Residence {
   private kernel: WasmKernel | null | undefined;
+  private plainWork = 0;
   private tenants: Tenant[] = [];
   private top = 0;
 
-  /** The kernel, or null where the host has no WebAssembly or forbids it. */
+  /** The kernel, compiled if need be; null where the host has no WebAssembly or forbids it. */
   get functions(): WasmKernel['functions'] | null {
     if (this.kernel === undefined) this.kernel = symmetricProgram.instantiate(LIMIT / PAGE);
     return this.kernel === null ? null : this.kernel.functions;
@@ -32,8 +39,14 @@ class Residence {
     return this.kernel!.memory.buffer;
   }
 
-  /** The address of a block of so many bytes, a multiple of 16, or -1 where there is no kernel or the block is too large. */
+  /** Notes that so many numbers have been worked on without the kernel. */
+  notePlainWork(numbers: number): void {
+    this.plainWork += numbers;
+  }
+
+  /** The address of a block of so many bytes, a multiple of 16, or -1 where there is no kernel yet or the block is too large. */
   admit(tenant: Tenant, bytes: number): number {
+    if (this.kernel === undefined && this.plainWork < WORK_BEFORE_COMPILING) return -1;
     if (this.functions === null || bytes > LIMIT) return -1;
     if (this.top + bytes > LIMIT) this.clear();
     const address = this.top;

@@ -11,8 +11,8 @@ import { eliminate, solveBackward, solveForward } from './symmetricSteps.ts';
 const NO_NUMBERS = new Float64Array(0);
 
 /**
- * The first factorisation runs in plain JavaScript: it may be the only one. From the second on the work moves to a compiled kernel, where
- * there is one. Both give the same bits.
+ * The first factorisation runs in plain JavaScript: it may be the only one. From the second on the work moves to a compiled kernel, once
+ * there is one (see `Residence`). Both give the same bits.
  */
 export class SymmetricFactors implements FusedFactorisation, Tenant {
   readonly pattern: Pattern;
@@ -120,6 +120,7 @@ export class SymmetricFactors implements FusedFactorisation, Tenant {
   private load(values: Float64Array): void {
     const { table, slots, storage, pattern } = this.plan;
     const { w } = this;
+    residence.notePlainWork(storage);
     w.fill(0, 0, storage);
     const count = pattern.rowIndices.length;
     for (let e = 0; e < count; e++) w[table[slots + e]!] = values[e]!;

@@ -12,18 +12,26 @@ import { WasmProgram } from './webAssembly.ts';
 /** Systems side by side: enough to share the cost of the indices, few enough for all to stay in the processor's cache. */
 export const LANES = 8;
 
-/** The program; compiled when first needed. Each function takes the address of a block (see `HEADER`). */
+/**
+ * The program for one system; compiled when first needed. Each function takes the address of a block (see `HEADER`). Those that factor
+ * return 1 when every pivot is positive and none has been lost; else 0, and there has been no substitution.
+ */
 export const symmetricProgram = new WasmProgram(() => {
   const one: Width = { arithmetic: scalar, vectors: 1 };
+  return writeModule([
+    write('refactor', one, (k) => [load(k), eliminate(k), inspect(k)]),
+    write('refactorAndSolve', one, refactorAndSolve),
+    write('solve', one, (k) => [solveForward(k), solveBackward(k), i32.constant(1)]),
+    write('substitute', one, (k) => [solveBackward(k), i32.constant(1)]),
+  ]);
+});
+
+/** The same for LANES systems side by side. */
+export const batchProgram = new WasmProgram(() => {
   const many: Width = { arithmetic: pair, vectors: LANES / 2 };
   return writeModule([
-    // Return 1 when every pivot is positive and none has been lost; else 0, and there has been no substitution.
-    write('refactor', one, (k) => [...load(k), ...eliminate(k), ...inspect(k)]),
-    write('refactorAndSolve', one, refactorAndSolve),
-    write('refactorAndSolveLanes', many, refactorAndSolve),
-    write('solve', one, (k) => [...solveForward(k), ...solveBackward(k), ...i32.constant(1)]),
-    write('substitute', one, (k) => [...solveBackward(k), ...i32.constant(1)]),
-    write('substituteLanes', many, (k) => [...solveBackward(k), ...i32.constant(1)]),
+    write('refactorAndSolve', many, refactorAndSolve),
+    write('substitute', many, (k) => [solveBackward(k), i32.constant(1)]),
   ]);
 });
 
@@ -34,7 +42,7 @@ function write(name: string, width: Width, body: (k: KernelWriter) => Code): Wri
 
 function refactorAndSolve(k: KernelWriter): Code {
   const { sound } = k.integers('sound');
-  return [...load(k), ...eliminate(k), ...sound.set(inspect(k)), ...when(sound.get, solveBackward(k)), ...sound.get];
+  return [load(k), eliminate(k), sound.set(inspect(k)), when(sound.get, solveBackward(k)), sound.get];
 }
 
 /** Clears what the matrix does not set and puts its values in their places. */
@@ -42,19 +50,19 @@ function load(k: KernelWriter): Code {
   const { load, store, constant } = k.arithmetic;
   const { w, slots, ends, values, target, nobody } = k.integers('w', 'slots', 'ends', 'values', 'target', 'nobody');
   const clearBefore = (end: Code): Code => [
-    ...nobody.set(i32.subtract(end, i32.constant(k.stride))),
-    ...k.each((_, o) => store(nobody.get, constant(0), o)),
+    nobody.set(i32.subtract(end, i32.constant(k.stride))),
+    k.each((_, o) => store(nobody.get, constant(0), o)),
   ];
   return [
-    ...clear(k.part('linkEntries'), i32.subtract(k.part('entriesEnd'), k.part('linkEntries'))),
-    ...clearBefore(k.part('y')),
-    ...clearBefore(k.part('leafEntries')),
-    ...k.start({ w, slots, ends, values }),
-    ...k.loop(slots, ends, [
-      ...target.set(k.follow(w, slots)),
-      ...k.each((_, o) => store(target.get, load(values.get, o), o)),
-      ...k.advance(values, k.stride),
-      ...k.advance(slots, 4),
+    clear(k.part('linkEntries'), i32.subtract(k.part('entriesEnd'), k.part('linkEntries'))),
+    clearBefore(k.part('y')),
+    clearBefore(k.part('leafEntries')),
+    k.start({ w, slots, ends, values }),
+    k.loop(slots, ends, [
+      target.set(k.follow(w, slots)),
+      k.each((_, o) => store(target.get, load(values.get, o), o)),
+      k.advance(values, k.stride),
+      k.advance(slots, 4),
     ]),
   ];
 }
@@ -64,13 +72,13 @@ function inspect(k: KernelWriter): Code {
   const { allAtMost, constant, load, magnitude, multiply } = k.arithmetic;
   const { w, y, ends, values, aAt, sound } = k.integers('w', 'y', 'ends', 'values', 'aAt', 'sound');
   return [
-    ...k.start({ w, y, ends, values }),
-    ...y.set(i32.subtract(y.get, i32.constant(k.stride))), // nobody's diagonal ends the list
-    ...values.set(i32.subtract(values.get, i32.constant(k.stride))), // an end is one beyond its diagonal entry
-    ...sound.set(i32.constant(1)),
-    ...k.loop(w, y, [
-      ...aAt.set(k.follow(values, ends)),
-      ...k.each((_, o) =>
+    k.start({ w, y, ends, values }),
+    y.set(i32.subtract(y.get, i32.constant(k.stride))), // nobody's diagonal ends the list
+    values.set(i32.subtract(values.get, i32.constant(k.stride))), // an end is one beyond its diagonal entry
+    sound.set(i32.constant(1)),
+    k.loop(w, y, [
+      aAt.set(k.follow(values, ends)),
+      k.each((_, o) =>
         sound.set(
           i32.and(
             sound.get,
@@ -81,9 +89,9 @@ function inspect(k: KernelWriter): Code {
           ),
         ),
       ),
-      ...k.advance(ends, 4),
-      ...k.advance(w, k.stride),
+      k.advance(ends, 4),
+      k.advance(w, k.stride),
     ]),
-    ...sound.get,
+    sound.get,
   ];
 }

@@ -1,7 +1,7 @@
 /** Writes a small WebAssembly module byte by byte: the binary format of the WebAssembly core specification, as far as it is needed here. */
 
-/** Instructions, as bytes. */
-export type Code = readonly number[];
+/** Instructions: bytes, and instructions within instructions, laid end to end when the function is finished. */
+export type Code = readonly (number | Code)[];
 
 export const I32 = 0x7f;
 const F64 = 0x7c;
@@ -41,15 +41,15 @@ export interface Local {
 
 export const i32 = {
   constant: (n: number): Code => [0x41, ...signed(n)],
-  load: (address: Code, offset = 0): Code => [...address, 0x28, 2, ...unsigned(offset)],
-  add: (a: Code, b: Code): Code => [...a, ...b, 0x6a],
-  subtract: (a: Code, b: Code): Code => [...a, ...b, 0x6b],
-  multiply: (a: Code, b: Code): Code => [...a, ...b, 0x6c],
-  shiftLeft: (a: Code, bits: number): Code => [...a, 0x41, bits, 0x74],
-  quarter: (a: Code): Code => [...a, 0x41, 2, 0x76],
-  and: (a: Code, b: Code): Code => [...a, ...b, 0x71],
+  load: (address: Code, offset = 0): Code => [address, 0x28, 2, ...unsigned(offset)],
+  add: (a: Code, b: Code): Code => [a, b, 0x6a],
+  subtract: (a: Code, b: Code): Code => [a, b, 0x6b],
+  multiply: (a: Code, b: Code): Code => [a, b, 0x6c],
+  shiftLeft: (a: Code, bits: number): Code => [a, 0x41, bits, 0x74],
+  quarter: (a: Code): Code => [a, 0x41, 2, 0x76],
+  and: (a: Code, b: Code): Code => [a, b, 0x71],
   /** a < b, unsigned. */
-  less: (a: Code, b: Code): Code => [...a, ...b, 0x49],
+  less: (a: Code, b: Code): Code => [a, b, 0x49],
 };
 
 /** One number at a time, or two side by side: the same arithmetic either way, each operation rounded once. */
@@ -74,39 +74,39 @@ export const scalar: Arithmetic = {
   type: F64,
   bytes: 8,
   constant: (x) => [0x44, ...doubleBytes(x)],
-  load: (address, offset) => [...address, 0x2b, 3, ...unsigned(offset)],
-  store: (address, value, offset) => [...address, ...value, 0x39, 3, ...unsigned(offset)],
-  subtract: (a, b) => [...a, ...b, 0xa1],
-  multiply: (a, b) => [...a, ...b, 0xa2],
-  divide: (a, b) => [...a, ...b, 0xa3],
-  magnitude: (a) => [...a, 0x99],
-  allAtMost: (a, b) => [...a, ...b, 0x65],
+  load: (address, offset) => [address, 0x2b, 3, ...unsigned(offset)],
+  store: (address, value, offset) => [address, value, 0x39, 3, ...unsigned(offset)],
+  subtract: (a, b) => [a, b, 0xa1],
+  multiply: (a, b) => [a, b, 0xa2],
+  divide: (a, b) => [a, b, 0xa3],
+  magnitude: (a) => [a, 0x99],
+  allAtMost: (a, b) => [a, b, 0x65],
 };
 
 export const pair: Arithmetic = {
   type: V128,
   bytes: 16,
   constant: (x) => [...simd(0x0c), ...doubleBytes(x), ...doubleBytes(x)],
-  load: (address, offset) => [...address, ...simd(0x00), 3, ...unsigned(offset)],
-  store: (address, value, offset) => [...address, ...value, ...simd(0x0b), 3, ...unsigned(offset)],
-  subtract: (a, b) => [...a, ...b, ...simd(0xf1)],
-  multiply: (a, b) => [...a, ...b, ...simd(0xf2)],
-  divide: (a, b) => [...a, ...b, ...simd(0xf3)],
-  magnitude: (a) => [...a, ...simd(0xec)],
-  allAtMost: (a, b) => [...a, ...b, ...simd(0x4b), ...simd(0xc3)],
+  load: (address, offset) => [address, ...simd(0x00), 3, ...unsigned(offset)],
+  store: (address, value, offset) => [address, value, ...simd(0x0b), 3, ...unsigned(offset)],
+  subtract: (a, b) => [a, b, ...simd(0xf1)],
+  multiply: (a, b) => [a, b, ...simd(0xf2)],
+  divide: (a, b) => [a, b, ...simd(0xf3)],
+  magnitude: (a) => [a, ...simd(0xec)],
+  allAtMost: (a, b) => [a, b, ...simd(0x4b), ...simd(0xc3)],
 };
 
 /** A pair of the same number twice. */
-export const twice = (a: Code): Code => [...a, ...simd(0x14)];
+export const twice = (a: Code): Code => [a, ...simd(0x14)];
 
 /** Stores zero bytes: from, how many. */
-export const clear = (from: Code, bytes: Code): Code => [...from, 0x41, 0, ...bytes, 0xfc, 0x0b, 0];
+export const clear = (from: Code, bytes: Code): Code => [from, 0x41, 0, bytes, 0xfc, 0x0b, 0];
 
 /** Repeats `body` at least once, as long as `again` (an i32 computed after it) is not zero. */
-export const repeatWhile = (body: Code, again: Code): Code => [0x03, 0x40, ...body, ...again, 0x0d, 0, 0x0b];
+export const repeatWhile = (body: Code, again: Code): Code => [0x03, 0x40, body, again, 0x0d, 0, 0x0b];
 
 /** Runs `body` if `condition` is not zero. */
-export const when = (condition: Code, body: Code): Code => [...condition, 0x04, 0x40, ...body, 0x0b];
+export const when = (condition: Code, body: Code): Code => [condition, 0x04, 0x40, body, 0x0b];
 
 /** A function under construction. Parameters are 32-bit integers. */
 export class FunctionWriter {
@@ -126,13 +126,22 @@ export class FunctionWriter {
   /** The function's entry in the code section. */
   finish(body: Code): number[] {
     const declarations = this.types.flatMap((type) => [1, type]);
-    const bytes = [...unsigned(this.types.length), ...declarations, ...body, 0x0b];
+    const bytes = [...unsigned(this.types.length), ...declarations];
+    layOut(body, bytes);
+    bytes.push(0x0b);
     return [...unsigned(bytes.length), ...bytes];
   }
 }
 
+function layOut(code: Code, bytes: number[]): void {
+  for (const item of code) {
+    if (typeof item === 'number') bytes.push(item);
+    else layOut(item, bytes);
+  }
+}
+
 function local(index: number): Local {
-  return { get: [0x20, ...unsigned(index)], set: (value) => [...value, 0x21, ...unsigned(index)] };
+  return { get: [0x20, ...unsigned(index)], set: (value) => [value, 0x21, ...unsigned(index)] };
 }
 
 /** A finished function: name, number of i32 parameters, entry in the code section. Each returns an i32. */

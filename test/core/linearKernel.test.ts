@@ -1,5 +1,5 @@
 /** Compiled and plain code, one system and many side by side: the same bits. */
-import { afterEach, describe, expect, it, vi } from 'vitest';
+import { afterEach, beforeAll, describe, expect, it, vi } from 'vitest';
 import { Defect } from '../../core/job/issue.ts';
 import { analyseBatch, type Batch } from '../../core/linear/analyseBatch.ts';
 import { analyseSymmetric } from '../../core/linear/analyseSymmetric.ts';
@@ -37,8 +37,9 @@ function lane(batch: Batch, s: number): Float64Array {
 }
 
 describe('the compiled kernel', () => {
-  it('is there: what follows compares it with something', () => {
-    expect(residence.functions).not.toBeNull();
+  beforeAll(() => {
+    // Compiled now, not after much plain work: what follows compares it with something.
+    if (residence.functions === null) throw new Error('there is no kernel to compare with');
   });
 
   it('gives the bits of the plain steps, in one sweep or in two', () => {
@@ -159,6 +160,22 @@ describe('a batch', () => {
   });
 });
 
+describe('the kernel is compiled', () => {
+  it('only after much plain work', async () => {
+    vi.resetModules();
+    const fresh = await import('../../core/linear/analyseSymmetric.ts');
+    const host = Reflect.get(globalThis, 'WebAssembly') as { Module: new (bytes: Uint8Array) => object };
+    const module = vi.spyOn(host, 'Module');
+    const s = wiring(300, 20, 6);
+    const factorisation = fresh.analyseSymmetric(s.pattern);
+    for (let k = 0; k < 100; k++) factorisation.refactor(s.values);
+    expect(module).not.toHaveBeenCalled();
+    for (let k = 0; k < 5000; k++) factorisation.refactor(s.values);
+    expect(module).toHaveBeenCalledTimes(1);
+    module.mockRestore();
+  });
+});
+
 describe('without WebAssembly', () => {
   afterEach(() => {
     vi.unstubAllGlobals();
@@ -184,6 +201,8 @@ describe('without WebAssembly', () => {
     vi.stubGlobal('WebAssembly', host);
     vi.resetModules();
     const bare = await import('../../core/linear/analyseSymmetric.ts');
+    const bareResidence = await import('../../core/linear/residence.ts');
+    expect(bareResidence.residence.functions).toBeNull();
     const bareBatch = await import('../../core/linear/analyseBatch.ts');
     const y = new Float64Array(60);
     const factorisation = bare.analyseSymmetric(s.pattern);
