@@ -3,7 +3,7 @@ import { caseSection } from './caseSection.ts';
 import { Citations } from './citations.ts';
 import { proofSection, sourceSection, statementSection, testSection } from './closingSections.ts';
 import { coverOf, FOOTER } from './cover.ts';
-import { diagramSection } from './diagramSection.ts';
+import { diagramSection } from './diagram/diagramSection.ts';
 import type { Block, ReportDocument } from './document.ts';
 import { findingSection } from './findingSection.ts';
 import type { ReportInput } from './input.ts';

@@ -2,7 +2,7 @@
  * Graphical symbols after IEC 60617, drawn by us on a grid of `U` points. Parts in a line are drawn level, the line running
  * through (`x`, `y`); devices between the poles are drawn upright. Symbols of contacts show them open, as is usual.
  */
-import type { Shape, Stroke, Tone } from './document.ts';
+import type { Shape, Stroke, Tone } from '../document.ts';
 
 /** Grid module. */
 export const U = 4.5;

@@ -1,15 +1,15 @@
 /** The one-line diagram, both poles in full; where it cannot be drawn legibly, the connections as a table, and why. */
-import type { CheckedJob } from '../job/job.ts';
-import type { Part } from '../job/part.ts';
-import { cablesOfPair } from '../job/part.ts';
-import type { Block, Cell, FigureBlock, Paper, TableBlock } from './document.ts';
+import type { CheckedJob } from '../../job/job.ts';
+import type { Part } from '../../job/part.ts';
+import { cablesOfPair } from '../../job/part.ts';
+import type { Block, Cell, FigureBlock, Paper, TableBlock } from '../document.ts';
+import { KIND_WORDS } from '../wording.ts';
 import type { Band } from './drawWiring.ts';
 import { drawWiring, sheetHeightPt } from './drawWiring.ts';
 import { wiringGraph } from './wiringGraph.ts';
 import type { Layout } from './wiringLayout.ts';
 import { layWiring } from './wiringLayout.ts';
 import { LONGEST_PT } from './wiringWords.ts';
-import { KIND_WORDS } from './wording.ts';
 
 type Orientation = 'portrait' | 'landscape';
 

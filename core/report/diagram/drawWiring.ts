@@ -1,8 +1,9 @@
 /** From the places of the plan to lines, symbols and words; a drawing of many rows is divided into sheets, row by row. */
-import type { Part } from '../job/part.ts';
+import type { Part } from '../../job/part.ts';
+import type { FigureBlock, Shape } from '../document.ts';
+import { plain } from '../figures.ts';
+import { CHEMISTRY_WORDS, KIND_WORDS } from '../wording.ts';
 import { drawLegend } from './diagramLegend.ts';
-import type { FigureBlock, Shape } from './document.ts';
-import { plain } from './figures.ts';
 import type { Place } from './labelPlacer.ts';
 import { boxOf, LabelPlacer } from './labelPlacer.ts';
 import * as symbols from './symbols.ts';
@@ -11,7 +12,6 @@ import type { Pole, WiringGraph } from './wiringGraph.ts';
 import type { Layout, PlacedBox, PlacedDevice, PlacedLink, PlacedPoint } from './wiringLayout.ts';
 import { POLES_PT, ROW_PT, SIDE_PT, TOP_PT, yOf } from './wiringLayout.ts';
 import { cut, deviceDetail, linkDetail, nameWidthPt, WORD_PT } from './wiringWords.ts';
-import { CHEMISTRY_WORDS, KIND_WORDS } from './wording.ts';
 
 const LEGEND_PT = 26;
 /** Between the middle of a symbol and an upright line that crosses beside it. */

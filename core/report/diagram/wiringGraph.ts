@@ -1,7 +1,7 @@
 /** The job as a one-line diagram sees it: what hangs between the poles, and what leads from point to point within a pole. */
-import type { CheckedJob } from '../job/job.ts';
-import type { Part } from '../job/part.ts';
-import { cablesOfPair } from '../job/part.ts';
+import type { CheckedJob } from '../../job/job.ts';
+import type { Part } from '../../job/part.ts';
+import { cablesOfPair } from '../../job/part.ts';
 
 export type Pole = 'plus' | 'minus';
 

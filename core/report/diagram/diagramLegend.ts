@@ -1,11 +1,11 @@
 /** The symbols that a sheet of the one-line diagram uses, with their names. */
-import type { Part } from '../job/part.ts';
-import type { Shape } from './document.ts';
+import type { Part } from '../../job/part.ts';
+import type { Shape } from '../document.ts';
+import { KIND_WORDS } from '../wording.ts';
 import * as symbols from './symbols.ts';
 import { label, line, U } from './symbols.ts';
 import type { WiringGraph } from './wiringGraph.ts';
 import { textWidthPt, WORD_PT } from './wiringWords.ts';
-import { KIND_WORDS } from './wording.ts';
 
 interface LegendEntry {
   readonly isShown: (kinds: ReadonlySet<Part['kind']>, isDivided: boolean) => boolean;

@@ -1,7 +1,7 @@
 /** The few words that stand at a part of the one-line diagram, and the room that they ask for. */
-import type { Part } from '../job/part.ts';
-import { plain } from './figures.ts';
-import { sizeAsGiven } from './sizes.ts';
+import type { Part } from '../../job/part.ts';
+import { plain } from '../figures.ts';
+import { sizeAsGiven } from '../sizes.ts';
 import type { Link } from './wiringGraph.ts';
 
 /** Size of all words of the drawing at full scale, points. */
