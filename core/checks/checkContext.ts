@@ -1,4 +1,5 @@
 /** What the rules read: the job's cases, each solved once, the drawing as a graph, and further solves on demand. */
+
 import { type Ampacity, ampacity } from '../conductor/ampacity.ts';
 import type { Missing } from '../conductor/size.ts';
 import { Defect } from '../job/issue.ts';
@@ -8,6 +9,7 @@ import type { CablePart, JunctionId, Part, PartId } from '../job/part.ts';
 import type { BatteryModel, OperatingPoint, PartAnswer } from '../network/answer.ts';
 import { ambientOf } from '../network/circuit.ts';
 import { operatingPoint } from '../network/operatingPoint.ts';
+import { Memory } from '../tables/memory.ts';
 import type { PracticeTable } from '../tables/practiceTable.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { Judge } from './rule.ts';
@@ -66,6 +68,9 @@ export interface CheckRequest {
   /** Answers already known, found by the id of their case; the others are solved here. */
   readonly points?: readonly OperatingPoint[];
 }
+
+/** A cable as if it lay alone with its return in some air, outside an engine space. */
+const aloneInAir = new Memory<CablePart, CablePart>();
 
 export class CheckContext implements Judge {
   readonly job: CheckedJob;
@@ -144,8 +149,10 @@ export class CheckContext implements Judge {
    */
   uncorrectedAmpacityOf(cable: CablePart, corrected: Ampacity): Ampacity | Missing {
     const ambientDegC = corrected.tableAmbientDegC;
-    const run = cable.run === 'engine-space' ? undefined : cable.run;
-    const alone: CablePart = { ...cable, ambientDegC, loadedConductors: 2, run };
+    const alone = aloneInAir.of(this.tables, cable, String(ambientDegC), (): CablePart => {
+      const run = cable.run === 'engine-space' ? undefined : cable.run;
+      return { ...cable, ambientDegC, loadedConductors: 2, run };
+    });
     return this.namedAmpacity(cable, ampacity(alone, this.ampacityContext(cable, ambientDegC)));
   }
 

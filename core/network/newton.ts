@@ -8,7 +8,7 @@
  */
 import { analyseSymmetric } from '../linear/analyseSymmetric.ts';
 import type { LowRankUpdate } from '../linear/lowRankUpdate.ts';
-import type { Factorisation } from '../linear/matrix.ts';
+import type { FusedFactorisation } from '../linear/matrix.ts';
 import { patternFromEntries } from '../linear/patternFromEntries.ts';
 import { openCircuitV } from '../solar/arrayCurve.ts';
 import type { Circuit } from './circuit.ts';
@@ -26,7 +26,7 @@ export class Assembled {
   readonly active: readonly Element[];
   /** Volts of each junction. */
   readonly volts: Float64Array;
-  readonly factorisation: Factorisation;
+  readonly factorisation: FusedFactorisation;
   readonly values: Float64Array;
   private readonly power: readonly Element[];
   private readonly slots: Int32Array; // three a stamped element: from-from, to-to, from-to; -1 where absent
@@ -179,13 +179,10 @@ export class Assembled {
 
   private newtonStep(): boolean {
     this.fillValues();
-    const report = this.factorisation.refactor(this.values);
-    if (!report.regular || report.negativePivots > 0) {
-      return false;
-    }
     const { r, step } = this;
     for (let k = 0; k < r.length; k++) r[k] = -r[k]!;
-    this.factorisation.solve(r, step);
+    const report = this.factorisation.refactorAndSolve(this.values, r, step);
+    if (!report.regular || report.negativePivots > 0) return false;
     this.iterations++;
     this.move(step, this.longestStep(step));
     return true;
@@ -221,9 +218,8 @@ export class Assembled {
       if (q >= 0) b[q]! += known;
     }
     this.fillValues(true);
-    const report = this.factorisation.refactor(this.values);
+    const report = this.factorisation.refactorAndSolve(this.values, b, this.step);
     if (!report.regular) return null;
-    this.factorisation.solve(b, this.step);
     this.iterations++;
     let change = first ? Number.POSITIVE_INFINITY : 0;
     for (let j = 0; j < node.length; j++) {

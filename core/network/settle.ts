@@ -174,6 +174,7 @@ function pivot(circuit: Circuit, graph: GraphView, share: number, patience: numb
     if (!assembled.solveUnloaded()) return { ok: false, assembled };
     if (!assembled.solve(share) || !trackMaximumPower(assembled, share)) {
       if (!callOnOthers(circuit, assembled, called)) return { ok: false, assembled };
+      assembled.factorisation.release();
       continue;
     }
     assembled.coupling.balance();
@@ -183,6 +184,7 @@ function pivot(circuit: Circuit, graph: GraphView, share: number, patience: numb
       fewest = changes.length;
       left = patience;
     } else left--;
+    assembled.factorisation.release();
     unpark(circuit);
     const before = visits.get(signature(circuit)) ?? 0;
     visits.set(signature(circuit), before + 1);
