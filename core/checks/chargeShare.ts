@@ -3,7 +3,7 @@ import type { ChargerPart, ControllerPart, ConverterPart, DiodePart, StringPart 
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { banksOf } from './systemVolts.ts';
 import type { SinglePart } from './wiring.ts';
-import { isOpen, netsOf, polesOf, throughDiodes } from './wiring.ts';
+import { closedNets, polesOf, throughDiodes } from './wiring.ts';
 
 export type ChargingPart = ChargerPart | ControllerPart | ConverterPart;
 
@@ -27,7 +27,18 @@ export interface Charge {
 
 /** What can charge what in a case: parts that are on, through what is closed, along the diodes. */
 export function chargesIn(one: SolvedCase): readonly Charge[] {
-  const nets = netsOf(one.parts, (part) => !isOpen(part) && part.kind !== 'diode');
+  let charges = ofCase.get(one);
+  if (charges === undefined) {
+    charges = findCharges(one);
+    ofCase.set(one, charges);
+  }
+  return charges;
+}
+
+const ofCase = new WeakMap<SolvedCase, readonly Charge[]>();
+
+function findCharges(one: SolvedCase): readonly Charge[] {
+  const nets = closedNets(one.parts);
   const diodes = one.parts.filter((part) => part.kind === 'diode');
   const strings = one.parts.filter((part) => part.kind === 'string');
   const banks = banksOf(one.parts, nets);

@@ -2,7 +2,7 @@
 import type { DiodePart, JunctionId, PartId } from '../job/part.ts';
 import type { SolvedCase } from './checkContext.ts';
 import type { Nets, PoledPart } from './wiring.ts';
-import { isOpen, netsOf, polesOf, throughDiodes } from './wiring.ts';
+import { closedNets, polesOf, throughDiodes } from './wiring.ts';
 
 interface Feed {
   /** Volts between the source terminals that feed the part, at the sources. */
@@ -34,7 +34,7 @@ class Feeders {
 
   constructor(one: SolvedCase) {
     this.one = one;
-    this.nets = netsOf(one.parts, (part) => !isOpen(part) && part.kind !== 'diode');
+    this.nets = closedNets(one.parts);
     this.diodes = one.parts.filter(
       (part) => part.kind === 'diode' && one.answer(part.id).state === 'conducting',
     ) as DiodePart[];

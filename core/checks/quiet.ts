@@ -1,7 +1,7 @@
 /** Cases with everything off that draws or drives: nothing but wiring and other strings can then take current from a string. */
 import type { StringPart } from '../job/part.ts';
 import { type CheckContext, SolvedCase } from './checkContext.ts';
-import { isOpen, isWiring, netsOf } from './wiring.ts';
+import { closedNets, isWiring } from './wiring.ts';
 
 export interface Quiet {
   /** The case with everything off but its switches as they stand. */
@@ -38,6 +38,6 @@ function quiet(context: CheckContext, one: SolvedCase): Quiet {
   }
   const operatingCase = { ...one.operatingCase, surge: undefined, irradianceWPerM2: 0, changed };
   const rest = new SolvedCase(context.job, operatingCase, context.solve(operatingCase, 'slow'));
-  const nets = netsOf(rest.parts, (part) => !isOpen(part) && part.kind !== 'diode');
+  const nets = closedNets(rest.parts);
   return { rest, joins: nets.same };
 }

@@ -137,38 +137,72 @@ export interface Nets {
 
 /** Joins the junctions of every wiring part that `conducts` admits. A bus controller's common minus is not counted. */
 export function netsOf(parts: readonly SinglePart[], conducts: (part: WiringPart) => boolean): Nets {
-  const parent = new Map<JunctionId, JunctionId>();
-  const find = (junction: JunctionId): JunctionId => {
-    let root = junction;
-    while (parent.get(root) !== root) root = parent.get(root) as JunctionId;
-    for (let at = junction; at !== root; ) {
-      const next = parent.get(at) as JunctionId;
-      parent.set(at, root);
-      at = next;
+  const place = new Map<JunctionId, number>();
+  const parent: number[] = [];
+  const touch = (junction: JunctionId): number => {
+    let at = place.get(junction);
+    if (at === undefined) {
+      at = place.size;
+      place.set(junction, at);
+      parent.push(at);
+    }
+    return at;
+  };
+  const find = (at: number): number => {
+    let root = at;
+    while (parent[root] !== root) {
+      parent[root] = parent[parent[root]!]!;
+      root = parent[root]!;
     }
     return root;
   };
-  const touch = (junction: JunctionId) => {
-    if (!parent.has(junction)) parent.set(junction, junction);
-  };
   for (const part of parts) {
+    if (isWiring(part)) {
+      const ends = joined(part);
+      const first = touch(ends[0]!);
+      for (const end of ends) {
+        const at = touch(end);
+        if (conducts(part)) parent[find(at)] = find(first);
+      }
+      continue;
+    }
     for (const { plus, minus } of polesOf(part)) {
       touch(plus);
       touch(minus);
     }
     if (part.kind === 'string' && part.midpoint !== undefined) touch(part.midpoint);
-    if (!isWiring(part)) continue;
-    const ends = joined(part);
-    for (const end of ends) touch(end);
-    if (conducts(part)) for (const end of ends) parent.set(find(end), find(ends[0]!));
   }
-  const number = new Map<JunctionId, number>();
-  for (const junction of parent.keys()) {
-    const root = find(junction);
-    if (!number.has(root)) number.set(root, number.size);
+  return numbered(
+    place,
+    parent.map((_, at) => find(at)),
+  );
+}
+
+function numbered(place: ReadonlyMap<JunctionId, number>, roots: readonly number[]): Nets {
+  const numbers = new Map<number, number>();
+  const net = roots.map((root) => {
+    const known = numbers.get(root);
+    if (known !== undefined) return known;
+    numbers.set(root, numbers.size);
+    return numbers.size - 1;
+  });
+  const of = (junction: JunctionId) => {
+    const at = place.get(junction);
+    return at === undefined ? undefined : net[at];
+  };
+  return { count: numbers.size, of, same: (a, b) => of(a) !== undefined && of(a) === of(b) };
+}
+
+const closed = new WeakMap<readonly SinglePart[], Nets>();
+
+/** What closed wiring joins, diodes left out; worked out once for a list of parts. */
+export function closedNets(parts: readonly SinglePart[]): Nets {
+  let nets = closed.get(parts);
+  if (nets === undefined) {
+    nets = netsOf(parts, (part) => !isOpen(part) && part.kind !== 'diode');
+    closed.set(parts, nets);
   }
-  const of = (junction: JunctionId) => (parent.has(junction) ? number.get(find(junction)) : undefined);
-  return { count: number.size, of, same: (a, b) => of(a) !== undefined && of(a) === of(b) };
+  return nets;
 }
 
 /** One end of a part at a junction. A busbar has one for each of its junctions. */
