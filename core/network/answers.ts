@@ -1,4 +1,5 @@
 /** From a solved circuit to the answer about each part and junction. */
+import { Defect } from '../job/issue.ts';
 import type { JunctionId, Part, PartId } from '../job/part.ts';
 import type { PartAnswer } from './answer.ts';
 import type { Circuit, Sink } from './circuit.ts';
@@ -83,7 +84,7 @@ export class Reader {
       case 'busbar':
         return this.busbar(part, elements);
       case 'pair':
-        throw new Error('unreachable: pairs are replaced');
+        throw new Defect('a pair is replaced by its two cables before it is answered');
       default:
         return this.twoEnded(part, index, elements);
     }
