@@ -3,6 +3,7 @@
  * joints, shunts, switches, fuses, breakers, diodes and bonds. Strings, loads, chargers and the like sit between groups of
  * joined junctions, which are called nets here.
  */
+
 import type {
   ArrayPart,
   BondPart,
@@ -25,6 +26,7 @@ import type {
   SwitchPart,
 } from '../job/part.ts';
 import { cablesOfPair } from '../job/part.ts';
+import { DisjointSets } from '../network/disjointSets.ts';
 
 /** A part as the checks see it: an out-and-back run is its two cables. */
 export type SinglePart = Exclude<Part, PairPart>;
@@ -138,44 +140,24 @@ export interface Nets {
 /** Joins the junctions of every wiring part that `conducts` admits. A bus controller's common minus is not counted. */
 export function netsOf(parts: readonly SinglePart[], conducts: (part: WiringPart) => boolean): Nets {
   const place = new Map<JunctionId, number>();
-  const parent: number[] = [];
-  const touch = (junction: JunctionId): number => {
-    let at = place.get(junction);
-    if (at === undefined) {
-      at = place.size;
-      place.set(junction, at);
-      parent.push(at);
-    }
-    return at;
-  };
-  const find = (at: number): number => {
-    let root = at;
-    while (parent[root] !== root) {
-      parent[root] = parent[parent[root]!]!;
-      root = parent[root]!;
-    }
-    return root;
+  const touch = (junction: JunctionId): void => {
+    if (!place.has(junction)) place.set(junction, place.size);
   };
   for (const part of parts) {
-    if (isWiring(part)) {
-      const ends = joined(part);
-      const first = touch(ends[0]!);
-      for (const end of ends) {
-        const at = touch(end);
-        if (conducts(part)) parent[find(at)] = find(first);
-      }
-      continue;
-    }
+    if (isWiring(part)) joined(part).forEach(touch);
     for (const { plus, minus } of polesOf(part)) {
       touch(plus);
       touch(minus);
     }
     if (part.kind === 'string' && part.midpoint !== undefined) touch(part.midpoint);
   }
-  return numbered(
-    place,
-    parent.map((_, at) => find(at)),
-  );
+  const sets = new DisjointSets(place.size);
+  for (const part of parts) {
+    if (!isWiring(part) || !conducts(part)) continue;
+    const [first, ...others] = joined(part).map((junction) => place.get(junction)!);
+    for (const other of others) sets.join(other, first!);
+  }
+  return numbered(place, [...sets.groups()]);
 }
 
 function numbered(place: ReadonlyMap<JunctionId, number>, roots: readonly number[]): Nets {

@@ -4,10 +4,12 @@
  * would stall: along the conductance every point has one plain solution.
  */
 import type { Circuit, Sink } from './circuit.ts';
+import { disagreements } from './disagree.ts';
 import { Law } from './element.ts';
 import type { GraphView } from './graph.ts';
 import { Assembled } from './newton.ts';
-import { disagreements, isDemand, settle, startStates } from './settle.ts';
+import { isDemand, settle } from './settle.ts';
+import { startStates } from './startStates.ts';
 import { reduce } from './ties.ts';
 import { trackMaximumPower } from './track.ts';
 

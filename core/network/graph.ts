@@ -6,6 +6,7 @@ import type { JunctionId, PartId } from '../job/part.ts';
 import type { GraphRemark } from './answer.ts';
 import type { Circuit } from './circuit.ts';
 import { isCoupler } from './coupling.ts';
+import { DisjointSets } from './disjointSets.ts';
 import { Law } from './element.ts';
 
 export interface GraphView {
@@ -126,18 +127,11 @@ function unsuppliedRemarks(circuit: Circuit, island: Int32Array, live: readonly 
 
 /** Connected groups of junctions over the elements that `use` admits; returns the group of each junction. */
 function connected(circuit: Circuit, use: (index: number) => boolean): Int32Array {
-  const parent = Int32Array.from(circuit.junctions, (_, j) => j);
-  const find = (j: number): number => {
-    while (parent[j] !== j) {
-      parent[j] = parent[parent[j]!]!;
-      j = parent[j]!;
-    }
-    return j;
-  };
+  const sets = new DisjointSets(circuit.junctions.length);
   circuit.elements.forEach((element, index) => {
-    if (use(index)) parent[find(element.from)] = find(element.to);
+    if (use(index)) sets.join(element.from, element.to);
   });
-  return parent.map((_, j) => find(j));
+  return sets.groups();
 }
 
 function islandsOf(circuit: Circuit): { island: Int32Array; groups: number[] } {

@@ -11,7 +11,8 @@ import type { GraphView } from './graph.ts';
 import { readGraph } from './graph.ts';
 import type { Assembled } from './newton.ts';
 import { proveAnswer } from './proof.ts';
-import { isDemand, settle, startStates } from './settle.ts';
+import { isDemand, settle } from './settle.ts';
+import { startStates } from './startStates.ts';
 
 /** The circuit at its operating point, kept for what is derived from it (Thévenin sources, sensitivities, what-ifs). */
 export interface SolvedCircuit {

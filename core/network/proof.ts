@@ -1,6 +1,7 @@
 /** The sums that prove an answer: Kirchhoff's two rules and the balance of power, taken from the currents and volts as answered. */
 import type { Proof } from './answer.ts';
 import type { Reader } from './answers.ts';
+import { DisjointSets } from './disjointSets.ts';
 import type { Element } from './element.ts';
 import { Law } from './element.ts';
 
@@ -46,12 +47,7 @@ function junctionRemainders(reader: Reader): {
 } {
   const { circuit } = reader;
   const n = circuit.junctions.length;
-  const group = Int32Array.from({ length: n }, (_, j) => j);
-  const find = (j: number): number => {
-    let at = j;
-    while (group[at] !== at) at = group[at]!;
-    return at;
-  };
+  const joined = new DisjointSets(n);
   const sums = new Float64Array(n);
   let largestA = 0;
   let roundingA = 0;
@@ -63,7 +59,7 @@ function junctionRemainders(reader: Reader): {
       roundingA = Math.max(roundingA, 2 ** -48 * Math.abs(element.slope) * volts);
     }
     if (i === null) {
-      group[find(element.from)] = find(element.to);
+      joined.join(element.from, element.to);
       continue;
     }
     sums[element.from]! += i;
@@ -71,7 +67,7 @@ function junctionRemainders(reader: Reader): {
     largestA = Math.max(largestA, Math.abs(i));
   }
   const totals = new Float64Array(n);
-  for (let j = 0; j < n; j++) totals[find(j)]! += sums[j]!;
+  for (let j = 0; j < n; j++) totals[joined.find(j)]! += sums[j]!;
   let worst = 0;
   let at = -1;
   for (let j = 0; j < n; j++) {

@@ -4,6 +4,7 @@
  * afterwards from the balance, over the forest that the ties form.
  */
 import type { Circuit } from './circuit.ts';
+import { DisjointSets } from './disjointSets.ts';
 import type { Element } from './element.ts';
 import { conducts, Law } from './element.ts';
 import type { GraphView } from './graph.ts';
@@ -117,10 +118,10 @@ function groundDriftingGroups(
   drifting: Uint8Array,
 ): { adrift: Element[]; group: Int32Array } {
   const n = circuit.junctions.length;
-  const joined = new OffsetSets(n);
-  for (let j = 0; j < n; j++) joined.join(sets.find(j), j, 0);
-  for (const element of circuit.elements) if (conducts(element)) joined.join(element.from, element.to, 0);
-  const group = Int32Array.from({ length: n }, (_, j) => joined.find(j));
+  const joined = new DisjointSets(n);
+  for (let j = 0; j < n; j++) joined.join(sets.find(j), j);
+  for (const element of circuit.elements) if (conducts(element)) joined.join(element.from, element.to);
+  const group = joined.groups();
   const grounded = new Set([...groundOf.values()].map((j) => group[j]!));
   const floats = (j: number) => graph.island[j]! >= 0 && !grounded.has(group[j]!);
   const adrift: Element[] = [];

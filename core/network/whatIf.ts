@@ -2,10 +2,10 @@
 import type { JunctionId, PartId } from '../job/part.ts';
 import type { RankOneChange } from '../linear/lowRankUpdate.ts';
 import { branchChange, lowRankUpdate } from '../linear/lowRankUpdate.ts';
+import { disagreements } from './disagree.ts';
 import type { Element } from './element.ts';
 import { evaluate, Law } from './element.ts';
 import type { SolvedCircuit } from './operatingPoint.ts';
-import { disagreements } from './settle.ts';
 
 /** A part's resistance becomes another (in place of its own and its temperature's), or the part opens. */
 export interface ResistanceChange {

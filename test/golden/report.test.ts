@@ -6,10 +6,10 @@ import { cellText } from '../../core/report/document.ts';
 import { cabinInput } from '../core/reportSample.ts';
 
 test('the cabin reads as it did', async () => {
-  await expect(transcript(buildReport(cabinInput()))).toMatchFileSnapshot('report-cabin.txt');
+  await expect(plainText(buildReport(cabinInput()))).toMatchFileSnapshot('report-cabin.txt');
 });
 
-function transcript({ title, subject, author, paper, preparedOn, program, footer, blocks }: ReportDocument): string {
+function plainText({ title, subject, author, paper, preparedOn, program, footer, blocks }: ReportDocument): string {
   const head = [title, subject, author, `${paper}, ${preparedOn ?? 'undated'}, ${program}`, footer];
   return `${[...head, ...blocks.flatMap(linesOf)].join('\n').replaceAll('\u00a0', ' ')}\n`;
 }
