@@ -4,6 +4,7 @@ import { checkIdField, checkLooseFields, checkPart, ownerOf } from './checkPart.
 import { described, type Fields, isRawObject, own, type Place, type RawObject } from './field.ts';
 import type { IssueList } from './issueList.ts';
 import { atRestChanges, type OperatingCase } from './job.ts';
+import { keyedObject } from './keyedObject.ts';
 import { nearestNameHint } from './nearestName.ts';
 import type { Part, PartId } from './part.ts';
 import { fieldPath, itemPath } from './path.ts';
@@ -198,19 +199,11 @@ function* entriesByPart(
   parts: PartsRead,
   place: Place,
 ): Generator<[id: string, value: unknown, at: Place]> {
-  if (raw === undefined) return;
-  const path = fieldPath(place.path, field);
-  if (!isRawObject(raw)) {
-    place.issues.add(
-      path,
-      'wrong-type',
-      () => `${field} of ${place.owner} must be an object keyed by part ids, got ${described(raw)}.`,
-    );
-    return;
-  }
-  for (const id of Object.keys(raw)) {
-    const at = { ...place, path: fieldPath(path, id) };
-    if (parts.rawById.has(id)) yield [id, raw[id], at];
+  const entries = keyedObject(raw, field, 'part ids', place);
+  if (entries === undefined) return;
+  for (const id of Object.keys(entries.raw)) {
+    const at = { ...place, path: fieldPath(entries.path, id) };
+    if (parts.rawById.has(id)) yield [id, entries.raw[id], at];
     else if (!id.startsWith('x-')) place.issues.add(at.path, 'unknown-reference', () => unknownPart(id, parts));
   }
 }

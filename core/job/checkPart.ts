@@ -2,6 +2,7 @@
 import { quoted } from '../units/parsed.ts';
 import { described, type Fields, isRawObject, own, type Place, type RawObject, type Rule } from './field.ts';
 import type { IssueList } from './issueList.ts';
+import { keyedObject } from './keyedObject.ts';
 import { troubleWithId } from './names.ts';
 import { nearestNameHint } from './nearestName.ts';
 import type { Origin, Part } from './part.ts';
@@ -182,19 +183,12 @@ function* entriesByField(
   fields: Fields,
   place: Place,
 ): Generator<[name: string, value: unknown, at: Place]> {
-  if (raw === undefined) return;
-  const path = fieldPath(place.path, field);
-  if (!isRawObject(raw)) {
-    place.issues.add(
-      path,
-      'wrong-type',
-      () => `${field} of ${place.owner} must be an object keyed by field names, got ${described(raw)}.`,
-    );
-    return;
-  }
+  const entries = keyedObject(raw, field, 'field names', place);
+  if (entries === undefined) return;
+  const { path } = entries;
   const at = { issues: place.issues, path, owner: `${field} of ${place.owner}` };
-  for (const name of Object.keys(raw)) {
-    if (Object.hasOwn(fields, name) && !Object.hasOwn(commonFields, name)) yield [name, raw[name], at];
+  for (const name of Object.keys(entries.raw)) {
+    if (Object.hasOwn(fields, name) && !Object.hasOwn(commonFields, name)) yield [name, entries.raw[name], at];
     else if (!name.startsWith('x-')) {
       at.issues.add(fieldPath(path, name), 'unknown-field', () => {
         return `${field} names ${quoted(name)}, which is no field of ${place.owner}${nearestNameHint(name, Object.keys(fields))}.`;
