@@ -11,6 +11,9 @@ import type { Valve } from './valve.ts';
 
 const SIDE_BY_SIDE = 'zero-ohm parts lie side by side here: how the current splits between them is not determined';
 
+/** An answer while it is put together. */
+type Mutable<T> = { -readonly [K in keyof T]: T[K] };
+
 /** Reads volts and currents of one solved circuit. */
 export class Reader {
   readonly circuit: Circuit;
@@ -105,15 +108,10 @@ export class Reader {
     let powerW: number | null = 0;
     for (const element of elements)
       powerW = plusPower(powerW, sign, this.currentIn(element), this.voltsAcross(element));
-    return {
-      id: part.id,
-      currentA,
-      voltageV,
-      powerW,
-      dropV: null,
-      ...(state === undefined ? {} : { state }),
-      ...(currentA === null ? { undetermined: SIDE_BY_SIDE } : {}),
-    };
+    const answer: Mutable<PartAnswer> = { id: part.id, currentA, voltageV, powerW, dropV: null };
+    if (state !== undefined) answer.state = state;
+    if (currentA === null) answer.undetermined = SIDE_BY_SIDE;
+    return answer;
   }
 
   private twoEnded(part: Extract<Part, { from: JunctionId }>, index: number, elements: readonly Element[]): PartAnswer {
@@ -126,23 +124,20 @@ export class Reader {
     const dropV = voltageV === null ? null : Math.abs(voltageV);
     // A zero-ohm part turns nothing to heat, whatever its current.
     const powerW = !carries || dropV === 0 ? 0 : currentA === null || voltageV === null ? null : voltageV * currentA;
-    return {
-      id: part.id,
-      currentA: currentA === null ? null : positive(currentA),
-      voltageV,
-      powerW,
-      dropV,
-      ...this.temperature(index, currentA),
-      ...(state === undefined ? {} : { state }),
-      ...(currentA === null ? { undetermined: SIDE_BY_SIDE } : {}),
-    };
+    const plainA = currentA === null ? null : positive(currentA);
+    const answer: Mutable<PartAnswer> = { id: part.id, currentA: plainA, voltageV, powerW, dropV };
+    const conductorDegC = this.temperature(index, currentA);
+    if (conductorDegC !== undefined) answer.conductorDegC = conductorDegC;
+    if (state !== undefined) answer.state = state;
+    if (currentA === null) answer.undetermined = SIDE_BY_SIDE;
+    return answer;
   }
 
   /** Conductor temperature: ambient + rise with the square of the current. */
-  private temperature(index: number, currentA: number | null): { conductorDegC?: number } {
+  private temperature(index: number, currentA: number | null): number | undefined {
     const law = this.circuit.temperatures.get(index);
-    if (law === undefined || (currentA === null && law.kelvinPerA2 > 0)) return {};
-    return { conductorDegC: law.ambientDegC + law.kelvinPerA2 * (currentA ?? 0) ** 2 };
+    if (law === undefined || (currentA === null && law.kelvinPerA2 > 0)) return undefined;
+    return law.ambientDegC + law.kelvinPerA2 * (currentA ?? 0) ** 2;
   }
 
   private busbar(part: Extract<Part, { kind: 'busbar' }>, elements: readonly Element[]): PartAnswer {

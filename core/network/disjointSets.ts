@@ -3,7 +3,8 @@ export class DisjointSets {
   private readonly parent: Int32Array;
 
   constructor(count: number) {
-    this.parent = Int32Array.from({ length: count }, (_, k) => k);
+    this.parent = new Int32Array(count);
+    for (let k = 0; k < count; k++) this.parent[k] = k;
   }
 
   /** The member that stands for the group of `k`. */
@@ -23,6 +24,8 @@ export class DisjointSets {
 
   /** For each number the one that stands for its group. */
   groups(): Int32Array {
-    return this.parent.map((_, k) => this.find(k));
+    const groups = new Int32Array(this.parent.length);
+    for (let k = 0; k < groups.length; k++) groups[k] = this.find(k);
+    return groups;
   }
 }

@@ -274,30 +274,29 @@ function scaleOf(volts: Float64Array): number {
   return scale;
 }
 
+/** The pattern of the matrix, and for each stamped element its three slots: from-from, to-to, from-to. */
 function assemble(reduction: Reduction, active: readonly Element[]) {
   const { node, size } = reduction;
-  const stamped: Element[] = [];
-  const rows: number[] = [];
-  const columns: number[] = [];
-  const places: number[] = [];
-  const entry = (row: number, column: number): void => {
-    places.push(rows.length);
-    rows.push(row);
-    columns.push(column);
+  const stamped = active.filter((element) => element.law !== Law.current && node[element.from]! !== node[element.to]!);
+  const rows = new Int32Array(3 * stamped.length);
+  const columns = new Int32Array(3 * stamped.length);
+  const places = new Int32Array(3 * stamped.length).fill(-1);
+  let count = 0;
+  const entry = (place: number, row: number, column: number): void => {
+    if (row < 0 || column < 0) return;
+    places[place] = count;
+    rows[count] = row;
+    columns[count++] = column;
   };
-  for (const element of active) {
-    if (element.law === Law.current) continue;
-    const p = node[element.from]!;
-    const q = node[element.to]!;
-    if (p === q) continue;
-    stamped.push(element);
-    if (p >= 0) entry(p, p);
-    else places.push(-1);
-    if (q >= 0) entry(q, q);
-    else places.push(-1);
-    if (p >= 0 && q >= 0) entry(p, q);
-    else places.push(-1);
+  for (let k = 0; k < stamped.length; k++) {
+    const p = node[stamped[k]!.from]!;
+    const q = node[stamped[k]!.to]!;
+    entry(3 * k, p, p);
+    entry(3 * k + 1, q, q);
+    entry(3 * k + 2, p, q);
   }
-  const { pattern, slots } = patternFromEntries(size, rows, columns, { symmetric: true });
-  return { stamped, pattern, slots: Int32Array.from(places, (place) => (place < 0 ? -1 : slots[place]!)) };
+  const shape = { symmetric: true };
+  const { pattern, slots } = patternFromEntries(size, rows.subarray(0, count), columns.subarray(0, count), shape);
+  for (let k = 0; k < places.length; k++) if (places[k]! >= 0) places[k] = slots[places[k]!]!;
+  return { stamped, pattern, slots: places };
 }

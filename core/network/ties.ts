@@ -275,7 +275,8 @@ class OffsetSets {
   private readonly rise: Float64Array; // V(j) - V(parent(j))
 
   constructor(n: number) {
-    this.parent = Int32Array.from({ length: n }, (_, j) => j);
+    this.parent = new Int32Array(n);
+    for (let j = 0; j < n; j++) this.parent[j] = j;
     this.rise = new Float64Array(n);
   }
 
