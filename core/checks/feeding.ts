@@ -31,6 +31,7 @@ class Feeders {
   private readonly diodes: readonly DiodePart[];
   private readonly plusOf = new Map<number, SourceEnd[]>();
   private readonly minusOf = new Map<number, SourceEnd[]>();
+  private readonly known = new Map<number, Feed | undefined>();
 
   constructor(one: SolvedCase) {
     this.one = one;
@@ -57,9 +58,18 @@ class Feeders {
    * minus terminal among those that take back from the minus junction. Only where no string does both, the converters,
    * controllers and chargers there count. `undefined` where nothing feeds them or their volts are not known.
    */
-  of(ends: { readonly plus: JunctionId; readonly minus: JunctionId }): Feed | undefined {
-    const above = this.ends(this.plusOf, ends.plus, 'against');
-    const below = this.ends(this.minusOf, ends.minus, 'along');
+  of({ plus, minus }: { readonly plus: JunctionId; readonly minus: JunctionId }): Feed | undefined {
+    const [p, m] = [this.nets.of(plus), this.nets.of(minus)];
+    if (p === undefined || m === undefined) return undefined;
+    // Parts on the same two nets have the same feed.
+    const place = p * this.nets.count + m;
+    if (!this.known.has(place)) this.known.set(place, this.find(p, m));
+    return this.known.get(place);
+  }
+
+  private find(plusNet: number, minusNet: number): Feed | undefined {
+    const above = this.ends(this.plusOf, plusNet, 'against');
+    const below = this.ends(this.minusOf, minusNet, 'along');
     for (const wanted of [isString, isOther]) {
       const high = best(this.terminals(above, wanted), 1);
       const low = best(this.terminals(below, wanted), -1);
@@ -69,9 +79,7 @@ class Feeders {
     return undefined;
   }
 
-  private ends(map: ReadonlyMap<number, readonly SourceEnd[]>, end: JunctionId, way: 'along' | 'against') {
-    const net = this.nets.of(end);
-    if (net === undefined) return [];
+  private ends(map: ReadonlyMap<number, readonly SourceEnd[]>, net: number, way: 'along' | 'against') {
     return [...throughDiodes(net, way, { nets: this.nets, diodes: this.diodes }).keys()].flatMap(
       (reached) => map.get(reached) ?? [],
     );

@@ -70,9 +70,13 @@ export class Tally {
       this.findings.push(this.findingOf(parts, worst));
       return;
     }
+    if (verdicts.length === 0) return;
+    if (verdicts.every(({ kind }) => kind === 'pass')) {
+      this.passed++;
+      return;
+    }
     const gaps = new Set(verdicts.flatMap((verdict) => (verdict.kind === 'missing' ? [verdict.missing] : [])));
     for (const gap of gaps) this.notChecked.push({ parts, missing: gap });
-    if (verdicts.length > 0 && verdicts.every(({ kind }) => kind === 'pass')) this.passed++;
   }
 
   outcome(): RuleOutcome {

@@ -34,6 +34,17 @@ export interface Ampacity {
  * below the first row of a factor table are its first row's.
  */
 export function ampacity(cable: RatedConductor, context: AmpacityContext): Ampacity | Missing {
+  return foundAmpacity.of(context.tables, cable, detailOf(context), () => findAmpacity(cable, context));
+}
+
+const foundAmpacity = new Memory<RatedConductor, Ampacity | Missing>();
+
+/** Everything but the cable and the tables that a rating depends on. */
+function detailOf({ practice, ambientDegC, systemV, terminalDegC }: AmpacityContext): string {
+  return `${practice} ${ambientDegC} ${systemV} ${terminalDegC}`;
+}
+
+function findAmpacity(cable: RatedConductor, context: AmpacityContext): Ampacity | Missing {
   const rating = ratingOf(cable, context);
   if ('missing' in rating) return rating;
   const { base, factors } = rating;
@@ -53,12 +64,10 @@ export function ampacity(cable: RatedConductor, context: AmpacityContext): Ampac
 
 /** The practice's rating of one conductor, before it is multiplied out. */
 export function ratingOf(cable: RatedConductor, context: AmpacityContext): Rating | Missing {
-  const { practice, ambientDegC, systemV, terminalDegC, tables } = context;
-  const detail = `${practice} ${ambientDegC} ${systemV} ${terminalDegC}`;
-  return found.of(tables, cable, detail, () => findRating(cable, context));
+  return foundRating.of(context.tables, cable, detailOf(context), () => findRating(cable, context));
 }
 
-const found = new Memory<RatedConductor, Rating | Missing>();
+const foundRating = new Memory<RatedConductor, Rating | Missing>();
 
 function findRating(cable: RatedConductor, context: AmpacityContext): Rating | Missing {
   const { size } = cable;
