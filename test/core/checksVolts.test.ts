@@ -229,6 +229,22 @@ describe('surge-sag', () => {
     expect(passes(report, 'surge-sag')).toBe(1);
   });
 
+  test('exactly the cut-off passes, a hair above it fails with the power that would hold', () => {
+    // 1000 W behind 20 mohm of 12 V: 100 A at exactly 10 V (12 - 100 · 0.02), 100 A · 10 V = 1000 W.
+    const at = (cutoffV: number) =>
+      check({
+        parts: [
+          battery('B1', { emfV: 12, resistanceOhm: 0.02 }),
+          { id: 'I1', kind: 'inverter', plus: 'P', minus: 'N', ratedW: 800, efficiency: 1, surgeW: 1000, cutoffV },
+        ],
+      });
+    expect(found(at(10), 'surge-sag')).toEqual([]);
+    expect(passes(at(10), 'surge-sag')).toBe(1);
+    const [finding] = found(at(10.01), 'surge-sag');
+    expect(finding).toMatchObject({ severity: 'fix', limit: { value: 10.01, unit: 'V' } });
+    expect(finding!.measured.value).toBeCloseTo(10, 9);
+  });
+
   test('without a cut-off the sag is not judged, without a surge the rule does not apply', () => {
     expect(gaps(starting({ surgeW: 3000 }), 'surge-sag')).toEqual(['cutoffV of inverter I1']);
     const none = starting({ cutoffV: 10.5 });
