@@ -2,6 +2,7 @@
 import type { StringSource } from '../battery/stringSource.ts';
 import type { ConductorResistance } from '../conductor/resistance.ts';
 import type { CablePart, Part, StringPart } from '../job/part.ts';
+import type { ArrayCurve } from '../solar/arrayCurve.ts';
 import type { Basis } from '../tables/status.ts';
 import type { Assumption } from './answer.ts';
 import type { CircuitRequest } from './circuit.ts';
@@ -76,6 +77,12 @@ export function conductorAssumptions(part: CablePart, conductor: ConductorResist
 export function noHeatingAssumption(part: CablePart, degC: number, missing: string): Assumption {
   const text = `conductor of ${part.id} taken at ${degC} degC, its own warming left out: ${missing}`;
   return said(part, 'conductorDegC', text, PRACTICE);
+}
+
+/** Typical figures of crystalline silicon where an array's label is silent. */
+export function arrayAssumptions(part: Part, curve: ArrayCurve): readonly Assumption[] {
+  const basis: Basis = { source: 'SRC-SOLAR-FOUR-PARAMETER', text: 'typical module labels', status: 'from-memory' };
+  return curve.assumed.map((text) => said(part, 'array', text, basis));
 }
 
 function said(part: Part, field: string, text: string, basis: Basis): Assumption {

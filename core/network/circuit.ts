@@ -9,7 +9,7 @@ import { cablesOfPair, junctionsOf } from '../job/part.ts';
 import { arrayCurve } from '../solar/arrayCurve.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { Assumption, BatteryModel } from './answer.ts';
-import { Assumptions, stringAssumptions } from './assumptions.ts';
+import { Assumptions, arrayAssumptions, stringAssumptions } from './assumptions.ts';
 import { type ConductorContext, conductorModel } from './conductorModel.ts';
 import { Element, Law } from './element.ts';
 import { inverterDcPowerW } from './inverter.ts';
@@ -295,6 +295,7 @@ class CircuitBuilder {
     if (irradianceWPerM2 <= 0) return;
     const element = this.add('', part.plus, part.minus, Law.array, 0);
     element.curve = arrayCurve(part, { irradianceWPerM2, ambientDegC: this.ambientDegC });
+    this.assumptions.add(arrayAssumptions(part, element.curve));
   }
 
   private addConverter(part: Extract<Part, { kind: 'converter' }>): void {
