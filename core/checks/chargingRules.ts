@@ -2,12 +2,13 @@
 import { cellsPerBlock } from '../battery/cells.ts';
 import { type ChargeWindow, chargeWindow, limitOf } from '../battery/limits.ts';
 import type { DiodePart, StringPart } from '../job/part.ts';
+import { nameOf } from '../job/part.ts';
 import type { Basis } from '../tables/status.ts';
 import { type ChargingPart, chargesIn, mostA } from './chargeShare.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { isOver, isUnder, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { apart, degrees, field, nameOf, titleOf, together, volts } from './wording.ts';
+import { apart, degrees, field, titleOf, together, volts } from './wording.ts';
 
 const CHEMISTRY_WINDOW: Basis = {
   source: 'SRC-BAT-LIMIT-PRACTICE',

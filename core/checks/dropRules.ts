@@ -1,12 +1,13 @@
 /** Volts lost between a source and what it feeds, and between a charger and the strings that it charges. */
 import type { InverterPart, LoadPart, StringPart } from '../job/part.ts';
+import { nameOf } from '../job/part.ts';
 import type { Basis } from '../tables/status.ts';
 import { type ChargingPart, chargesIn } from './chargeShare.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { feedersOf } from './feeding.ts';
 import type { Judge, Rule, RuleOutcome } from './rule.ts';
 import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { apart, field, list, nameOf, percent, titleOf, volts, withEdition } from './wording.ts';
+import { apart, field, list, percent, titleOf, volts, withEdition } from './wording.ts';
 
 export const dropTooBig: Rule = {
   id: 'drop-too-big',

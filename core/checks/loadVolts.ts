@@ -1,12 +1,13 @@
 /** Volts at each load against what it needs and what it stands. */
 import type { InverterPart, LoadPart } from '../job/part.ts';
+import { nameOf } from '../job/part.ts';
 import type { Basis } from '../tables/status.ts';
 import { assumedSources, overRange, stiffestStrings } from './assumed.ts';
 import { CIRCUIT_LAW, entered } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { isOver, isUnder, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { apart, field, nameOf, titleOf, together, watts } from './wording.ts';
+import { apart, field, titleOf, together, watts } from './wording.ts';
 
 export const loadStarved: Rule = {
   id: 'load-starved',

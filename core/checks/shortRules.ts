@@ -2,6 +2,7 @@
 import { currentLimits } from '../battery/limits.ts';
 import { stringSource } from '../battery/stringSource.ts';
 import type { StringPart } from '../job/part.ts';
+import { nameOf } from '../job/part.ts';
 import { CIRCUIT_LAW, FUSE_AT_SOURCE } from './bases.ts';
 import type { CheckContext } from './checkContext.ts';
 import { type Quiet, quietStates } from './quiet.ts';
@@ -9,7 +10,7 @@ import type { Rule, RuleOutcome } from './rule.ts';
 import { banksOf } from './systemVolts.ts';
 import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
 import { isDevice, netsOf, polesOf } from './wiring.ts';
-import { amps, apart, nameOf, ohms, percent, shortList, titleOf } from './wording.ts';
+import { amps, apart, ohms, percent, shortList, titleOf } from './wording.ts';
 
 /**
  * A short circuit is told in two ways, both with every load, inverter, charger and array off, since then nothing but wiring and

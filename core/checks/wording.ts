@@ -1,15 +1,10 @@
 /** How findings name parts and print figures. */
-import type { Part } from '../job/part.ts';
+import { nameOf } from '../job/part.ts';
 import type { Basis } from '../tables/status.ts';
 import { weakest } from '../tables/status.ts';
 import { formatQuantity } from '../units/formatQuantity.ts';
 import type { Judge } from './rule.ts';
 import type { SinglePart } from './wiring.ts';
-
-/** `F3 (main fuse)`, or the id alone. */
-export function nameOf(part: Part): string {
-  return part.label === undefined ? part.id : `${part.id} (${part.label})`;
-}
 
 const KINDS: Readonly<Record<SinglePart['kind'], string>> = {
   string: 'string',

@@ -266,6 +266,11 @@ export type Part =
 
 export type PartKind = Part['kind'];
 
+/** How a sentence names a part: `F3 (main fuse)`, or the id alone. */
+export function nameOf(part: Part): string {
+  return part.label === undefined ? part.id : `${part.id} (${part.label})`;
+}
+
 /** Origin of one field of a part: as stated, else `label` when the job gave the field, else `default`. */
 export function originOf(part: Part, field: string): Origin {
   return part.origin.get(field) ?? (part.given.has(field) ? 'label' : 'default');

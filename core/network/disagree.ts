@@ -14,7 +14,7 @@ export interface Change {
 
 /** Valves whose state contradicts the solution, in job order. */
 export function disagreements(circuit: Circuit, assembled: Assembled): Change[] {
-  const { volts, coupling } = assembled;
+  const { coupling, reduction } = assembled;
   const changes: Change[] = [];
   // Rounding must not flip a valve: currents and volts closer than this to a corner are on it.
   let largest = 1;
@@ -22,18 +22,15 @@ export function disagreements(circuit: Circuit, assembled: Assembled): Change[] 
   const smallA = 1e-10 * largest;
   for (const valve of circuit.valves) {
     const { element } = valve;
-    const node = assembled.reduction.node;
-    if (node[element.from] === -2) continue;
-    const drifts = assembled.reduction.group[element.from] !== assembled.reduction.group[element.to];
-    const v = volts[element.from]! - volts[element.to]!;
+    if (reduction.node[element.from] === -2) continue;
+    const drifts = reduction.group[element.from] !== reduction.group[element.to];
+    const v = voltsAcross(element, assembled);
     const tieA = coupling.ties.get(element) ?? 0;
     const state =
       valve.kind === 'diode'
         ? diodeState(valve, v, tieA, smallA, drifts)
         : sourceState(valve, { v, tieA, smallA, drifts }, assembled);
-    if (state !== null) {
-      changes.push({ valve, state });
-    }
+    if (state !== null) changes.push({ valve, state });
   }
   return changes;
 }

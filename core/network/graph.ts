@@ -3,6 +3,7 @@
  * stands at 0 V. Done on the graph, so that a message can name the part instead of saying that a matrix is singular.
  */
 import type { JunctionId, PartId } from '../job/part.ts';
+import { nameOf } from '../job/part.ts';
 import type { GraphRemark } from './answer.ts';
 import type { Circuit } from './circuit.ts';
 import { isCoupler } from './coupling.ts';
@@ -89,7 +90,6 @@ function switchOffDeadSinks(circuit: Circuit, block: Int32Array, live: readonly 
 function unfedRemark(circuit: Circuit, index: number, reach: Int32Array, fed: ReadonlySet<number>): GraphRemark {
   const element = circuit.elements[index]!;
   const part = circuit.parts[element.partIndex]!;
-  const name = part.label === undefined ? part.id : `${part.id} (${part.label})`;
   const plus = circuit.junctions[element.from]!;
   const minus = circuit.junctions[element.to]!;
   const plusFed = fed.has(reach[element.from]!);
@@ -100,7 +100,7 @@ function unfedRemark(circuit: Circuit, index: number, reach: Int32Array, fed: Re
   else if (plusFed) why = `its minus side (junction ${minus}) has no path back to a source`;
   else if (minusFed) why = `its plus side (junction ${plus}) has no path to a source`;
   else why = 'neither of its ends reaches a source';
-  return { kind: 'unfed', parts: [part.id], junctions: [plus, minus], message: `${name} is not fed: ${why}.` };
+  return { kind: 'unfed', parts: [part.id], junctions: [plus, minus], message: `${nameOf(part)} is not fed: ${why}.` };
 }
 
 function unsuppliedRemarks(circuit: Circuit, island: Int32Array, live: readonly boolean[]): GraphRemark[] {

@@ -22,7 +22,7 @@ export class Assembled {
   readonly circuit: Circuit;
   readonly reduction: Reduction;
   readonly coupling: Coupling;
-  /** Elements in force, and for each the unknown at either end (-1 where known). */
+  /** Elements in force: all but ties, what is out of use and what floats. */
   readonly active: readonly Element[];
   /** Volts of each junction. */
   readonly volts: Float64Array;
@@ -57,8 +57,7 @@ export class Assembled {
   solveUnloaded(): boolean {
     for (const element of this.active) evaluate(element, firstGuessV(element));
     this.coupling.reset();
-    this.volts.fill(0);
-    this.place(this.volts);
+    this.placeOffsets();
     for (let pass = 0; pass < 100; pass++) {
       // Norton form: the linearised currents at the present guess, as if the volts were zero.
       const change = this.linearStep(pass === 0);
@@ -152,9 +151,11 @@ export class Assembled {
     for (let j = 0; j < node.length; j++) if (node[j]! >= 0) this.volts[j]! += t * d[node[j]!]!;
   }
 
-  private place(volts: Float64Array): void {
-    const { offset, node } = this.reduction;
-    for (let j = 0; j < node.length; j++) volts[j] = offset[j]!;
+  /** Every junction at its offset: as if the unknowns were zero. */
+  private placeOffsets(): void {
+    const { volts } = this;
+    const { offset } = this.reduction;
+    for (let j = 0; j < volts.length; j++) volts[j] = offset[j]!;
   }
 
   /** Largest remainder over all unknowns, and the size below which it is rounding. */
@@ -207,7 +208,6 @@ export class Assembled {
     const { node, offset, size } = this.reduction;
     const b = this.r;
     b.fill(0);
-    this.values.fill(0);
     for (const element of this.active) {
       if (isSink(element)) continue;
       const p = node[element.from]!;
@@ -245,11 +245,6 @@ export class Assembled {
       if (qq >= 0) values[qq]! += g;
       if (pq >= 0) values[pq]! -= g;
     }
-  }
-
-  /** Constant-power elements, for continuation and for naming a collapse. */
-  powerElements(): readonly Element[] {
-    return this.power;
   }
 }
 

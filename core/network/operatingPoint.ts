@@ -1,11 +1,13 @@
 /** One job in one operating case, solved: volts, amps, watts, states, and the proof. */
 import { Defect } from '../job/issue.ts';
+import { nameOf } from '../job/part.ts';
 import type { Collapse, OperatingPoint } from './answer.ts';
 import { Reader } from './answers.ts';
 import type { Circuit, CircuitRequest, Sink } from './circuit.ts';
 import { buildCircuit } from './circuit.ts';
 import type { Nose } from './collapse.ts';
 import { largestDeliverableW, settleOrCollapse, solveFromConductance } from './collapse.ts';
+import { voltsAcross } from './disagree.ts';
 import { Law } from './element.ts';
 import type { GraphView } from './graph.ts';
 import { readGraph } from './graph.ts';
@@ -45,51 +47,34 @@ export function solveCircuit(request: CircuitRequest): SolvedCircuit {
   // A load below its own minimum drops out for good; each pass drops one, so this ends.
   for (;;) {
     const outcome = settleOrCollapse(circuit, graph);
-    if ('assembled' in outcome) {
-      const starved = mostStarved(circuit, outcome.assembled);
-      if (starved !== null) {
-        dropOut(starved);
-        continue;
-      }
-      const { assembled } = outcome;
-      return { circuit, graph, assembled, point: answer(circuit, graph, assembled, 'solved') };
-    }
-    const { nose } = outcome;
-    const starved = nose.assembled === null ? null : mostStarved(circuit, nose.assembled);
-    if (starved !== null) {
-      dropOut(starved);
+    if ('nose' in outcome && outcome.nose.assembled !== null && dropMostStarved(circuit, outcome.nose.assembled))
       continue;
-    }
-    const ending = withoutPoint(circuit, graph, nose);
+    const ending = 'nose' in outcome ? withoutPoint(circuit, graph, outcome.nose) : outcome;
     if (!('assembled' in ending)) {
       return { circuit, graph, assembled: null, point: answer(circuit, graph, null, 'collapse', ending) };
     }
     const { assembled } = ending;
-    const late = mostStarved(circuit, assembled);
-    if (late === null) return { circuit, graph, assembled, point: answer(circuit, graph, assembled, 'solved') };
-    dropOut(late);
+    if (dropMostStarved(circuit, assembled)) continue;
+    return { circuit, graph, assembled, point: answer(circuit, graph, assembled, 'solved') };
   }
 }
 
-/** The sink furthest below its own minimum volts, in proportion; null when none is below. */
-function mostStarved(circuit: Circuit, assembled: Assembled): Sink | null {
+/** Drops out the sink furthest below its own minimum volts, in proportion; false when none is below. */
+function dropMostStarved(circuit: Circuit, assembled: Assembled): boolean {
   let worst: Sink | null = null;
   let least = 1;
   for (const sink of circuit.sinks) {
     if (sink.state !== 'on' || sink.minimumV === undefined || sink.minimumV <= 0) continue;
-    const { from, to } = sink.element;
-    const ratio = (assembled.volts[from]! - assembled.volts[to]!) / sink.minimumV;
+    const ratio = voltsAcross(sink.element, assembled) / sink.minimumV;
     if (ratio < least) {
       least = ratio;
       worst = sink;
     }
   }
-  return worst;
-}
-
-function dropOut(sink: Sink): void {
-  sink.state = 'dropped-out';
-  sink.element.law = Law.none;
+  if (worst === null) return false;
+  worst.state = 'dropped-out';
+  worst.element.law = Law.none;
+  return true;
 }
 
 function answer(
@@ -126,8 +111,7 @@ function withoutPoint(circuit: Circuit, graph: GraphView, nose: Nose): Collapse 
   if (sink === undefined) throw new Defect('a case without constant-power or constant-current sinks has a solution');
   const part = circuit.parts[sink.element.partIndex]!;
   const wantedW = sink.element.law === Law.power ? sink.element.a : sink.element.a * Math.abs(sink.element.v);
-  const name = part.label === undefined ? part.id : `${part.id} (${part.label})`;
-  const asks = `${name} asks for ${wantedW.toPrecision(4)} W at its terminals`;
+  const asks = `${nameOf(part)} asks for ${wantedW.toPrecision(4)} W at its terminals`;
   if (othersSolve(circuit, graph, sink)) {
     const peak = largestDeliverableW(circuit, graph, sink, 1);
     const isPower = sink.element.law === Law.power;
