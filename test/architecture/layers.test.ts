@@ -21,17 +21,25 @@ const coreOrder = [
   'season',
   'tracing',
   'checks',
+  'diagram',
+  'explain',
+  'draft',
+  'remedy',
+  'lists',
   'report',
 ];
 
 /** What each top folder may import: folders of ours, and outside packages. */
 const mayImport: Record<string, { ours: string[]; outside: RegExp }> = {
-  core: { ours: ['core'], outside: /^(zod|mathjs)$/ },
+  core: { ours: ['core'], outside: /^(immer|mathjs)$/ },
   data: { ours: ['data', 'core/api.ts'], outside: /^papaparse$/ },
-  electron: { ours: ['electron', 'data', 'core/api.ts'], outside: /^(node:|commander$|pdfkit$|fontkit$|electron$)/ },
+  electron: {
+    ours: ['electron', 'data', 'core/api.ts', 'core/host.ts'],
+    outside: /^(node:|better-sqlite3$|commander$|pdfkit$|fontkit$|electron$|zod$)/,
+  },
   renderer: {
     ours: ['renderer', 'data', 'core/api.ts', 'core/host.ts'],
-    outside: /^(react|react-dom|@mui\/|@emotion\/|@xyflow\/)/,
+    outside: /^(react$|react\/|react-dom$|react-dom\/|@mui\/|@emotion\/|@xyflow\/|zustand|elkjs)/,
   },
 };
 
