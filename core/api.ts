@@ -59,8 +59,69 @@ export type { ConductorResistance, ConductorRun, ResistanceContext } from './con
 export { conductorResistance, resistanceAt, resistanceTo20 } from './conductor/resistance.ts';
 export type { Missing } from './conductor/size.ts';
 export { areaOf, awgDiameterMm, nextSizeUp, sameSize, sizesOf, smallestSize } from './conductor/size.ts';
+export type { SizeEcho, SizeEchoRequest } from './conductor/sizeEcho.ts';
+export { sizeEcho, usualSizes } from './conductor/sizeEcho.ts';
 export type { HeatingLaw } from './conductor/temperature.ts';
 export { heatingLaw, temperatureAt } from './conductor/temperature.ts';
+export type { DrawnPart, DrawnWire, FigurePlace, Surroundings, WireCurrent } from './diagram/drawPart.ts';
+export { drawPart, entriesOf, figurePlace, freeSide, lineWeight } from './diagram/drawPart.ts';
+export { CHEMISTRY_WORDS, KIND_WORDS } from './diagram/kindWords.ts';
+export type { Moved } from './diagram/moveWith.ts';
+export { moveBy } from './diagram/moveWith.ts';
+export { kindSymbol, partSymbol } from './diagram/partSymbol.ts';
+export type { Positions } from './diagram/point.ts';
+export { EARTH, GRID } from './diagram/point.ts';
+export type { PlaceOf, Pose, TerminalPlace } from './diagram/pose.ts';
+export { boxAround, isConductor, roomOf } from './diagram/pose.ts';
+export { freePlace, positionsOf } from './diagram/positions.ts';
+export type { Entry } from './diagram/routeWire.ts';
+export type { Shape, Stroke, Tone } from './diagram/shape.ts';
+export { tidyPositions } from './diagram/tidy.ts';
+export { ratingWords } from './diagram/wiringWords.ts';
+export type { CaseField } from './draft/cases.ts';
+export { addCase, removeCase, renameCase, setCase, setInCase } from './draft/cases.ts';
+export type { Placing } from './draft/clipboard.ts';
+export { copyParts, duplicateParts, pasteParts } from './draft/clipboard.ts';
+export { connect, insertInto, parallelString } from './draft/connect.ts';
+export type { Draft, Edited, Point, RawPart } from './draft/draft.ts';
+export { draftOf, emptyDraft, partsAdded, rawPart, rawParts } from './draft/draft.ts';
+export { draftText } from './draft/draftText.ts';
+export type { Edit } from './draft/edit.ts';
+export { applyEdit, together } from './draft/edit.ts';
+export { changeKind, kindsAlike, setField, setOrigin, setRange } from './draft/fields.ts';
+export {
+  addTap,
+  attach,
+  detach,
+  joinJunctions,
+  labelJunction,
+  removeTap,
+  renameJunction,
+  setReference,
+} from './draft/junctions.ts';
+export type { NewPart, PartFieldsGiven } from './draft/parts.ts';
+export { addPart, removeParts, renamePart } from './draft/parts.ts';
+export { move, place } from './draft/positions.ts';
+export { seedBadLug } from './draft/seedBadLug.ts';
+export type { SmallJob } from './draft/smallJob.ts';
+export { startSmall } from './draft/startSmall.ts';
+export type { Terminal } from './draft/terminals.ts';
+export { terminalsOf } from './draft/terminals.ts';
+export type { DemandFields } from './draft/top.ts';
+export { addDemand, removeDemand, setDemand, setTop } from './draft/top.ts';
+export type { BalanceLine } from './explain/balanceLine.ts';
+export { balanceLine } from './explain/balanceLine.ts';
+export type { JunctionBalance, JunctionCurrent, JunctionRequest } from './explain/junctionBalance.ts';
+export { junctionBalance } from './explain/junctionBalance.ts';
+export type { PartFigure } from './explain/partFigures.ts';
+export { partFigures } from './explain/partFigures.ts';
+export { partWorking } from './explain/partWorking.ts';
+export type { WalkRequest } from './explain/voltWalk.ts';
+export { voltWalk } from './explain/voltWalk.ts';
+export type { NoWalk, VoltWalk, WalkChoice, WalkSide, WalkStep, WalkStepKind, WalkTotals } from './explain/walk.ts';
+export type { WalkChoicesRequest } from './explain/walkChoices.ts';
+export { walkChoices } from './explain/walkChoices.ts';
+export type { FigureOrigin, PartRequest, WorkingLine, WorkingResult } from './explain/workingLine.ts';
 export type { Bounds, Field, Fields, Rule } from './job/field.ts';
 export type { Issue, IssueCode, Result } from './job/issue.ts';
 export { Defect } from './job/issue.ts';
@@ -94,6 +155,9 @@ export type {
 export { cablesOfPair, junctionsOf, originOf } from './job/part.ts';
 export { partFields } from './job/partFields.ts';
 export { largestTextLength } from './job/readJson.ts';
+export type { ListName } from './lists/buildList.ts';
+export { buildList } from './lists/buildList.ts';
+export type { List } from './lists/list.ts';
 export type {
   Assumption,
   BatteryModel,
@@ -113,7 +177,15 @@ export type { Thevenin as TheveninSource } from './network/thevenin.ts';
 export { theveninAt } from './network/thevenin.ts';
 export type { ResistanceChange, WhatIf } from './network/whatIf.ts';
 export { whatIf } from './network/whatIf.ts';
+export type { MissingField } from './remedy/missingField.ts';
+export { missingField } from './remedy/missingField.ts';
+export type { RemedyTrial } from './remedy/remedyTrial.ts';
+export type { RemedyRequest } from './remedy/tryRemedy.ts';
+export { remedyTrials } from './remedy/tryRemedy.ts';
 export { buildReport } from './report/buildReport.ts';
+export { answerLine, partName, partNames } from './report/caseWords.ts';
+export type { Caution } from './report/cautions.ts';
+export { cautionsForPart } from './report/cautions.ts';
 export type {
   Block,
   CautionBlock,
@@ -129,13 +201,19 @@ export type {
   Paper,
   ParagraphBlock,
   ReportDocument,
-  Shape,
   SourcesBlock,
-  Stroke,
   TableBlock,
-  Tone,
 } from './report/document.ts';
 export type { ReportInput, ReportOptions } from './report/input.ts';
+export {
+  fieldWords,
+  plainFields,
+  SEVERITIES,
+  SEVERITY_WORDS,
+  STATUS_WORDS,
+  sentenceCase,
+  withoutStatus,
+} from './report/wording.ts';
 export type { ArrayConditions, ArrayCurve } from './solar/arrayCurve.ts';
 export { arrayCurve, currentAt, maximumPower, openCircuitV, shortCircuitA } from './solar/arrayCurve.ts';
 export type {
@@ -168,11 +246,25 @@ export type { Basis, Status } from './tables/status.ts';
 export type { Tables } from './tables/tables.ts';
 export type { ConductorSize } from './units/conductorSize.ts';
 export { parseSize, sizeText } from './units/conductorSize.ts';
+export { readCount } from './units/countFieldText.ts';
+export type { EchoRequest } from './units/fieldEcho.ts';
+export { echoOf } from './units/fieldEcho.ts';
+export type { FieldChoice, FieldReading, Way } from './units/fieldReading.ts';
+export { isBareNumber } from './units/fieldReading.ts';
+export type { FieldRequest, ShownField } from './units/fieldText.ts';
+export { readField, shownField } from './units/fieldText.ts';
+export type { FieldUnit, UnitsFirst } from './units/fieldUnit.ts';
+export { factor, fieldUnit, milliohm } from './units/fieldUnit.ts';
 export { formatQuantity } from './units/formatQuantity.ts';
 export { fahrenheitText, feetText } from './units/imperial.ts';
+export type { LengthRequest } from './units/lengthFieldText.ts';
+export { halvedText, readLength } from './units/lengthFieldText.ts';
 export { fixedText, numberText } from './units/numberText.ts';
 export type { Parsed } from './units/parsed.ts';
 export { quoted } from './units/parsed.ts';
 export { parseQuantity } from './units/parseQuantity.ts';
+export type { Efficiency } from './units/pointsFieldText.ts';
+export { pointsText, readPoints } from './units/pointsFieldText.ts';
+export { readSizeField } from './units/sizeFieldText.ts';
 export type { UnitName } from './units/unitName.ts';
 export { describeUnit, unitKinds } from './units/unitName.ts';

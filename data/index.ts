@@ -7,4 +7,6 @@ import { practices } from './practices/practices.ts';
 
 export const tables: Tables = { conductors, chemistry: chemistryTables, devices, practices };
 
+export type { Example } from './examples/index.ts';
+export { examples } from './examples/index.ts';
 export { starters } from './starters.ts';

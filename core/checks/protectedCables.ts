@@ -11,11 +11,11 @@
  *
  * Where no string reaches either side, chargers, arrays, controllers and converters take the part of the strings.
  */
-import type { CablePart, JunctionId, PartId } from '../job/part.ts';
+import type { CablePart, JunctionId, Part, PartId } from '../job/part.ts';
 import type { CheckContext } from './checkContext.ts';
 import { type LiveSides, liveSides } from './deviceSides.ts';
 import type { Device, Nets, PartEnd, Poles, SinglePart } from './wiring.ts';
-import { isDevice, isWiring, joined, netsOf, polesOf } from './wiring.ts';
+import { isDevice, isWiring, joined, meetings, netsOf, polesOf, withoutPairs } from './wiring.ts';
 
 export class ProtectedCables {
   private readonly meetings: ReadonlyMap<JunctionId, readonly PartEnd[]>;
@@ -130,4 +130,11 @@ export function protectedCablesOf(context: CheckContext): ProtectedCables {
     ofContext.set(context, known);
   }
   return known;
+}
+
+/** The cables that each fuse or breaker of a drawing protects. */
+export function protectedBy(parts: readonly Part[]): (device: Device) => readonly CablePart[] {
+  const drawn = withoutPairs(parts);
+  const cables = new ProtectedCables(drawn, meetings(drawn));
+  return (device) => cables.of(device);
 }

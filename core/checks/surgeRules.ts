@@ -81,7 +81,8 @@ function startVerdict(context: CheckContext, start: Start): Verdict {
       measured: { value: largestDeliverableW, unit: 'W' },
       limit: { value: wantedW, unit: 'W' },
       excess: largestDeliverableW > 0 ? wantedW / largestDeliverableW : Number.POSITIVE_INFINITY,
-      message: `${titleOf(part)} cannot start with ${watts(surgeW)} on top of case ${one.id}: ${who} would need ${watts(wantedW)} at its terminals, and the wiring can bring ${watts(largestDeliverableW)} at most${assumedSources(point)}${overRange(holdsAtBest(context, start, leastV))}.`,
+      message: () =>
+        `${titleOf(part)} cannot start with ${watts(surgeW)} on top of case ${one.id}: ${who} would need ${watts(wantedW)} at its terminals, and the wiring can bring ${watts(largestDeliverableW)} at most${assumedSources(point)}${overRange(holdsAtBest(context, start, leastV))}.`,
     };
   }
   if (answer === undefined || answer.voltageV === null || answer.state === 'unfed') {
@@ -90,7 +91,6 @@ function startVerdict(context: CheckContext, start: Start): Verdict {
   if (leastV === undefined) return missing(field(part, leastVoltsField(part)));
   if (!isUnder(answer.voltageV, leastV)) return PASS;
   const [found, needed] = apart(answer.voltageV, leastV, 'V');
-  const bearableW = largestStart(context, start, leastV);
   return {
     kind: 'fail',
     severity: 'fix',
@@ -98,7 +98,8 @@ function startVerdict(context: CheckContext, start: Start): Verdict {
     measured: { value: answer.voltageV, unit: 'V' },
     limit: { value: leastV, unit: 'V' },
     excess: leastV / answer.voltageV,
-    message: `${titleOf(part)} has ${found} while it starts with ${watts(surgeW)} on top of case ${one.id} and needs ${needed}; ${bearableText(bearableW)}${assumedSources(point)}${overRange(holdsAtBest(context, start, leastV))}.`,
+    message: () =>
+      `${titleOf(part)} has ${found} while it starts with ${watts(surgeW)} on top of case ${one.id} and needs ${needed}; ${bearableText(largestStart(context, start, leastV))}${assumedSources(point)}${overRange(holdsAtBest(context, start, leastV))}.`,
     basis: together(CIRCUIT_LAW, entered(part, leastVoltsField(part))),
   };
 }

@@ -27,7 +27,8 @@ export interface Failure {
   readonly limit: Measure;
   /** How far beyond the limit, as a ratio of at least 1; `Infinity` where the limit is nothing at all. */
   readonly excess: number;
-  readonly message: string;
+  /** A function where the sentence takes work to find: it is asked of the worst verdict only. */
+  readonly message: string | (() => string);
   /** Instead of the rule's own remedy. */
   readonly remedy?: string;
   /** Instead of the rule's own basis. */
@@ -94,7 +95,7 @@ export class Tally {
         case: failure.case,
         measured,
         limit,
-        message,
+        message: typeof message === 'string' ? message : message(),
         remedy: failure.remedy ?? this.rule.remedy,
         basis: basis.text,
         basisStatus: basis.status,

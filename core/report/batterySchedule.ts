@@ -1,9 +1,9 @@
+import { CHEMISTRY_WORDS } from '../diagram/kindWords.ts';
 import type { CheckedJob } from '../job/job.ts';
 import type { StringPart } from '../job/part.ts';
 import type { TableBlock } from './document.ts';
 import { milliohms, NOT_GIVEN, percent, plain } from './figures.ts';
 import { given, id, named, number, partsOf, schedule, text } from './schedule.ts';
-import { CHEMISTRY_WORDS } from './wording.ts';
 
 export function batterySchedule(job: CheckedJob): readonly TableBlock[] {
   const strings = partsOf(job, 'string');

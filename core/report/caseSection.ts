@@ -1,4 +1,6 @@
 /** The operating cases: volts at junctions, then part by part what each case makes of them. */
+
+import { KIND_WORDS } from '../diagram/kindWords.ts';
 import type { CheckedJob } from '../job/job.ts';
 import type { JunctionId, Part } from '../job/part.ts';
 import { cablesOfPair } from '../job/part.ts';
@@ -8,7 +10,6 @@ import { caseTitle, nominalVolts } from './cover.ts';
 import type { Block, Cell, Column, TableBlock } from './document.ts';
 import { amps, degrees, millivolts, NOT_GIVEN, percent, volts, watts } from './figures.ts';
 import type { ReportInput } from './input.ts';
-import { KIND_WORDS } from './wording.ts';
 
 /** Cases side by side in the table of junctions. */
 const CASES_ABREAST = 5;

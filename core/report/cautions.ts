@@ -3,7 +3,7 @@
  * job has the thing that it warns of.
  */
 import type { CheckedJob } from '../job/job.ts';
-import type { Chemistry, PartKind } from '../job/part.ts';
+import type { Chemistry, Part, PartKind } from '../job/part.ts';
 import type { Basis } from '../tables/status.ts';
 import type { Citations } from './citations.ts';
 import type { CautionBlock } from './document.ts';
@@ -18,7 +18,7 @@ export type CautionPlace =
   | 'findings'
   | 'measuring';
 
-interface Caution {
+export interface Caution {
   readonly place: CautionPlace;
   readonly appliesTo: (job: CheckedJob) => boolean;
   readonly text: string;
@@ -212,6 +212,32 @@ const TITLES: Readonly<Record<CautionPlace, string>> = {
   findings: 'Reading the findings',
   measuring: 'Measuring',
 };
+
+const PLACES: Partial<Readonly<Record<PartKind, CautionPlace>>> = {
+  string: 'batteries',
+  cable: 'conductors',
+  pair: 'conductors',
+  joint: 'conductors',
+  busbar: 'conductors',
+  fuse: 'devices',
+  breaker: 'devices',
+  switch: 'devices',
+  inverter: 'loads',
+  array: 'sources',
+  charger: 'sources',
+  controller: 'sources',
+};
+
+/** The cautions for a hand at one part, the nearest first: at a battery, tools and rings before all else. */
+export function cautionsForPart(part: Part, job: CheckedJob): readonly Pick<Caution, 'text' | 'basis'>[] {
+  const alone = { ...job, parts: [part] };
+  const beside = part.kind === 'string' && withSeveralStrings(job) ? [withSeveralStrings] : [];
+  const own = CAUTIONS.filter(
+    ({ place, appliesTo }) => place === PLACES[part.kind] && (appliesTo(alone) || beside.some((one) => one === appliesTo)),
+  );
+  const tools = CAUTIONS.filter(({ place, basis }) => place === 'isolating' && basis === ACID_AND_TOOLS);
+  return part.kind === 'string' ? [...tools, ...own] : own;
+}
 
 /** The caution block of a place, or nothing where none of its cautions concerns this job. */
 export function cautionsAt(place: CautionPlace, job: CheckedJob, citations: Citations): readonly CautionBlock[] {

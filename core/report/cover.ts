@@ -1,9 +1,10 @@
+import { CHEMISTRY_WORDS } from '../diagram/kindWords.ts';
 import type { CheckedJob } from '../job/job.ts';
 import type { StringPart } from '../job/part.ts';
 import type { CoverBlock, Fact } from './document.ts';
 import { plain } from './figures.ts';
 import type { ReportInput } from './input.ts';
-import { CHEMISTRY_WORDS, count, join, MODEL_WORDS } from './wording.ts';
+import { count, join, MODEL_WORDS } from './wording.ts';
 
 /** What the paper is and is not; repeated in one sentence at the foot of each page and at the end. */
 export const LIMITS: readonly string[] = [

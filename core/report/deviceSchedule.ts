@@ -1,9 +1,9 @@
+import { KIND_WORDS } from '../diagram/kindWords.ts';
 import type { CheckedJob } from '../job/job.ts';
 import type { DiodePart, ShuntPart, SwitchPart } from '../job/part.ts';
 import type { Cell, TableBlock } from './document.ts';
 import { feet, metres, milliohms, NOT_GIVEN, plain } from './figures.ts';
 import { given, id, named, number, partsOf, schedule, text, yesNo } from './schedule.ts';
-import { KIND_WORDS } from './wording.ts';
 
 export function deviceSchedule(job: CheckedJob): readonly TableBlock[] {
   return schedule(

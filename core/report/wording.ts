@@ -1,6 +1,6 @@
 /** The words that the report uses for kinds, states, statuses and severities: one place, so that one thing has one name on paper. */
 import type { Severity } from '../checks/finding.ts';
-import type { Chemistry, Metal, Origin, PartKind, Run, Stranding } from '../job/part.ts';
+import type { Metal, Origin, Run, Stranding } from '../job/part.ts';
 import type { BatteryModel } from '../network/answer.ts';
 import type { Status } from '../tables/status.ts';
 
@@ -32,34 +32,6 @@ export const ORIGIN_WORDS: Readonly<Record<Origin, string>> = {
   guess: 'guess',
 };
 
-export const KIND_WORDS: Readonly<Record<PartKind, string>> = {
-  string: 'battery string',
-  cable: 'cable',
-  pair: 'out-and-back run',
-  busbar: 'busbar',
-  fuse: 'fuse',
-  breaker: 'breaker',
-  switch: 'switch',
-  shunt: 'shunt',
-  joint: 'joint',
-  diode: 'diode',
-  load: 'load',
-  inverter: 'inverter',
-  array: 'solar array',
-  controller: 'solar controller',
-  charger: 'charger',
-  converter: 'DC converter',
-  bond: 'bond',
-};
-
-export const CHEMISTRY_WORDS: Readonly<Record<Chemistry, string>> = {
-  flooded: 'lead-acid, flooded',
-  agm: 'lead-acid, AGM',
-  gel: 'lead-acid, gel',
-  lfp: 'lithium iron phosphate',
-  nmc: 'lithium NMC',
-  nicd: 'nickel-cadmium',
-};
 export const METAL_WORDS: Readonly<Record<Metal, string>> = {
   copper: 'copper',
   'tinned-copper': 'tinned copper',

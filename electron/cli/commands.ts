@@ -1,7 +1,5 @@
 /** What each command does: read, ask the engine, print. No command decides anything that the engine did not. */
 import {
-  type BatteryModel,
-  buildReport,
   type CheckedJob,
   type CheckReport,
   missingFigures,
@@ -11,6 +9,8 @@ import {
   runChecks,
 } from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
+import { makeReport, pdfOf } from '../services/makeReport.ts';
+import { solveCases } from '../services/solveCases.ts';
 import { checkText } from './checkText.ts';
 import type { Io } from './io.ts';
 import { jsonText } from './jsonText.ts';
@@ -39,7 +39,7 @@ export async function solve(path: string, options: CommandOptions, io: Io): Prom
 /** `check`: findings by the practice in force. */
 export async function check(path: string, options: CommandOptions, io: Io): Promise<number> {
   const { read, job, cases } = await begin(path, options, io);
-  const points = solvedFor(job, cases, options.model);
+  const points = solveCases(job, cases, options.model);
   const report = runChecks({ job, tables, cases, points });
   const answer = options.json === true ? jsonText(checkAnswer(job, cases, report)) : checkText(job, report);
   await print(answer, read, options, io);
@@ -52,19 +52,14 @@ export async function report(path: string, options: CommandOptions, io: Io): Pro
     throw new Refusal(exitStatus.words, 'report needs --out <file.pdf> for the PDF, or --json for its document tree.');
   }
   const { read, job, cases } = await begin(path, options, io);
-  const points = solvedFor(job, cases, options.model);
-  const checkReport = runChecks({ job, tables, cases, points });
-  const document = buildReport({
+  const { document, points } = makeReport({
     job,
-    tables,
-    points,
-    checkReport,
+    cases,
+    model: options.model,
     options: { programVersion, preparedOn: io.today() },
   });
   if (options.out !== undefined) {
-    // Only this command needs the PDF writer, which takes longer to load than all the rest.
-    const { renderPdf } = await import('../pdf/renderPdf.ts');
-    const content = await renderPdf(document);
+    const content = await pdfOf(document);
     writeOut({ path: options.out, content, input: read.file });
     if (options.quiet !== true) io.err(`Wrote ${options.out} (${String(Math.ceil(content.length / 1024))} kB).\n`);
   }
@@ -72,13 +67,14 @@ export async function report(path: string, options: CommandOptions, io: Io): Pro
   return collapsed(points) ? exitStatus.found : exitStatus.done;
 }
 
-interface Begun {
+export interface Begun {
   readonly read: JobRead;
   readonly job: CheckedJob;
   readonly cases: readonly OperatingCase[];
 }
 
-async function begin(path: string, options: CommandOptions, io: Io): Promise<Begun> {
+/** The job that a command works on, fit to be solved, with the cases that it was asked for. */
+export async function begin(path: string, options: CommandOptions, io: Io): Promise<Begun> {
   const read = await readJob(path, io);
   const job = judgedJob(read.job, options);
   const missing = missingFigures({ job, tables });
@@ -98,19 +94,7 @@ async function print(answer: string, read: JobRead, options: CommandOptions, io:
   else writeOut({ path: options.out, content: answer, input: read.file });
 }
 
-/** Each case by the battery model asked for; else a start by the first second and the rest over minutes. */
-function solvedFor(
-  job: CheckedJob,
-  cases: readonly OperatingCase[],
-  asked: BatteryModel | undefined,
-): readonly OperatingPoint[] {
-  return cases.map((operatingCase) => {
-    const model = asked ?? (operatingCase.surge === undefined ? 'slow' : 'fast');
-    return operatingPoint({ job, operatingCase, tables, model });
-  });
-}
-
-function collapsed(points: readonly OperatingPoint[]): boolean {
+export function collapsed(points: readonly OperatingPoint[]): boolean {
   return points.some((point) => point.outcome === 'collapse');
 }
 

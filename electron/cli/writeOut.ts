@@ -1,18 +1,6 @@
 /** Writes an answer to a file, whole or not at all, and never over the job that it was made from. */
-import { randomBytes } from 'node:crypto';
-import {
-  chmodSync,
-  closeSync,
-  fsyncSync,
-  openSync,
-  realpathSync,
-  renameSync,
-  type Stats,
-  statSync,
-  unlinkSync,
-  writeFileSync,
-} from 'node:fs';
-import { basename, dirname, join } from 'node:path';
+import { type Stats, statSync } from 'node:fs';
+import { writeWhole } from '../files/wholeFile.ts';
 import type { FileIdentity } from './io.ts';
 import { exitStatus, fileRefusal, Refusal } from './refusal.ts';
 
@@ -39,21 +27,16 @@ export function checkPlace({ path, input, keepExisting }: Omit<OutRequest, 'cont
   if (keepExisting === true && existing.isFile()) {
     throw new Refusal(
       exitStatus.file,
-      `${path} cannot be written: it exists already, and a new job is not put over an old one.`,
+      `${path} cannot be written: it exists already and is not written over; name another place.`,
     );
   }
 }
 
-/**
- * Writes beside the place under another name, waits for the disk, then renames: after a power cut there is the old file or the new
- * one, never half of one. A pipe or device is written as it is.
- */
+/** A pipe or device is written as it is. Throws a `Refusal` where the system refuses. */
 export function writeOut(request: OutRequest): void {
   checkPlace(request);
   try {
-    const existing = statOf(request.path);
-    if (existing !== undefined && !existing.isFile()) writeFileSync(request.path, request.content);
-    else replace(existing === undefined ? request.path : realpathSync(request.path), request.content, existing);
+    writeWhole(request.path, request.content);
   } catch (error) {
     throw fileRefusal(`${request.path} cannot be written`, error);
   }
@@ -64,38 +47,5 @@ function statOf(path: string): Stats | undefined {
     return statSync(path, { throwIfNoEntry: false });
   } catch (error) {
     throw fileRefusal(`${path} cannot be written`, error);
-  }
-}
-
-function replace(path: string, content: string | Uint8Array, existing: Stats | undefined): void {
-  const beside = join(dirname(path), `.${basename(path).slice(0, 100)}.${randomBytes(6).toString('hex')}.part`);
-  const descriptor = openSync(beside, 'wx');
-  try {
-    try {
-      writeFileSync(descriptor, content);
-      fsyncSync(descriptor);
-    } finally {
-      closeSync(descriptor);
-    }
-    if (existing !== undefined) chmodSync(beside, existing.mode & 0o777);
-    renameSync(beside, path);
-  } catch (error) {
-    unlinkSync(beside);
-    throw error;
-  }
-  settleFolder(dirname(path));
-}
-
-/** Makes the new name itself last; not every system lets a folder be opened for that, and then the rename has to do. */
-function settleFolder(folder: string): void {
-  try {
-    const descriptor = openSync(folder, 'r');
-    try {
-      fsyncSync(descriptor);
-    } finally {
-      closeSync(descriptor);
-    }
-  } catch {
-    // The content is written and renamed; only the moment at which the disk keeps the name is left to the system.
   }
 }

@@ -1,10 +1,11 @@
 /** The one-line diagram: everything is drawn, nothing runs over anything else, and what cannot be drawn says why. */
 import { describe, expect, test } from 'vitest';
+import type { Shape } from '../../core/diagram/shape.ts';
+import { wiringGraph } from '../../core/diagram/wiringGraph.ts';
+import { type Layout, layWiring, yOf } from '../../core/diagram/wiringLayout.ts';
 import { buildReport } from '../../core/report/buildReport.ts';
 import { diagramSection } from '../../core/report/diagram/diagramSection.ts';
-import { wiringGraph } from '../../core/report/diagram/wiringGraph.ts';
-import { type Layout, layWiring, yOf } from '../../core/report/diagram/wiringLayout.ts';
-import type { FigureBlock, Shape } from '../../core/report/document.ts';
+import type { FigureBlock } from '../../core/report/document.ts';
 import { examples } from '../../data/examples/index.ts';
 import { checked } from './reportInput.ts';
 import { cabin, van } from './reportJobs.ts';

@@ -1,52 +1,15 @@
 /** The command line as it ships: built once when a source is newer than the build, and run as a process of its own. */
 import { spawn, spawnSync } from 'node:child_process';
-import { mkdirSync, readdirSync, rmSync, statSync } from 'node:fs';
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
+import { buildMode } from './buildMode.ts';
 
 const root = fileURLToPath(new URL('../../', import.meta.url));
 export const cliFile = join(root, 'dist', 'cli.mjs');
-const lock = join(root, '.cache', 'cli-build.lock');
-/** A build that was cut off must not lock out all later ones. */
-const staleLockMs = 120_000;
 
-/** Builds `dist/cli.mjs` where it is missing or older than a source; test files that run side by side wait for each other. */
+/** Builds `dist/cli.mjs` where it is missing or older than a source. */
 export async function buildCli(): Promise<void> {
-  mkdirSync(join(root, '.cache'), { recursive: true });
-  while (!taken()) await new Promise((resolve) => setTimeout(resolve, 100));
-  try {
-    if (builtAt() > newestSource()) return;
-    const vite = join(root, 'node_modules', 'vite', 'bin', 'vite.js');
-    const build = spawnSync(process.execPath, [vite, 'build', '--mode', 'cli'], { cwd: root, encoding: 'utf8' });
-    if (build.status !== 0) throw new Error(`the build failed:\n${build.stdout}${build.stderr}`);
-  } finally {
-    rmSync(lock, { recursive: true, force: true });
-  }
-}
-
-function taken(): boolean {
-  try {
-    mkdirSync(lock);
-    return true;
-  } catch {
-    const held = statSync(lock, { throwIfNoEntry: false });
-    if (held !== undefined && Date.now() - held.mtimeMs > staleLockMs) rmSync(lock, { recursive: true, force: true });
-    return false;
-  }
-}
-
-function builtAt(): number {
-  return statSync(cliFile, { throwIfNoEntry: false })?.mtimeMs ?? 0;
-}
-
-function newestSource(): number {
-  const folders = ['core', 'data', 'electron'].flatMap((folder) => {
-    return readdirSync(join(root, folder), { recursive: true, encoding: 'utf8' }).map((file) =>
-      join(root, folder, file),
-    );
-  });
-  const files = [...folders, join(root, 'vite.config.ts'), join(root, 'package.json')];
-  return Math.max(...files.map((file) => statSync(file, { throwIfNoEntry: false })?.mtimeMs ?? 0));
+  await buildMode('cli', cliFile);
 }
 
 export interface CliRun {

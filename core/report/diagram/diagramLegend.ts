@@ -1,11 +1,12 @@
 /** The symbols that a sheet of the one-line diagram uses, with their names. */
+
+import { KIND_WORDS } from '../../diagram/kindWords.ts';
+import type { Shape } from '../../diagram/shape.ts';
+import * as symbols from '../../diagram/symbols.ts';
+import { label, line, U } from '../../diagram/symbols.ts';
+import type { WiringGraph } from '../../diagram/wiringGraph.ts';
+import { textWidthPt, WORD_PT } from '../../diagram/wiringWords.ts';
 import type { Part } from '../../job/part.ts';
-import type { Shape } from '../document.ts';
-import { KIND_WORDS } from '../wording.ts';
-import * as symbols from './symbols.ts';
-import { label, line, U } from './symbols.ts';
-import type { WiringGraph } from './wiringGraph.ts';
-import { textWidthPt, WORD_PT } from './wiringWords.ts';
 
 interface LegendEntry {
   readonly isShown: (kinds: ReadonlySet<Part['kind']>, isDivided: boolean) => boolean;

@@ -1,15 +1,16 @@
 /** The one-line diagram, both poles in full; where it cannot be drawn legibly, the connections as a table, and why. */
+
+import { KIND_WORDS } from '../../diagram/kindWords.ts';
+import { wiringGraph } from '../../diagram/wiringGraph.ts';
+import type { Layout } from '../../diagram/wiringLayout.ts';
+import { layWiring } from '../../diagram/wiringLayout.ts';
+import { LONGEST_PT } from '../../diagram/wiringWords.ts';
 import type { CheckedJob } from '../../job/job.ts';
 import type { Part } from '../../job/part.ts';
 import { cablesOfPair } from '../../job/part.ts';
 import type { Block, Cell, FigureBlock, Paper, TableBlock } from '../document.ts';
-import { KIND_WORDS } from '../wording.ts';
 import type { Band } from './drawWiring.ts';
 import { drawWiring, sheetHeightPt } from './drawWiring.ts';
-import { wiringGraph } from './wiringGraph.ts';
-import type { Layout } from './wiringLayout.ts';
-import { layWiring } from './wiringLayout.ts';
-import { LONGEST_PT } from './wiringWords.ts';
 
 type Orientation = 'portrait' | 'landscape';
 

@@ -1,17 +1,19 @@
 /** From the places of the plan to lines, symbols and words; a drawing of many rows is divided into sheets, row by row. */
+
+import { CHEMISTRY_WORDS, KIND_WORDS } from '../../diagram/kindWords.ts';
+import type { Place } from '../../diagram/labelPlacer.ts';
+import { boxOf, LabelPlacer } from '../../diagram/labelPlacer.ts';
+import type { Shape } from '../../diagram/shape.ts';
+import * as symbols from '../../diagram/symbols.ts';
+import { label, line, U } from '../../diagram/symbols.ts';
+import type { Pole, WiringGraph } from '../../diagram/wiringGraph.ts';
+import type { Layout, PlacedBox, PlacedDevice, PlacedLink, PlacedPoint } from '../../diagram/wiringLayout.ts';
+import { POLES_PT, ROW_PT, SIDE_PT, TOP_PT, yOf } from '../../diagram/wiringLayout.ts';
+import { cut, deviceDetail, linkDetail, nameWidthPt, WORD_PT } from '../../diagram/wiringWords.ts';
 import type { Part } from '../../job/part.ts';
-import type { FigureBlock, Shape } from '../document.ts';
+import type { FigureBlock } from '../document.ts';
 import { plain } from '../figures.ts';
-import { CHEMISTRY_WORDS, KIND_WORDS } from '../wording.ts';
 import { drawLegend } from './diagramLegend.ts';
-import type { Place } from './labelPlacer.ts';
-import { boxOf, LabelPlacer } from './labelPlacer.ts';
-import * as symbols from './symbols.ts';
-import { label, line, U } from './symbols.ts';
-import type { Pole, WiringGraph } from './wiringGraph.ts';
-import type { Layout, PlacedBox, PlacedDevice, PlacedLink, PlacedPoint } from './wiringLayout.ts';
-import { POLES_PT, ROW_PT, SIDE_PT, TOP_PT, yOf } from './wiringLayout.ts';
-import { cut, deviceDetail, linkDetail, nameWidthPt, WORD_PT } from './wiringWords.ts';
 
 const LEGEND_PT = 26;
 /** Between the middle of a symbol and an upright line that crosses beside it. */

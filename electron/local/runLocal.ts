@@ -1,0 +1,75 @@
+/** The local browser host from its options to its end. */
+import { join, resolve } from 'node:path';
+import type { HostAnswer } from '../../core/host.ts';
+import { dispatch } from '../channel/dispatch.ts';
+import { programVersion } from '../cli/programVersion.ts';
+import { staticFiles } from '../page/staticFiles.ts';
+import { createServices } from '../services/services.ts';
+import { openStore } from '../store/store.ts';
+import { storeFolder } from '../store/storeFolder.ts';
+import { type Machine, usualSaveFolder } from './folders.ts';
+import { localCan, localFileDoor } from './localDoor.ts';
+import type { LocalOptions } from './options.ts';
+import { type LocalServer, loopback, startServer } from './server.ts';
+import { hasDisplay, pageCommands, show } from './showing.ts';
+
+/** Seconds that a host waits for its first page: a browser may have to be found by hand. */
+const firstPageS = 300;
+
+export interface LocalSurroundings {
+  readonly machine: Machine;
+  /** Folder of the built page unless the options name another. */
+  readonly builtPage: string;
+  readonly now: () => Date;
+  readonly print: (line: string) => void;
+  readonly complain: (line: string) => void;
+}
+
+/** Opens the store and the door, and says where; the page is shown, and a named file opened, before this settles. */
+export async function startLocal(options: LocalOptions, surroundings: LocalSurroundings): Promise<LocalServer> {
+  const { machine, now, print, complain } = surroundings;
+  const folder = resolve(storeFolder({ argument: options.store, ...machine }));
+  const store = await openStore({ folder, now });
+  const log = (line: string): void => {
+    complain(`ohmwright: ${line}`);
+  };
+  let server: LocalServer | undefined;
+  const services = createServices({
+    store,
+    door: localFileDoor(machine, resolve(options.saveFolder ?? usualSaveFolder(machine))),
+    about: { kind: 'browser', version: programVersion, can: localCan(machine) },
+    log,
+    end: () => void server?.end(),
+  });
+  try {
+    server = await startServer({
+      page: staticFiles(options.page ?? surroundings.builtPage),
+      answer: async (method, ask, window): Promise<HostAnswer<unknown>> =>
+        await dispatch(services, method, ask, { window }),
+      closeStore: () => {
+        store.close();
+      },
+      address: loopback,
+      port: options.port,
+      patience: { idleS: options.idle, firstS: firstPageS },
+    });
+  } catch (error) {
+    store.close();
+    throw error;
+  }
+  services.onEvent((event) => server?.tell(event));
+  print(server.url);
+  if (options.file !== undefined) await services.openPath(options.file);
+  if (options.browser) await showPage(machine, server.url, join(folder, 'browser'), complain);
+  return server;
+}
+
+async function showPage(
+  machine: Machine,
+  url: string,
+  profile: string,
+  complain: (line: string) => void,
+): Promise<void> {
+  const shown = hasDisplay(machine) && (await show(pageCommands(machine, url, profile)));
+  if (!shown) complain('ohmwright: no browser could be started here; open the address above in one on this machine.');
+}

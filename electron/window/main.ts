@@ -1,0 +1,4 @@
+import * as electron from 'electron';
+import { start } from './start.ts';
+
+void start(electron);

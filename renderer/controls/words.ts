@@ -1,0 +1,159 @@
+/** Plain words for what the job file calls by short names: kinds, fields, choices, states. One thing has one name on every screen. */
+import {
+  CHEMISTRY_WORDS,
+  fieldWords,
+  KIND_WORDS,
+  type Origin,
+  type PartKind,
+  type Practice,
+  type Status,
+} from '../../core/api.ts';
+
+/** Names of fields that read better on a screen than the report's running words; else the report's are used. */
+const FIELDS: Readonly<Record<string, string>> = {
+  acPowerW: 'AC output now',
+  azimuthDeg: 'Faces (0° = north)',
+  blockNominalV: 'Volts of one block',
+  blocksInSeries: 'Blocks in series',
+  continuous: 'Runs 3 h or more',
+  distanceFromSourceM: 'Wire from the source',
+  dropClass: 'How much drop matters',
+  efficiency: 'Efficiency',
+  emfV: 'Rest volts',
+  endOhm: 'Both ends together',
+  inParallel: 'Wires side by side',
+  insulationDegC: 'Insulation good to',
+  linkOhm: 'All links together',
+  loadBreak: 'May be opened under load',
+  loadedConductors: 'Loaded wires together',
+  locationTag: 'Place',
+  manualReset: 'Reset by hand',
+  minusLengthM: 'Length of the minus',
+  minusSize: 'Size of the minus',
+  modulesInSeries: 'Modules in series',
+  on: 'Switched',
+  ratingMv: 'Millivolts at that',
+  run: 'Lies in',
+  segmentOhm: 'Between two taps',
+  sheathed: 'In a sheath',
+  stateOfCharge: 'State of charge',
+  stringsInParallel: 'Strings side by side',
+  surgeS: 'Surge lasts',
+  tiltDeg: 'Tilt (0° = flat)',
+};
+
+/** What a word of the trade means, for who has not met it. */
+const HINTS: Readonly<Record<string, string>> = {
+  conductorDegC: 'Fixes the temperature that its resistance is taken at; else it is found from the current.',
+  cutoffV: 'It switches itself off below this.',
+  emfV: 'Volts at its posts after hours with nothing connected; replaces the curve of its chemistry.',
+  endOhm: 'Resistance of the two lugs together.',
+  interruptA: 'The largest fault current that it can break at the system’s DC volts.',
+  iscA: 'What one module gives into a dead short in full sun.',
+  linkOhm: 'Resistance of the straps between its blocks, added up.',
+  minimumV: 'It stops working below this.',
+  setpointV: 'The volts that it holds once the battery is nearly full.',
+  slopeOhm: 'How its volts rise with current.',
+  stateOfCharge: 'How full: 100 % is full.',
+  vmpV: 'Of one module, at its best working point.',
+  vocV: 'Of one module in full sun with nothing connected.',
+};
+
+const CHOICES: Readonly<Record<string, Readonly<Record<string, string>>>> = {
+  chemistry: {
+    flooded: 'Lead-acid, flooded (wet cells)',
+    agm: 'Lead-acid, AGM (sealed, glass mat)',
+    gel: 'Lead-acid, gel (sealed)',
+    lfp: 'LFP, lithium iron phosphate',
+    nmc: 'NMC, lithium nickel manganese cobalt',
+    nicd: 'NiCd, nickel-cadmium',
+  },
+  metal: { copper: 'Copper', 'tinned-copper': 'Tinned copper', aluminium: 'Aluminium' },
+  stranding: {
+    solid: 'Solid, one wire',
+    stranded: 'Stranded, some thick wires',
+    flexible: 'Flexible, many fine wires',
+  },
+  run: {
+    'free-air': 'Free air',
+    conduit: 'Conduit or trunking',
+    bundle: 'Bundle with others',
+    'engine-space': 'Engine space (hot)',
+    buried: 'Ground',
+  },
+  state: { closed: 'Closed', open: 'Open' },
+  type: { mppt: 'MPPT, finds the best working point', pwm: 'PWM, joins array to battery' },
+  dropClass: { critical: 'Critical (lights of a vessel, radio …)', ordinary: 'Ordinary' },
+  supply: { dc: 'DC', ac: 'AC, through the inverter' },
+};
+
+/** The rule books, by whose tables and rules a job is judged. */
+export const practiceWords: Readonly<Record<Practice, { readonly short: string; readonly long: string }>> = {
+  'us-land': { short: 'US land', long: 'United States, on land' },
+  'us-marine': { short: 'US marine', long: 'United States, aboard a boat' },
+  'iso-marine': { short: 'ISO marine', long: 'International, aboard a boat (ISO)' },
+  'iec-land': { short: 'IEC land', long: 'International, on land (IEC)' },
+};
+
+export const ORIGIN_MEANING: Readonly<Record<Origin, { readonly word: string; readonly meaning: string }>> = {
+  measured: { word: 'measured', meaning: 'taken with a meter or a tape' },
+  label: { word: 'label', meaning: 'read off the part, its papers or the drawing' },
+  default: { word: 'default', meaning: 'taken by this program, since nobody gave it' },
+  guess: { word: 'guess', meaning: 'somebody’s guess' },
+};
+
+export const STATUS_MEANING: Readonly<Record<Status, string>> = {
+  published: 'published',
+  'common-practice': 'common practice, no source',
+  'from-memory': 'from memory: look it up before you rely on it',
+};
+
+/** `battery string`, `out-and-back run`. */
+export function kindWord(kind: PartKind): string {
+  return KIND_WORDS[kind];
+}
+
+export function chemistryWord(chemistry: keyof typeof CHEMISTRY_WORDS): string {
+  return CHEMISTRY_WORDS[chemistry];
+}
+
+/** The name of a field as it stands before it: `Rated amps`. A field of the job itself goes by its path. */
+export function fieldWord(field: string): string {
+  const last = field.split('.').at(-1) ?? field;
+  const known = FIELDS[last] ?? fieldWords(last);
+  return known.charAt(0).toUpperCase() + known.slice(1);
+}
+
+export function fieldHint(field: string): string | undefined {
+  return HINTS[field];
+}
+
+/** A choice of a field in plain words; the word of the job file where there are none. */
+export function choiceWord(field: string, choice: string): string {
+  if (field === 'practice' && Object.hasOwn(practiceWords, choice)) return practiceWords[choice as Practice].long;
+  return CHOICES[field]?.[choice] ?? choice;
+}
+
+/** What stands for yes and no in a field that is one or the other. */
+export function flagWords(field: string): { readonly yes: string; readonly no: string } {
+  return field === 'on' ? { yes: 'On', no: 'Off' } : { yes: 'Yes', no: 'No' };
+}
+
+const STATES: Readonly<Record<string, string>> = {
+  off: 'Off',
+  open: 'Open: nothing flows',
+  unfed: 'Not fed',
+  'dropped-out': 'Dropped out: too few volts',
+  blocking: 'Blocking',
+  conducting: 'Conducting',
+  'current-limited': 'Gives all the current that it can',
+  'voltage-held': 'Holds its set volts',
+  idle: 'Idle',
+  tracking: 'At the array’s best working point',
+};
+
+/** The state that an answer names, in plain words. */
+export function stateWord(state: string): string {
+  const plain = state.replaceAll('-', ' ');
+  return STATES[state] ?? plain.charAt(0).toUpperCase() + plain.slice(1);
+}

@@ -1,0 +1,28 @@
+/** A busbar: an upright or level bar on which its junctions lie. */
+import type { NodeProps } from '@xyflow/react';
+import { memo, type ReactElement } from 'react';
+import { SeverityMark } from '../controls/SeverityMark.tsx';
+import { useOpenJob } from '../state/openJob.ts';
+import type { PartFlowNode } from './flowNodes.ts';
+import { useLive } from './live.ts';
+import { classesOf } from './PartNode.tsx';
+
+export const BarNode = memo(function BarNode({ data: { placed }, selected, width = 0, height = 0 }: NodeProps<PartFlowNode>): ReactElement {
+  const { part, drawn, rating } = placed;
+  const live = useLive((now) => now.parts.get(part.id));
+  const isLit = useOpenJob(({ lit }) => lit.includes(part.id));
+  const figure = live?.line ?? '';
+  return (
+    <div className={`${classesOf('bar', { selected, isLit, live })} ${drawn.pose.isUpright ? 'upright' : 'level'}`}>
+      <div className="stroke" style={drawn.pose.isUpright ? { height } : { width }} />
+      <div className="words" aria-hidden>
+        <span className="id">
+        {live?.severity != null && <SeverityMark severity={live.severity} hideWord />}
+          {part.id}
+        </span>
+        {rating !== '' && <span className="rating">{rating}</span>}
+        {figure !== '' && <span className="figure">{figure}</span>}
+      </div>
+    </div>
+  );
+});

@@ -1,0 +1,125 @@
+/** The drawing of the open job: where everything stands and what is drawn for each part, with the hand's move on top. */
+import { useMemo, useRef } from 'react';
+import type { CheckedJob, DrawnPart, JunctionId, Part, PartId, Point, Positions } from '../../core/api.ts';
+import { drawPart, EARTH, entriesOf, freeSide, junctionsOf, moveBy, positionsOf, ratingWords } from '../../core/api.ts';
+import { useOpenJob } from '../state/openJob.ts';
+import { type Drag, useView } from './view.ts';
+
+/** A part as it is drawn. The object stays the same as long as nothing of it looks different. */
+export interface PlacedPart {
+  readonly key: string;
+  readonly part: Part;
+  readonly at: Point;
+  readonly drawn: DrawnPart;
+  /** Side of a device that is free for its words. */
+  readonly side: 'left' | 'right';
+  readonly rating: string;
+}
+export interface PlacedJunction {
+  readonly key: string;
+  readonly id: JunctionId;
+  readonly at: Point;
+  readonly label: string;
+  readonly isReference: boolean;
+  /** Its figure stands under it: it is the minus of something. */
+  readonly isLow: boolean;
+  /** A pole of a device or a tap of a bar: told even when the drawing is small. */
+  readonly isMain: boolean;
+}
+export interface Drawing {
+  readonly job: CheckedJob;
+  /** Without the hand's move. */
+  readonly positions: Positions;
+  readonly parts: readonly PlacedPart[];
+  readonly junctions: readonly PlacedJunction[];
+}
+
+export function useDrawing(): Drawing {
+  const job = useOpenJob((open) => open.job);
+  const drag = useView((view) => view.drag);
+  const positions = useMemo(() => positionsOf(job), [job]);
+  const before = useRef<{ parts: Map<string, PlacedPart>; junctions: Map<string, PlacedJunction> }>({
+    parts: new Map(),
+    junctions: new Map(),
+  });
+  return useMemo(() => {
+    const shown = withDrag(job, positions, drag);
+    const parts = placeParts(job, shown).map((placed) => kept(placed, placed.part.id, before.current.parts));
+    const junctions = placeJunctions(job, shown).map((placed) => kept(placed, placed.id, before.current.junctions));
+    before.current = {
+      parts: new Map(parts.map((placed) => [placed.part.id, placed])),
+      junctions: new Map(junctions.map((placed) => [placed.id, placed])),
+    };
+    return { job, positions, parts, junctions };
+  }, [job, positions, drag]);
+}
+
+function kept<T extends { readonly key: string }>(now: T, id: string, before: ReadonlyMap<string, T>): T {
+  const old = before.get(id);
+  return old?.key === now.key ? old : now;
+}
+
+export function withDrag(job: CheckedJob, positions: Positions, drag: Drag | null): Positions {
+  if (drag === null) return positions;
+  const moved = moveBy(job.parts, { ...drag, positions });
+  return {
+    parts: new Map([...positions.parts, ...moved.parts]),
+    junctions: new Map([...positions.junctions, ...moved.junctions]),
+  };
+}
+
+function placeParts(job: CheckedJob, positions: Positions): readonly PlacedPart[] {
+  const placeOf = (junction: JunctionId): Point | undefined => positions.junctions.get(junction);
+  const entries = entriesOf(job.parts, placeOf);
+  const around = { placeOf, entryOf: (junction: JunctionId) => entries.get(junction) ?? 'any' } as const;
+  const far = farEnds(job);
+  return job.parts.flatMap((part): readonly PlacedPart[] => {
+    const at = positions.parts.get(part.id);
+    if (at === undefined) return [];
+    const drawn = drawPart(part, at, around);
+    const rating = ratingWords(part);
+    const side = 'plus' in part ? freeSide(at, (far.get(part.id) ?? []).flatMap((id) => positions.parts.get(id) ?? [])) : 'right';
+    const state = 'state' in part ? part.state : '';
+    const key = JSON.stringify([part.kind, part.label, rating, state, at, side, drawn]);
+    return [{ key, part, at, drawn, side, rating }];
+  });
+}
+
+/** The parts that each device shares a junction with. */
+function farEnds(job: CheckedJob): ReadonlyMap<PartId, readonly PartId[]> {
+  const touching = new Map<JunctionId, PartId[]>();
+  for (const part of job.parts) {
+    for (const junction of junctionsOf(part)) touching.set(junction, [...(touching.get(junction) ?? []), part.id]);
+  }
+  return new Map(
+    job.parts
+      .filter((part) => 'plus' in part)
+      .map((part) => [part.id, junctionsOf(part).flatMap((each) => touching.get(each) ?? []).filter((id) => id !== part.id)]),
+  );
+}
+
+function placeJunctions(job: CheckedJob, positions: Positions): readonly PlacedJunction[] {
+  const low = new Set<JunctionId>();
+  const main = new Set<JunctionId>();
+  for (const part of job.parts) {
+    if ('plus' in part) {
+      low.add(part.minus);
+      main.add(part.plus).add(part.minus);
+    } else if (part.kind === 'pair' || part.kind === 'controller' || part.kind === 'converter') {
+      low.add(part.from.minus).add(part.to.minus);
+    } else if (part.kind === 'busbar') {
+      const [first] = part.junctions;
+      if (first !== undefined) main.add(first);
+    }
+  }
+  const bars = job.parts.filter((part) => part.kind === 'busbar');
+  for (const bar of bars) if (bar.junctions.some((each) => low.has(each))) for (const each of bar.junctions) low.add(each);
+  return [...positions.junctions].flatMap(([id, at]): readonly PlacedJunction[] => {
+    if (id === EARTH) return [];
+    const note = job.junctions.get(id);
+    const label = note?.label ?? id;
+    const isReference = note?.reference === true;
+    const [isLow, isMain] = [low.has(id), main.has(id)];
+    return [{ key: JSON.stringify([at, label, isReference, isLow, isMain]), id, at, label, isReference, isLow, isMain }];
+  });
+}

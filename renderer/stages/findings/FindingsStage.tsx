@@ -1,0 +1,107 @@
+/** The verdicts, worst first; what could not be judged and the figure it waits for; what was compared and held. */
+import Box from '@mui/material/Box';
+import Typography from '@mui/material/Typography';
+import { type ReactElement, useMemo, useRef, useState } from 'react';
+import type { CheckReport } from '../../../core/api.ts';
+import { Folded } from '../../controls/Folded.tsx';
+import { useOpenJob } from '../../state/openJob.ts';
+import { PracticeChoice } from '../site/PracticeChoice.tsx';
+import { CaseTrouble } from './CaseTrouble.tsx';
+import { FindingFilters } from './FindingFilters.tsx';
+import { FindingList } from './FindingList.tsx';
+import { filtered, isFiltered, listed, NO_FILTER, severityCounts } from './findingList.ts';
+import { NotDone } from './NotDone.tsx';
+import { PassedList } from './PassedList.tsx';
+
+export function FindingsStage(): ReactElement {
+  const answers = useOpenJob(({ answers }) => answers);
+  const trouble = useOpenJob(({ solverTrouble }) => solverTrouble);
+  const count = useRef<HTMLOutputElement>(null);
+  const points = useMemo(() => [...(answers?.points.values() ?? [])], [answers]);
+  return (
+    <Box sx={{ height: '100%', minHeight: 0, overflow: 'auto', padding: '1rem 1.5rem 2rem' }}>
+      <Typography component="h1" variant="h1">
+        Findings
+      </Typography>
+      <Box
+        component="output"
+        ref={count}
+        tabIndex={-1}
+        aria-live="polite"
+        sx={{ display: 'block', mb: '0.75rem', color: 'var(--soft)', fontVariantNumeric: 'tabular-nums' }}
+      >
+        {answers === null ? 'The job is being solved …' : countWords(answers.report)}
+      </Box>
+      {trouble !== null && (
+        <Box role="alert" sx={{ color: 'var(--stop)', mb: '0.75rem' }}>
+          There are no new answers: {trouble}
+        </Box>
+      )}
+      <NoPractice />
+      <CaseTrouble points={points} />
+      {answers !== null && <Verdicts report={answers.report} onMade={() => count.current?.focus()} />}
+    </Box>
+  );
+}
+
+function Verdicts({ report, onMade }: { readonly report: CheckReport; readonly onMade: () => void }): ReactElement {
+  const job = useOpenJob(({ job }) => job);
+  const [filter, setFilter] = useState(NO_FILTER);
+  const [openKey, setOpenKey] = useState<string | null>(null);
+  const all = useMemo(() => listed(report.findings), [report]);
+  const shown = useMemo(() => filtered(all, filter, job), [all, filter, job]);
+  const held = report.passed.reduce((sum, { count }) => sum + count, 0);
+  return (
+    <>
+      {all.length > 0 && (
+        <>
+          <FindingFilters all={all} filter={filter} onChange={setFilter} />
+          <Box sx={{ minHeight: '1.75rem', pt: '0.375rem', color: 'var(--soft)' }}>
+            {isFiltered(filter) && `${String(shown.length)} of ${String(all.length)} shown`}
+          </Box>
+          <FindingList shown={shown} openKey={openKey} onOpen={setOpenKey} onMade={onMade} />
+        </>
+      )}
+      <Box sx={{ mt: '1rem' }}>
+        <Folded title="Checks not done for want of a figure" aside={report.notChecked.length} open>
+          <NotDone rows={report.notChecked} />
+        </Folded>
+        <Folded title="Comparisons that held" aside={held}>
+          <PassedList passed={report.passed} />
+        </Folded>
+      </Box>
+    </>
+  );
+}
+
+/** `4 findings: 1 stop, 3 fix; 12 checks not done for want of a figure`. */
+export function countWords(report: CheckReport): string {
+  const { findings, notChecked, passed } = report;
+  const held = passed.reduce((sum, { count }) => sum + count, 0);
+  const open =
+    notChecked.length === 0
+      ? 'every check had its figures'
+      : `${String(notChecked.length)} not done for want of a figure`;
+  if (findings.length === 0) return `No finding in ${String(held)} checks; ${open}.`;
+  const told = severityCounts(findings).map(([severity, many]) => `${String(many)} ${severity}`);
+  const noun = findings.length === 1 ? 'finding' : 'findings';
+  return `${String(findings.length)} ${noun}, worst first: ${told.join(', ')}. ${String(held)} comparisons held; ${open}.`;
+}
+
+/** A job that names no practice is judged by no book: that comes first, with the choice at hand. */
+function NoPractice(): ReactElement | null {
+  const assumed = useOpenJob(({ job }) => job.practiceAssumed === true);
+  if (!assumed) return null;
+  return (
+    <Box component="section" aria-labelledby="no-practice" sx={{ mb: '1rem', maxWidth: '60rem' }}>
+      <Typography component="h2" variant="h2" id="no-practice">
+        No rule book is applied yet
+      </Typography>
+      <Box component="p" sx={{ mt: '0.25rem', mb: '0.5rem' }}>
+        This job names no practice, so nothing below was judged by a rule book: only what needs none. Choose the one
+        that is in force where the system stands.
+      </Box>
+      <PracticeChoice />
+    </Box>
+  );
+}

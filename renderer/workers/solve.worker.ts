@@ -1,0 +1,40 @@
+/** Solves every operating case of a job and runs the checks, off the screen's thread. */
+/// <reference lib="webworker" />
+import type { CheckedJob, OperatingCase, OperatingPoint } from '../../core/api.ts';
+import { caseById, checkJob, operatingPoint, runChecks } from '../../core/api.ts';
+import { tables } from '../../data/index.ts';
+import type { SolveAsk, SolveReply } from './solveMessages.ts';
+
+self.addEventListener('message', ({ data }: MessageEvent<SolveAsk>) => {
+  self.postMessage(answer(data));
+});
+
+function answer({ generation, draft }: SolveAsk): SolveReply {
+  try {
+    const start = performance.now();
+    const read = checkJob(draft);
+    if (!read.ok) return { ok: false, generation, message: read.issues.map(({ message }) => message).join(' ') };
+    const job = read.value;
+    const readAt = performance.now();
+    const points = new Map(casesOf(job).map((one) => [one.id, solve(job, one)]));
+    const solvedAt = performance.now();
+    const judged = job.cases.flatMap(({ id }) => points.get(id) ?? []);
+    const report = runChecks({ job, tables, cases: job.cases, points: judged });
+    const ms = { read: readAt - start, solve: solvedAt - readAt, check: performance.now() - solvedAt };
+    return { ok: true, generation, points, report, ms };
+  } catch (error) {
+    return { ok: false, generation, message: error instanceof Error ? error.message : String(error) };
+  }
+}
+
+/** The job's own cases, and the one that every job has. */
+function casesOf(job: CheckedJob): readonly OperatingCase[] {
+  const rest = caseById(job, 'at-rest');
+  return rest === undefined || job.cases.some(({ id }) => id === rest.id) ? job.cases : [...job.cases, rest];
+}
+
+/** A start by the battery's first second, all else over minutes; as the command line does. */
+function solve(job: CheckedJob, operatingCase: OperatingCase): OperatingPoint {
+  const model = operatingCase.surge === undefined ? 'slow' : 'fast';
+  return operatingPoint({ job, operatingCase, tables, model });
+}
