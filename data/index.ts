@@ -9,4 +9,5 @@ export const tables: Tables = { conductors, chemistry: chemistryTables, devices,
 
 export type { Example } from './examples/index.ts';
 export { examples } from './examples/index.ts';
-export { starters } from './starters.ts';
+export type { StarterPattern } from './starters.ts';
+export { starterPatterns, starters } from './starters.ts';

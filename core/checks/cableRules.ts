@@ -6,7 +6,7 @@ import { sizeText } from '../units/conductorSize.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { demandsOf } from './continuousCurrent.ts';
 import type { Judge, Rule, RuleOutcome } from './rule.ts';
-import { ELSEWHERE, isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
+import { ELSEWHERE, isOver, missing, PASS, sizeWanted, Tally, type Verdict, wanted } from './tally.ts';
 import { amps, apart, field, list, percent, shortList, titleOf, together, withEdition } from './wording.ts';
 
 export const cableOverloaded: Rule = {
@@ -65,7 +65,7 @@ function eachCable(context: CheckContext, rule: Rule, judgement: Judgement): Rul
     const verdicts = context.steady.map((one) => {
       const cable = one.part(drawn.id) as CablePart;
       const ampacity = context.ampacityOf(cable, one.ambientDegC);
-      if ('missing' in ampacity) return missing(ampacity.missing);
+      if ('missing' in ampacity) return missing(ampacity.missing, ...sizeWanted(cable));
       return judgement(context, { cable, one, ampacity });
     });
     tally.judge([drawn.id], verdicts);
@@ -102,13 +102,14 @@ const withoutMargin: Judgement = (context, { cable, one, ampacity }) => {
   const demand = demandsOf(context, one).of(cable.id);
   if (demand === undefined) return undetermined(cable, one);
   const uncorrected = context.uncorrectedAmpacityOf(cable, ampacity);
-  if ('missing' in uncorrected) return missing(uncorrected.missing);
+  if ('missing' in uncorrected) return missing(uncorrected.missing, ...sizeWanted(cable));
   const baseA = uncorrected.finalA;
   if (!isOver(demand.mostA, baseA)) return PASS;
   if (isOver(demand.runningA, ampacity.finalA)) return ELSEWHERE;
   if (!isOver(demand.leastA, baseA)) {
     return missing(
       `${shortList(demand.unmarked.map((load) => field(load, 'continuous')))}: it decides whether cable ${cable.id} has margin enough`,
+      ...demand.unmarked.map((load) => wanted(load, 'continuous')),
     );
   }
   const [need, base] = apart(demand.leastA, baseA, 'A');

@@ -7,8 +7,8 @@ import type { Basis } from '../tables/status.ts';
 import { type ChargingPart, chargesIn, mostA } from './chargeShare.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
-import { isOver, isUnder, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { apart, degrees, field, titleOf, together, volts } from './wording.ts';
+import { isOver, isUnder, missing, missingField, PASS, Tally, type Verdict, wanted } from './tally.ts';
+import { apart, degrees, titleOf, together, volts } from './wording.ts';
 
 const CHEMISTRY_WINDOW: Basis = {
   source: 'SRC-BAT-LIMIT-PRACTICE',
@@ -83,12 +83,12 @@ const voltsVerdict: Judgement = (context, { charger, string, one, diodes, isInSe
   }
   const unknown = diodes.find(({ forwardV }) => forwardV === undefined);
   if (unknown !== undefined)
-    return [missing(`${field(unknown, 'forwardV')}: it lies between ${charger.id} and string ${string.id}`)];
+    return [missingField(unknown, 'forwardV', `: it lies between ${charger.id} and string ${string.id}`)];
   // A diode keeps its forward volts from the string.
   const keptV = diodes.reduce((sum, { forwardV }) => sum + (forwardV ?? 0), 0);
   const { chemistry, blockNominalV, blocksInSeries } = string;
   const count = cellsPerBlock(chemistry, blockNominalV, context.tables.chemistry);
-  if (!count.known) return [missing(`${count.missing} (string ${string.id})`)];
+  if (!count.known) return [missing(`${count.missing} (string ${string.id})`, wanted(string, 'blockNominalV'))];
   const cells = blocksInSeries * count.cells;
   const temperatureDegC = string.temperatureDegC ?? one.ambientDegC;
   const window = chargeWindow({ chemistry, cells, temperatureDegC }, context.tables.chemistry);
@@ -153,7 +153,10 @@ const coldVerdict: Judgement = (context, { string, one, charger }) => {
   if (coldest !== undefined && isUnder(coldest, lowest.value))
     return [tooCold({ ...at, degC: coldest, severity: 'look' })];
   return [
-    isTold === undefined ? missing(`temperatureDegC of string ${string.id}, or ambientDegC of case ${one.id}`) : PASS,
+    isTold === undefined ? missing(
+          `temperatureDegC of string ${string.id}, or ambientDegC of case ${one.id}`,
+          wanted(string, 'temperatureDegC'),
+        ) : PASS,
   ];
 };
 

@@ -6,8 +6,8 @@ import { type ChargingPart, chargesIn } from './chargeShare.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { feedersOf } from './feeding.ts';
 import type { Judge, Rule, RuleOutcome } from './rule.ts';
-import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { apart, field, list, percent, titleOf, volts, withEdition } from './wording.ts';
+import { isOver, missing, missingField, NOMINAL_VOLTS, PASS, Tally, type Verdict } from './tally.ts';
+import { apart, list, percent, titleOf, volts, withEdition } from './wording.ts';
 
 export const dropTooBig: Rule = {
   id: 'drop-too-big',
@@ -44,7 +44,7 @@ function dropVerdict(
   const feed = feedersOf(one).of(part);
   if (feed === undefined) return [missing(`a source that feeds ${part.kind} ${part.id} in case ${one.id}`)];
   const nominalV = context.volts.nominalBetween(part.plus, part.minus);
-  if (nominalV === undefined) return [missing(`nominalV in the settings: nominal volts of ${part.kind} ${part.id}`)];
+  if (nominalV === undefined) return [missing(`nominalV in the settings: nominal volts of ${part.kind} ${part.id}`, NOMINAL_VOLTS)];
   const fraction = (feed.volts - voltageV) / nominalV;
   const critical = limitOf(context, 'critical');
   const ordinary = limitOf(context, 'ordinary');
@@ -53,8 +53,10 @@ function dropVerdict(
   if (!isOver(fraction, Math.min(critical.value, ordinary.value))) return [PASS];
   if (dropClass === undefined && !isOver(fraction, Math.max(critical.value, ordinary.value))) {
     return [
-      missing(
-        `${field(part, 'dropClass')}: ${percent(fraction)} is more than a critical load may lose (${percent(critical.value)}) and not more than an ordinary one (${percent(ordinary.value)})`,
+      missingField(
+        part,
+        'dropClass',
+        `: ${percent(fraction)} is more than a critical load may lose (${percent(critical.value)}) and not more than an ordinary one (${percent(ordinary.value)})`,
       ),
     ];
   }
@@ -147,7 +149,7 @@ function chargeDropVerdict(
   if (stringV === null || stringA === null || stringA >= 0) return [];
   const nominalV = context.volts.nominalBetween(string.plus, string.minus);
   if (nominalV === undefined)
-    return [missing(`nominalV in the settings: nominal volts at ${charger.kind} ${charger.id}`)];
+    return [missing(`nominalV in the settings: nominal volts at ${charger.kind} ${charger.id}`, NOMINAL_VOLTS)];
   const fraction = (outV - stringV) / nominalV;
   if (!isOver(fraction, CHARGE_DROP)) return [PASS];
   const [lost, allowed] = apart(fraction, CHARGE_DROP, '1');

@@ -27,12 +27,20 @@ export interface Finding {
   readonly basisStatus: Status;
 }
 
+/** A figure that a check wants: a field of a part, or (with no part) of the job itself, as `practice` or `settings.nominalV`. */
+export interface WantedField {
+  readonly part: PartId | null;
+  readonly field: string;
+}
+
 /** A check that could not be made for want of a figure: never counted as passed. */
 export interface NotChecked {
   readonly rule: string;
   readonly parts: readonly PartId[];
   /** What is missing, in words a person can act on, e.g. `ratingV of fuse F3`. */
   readonly missing: string;
+  /** The fields that would settle it, where there are any; a cable of an out-and-back run by its own id. */
+  readonly fields?: readonly WantedField[];
 }
 
 export interface Passed {

@@ -3,7 +3,7 @@ import { PART_RATING } from './bases.ts';
 import type { CheckContext } from './checkContext.ts';
 import { demandsOf } from './continuousCurrent.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
-import { ELSEWHERE, isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
+import { ELSEWHERE, isOver, missing, PASS, Tally, type Verdict, wanted } from './tally.ts';
 import type { Device } from './wiring.ts';
 import { isDevice } from './wiring.ts';
 import { amps, apart, field, percent, shortList, titleOf, withEdition } from './wording.ts';
@@ -59,6 +59,7 @@ export const fuseUnderContinuous: Rule = {
       if (!isOver(demand.leastA, device.ratingA)) {
         return missing(
           `${shortList(demand.unmarked.map((load) => field(load, 'continuous')))}: it decides whether ${device.kind} ${device.id} has margin enough`,
+          ...demand.unmarked.map((load) => wanted(load, 'continuous')),
         );
       }
       const [needed, rated] = apart(demand.leastA, device.ratingA, 'A');

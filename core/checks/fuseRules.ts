@@ -7,7 +7,7 @@ import { sizeText } from '../units/conductorSize.ts';
 import type { CheckContext } from './checkContext.ts';
 import { protectedCablesOf } from './protectedCables.ts';
 import type { Judge, Rule } from './rule.ts';
-import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
+import { isOver, missing, NOMINAL_VOLTS, PASS, sizeWanted, Tally, type Verdict } from './tally.ts';
 import type { Device } from './wiring.ts';
 import { isDevice } from './wiring.ts';
 import { amps, apart, titleOf, together, withEdition } from './wording.ts';
@@ -79,10 +79,10 @@ function eachProtectedCable(context: CheckContext, rule: Rule, judgement: Judgem
 
 const overCable: Judgement = (context, { device, cable, hottest }) => {
   const ampacity = context.ampacityOf(cable, hottest.ambientDegC);
-  if ('missing' in ampacity) return [missing(ampacity.missing)];
+  if ('missing' in ampacity) return [missing(ampacity.missing, ...sizeWanted(cable))];
   const nominalV = context.volts.nominalAt(device.from) ?? context.volts.nominalAt(device.to);
   const allowed = largestDevice({ ampacityA: ampacity.finalA, nominalV }, context);
-  if ('missing' in allowed) return [missing(`${allowed.missing} (${device.kind} ${device.id})`)];
+  if ('missing' in allowed) return [missing(`${allowed.missing} (${device.kind} ${device.id})`, NOMINAL_VOLTS)];
   if (!isOver(device.ratingA, allowed.ratingA)) return [PASS];
   const [rated, most] = apart(device.ratingA, allowed.ratingA, 'A');
   return [

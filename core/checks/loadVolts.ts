@@ -6,8 +6,8 @@ import { assumedSources, overRange, stiffestStrings } from './assumed.ts';
 import { CIRCUIT_LAW, entered } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
-import { isOver, isUnder, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { apart, field, titleOf, together, watts } from './wording.ts';
+import { isOver, isUnder, missingField, PASS, Tally, type Verdict } from './tally.ts';
+import { apart, titleOf, together, watts } from './wording.ts';
 
 export const loadStarved: Rule = {
   id: 'load-starved',
@@ -49,7 +49,7 @@ function starvedVerdict(context: CheckContext, drawn: LoadPart | InverterPart, o
   // What is off needs no volts; a load without a feed is told by the wiring rules.
   if (!part.on || answer.state === 'unfed' || answer.voltageV === null) return [];
   const leastV = leastVoltsOf(part);
-  if (leastV === undefined) return [missing(field(part, leastVoltsField(part)))];
+  if (leastV === undefined) return [missingField(part, leastVoltsField(part))];
   const basis = together(CIRCUIT_LAW, entered(part, leastVoltsField(part)));
   if (answer.state === 'dropped-out') {
     const held = context.solveChanged(one, [withoutDropOut(part)]);
@@ -137,7 +137,7 @@ function runOverfed(context: CheckContext): RuleOutcome {
       const solvedV = voltageV ?? Number.NEGATIVE_INFINITY;
       const highestV = Math.max(solvedV, setpoint?.volts ?? Number.NEGATIVE_INFINITY);
       if (!Number.isFinite(highestV)) return [];
-      if (part.maximumV === undefined) return [missing(field(part, 'maximumV'))];
+      if (part.maximumV === undefined) return [missingField(part, 'maximumV')];
       if (!isOver(highestV, part.maximumV)) return [PASS];
       const [found, most] = apart(highestV, part.maximumV, 'V');
       const from =

@@ -3,9 +3,9 @@ import type { BusbarPart, DiodePart, ShuntPart, SwitchPart } from '../job/part.t
 import { entered, PART_RATING, VOLTS_RATING } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
-import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
+import { isOver, missing, missingField, PASS, Tally, type Verdict } from './tally.ts';
 import { isOpen, joined } from './wiring.ts';
-import { amps, apart, field, titleOf, together } from './wording.ts';
+import { amps, apart, titleOf, together } from './wording.ts';
 
 export const voltsRatingLow: Rule = {
   id: 'volts-rating-low',
@@ -27,7 +27,7 @@ function runVoltsRating(context: CheckContext): RuleOutcome {
     if (part.kind !== 'fuse' && part.kind !== 'breaker' && part.kind !== 'switch' && part.kind !== 'busbar') continue;
     const highest = context.volts.highestAt(joined(part)[0]!);
     if (part.ratingV === undefined) {
-      tally.judge([part.id], [missing(field(part, 'ratingV'))]);
+      tally.judge([part.id], [missingField(part, 'ratingV')]);
     } else if (highest === undefined) {
       tally.judge(
         [part.id],
@@ -50,7 +50,7 @@ function runVoltsRating(context: CheckContext): RuleOutcome {
         ],
       );
     } else {
-      tally.judge([part.id], [highest.missing === undefined ? PASS : missing(highest.missing)]);
+      tally.judge([part.id], [highest.missing === undefined ? PASS : missing(highest.missing.words, highest.missing.field)]);
     }
   }
   return tally.outcome();
@@ -71,7 +71,7 @@ export const ratingUnderCurrent: Rule = {
     eachRated(context, ratingUnderCurrent, ['switch', 'busbar', 'diode'], (part, one) => {
       const carriedA = currentIn(part, one);
       if (typeof carriedA !== 'number') return missing(carriedA.missing);
-      if (part.ratingA === undefined) return missing(field(part, 'ratingA'));
+      if (part.ratingA === undefined) return missingField(part, 'ratingA');
       return againstRating({ part, one, carriedA, ratingA: part.ratingA });
     }),
 };

@@ -5,7 +5,7 @@ import type { PracticeTable } from '../tables/practiceTable.ts';
 import type { Basis } from '../tables/status.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { CheckContext } from './checkContext.ts';
-import type { Finding } from './finding.ts';
+import type { Finding, WantedField } from './finding.ts';
 import type { SinglePart } from './wiring.ts';
 
 /** What a rule is about; rules of one family stand in one file or a few. */
@@ -50,6 +50,7 @@ export interface RankedFinding {
 export interface NotJudged {
   readonly parts: readonly PartId[];
   readonly missing: string;
+  readonly fields?: readonly WantedField[];
 }
 
 export interface RuleOutcome {

@@ -16,14 +16,18 @@ export type { CheckRequest } from './checkContext.ts';
  * A job for which `missingFigures` has issues cannot be solved, so it must not come here.
  */
 export function runChecks(request: CheckRequest): CheckReport {
-  const context = new CheckContext(request);
+  return runRules(new CheckContext(request), rules);
+}
+
+/** The same with some of the rules only. */
+export function runRules(context: CheckContext, chosen: readonly Rule[]): CheckReport {
   const ranked: RankedFinding[] = [];
   const notChecked: NotChecked[] = [];
   const passed: Passed[] = [];
-  for (const rule of rules) {
+  for (const rule of chosen) {
     const outcome = outcomeOf(rule, context);
     ranked.push(...outcome.findings);
-    for (const { parts, missing } of outcome.notChecked) notChecked.push({ rule: rule.id, parts, missing });
+    for (const gap of outcome.notChecked) notChecked.push({ rule: rule.id, ...gap });
     if (outcome.passed > 0) passed.push({ rule: rule.id, count: outcome.passed });
   }
   return { findings: worstFirst(ranked), notChecked, passed };
@@ -35,7 +39,7 @@ function outcomeOf(rule: Rule, context: CheckContext): RuleOutcome {
   if (!context.drawn.some(({ kind }) => rule.kinds.includes(kind))) return NOTHING;
   if (rule.byPractice && context.job.practiceAssumed === true) {
     const missing = 'practice of the job: which rule book judges it';
-    return { ...NOTHING, notChecked: [{ parts: [], missing }] };
+    return { ...NOTHING, notChecked: [{ parts: [], missing, fields: [{ part: null, field: 'practice' }] }] };
   }
   const outcome = rule.run(context);
   const gaps = gapsOf(rule, context);

@@ -9,8 +9,8 @@ import { COMMON_PRACTICE, entered } from './bases.ts';
 import { bulkChargeShares } from './chargeShare.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
-import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { amps, apart, field, titleOf } from './wording.ts';
+import { isOver, missing, missingField, PASS, Tally, type Verdict } from './tally.ts';
+import { amps, apart, titleOf } from './wording.ts';
 
 const CHEMISTRY_RATES: Basis = {
   source: 'SRC-BAT-LIMIT-PRACTICE',
@@ -73,13 +73,13 @@ function limitFor(
   context: CheckContext,
   string: StringPart,
   direction: 'charge' | 'discharge',
-): CurrentLimit | { readonly missing: string } {
+): CurrentLimit | { readonly wants: 'maxChargeA' | 'maxDischargeA' } {
   const name = direction === 'charge' ? 'maxChargeA' : 'maxDischargeA';
   const own = string[name];
   if (own !== undefined) return { softA: own, hardA: own, what: `its ${name}`, basis: entered(string, name) };
   const usual = currentLimits(string, context.tables.chemistry);
   const rate: Banded | undefined = direction === 'charge' ? usual.chargeMaxA : usual.dischargeA;
-  if (rate === undefined) return { missing: field(string, name) };
+  if (rate === undefined) return { wants: name };
   const what = `usual for ${string.chemistry} of ${string.capacityAh} Ah`;
   return { softA: rate.value, hardA: rate.high, what, basis: rate.basis };
 }
@@ -100,7 +100,7 @@ const dischargeVerdict: Judgement = (context, string, one) => {
   const { currentA } = one.answer(string.id);
   if (currentA === null) return missing(`current of string ${string.id} in case ${one.id}`);
   const limit = limitFor(context, string, 'discharge');
-  if ('missing' in limit) return missing(limit.missing);
+  if ('wants' in limit) return missingField(string, limit.wants);
   return currentVerdict({ string, one, flowA: Math.max(0, currentA), verb: 'gives' }, limit);
 };
 
@@ -108,7 +108,7 @@ const chargeVerdict: Judgement = (context, string, one) => {
   const { currentA } = one.answer(string.id);
   if (currentA === null) return missing(`current of string ${string.id} in case ${one.id}`);
   const limit = limitFor(context, string, 'charge');
-  if ('missing' in limit) return missing(limit.missing);
+  if ('wants' in limit) return missingField(string, limit.wants);
   return currentVerdict({ string, one, flowA: Math.max(0, -currentA), verb: 'takes' }, limit);
 };
 
@@ -137,8 +137,8 @@ function runChargeTooStrong(context: CheckContext): RuleOutcome {
   for (const one of context.cases) {
     for (const share of bulkChargeShares(context, one)) {
       const { string } = share;
-      const limit = 'missing' in share ? share : limitFor(context, string, 'charge');
-      const verdict = 'missing' in limit ? missing(limit.missing) : shareVerdict(share as BulkShare, one, limit);
+      const verdict =
+        'missing' in share ? missing(share.missing) : shareVerdict(share, one, limitFor(context, string, 'charge'));
       verdicts.set(string.id, [...(verdicts.get(string.id) ?? []), verdict]);
     }
   }
@@ -148,8 +148,9 @@ function runChargeTooStrong(context: CheckContext): RuleOutcome {
 
 type BulkShare = Extract<ReturnType<typeof bulkChargeShares>[number], { shareA: number }>;
 
-function shareVerdict(share: BulkShare, one: SolvedCase, limit: CurrentLimit): Verdict {
+function shareVerdict(share: BulkShare, one: SolvedCase, limit: ReturnType<typeof limitFor>): Verdict {
   const { string, shareA, totalA, chargers } = share;
+  if ('wants' in limit) return missingField(string, limit.wants);
   if (!isOver(shareA, limit.softA)) return PASS;
   const [found, allowed] = apart(shareA, limit.softA, 'A');
   const names = chargers.map(({ id }) => id).join(', ');

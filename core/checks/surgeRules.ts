@@ -6,8 +6,8 @@ import { CIRCUIT_LAW, entered } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { leastVoltsField, leastVoltsOf, withoutDropOut } from './loadVolts.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
-import { ELSEWHERE, isUnder, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { apart, field, titleOf, together, watts } from './wording.ts';
+import { ELSEWHERE, isUnder, missing, missingField, PASS, Tally, type Verdict } from './tally.ts';
+import { apart, titleOf, together, watts } from './wording.ts';
 
 /**
  * Each load and inverter with a `surgeW` is started on top of every case in which it is on, with the battery's resistance of the
@@ -88,7 +88,7 @@ function startVerdict(context: CheckContext, start: Start): Verdict {
   if (answer === undefined || answer.voltageV === null || answer.state === 'unfed') {
     return missing(`volts at ${part.kind} ${part.id} in case ${one.id}: it is not fed`);
   }
-  if (leastV === undefined) return missing(field(part, leastVoltsField(part)));
+  if (leastV === undefined) return missingField(part, leastVoltsField(part));
   if (!isUnder(answer.voltageV, leastV)) return PASS;
   const [found, needed] = apart(answer.voltageV, leastV, 'V');
   return {

@@ -2,6 +2,7 @@
 
 import type { Site } from '../job/job.ts';
 import type { ArrayPart, JunctionId, StringPart } from '../job/part.ts';
+import type { WantedField } from './finding.ts';
 import type { PoledPart, Poles, SinglePart } from './wiring.ts';
 import { type Nets, polesOf } from './wiring.ts';
 
@@ -23,7 +24,7 @@ export interface HighestVolts {
   /** The case in which it was solved; `undefined` for a set-point or a label. */
   readonly case: string | undefined;
   /** A figure that could raise it and is not given. */
-  readonly missing: string | undefined;
+  readonly missing: { readonly words: string; readonly field: WantedField } | undefined;
 }
 
 /** What was solved, as far as this file needs it. */
@@ -185,7 +186,10 @@ export class SystemVolts {
     const coldest = this.site.ambientMinDegC;
     const beta = array.vocPerDegC;
     if (beta === undefined || coldest === undefined) {
-      const missing = beta === undefined ? `vocPerDegC of array ${array.id}` : 'ambientMinDegC of the site';
+      const missing =
+        beta === undefined
+          ? { words: `vocPerDegC of array ${array.id}`, field: { part: array.id, field: 'vocPerDegC' } }
+          : { words: 'ambientMinDegC of the site', field: { part: null, field: 'site.ambientMinDegC' } };
       return { volts: standardV, from: `open-circuit volts of array ${array.id} at 25 °C`, case: undefined, missing };
     }
     const volts = standardV * Math.max(1, 1 + beta * (coldest - STANDARD_TEST_DEG_C));

@@ -1,7 +1,9 @@
 /** Gathers a rule's verdicts: of all cases the worst is reported, a missing figure is never a pass. */
-import type { PartId } from '../job/part.ts';
+import type { CablePart, PartId } from '../job/part.ts';
 import type { Basis, Status } from '../tables/status.ts';
-import type { Measure, Severity } from './finding.ts';
+import type { Measure, Severity, WantedField } from './finding.ts';
+import type { SinglePart } from './wiring.ts';
+import { field } from './wording.ts';
 import type { NotJudged, RankedFinding, Rule, RuleOutcome } from './rule.ts';
 
 /** Rounding slack of every comparison, as a fraction: a figure exactly at its limit passes, also after a solve. */
@@ -36,17 +38,38 @@ export interface Failure {
   /** Parts beside the judged ones that the finding is about. */
   readonly others?: readonly PartId[];
 }
+interface Missing {
+  readonly kind: 'missing';
+  readonly missing: string;
+  readonly fields: readonly WantedField[];
+}
 export type Verdict =
   | { readonly kind: 'pass' }
   /** Another rule tells the matter: neither a pass nor a finding here. */
   | { readonly kind: 'elsewhere' }
-  | { readonly kind: 'missing'; readonly missing: string }
+  | Missing
   | Failure;
 
 export const PASS: Verdict = { kind: 'pass' };
 export const ELSEWHERE: Verdict = { kind: 'elsewhere' };
-export function missing(what: string): Verdict {
-  return { kind: 'missing', missing: what };
+/** What is missing, in words, and the fields that would settle it. */
+export function missing(what: string, ...fields: readonly WantedField[]): Verdict {
+  return { kind: 'missing', missing: what, fields };
+}
+/** A field of a part that is not given; `why` follows it. */
+export function missingField(part: SinglePart, name: string, why = ''): Verdict {
+  return missing(`${field(part, name)}${why}`, wanted(part, name));
+}
+/** A field of the job itself that is not given. */
+export const NOMINAL_VOLTS: WantedField = { part: null, field: 'settings.nominalV' };
+
+/** The size of a cable that has none: what its ampacity wants. A size that no table knows is no missing field. */
+export function sizeWanted(cable: CablePart): readonly WantedField[] {
+  return cable.size === undefined ? [wanted(cable, 'size')] : [];
+}
+
+export function wanted(part: Pick<SinglePart, 'id'>, name: string): WantedField {
+  return { part: part.id, field: name };
 }
 
 export class Tally {
@@ -76,8 +99,10 @@ export class Tally {
       this.passed++;
       return;
     }
-    const gaps = new Set(verdicts.flatMap((verdict) => (verdict.kind === 'missing' ? [verdict.missing] : [])));
-    for (const gap of gaps) this.notChecked.push({ parts, missing: gap });
+    const gaps = new Map(verdicts.flatMap((verdict) => (verdict.kind === 'missing' ? [[verdict.missing, verdict] as const] : [])));
+    for (const { missing: gap, fields } of gaps.values()) {
+      this.notChecked.push({ parts, missing: gap, ...(fields.length === 0 ? {} : { fields }) });
+    }
   }
 
   outcome(): RuleOutcome {

@@ -11,7 +11,7 @@ import { areaOf, sizesOf } from './size.ts';
 export interface SizeEcho {
   /** `67.43 mm²`, or for a metric size the gauges that it lies between. */
   readonly short: string;
-  /** Neighbours by metal and by resistance, which often differ by one size; empty where there is none. */
+  /** The least size of the other system with no less metal, and with no more resistance: they often differ by one. */
   readonly detail: string;
 }
 
@@ -32,10 +32,11 @@ export function sizeEcho({ size, metal, stranding }: SizeEchoRequest, context: R
   if ('missing' in other) return { short: size.system === 'mm2' ? '' : squareMm, detail: '' };
   const { nextSmaller, byArea, byResistance } = other;
   const between = betweenText(nextSmaller, byArea);
-  const resistance =
-    byResistance === undefined ? '' : `No more resistance, ${make.stranding}: ${sizeText(byResistance)}. `;
-  const metalWord = byArea === undefined ? '' : `No less metal: ${sizeText(byArea)}.`;
-  return { short: size.system === 'mm2' ? between : squareMm, detail: `${resistance}${metalWord}`.trim() };
+  const detail = [
+    ...(byArea === undefined ? [] : [`${sizeText(byArea)} by metal`]),
+    ...(byResistance === undefined ? [] : [`${sizeText(byResistance)} by resistance, ${make.stranding}`]),
+  ];
+  return { short: size.system === 'mm2' ? between : squareMm, detail: detail.join('; ') };
 }
 
 function betweenText(smaller: ConductorSize | undefined, larger: ConductorSize | undefined): string {

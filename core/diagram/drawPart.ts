@@ -47,7 +47,7 @@ const BEYOND = 20;
 
 /** A part that stands at `at` among its junctions. Junctions without a place get no wire. */
 export function drawPart(part: Part, at: Point, around: Surroundings): DrawnPart {
-  const pose = poseOf(part, around.placeOf);
+  const pose = poseOf(part, around.placeOf, at);
   if (part.kind === 'busbar') return { pose, terminals: [], ...drawBar(part, at, { pose, placeOf: around.placeOf }) };
   const terminals = terminalPlaces(part, at, around.placeOf);
   return { pose, terminals, wires: wiresOf(part, terminals, around), bar: undefined };

@@ -37,7 +37,8 @@ export function isConductor(part: Part): boolean {
   return part.kind === 'cable' || part.kind === 'pair';
 }
 
-export function poseOf(part: Part, placeOf: PlaceOf): Pose {
+/** Of a part whose middle stands at `at`; its ends alone decide where that is not known. */
+export function poseOf(part: Part, placeOf: PlaceOf, at?: Point): Pose {
   switch (part.kind) {
     case 'string':
     case 'load':
@@ -61,16 +62,20 @@ export function poseOf(part: Part, placeOf: PlaceOf): Pose {
       };
     case 'bond':
       if (part.from === EARTH || part.to === EARTH) return { isUpright: true, isTurned: part.from === EARTH };
-      return linePose(placeOf(part.from), placeOf(part.to));
+      return linePose(placeOf(part.from), placeOf(part.to), at);
     default:
-      return linePose(placeOf(part.from), placeOf(part.to));
+      return linePose(placeOf(part.from), placeOf(part.to), at);
   }
 }
 
-/** Level where the ends lie more beside each other than above each other. */
-function linePose(from: Point | undefined, to: Point | undefined): Pose {
+/** Level where the ends lie more beside the part than above and below it. */
+function linePose(from: Point | undefined, to: Point | undefined, at?: Point): Pose {
   if (from === undefined || to === undefined) return { isUpright: false, isTurned: false };
-  const isUpright = Math.abs(to.y - from.y) > Math.abs(to.x - from.x);
+  const apart = (axis: 'x' | 'y'): number =>
+    at === undefined
+      ? Math.abs(to[axis] - from[axis])
+      : Math.abs(to[axis] - at[axis]) + Math.abs(from[axis] - at[axis]);
+  const isUpright = apart('y') > apart('x');
   return { isUpright, isTurned: isUpright ? from.y > to.y : from.x > to.x };
 }
 
@@ -93,7 +98,7 @@ function isSpreadUpright(points: readonly Point[], otherwise: boolean): boolean 
 
 /** The terminals of a part whose middle stands at `at`. A busbar has none: its junctions lie on it. */
 export function terminalPlaces(part: Part, at: Point, placeOf: PlaceOf): readonly TerminalPlace[] {
-  const pose = poseOf(part, placeOf);
+  const pose = poseOf(part, placeOf, at);
   switch (part.kind) {
     case 'busbar':
       return [];
@@ -244,7 +249,7 @@ function levelRoom(part: Part): { readonly halfWidth: number; readonly halfHeigh
 }
 
 export function boxAround(part: Part, at: Point, placeOf: PlaceOf): Box {
-  const { halfWidth, halfHeight } = roomOf(part, poseOf(part, placeOf));
+  const { halfWidth, halfHeight } = roomOf(part, poseOf(part, placeOf, at));
   return { x1: at.x - halfWidth, y1: at.y - halfHeight, x2: at.x + halfWidth, y2: at.y + halfHeight };
 }
 export function boxesOverlap(a: Box, b: Box): boolean {

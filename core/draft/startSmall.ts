@@ -18,8 +18,8 @@ import { type Chosen, smallParts } from './smallParts.ts';
 
 /**
  * The job for a small system, with the smallest listed cable that its practice has nothing to stop or fix about and that loses no
- * more than the practice's drop limit. Where the bank is too small whatever the cable, the smallest cable that is right by itself;
- * where no listed size will do, the largest: the findings then say what is wrong. Issues where a figure is no figure of a job.
+ * more than the practice's drop limit. Where the bank is too small whatever the cable, the smallest that is right as far as can be
+ * judged; where no listed size will do, the largest: the findings then say what is wrong. Issues where a figure is no figure of a job.
  */
 export function startSmall(small: SmallJob, tables: Tables): Result<Edited, readonly Issue[]> {
   const sizes = smallSizes(small.practice, tables);

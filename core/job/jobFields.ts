@@ -36,7 +36,7 @@ export const junctionFields: Fields = {
   reference: { rule: { holds: 'flag' }, standard: false },
 };
 
-const siteFields: { readonly [F in keyof Site]: Field } = {
+export const siteFields: { readonly [F in keyof Site]: Field } = {
   latitudeDeg: { rule: { holds: 'quantity', unit: 'deg', atLeast: -90, atMost: 90 } },
   ambientMinDegC: airTemperature,
   ambientDesignDegC: airTemperature,
@@ -86,7 +86,7 @@ export function checkTargets(raw: unknown, issues: IssueList): Targets {
 
 const dropLimit: Field = { rule: { holds: 'quantity', unit: '1', above: 0, below: 1 } };
 
-const settingFields: { readonly [F in keyof Settings]: Field } = {
+export const settingFields: { readonly [F in keyof Settings]: Field } = {
   dropCritical: dropLimit,
   dropOrdinary: dropLimit,
   nominalV: { rule: { holds: 'quantity', unit: 'V', above: 0, atMost: 1500 } },

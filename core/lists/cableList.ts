@@ -1,6 +1,6 @@
 /** What to cut: every conductor once, an out-and-back run as its two. */
 import { sizeEcho } from '../conductor/sizeEcho.ts';
-import { cablesOfPair, type CablePart } from '../job/part.ts';
+import { type CablePart, cablesOfPair } from '../job/part.ts';
 import { sizeText } from '../units/conductorSize.ts';
 import { feetText } from '../units/imperial.ts';
 import { given, type List, type ListInput, worstCurrent } from './list.ts';

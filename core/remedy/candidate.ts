@@ -23,6 +23,8 @@ export interface Candidate {
   readonly effort: Effort;
   /** Compares candidates of one effort: metres times square millimetres, amperes of change. */
   readonly amount: number;
+  /** The change leaves every volt and ampere as it is (another fuse rating): the answers at hand then still hold. */
+  readonly sameAnswers?: true;
 }
 
 /** Candidates of one kind from the smallest change to the largest: the first that makes the finding go is the remedy. */

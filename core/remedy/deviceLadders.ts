@@ -41,6 +41,8 @@ function ratings(bench: Bench, part: Part, ratingsA: readonly number[]): Ladder 
       cost: `one ${amps(ratingA)} ${part.kind}`,
       effort: 'device',
       amount: Math.abs(ratingA - (now ?? 0)),
+      // A shunt's resistance follows from its rating; no other device's does.
+      ...(part.kind === 'shunt' ? {} : { sameAnswers: true as const }),
     };
   });
   return stepped(rungs);
@@ -57,7 +59,7 @@ export function higherVolts(bench: Bench, part: Part): Ladder {
     .map((volts): Candidate => {
       const text = formatQuantity({ value: volts, unit: 'V' });
       const edit = bench.set(part, 'ratingV', volts, `${titleOf(part)}: one rated for ${text} direct current`);
-      return { edit, cost: `one ${part.kind} rated ${text} direct current`, effort: 'device', amount: volts };
+      return { edit, cost: `one ${part.kind} rated ${text} direct current`, effort: 'device', amount: volts, sameAnswers: true };
     });
   return stepped(rungs);
 }

@@ -1,8 +1,9 @@
 /** What a finding's remedies would change, found by making each change on a copy of the job and judging it anew. */
 import { CheckContext } from '../checks/checkContext.ts';
 import type { CheckReport, Finding, NotChecked } from '../checks/finding.ts';
+import type { Rule } from '../checks/rule.ts';
 import { rules } from '../checks/rules.ts';
-import { runChecks } from '../checks/runChecks.ts';
+import { runRules } from '../checks/runChecks.ts';
 import { SEVERITY_ORDER } from '../checks/tally.ts';
 import type { Draft } from '../draft/draft.ts';
 import { applyEdit } from '../draft/edit.ts';
@@ -12,6 +13,7 @@ import type { OperatingPoint } from '../network/answer.ts';
 import type { Tables } from '../tables/tables.ts';
 import { Bench, type Candidate, EFFORTS, type Ladder } from './candidate.ts';
 import { identityOf } from './identity.ts';
+import { withKeptParts } from './keptParts.ts';
 import { laddersFor } from './laddersFor.ts';
 import type { RemedyTrial } from './remedyTrial.ts';
 
@@ -34,13 +36,19 @@ const MOST_TRIALS = 3;
  * for what the remedy asks. Every trial is judged by all rules in all cases; before that, only the rule of the finding is asked.
  */
 export function remedyTrials(request: RemedyRequest): readonly RemedyTrial[] {
-  const bench = new Bench(request);
+  const ladders = easiestFirst(laddersFor(new Bench(request)));
   const tester = new Tester(request);
-  const chosen = laddersFor(bench).flatMap((ladder) => tester.firstThatHelps(ladder) ?? []);
-  // One field is changed by one remedy only: the smallest change of it that helps.
-  const tried = cheapest(chosen).slice(0, MOST_JUDGED).flatMap((candidate) => tester.judge(candidate));
-  const going = tried.filter(({ trial }) => !trial.stillThere);
-  if (going.length === 0) return tester.nearest(bench);
+  const going: Tried[] = [];
+  const seen = new Set<string>();
+  for (const ladder of ladders) {
+    // Once there are enough that bring nothing else, what takes more effort is not needed.
+    if (going.filter(({ trial }) => isClean(trial)).length >= MOST_TRIALS || seen.size >= MOST_JUDGED) break;
+    const candidate = tester.firstThatHelps(ladder);
+    if (candidate === undefined || seen.has(candidate.edit.label)) continue;
+    seen.add(candidate.edit.label);
+    going.push(...tester.judge(candidate).filter(({ trial }) => !trial.stillThere));
+  }
+  if (going.length === 0) return tester.nearest(ladders);
   going.sort(
     (a, b) =>
       a.trial.arisen.length - b.trial.arisen.length ||
@@ -53,10 +61,14 @@ export function remedyTrials(request: RemedyRequest): readonly RemedyTrial[] {
 /** Candidates that are judged by every rule. */
 const MOST_JUDGED = 5;
 
-function cheapest(candidates: readonly Candidate[]): readonly Candidate[] {
-  const byLabel = new Map(candidates.map((candidate) => [candidate.edit.label, candidate]));
-  const list = [...byLabel.values()];
-  list.sort(byEffort);
+function isClean({ stillThere, arisen, unchecked }: RemedyTrial): boolean {
+  return !stillThere && arisen.length === 0 && unchecked.length === 0;
+}
+
+/** Ladders by the effort of their first rung. */
+function easiestFirst(ladders: readonly Ladder[]): readonly Ladder[] {
+  const list = [...ladders];
+  list.sort((a, b) => byEffort(a.rungs[0]!, b.rungs[0]!));
   return list;
 }
 
@@ -72,23 +84,33 @@ interface Tried {
 class Tester {
   private readonly request: RemedyRequest;
   private readonly identity: string;
+  private readonly rule: Rule | undefined;
+  private known: readonly OperatingPoint[] | undefined;
 
   constructor(request: RemedyRequest) {
     this.request = request;
     this.identity = identityOf(request.finding);
+    this.rule = rules.find(({ id }) => id === request.finding.rule);
   }
 
   /** The lowest rung of a ladder with which the finding's own rule no longer finds it. */
   firstThatHelps({ rungs, rising }: Ladder): Candidate | undefined {
-    if (!rising) return rungs.find((rung) => this.helps(rung));
+    const start = rising ? this.byHalving(rungs) : 0;
+    // What helps in the case that the finding is told for may not yet do in another.
+    return start === undefined ? undefined : rungs.slice(start).find((rung) => this.helps(rung));
+  }
+
+  /** The lowest rung that helps in the finding's own case, of a ladder on which every higher one then does. */
+  private byHalving(rungs: readonly Candidate[]): number | undefined {
+    const here = this.rule?.reads === 'drawing' ? undefined : this.request.finding.case;
     let [low, high] = [0, rungs.length - 1];
-    if (high < 0 || !this.helps(rungs[high]!)) return undefined;
+    if (high < 0 || !this.helps(rungs[high]!, here)) return undefined;
     while (low < high) {
       const middle = Math.floor((low + high) / 2);
-      if (this.helps(rungs[middle]!)) high = middle;
+      if (this.helps(rungs[middle]!, here)) high = middle;
       else low = middle + 1;
     }
-    return rungs[low];
+    return low;
   }
 
   /** Judges the changed job by every rule. */
@@ -96,7 +118,16 @@ class Tester {
     const job = this.changed(candidate);
     if (job === undefined) return [];
     const { finding, report, tables } = this.request;
-    const after = runChecks({ job, tables });
+    const context = new CheckContext({ job, tables, points: this.pointsFor(candidate) });
+    const isSettled = (rule: string) => candidate.sameAnswers === true && !READS_RATINGS.has(rule);
+    const judged = runRules(
+      context,
+      rules.filter(({ id }) => !isSettled(id)),
+    );
+    const after = {
+      findings: [...judged.findings, ...report.findings.filter(({ rule }) => isSettled(rule))],
+      notChecked: [...judged.notChecked, ...report.notChecked.filter(({ rule }) => isSettled(rule))],
+    };
     const before = new Map(report.findings.map((one) => [identityOf(one), one]));
     const now = new Map(after.findings.map((one) => [identityOf(one), one]));
     const same = now.get(this.identity);
@@ -117,9 +148,9 @@ class Tester {
   }
 
   /** Where nothing makes the finding go: the largest change of each kind, and of these the one that helps most. */
-  nearest(bench: Bench): readonly RemedyTrial[] {
-    const largest = laddersFor(bench).flatMap(({ rungs }) => rungs.at(-1) ?? []);
-    const tried = cheapest(largest)
+  nearest(ladders: readonly Ladder[]): readonly RemedyTrial[] {
+    const tried = ladders
+      .flatMap(({ rungs }) => rungs.at(-1) ?? [])
       .slice(0, MOST_TRIALS)
       .flatMap((candidate) => this.judge(candidate))
       .map(({ trial }) => ({ trial, excess: excessOf(trial.after.measured, trial.after.limit) }))
@@ -128,11 +159,14 @@ class Tester {
     return tried.slice(0, 1).map(({ trial }) => trial);
   }
 
-  private helps(candidate: Candidate): boolean {
+  /** Asks the finding's own rule alone: in all cases, or in one of the job's. */
+  private helps(candidate: Candidate, caseId?: string): boolean {
     const job = this.changed(candidate);
-    const rule = rules.find(({ id }) => id === this.request.finding.rule);
+    const { rule } = this;
     if (job === undefined || rule === undefined) return false;
-    const outcome = rule.run(new CheckContext({ job, tables: this.request.tables }));
+    const one = job.cases.filter(({ id }) => id === caseId);
+    const cases = one.length === 0 ? job.cases : one;
+    const outcome = rule.run(new CheckContext({ job, tables: this.request.tables, cases, points: this.pointsToAsk(candidate) }));
     return !outcome.findings.some(({ finding }) => identityOf(finding) === this.identity);
   }
 
@@ -141,9 +175,41 @@ class Tester {
     const { draft, tables, job } = this.request;
     const edited = applyEdit(draft, edit, tables);
     if (!edited.ok || edited.value.draft === draft) return undefined;
-    return edited.value.job.practice === job.practice ? edited.value.job : withPractice(edited.value.job, job.practice);
+    const after = withKeptParts({ draft, job }, edited.value);
+    return after.practice === job.practice ? after : withPractice(after, job.practice);
+  }
+
+  /** The answers that hold after a change as before it. */
+  private pointsFor({ sameAnswers }: Candidate): readonly OperatingPoint[] {
+    return sameAnswers === true ? this.points : [];
+  }
+
+  /** A rule that reads no volt and no ampere needs no new answers to be asked; the judgement at the end has them. */
+  private pointsToAsk(candidate: Candidate): readonly OperatingPoint[] {
+    return READS_NO_ANSWERS.has(this.request.finding.rule) ? this.points : this.pointsFor(candidate);
+  }
+
+  /** The answers before any change, as the report was made from them. */
+  private get points(): readonly OperatingPoint[] {
+    this.known ??= this.request.points ?? this.request.job.cases.map((one) => new Bench(this.request).solve(one));
+    return this.known;
   }
 }
+
+/** Rules in which a rating of a device, switch, bar or diode has a say; the others judge volts and amperes alone. */
+const READS_RATINGS: ReadonlySet<string> = new Set(
+  rules.filter(({ family }) => family === 'fuse' || family === 'rating').map(({ id }) => id),
+);
+
+/** Rules that judge the drawing and the settings alone. */
+const READS_NO_ANSWERS: ReadonlySet<string> = new Set([
+  'fuse-over-cable',
+  'small-wire-cap',
+  'charger-volts-off',
+  'cold-charge',
+  'charge-too-strong',
+  'no-fuse-on-source',
+]);
 
 /** A change of less than this is not worth showing. */
 const NOTICEABLE = 0.99;
@@ -156,7 +222,9 @@ function excessOf(measured: { readonly value: number } | null, limit: { readonly
 }
 
 /** What could be checked before and cannot now. */
-function newGaps(before: CheckReport, after: CheckReport): readonly NotChecked[] {
+type Gaps = Pick<CheckReport, 'notChecked'>;
+
+function newGaps(before: Gaps, after: Gaps): readonly NotChecked[] {
   const key = ({ rule, parts, missing }: NotChecked) => JSON.stringify([rule, parts, missing]);
   const known = new Set(before.notChecked.map(key));
   return after.notChecked.filter((row) => !known.has(key(row)));

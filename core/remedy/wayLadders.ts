@@ -3,9 +3,10 @@ import { voltWalk } from '../explain/voltWalk.ts';
 import type { WalkStep } from '../explain/walk.ts';
 import { parallelString } from '../draft/connect.ts';
 import type { OperatingCase } from '../job/job.ts';
-import type { Part, PartId } from '../job/part.ts';
+import type { DiodePart, Part, PartId } from '../job/part.ts';
 import { nameOf } from '../job/part.ts';
 import type { OperatingPoint } from '../network/answer.ts';
+import { formatQuantity } from '../units/formatQuantity.ts';
 import { type Bench, type Ladder, relabelled, stepped } from './candidate.ts';
 import { type Conductor, conductorOf, endsAnew, joinedAnew, moreInParallel, thicker } from './cableLadders.ts';
 
@@ -24,6 +25,7 @@ export function lessLostTo(bench: Bench, load: PartId, source?: PartId): readonl
   const single = conductors.slice(0, 2);
   return [
     ...lossy.flatMap(({ part }) => (part?.kind === 'joint' ? [joinedAnew(part)] : [])),
+    ...lossy.flatMap(({ part }) => (part?.kind === 'diode' ? [keepsLess(bench, part)] : [])),
     ...conductors.map((conductor) => endsAnew(bench, conductor)),
     ...single.map((conductor) => thicker(bench, [conductor])),
     ...(conductors.length > 1 ? [thicker(bench, conductors)] : []),
@@ -38,6 +40,16 @@ export function lessLostTo(bench: Bench, load: PartId, source?: PartId): readonl
     worth.sort((a, b) => a.changeV - b.changeV);
     return worth.map(({ part }) => ({ part: bench.drawn(part), conductor: conductorOf(bench, part) }));
   }
+}
+
+/** An isolator of transistors instead of a diode: what it keeps; common practice, no source. */
+const TRANSISTOR_ISOLATOR_V = 0.1;
+
+function keepsLess(bench: Bench, diode: DiodePart): Ladder {
+  if (diode.forwardV !== undefined && diode.forwardV <= TRANSISTOR_ISOLATOR_V) return stepped([]);
+  const text = formatQuantity({ value: TRANSISTOR_ISOLATOR_V, unit: 'V', prefix: false });
+  const edit = bench.set(diode, 'forwardV', TRANSISTOR_ISOLATOR_V, `Diode ${nameOf(diode)}: an isolator that keeps ${text}`);
+  return stepped([{ edit, cost: 'one isolator with transistors', effort: 'device', amount: 1 }]);
 }
 
 /** Another string like the one that feeds. */

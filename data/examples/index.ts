@@ -1,6 +1,7 @@
 /** The invented example jobs: what a new job can start from. */
 import canalBoat from './canal-boat.job.json?raw';
 import coastVan from './coast-van.job.json?raw';
+import estuaryKetch from './estuary-ketch.job.json?raw';
 import ridgeCabin from './ridge-cabin.job.json?raw';
 import sixVoltHut from './six-volt-hut.job.json?raw';
 import seededSloop from './sloop-with-seeded-trouble.job.json?raw';
@@ -30,6 +31,7 @@ export const examples: readonly Example[] = [
   example('six-volt-hut', sixVoltHut, 'four 6 V flooded blocks two by two, a switching solar controller'),
   example('coast-van', coastVan, 'two lithium blocks, alternator through a DC-DC converter, roof array, 1.5 kW inverter'),
   example('canal-boat', canalBoat, 'a row of four lithium blocks linked in a ladder, alternator and shore charger'),
+  example('estuary-ketch', estuaryKetch, '24 V in two blocks, 12 V loads from the middle through an equaliser'),
   example('two-bank-sloop', twoBankSloop, 'engine battery and house bank, combining relay or diode isolator, AWG sizes'),
   example('ridge-cabin', ridgeCabin, 'three 24 V strings of two AGM blocks, one string newer and on longer leads'),
   example('valley-workshop', valleyWorkshop, 'two 48 V lithium strings, 3 kW inverter with its surge, 48 V to 12 V converter'),

@@ -62,7 +62,11 @@ export function buildProgram(io: Io, { printed, complained, answered }: ProgramS
   onJob('solve', 'volts, amps and watts in every operating case, with the sums that prove them', solve);
   onJob('check', 'findings by the published tables of a practice, worst first', check);
   onJob('report', 'the paper of a job as a PDF (--out file.pdf), or its document tree (--json)', report);
-  onJob('lists', 'cut list, fuse list and parts list as CSV files in a folder (--out folder), or as JSON (--json)', lists);
+  onJob(
+    'lists',
+    'cut list, fuse list and parts list as CSV files in a folder (--out folder), or as JSON (--json)',
+    lists,
+  );
   program
     .command('new')
     .description('a starter job to change into your own; without a name, the names')

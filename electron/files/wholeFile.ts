@@ -39,7 +39,8 @@ export function writeWhole(path: string, content: Content): void {
  * Throws the system's error.
  */
 export function writeNumbered(folder: string, name: string, content: Content): string {
-  const split = /^(.+?)((?:\.job\.json|\.[A-Za-z0-9]+)?)$/.exec(name);
+  // A number that the name has already is counted on, so that no name ends in two of them.
+  const split = /^(.+?)(?: \(\d{1,3}\))?((?:\.job\.json|\.[A-Za-z0-9]+)?)$/.exec(name);
   const [stem, ending] = [split?.[1] ?? name, split?.[2] ?? ''];
   for (let number = 1; ; number += 1) {
     const path = join(folder, number === 1 ? name : `${stem} (${String(number)})${ending}`);

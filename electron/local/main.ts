@@ -12,8 +12,11 @@ process.stdout.on('error', () => {});
 process.stderr.on('error', () => {});
 
 try {
-  const options = readOptions(process.argv.slice(2), (text) => void process.stdout.write(text));
-  const server = await startLocal(options, {
+  const options = readOptions(process.argv.slice(2), {
+    help: (text) => void process.stdout.write(text),
+    complaint: (text) => void process.stderr.write(text),
+  });
+  const { server, welcome } = await startLocal(options, {
     machine: { platform: process.platform, home: homedir(), env: process.env },
     builtPage: fileURLToPath(new URL('page', import.meta.url)),
     now: () => new Date(),
@@ -21,6 +24,7 @@ try {
     complain,
   });
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP'] as const) process.on(signal, () => void server.end());
+  await welcome();
   await server.ended;
 } catch (trouble) {
   process.exitCode = 1;

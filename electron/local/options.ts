@@ -19,8 +19,13 @@ export interface LocalOptions {
 const usualIdleS = 60;
 const longestIdleS = 24 * 3600;
 
-/** Reads the words after the program's name; help and wrong words are thrown as `CommanderError`, their text goes to `print`. */
-export function readOptions(words: readonly string[], print: (text: string) => void): LocalOptions {
+export interface Say {
+  help(this: void, text: string): void;
+  complaint(this: void, text: string): void;
+}
+
+/** Reads the words after the program's name; help and wrong words are thrown as `CommanderError`, their text goes where `say` tells. */
+export function readOptions(words: readonly string[], say: Say): LocalOptions {
   const command = new Command('ohmwright-local')
     .description('Serves Ohmwright to a browser on this machine, and to nothing outside it.')
     .version(programVersion)
@@ -39,7 +44,7 @@ export function readOptions(words: readonly string[], print: (text: string) => v
     .argument('[job]', 'a job file to open')
     .allowExcessArguments(false)
     .exitOverride()
-    .configureOutput({ writeOut: print, writeErr: print });
+    .configureOutput({ writeOut: say.help, writeErr: say.complaint });
   command.parse([...words], { from: 'user' });
   const [file] = command.args;
   const options = command.opts<Omit<LocalOptions, 'file'>>();

@@ -10,20 +10,23 @@ export interface Patience {
 export interface Presence {
   /** A page came or went, a call came in or was answered. */
   noticed(now: { readonly pages: number; readonly calls: number }): void;
+  /** Waits no more, whatever is noticed later. */
   stop(): void;
 }
 
 /** Calls `gone` once, when nobody has been there for as long as `patience` says. */
 export function presence({ idleS, firstS }: Patience, gone: () => void): Presence {
   let waitS = firstS;
+  let stopped = false;
   let timer = setTimeout(gone, waitS * 1000);
   return {
     noticed({ pages, calls }) {
       clearTimeout(timer);
       if (pages > 0) waitS = idleS;
-      if (pages === 0 && calls === 0) timer = setTimeout(gone, waitS * 1000);
+      if (pages === 0 && calls === 0 && !stopped) timer = setTimeout(gone, waitS * 1000);
     },
     stop() {
+      stopped = true;
       clearTimeout(timer);
     },
   };

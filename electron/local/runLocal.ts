@@ -1,6 +1,5 @@
 /** The local browser host from its options to its end. */
 import { join, resolve } from 'node:path';
-import type { HostAnswer } from '../../core/host.ts';
 import { dispatch } from '../channel/dispatch.ts';
 import { programVersion } from '../cli/programVersion.ts';
 import { staticFiles } from '../page/staticFiles.ts';
@@ -25,27 +24,30 @@ export interface LocalSurroundings {
   readonly complain: (line: string) => void;
 }
 
-/** Opens the store and the door, and says where; the page is shown, and a named file opened, before this settles. */
-export async function startLocal(options: LocalOptions, surroundings: LocalSurroundings): Promise<LocalServer> {
+export interface LocalHost {
+  readonly server: LocalServer;
+  /** Opens the file that the options name, and shows the page in a browser of the person's own. */
+  welcome(): Promise<void>;
+}
+
+/** Opens the store and the door, and says where. */
+export async function startLocal(options: LocalOptions, surroundings: LocalSurroundings): Promise<LocalHost> {
   const { machine, now, print, complain } = surroundings;
-  const folder = resolve(storeFolder({ argument: options.store, ...machine }));
-  const store = await openStore({ folder, now });
-  const log = (line: string): void => {
-    complain(`ohmwright: ${line}`);
-  };
+  const store = await openStore({ folder: resolve(storeFolder({ argument: options.store, ...machine })), now });
   let server: LocalServer | undefined;
   const services = createServices({
     store,
     door: localFileDoor(machine, resolve(options.saveFolder ?? usualSaveFolder(machine))),
     about: { kind: 'browser', version: programVersion, can: localCan(machine) },
-    log,
+    log: (line) => {
+      complain(`ohmwright: ${line}`);
+    },
     end: () => void server?.end(),
   });
   try {
     server = await startServer({
       page: staticFiles(options.page ?? surroundings.builtPage),
-      answer: async (method, ask, window): Promise<HostAnswer<unknown>> =>
-        await dispatch(services, method, ask, { window }),
+      answer: async (method, ask, window) => await dispatch(services, method, ask, { window }),
       closeStore: () => {
         store.close();
       },
@@ -59,9 +61,12 @@ export async function startLocal(options: LocalOptions, surroundings: LocalSurro
   }
   services.onEvent((event) => server?.tell(event));
   print(server.url);
-  if (options.file !== undefined) await services.openPath(options.file);
-  if (options.browser) await showPage(machine, server.url, join(folder, 'browser'), complain);
-  return server;
+  const { url } = server;
+  const welcome = async (): Promise<void> => {
+    if (options.file !== undefined) await services.openPath(options.file);
+    if (options.browser) await showPage(machine, url, join(store.folder, 'browser'), complain);
+  };
+  return { server, welcome };
 }
 
 async function showPage(

@@ -1,11 +1,5 @@
 /** What the services work with, and how trouble on the way becomes an answer. */
-import {
-  type CheckedJob,
-  type Issue,
-  missingFigures,
-  parseJob,
-  quoted,
-} from '../../core/api.ts';
+import { type CheckedJob, type Issue, missingFigures, parseJob, quoted } from '../../core/api.ts';
 import type { HostEvent, TroubleCode } from '../../core/host.ts';
 import { tables } from '../../data/index.ts';
 import { Refused } from '../store/refused.ts';

@@ -11,7 +11,10 @@ export function fileStem(title: string): string {
     .replaceAll(/[\p{Cc}\p{Cf}\p{Cs}\p{Zl}\p{Zp}]/gu, '')
     .replaceAll(/[/\\:*?"<>|]+/g, '-')
     .replaceAll(/\s+/g, ' ');
-  const short = [...plain].slice(0, longest).join('').replaceAll(/^[\s.~-]+|[\s.-]+$/g, '');
+  const short = Array.from(plain)
+    .slice(0, longest)
+    .join('')
+    .replaceAll(/^[\s.~-]+|[\s.-]+$/g, '');
   return short === '' || kept.test(short) ? 'job' : short;
 }
 

@@ -104,10 +104,7 @@ export class FileDesk {
   }
 }
 
-export function fileServices(
-  { store, door, about }: Bench,
-  desk: FileDesk,
-): { readonly [M in FileMethods]: Doing<M> } {
+export function fileServices({ store, door, about }: Bench, desk: FileDesk): { readonly [M in FileMethods]: Doing<M> } {
   return {
     'files.open': async (_, { window }) => {
       if (!about.can.askForFile) throw cannot('This host cannot ask for a file; give the file to the page instead.');
@@ -128,7 +125,10 @@ export function fileServices(
     'files.show': async ({ path }) => {
       if (!about.can.showFile) throw cannot('This host cannot show a file; it lies where it was saved.');
       if (!desk.hasWritten(path)) {
-        throw new Refused({ code: 'not-found', message: 'Only a file that was written here since the start is shown.' });
+        throw new Refused({
+          code: 'not-found',
+          message: 'Only a file that was written here since the start is shown.',
+        });
       }
       await door.show(resolve(path));
       return null;

@@ -52,15 +52,22 @@ export function createServices({ store, door, about, log, end }: ServicesRequest
   };
   const bench: Bench = { store, door, about, tell };
   const desk = new FileDesk(bench);
+  let hasEnded = false;
+  const ending = (): void => {
+    hasEnded = true;
+    store.close();
+    // After the answer is on its way.
+    setImmediate(end);
+  };
   const doings: { readonly [M in HostMethod]: Doing<M> } = {
-    ...hostServices(bench, end),
+    ...hostServices(bench, ending),
     ...jobServices(bench),
     ...fileServices(bench, desk),
     ...paperServices(bench, desk),
     ...personServices(bench),
   };
   return {
-    methods: answeringAll(doings),
+    methods: answeringAll(doings, () => hasEnded),
     onEvent: (listener) => {
       listeners.add(listener);
       return () => {
@@ -78,7 +85,7 @@ export function createServices({ store, door, about, log, end }: ServicesRequest
 
 function hostServices(
   { store, door, about }: Bench,
-  end: () => void,
+  ending: () => void,
 ): { readonly [M in 'host.about' | 'host.end']: Doing<M> } {
   return {
     'host.about': () => ({
@@ -90,18 +97,20 @@ function hostServices(
       notices: [...store.notices],
     }),
     'host.end': () => {
-      store.close();
-      // After the answer is on its way.
-      setImmediate(end);
+      ending();
       return null;
     },
   };
 }
 
-function answeringAll(doings: { readonly [M in HostMethod]: Doing<M> }): ServiceMethods {
+function answeringAll(doings: { readonly [M in HostMethod]: Doing<M> }, hasEnded: () => boolean): ServiceMethods {
   const entries = Object.entries(doings).map(([method, doing]) => [
     method,
-    async (ask: never, context: CallContext) => await answering(() => doing(ask, context)),
+    async (ask: never, context: CallContext) =>
+      await answering(() => {
+        if (hasEnded()) throw new Refused({ code: 'no-host', message: 'The program has ended; nothing was written.' });
+        return doing(ask, context);
+      }),
   ]);
   return Object.fromEntries(entries) as ServiceMethods;
 }

@@ -53,7 +53,7 @@ export function builtInDriver({ DatabaseSync }: BuiltInModule, { file, readOnly 
 
 /** Its rows have no prototype; a plain object compares and prints like any other. */
 function plain(row: object | undefined): Row | undefined {
-  return row === undefined ? undefined : ({ ...row } as Row);
+  return row === undefined ? undefined : { ...row };
 }
 
 function told<T>(work: () => T): T {

@@ -39,16 +39,6 @@ export class SqlError extends Error {
   }
 }
 
-/** Electron brings SQLite with its own runtime; on Node the compiled package is used. */
-export async function openDriver(request: DriverRequest): Promise<Driver> {
-  if (process.versions['electron'] !== undefined) {
-    const { openBuiltIn } = await import('./builtInSqlite.ts');
-    return await openBuiltIn(request);
-  }
-  const { openBetter } = await import('./betterSqlite.ts');
-  return await openBetter(request);
-}
-
 /** Transactions by plain statements, alike for both engines. */
 export function transactionBy(exec: (sql: string) => void): Driver['transaction'] {
   return (work) => {

@@ -54,9 +54,13 @@ async function inspectRows(file: string, open: OpenDriver): Promise<Condition> {
 
 function structureFault(driver: Driver): string | undefined {
   // The full check of the engine: unlike the quick one it also compares every index with its table.
-  const answer = driver.prepare('SELECT integrity_check FROM pragma_integrity_check LIMIT 1').get()?.['integrity_check'];
+  const answer = driver.prepare('SELECT integrity_check FROM pragma_integrity_check LIMIT 1').get()?.[
+    'integrity_check'
+  ];
   if (answer !== 'ok') return String(answer);
-  return driver.prepare('SELECT 1 FROM pragma_foreign_key_check').get() === undefined ? undefined : 'a row refers to one that is gone';
+  return driver.prepare('SELECT 1 FROM pragma_foreign_key_check').get() === undefined
+    ? undefined
+    : 'a row refers to one that is gone';
 }
 
 function revisionFault(driver: Driver): string | undefined {
@@ -74,7 +78,8 @@ function readingFault(driver: Driver): string | undefined {
 }
 
 export function isWholeReading({ job, at, reading, digest }: Row): boolean {
-  if (typeof job !== 'string' || typeof at !== 'string' || typeof reading !== 'string' || !isBytes(digest)) return false;
+  if (typeof job !== 'string' || typeof at !== 'string' || typeof reading !== 'string' || !isBytes(digest))
+    return false;
   return sameBytes(readingDigest(job, at, reading), digest);
 }
 
@@ -97,9 +102,21 @@ const fixedPlaces: readonly { readonly at: number; readonly bytes: readonly (rea
   // Page size 4096; written by way of a log, read likewise; no reserved bytes; payload fractions.
   { at: 16, bytes: [[0x10, 0x00, 2, 2, 0, 64, 32, 32]] },
   // Schema format and text encoding are 0 until the first table is made.
-  { at: 44, bytes: [[0, 0, 0, 4], [0, 0, 0, 0]] },
+  {
+    at: 44,
+    bytes: [
+      [0, 0, 0, 4],
+      [0, 0, 0, 0],
+    ],
+  },
   { at: 52, bytes: [[0, 0, 0, 0]] },
-  { at: 56, bytes: [[0, 0, 0, 1], [0, 0, 0, 0]] },
+  {
+    at: 56,
+    bytes: [
+      [0, 0, 0, 1],
+      [0, 0, 0, 0],
+    ],
+  },
   { at: 64, bytes: [[0, 0, 0, 0]] },
   { at: 72, bytes: [Array.from({ length: 20 }, () => 0)] },
 ];
@@ -107,7 +124,9 @@ const headerLength = 100;
 
 function headerFault(header: Buffer, size: number): string | undefined {
   if (size < headerLength) return 'it is cut off';
-  const wrong = fixedPlaces.find(({ at, bytes }) => !bytes.some((each) => header.subarray(at, at + each.length).equals(Buffer.from(each))));
+  const wrong = fixedPlaces.find(
+    ({ at, bytes }) => !bytes.some((each) => header.subarray(at, at + each.length).equals(Buffer.from(each))),
+  );
   return wrong === undefined ? undefined : `its head is not that of a store (byte ${String(wrong.at)})`;
 }
 

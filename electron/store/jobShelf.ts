@@ -37,7 +37,9 @@ export class JobShelf {
 
   /** Last changed first. */
   list(): readonly JobSummary[] {
-    return this.connection.read(() => this.rows(`${summarySelect} WHERE removed = 0 ORDER BY turn DESC`).map(summaryOf));
+    return this.connection.read(() =>
+      this.rows(`${summarySelect} WHERE removed = 0 ORDER BY turn DESC`).map(summaryOf),
+    );
   }
 
   create(request: KeepRequest & { readonly file?: string | undefined }): KeptJob {
@@ -109,8 +111,10 @@ export class JobShelf {
       const below = this.rows(descendants, head, most).map((row) => Number(row['revision']));
       const ahead = Math.min(below.length, Math.max(Math.floor((most - 1) / 2), most - 1 - above.length));
       const behind = Math.min(above.length, most - 1 - ahead);
-      const numbers = [...above.slice(0, behind).reverse(), head, ...below.slice(0, ahead)];
-      return numbers.map((revision) => this.summary(job, revision));
+      const nearest = new Set([head, ...above.slice(0, behind), ...below.slice(0, ahead)]);
+      // A parent has always the smaller number.
+      const oldestFirst = [...nearest].sort((one, other) => one - other);
+      return oldestFirst.map((revision) => this.summary(job, revision));
     });
   }
 

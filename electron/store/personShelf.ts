@@ -37,9 +37,7 @@ export class PersonShelf {
         .all(job)
         .flatMap((row) => {
           const reading = fieldsOf(row['reading']);
-          return reading === undefined
-            ? []
-            : [{ entry: Number(row['entry']), job, at: String(row['at']), reading }];
+          return reading === undefined ? [] : [{ entry: Number(row['entry']), job, at: String(row['at']), reading }];
         }),
     );
   }
@@ -68,7 +66,8 @@ export class PersonShelf {
   removePart(id: string): void {
     this.connection.write(() => {
       const { changes } = this.prepare('DELETE FROM ownParts WHERE id = ?').run(id);
-      if (changes === 0) throw new Refused({ code: 'not-found', message: 'There is no such part among your own parts.' });
+      if (changes === 0)
+        throw new Refused({ code: 'not-found', message: 'There is no such part among your own parts.' });
     });
   }
 
@@ -76,7 +75,7 @@ export class PersonShelf {
   preferences(): ReadonlyMap<string, unknown> {
     return this.connection.read(() => {
       const rows = this.prepare('SELECT name, value FROM preferences').all();
-      return new Map(rows.map((row) => [String(row['name']), valueOf(row['value'])]));
+      return new Map(rows.map((row) => [String(row['name']), jsonOf(row['value'])]));
     });
   }
 
@@ -93,7 +92,7 @@ export class PersonShelf {
 }
 
 /** `undefined` for a text that is no JSON. */
-export function valueOf(text: unknown): unknown {
+export function jsonOf(text: unknown): unknown {
   if (typeof text !== 'string') return undefined;
   try {
     return JSON.parse(text) as unknown;
@@ -103,6 +102,6 @@ export function valueOf(text: unknown): unknown {
 }
 
 export function fieldsOf(text: unknown): Fields | undefined {
-  const value = valueOf(text);
+  const value = jsonOf(text);
   return typeof value === 'object' && value !== null && !Array.isArray(value) ? (value as Fields) : undefined;
 }

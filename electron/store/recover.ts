@@ -5,14 +5,18 @@ import type { HostNotice } from '../../core/host.ts';
 import { type Driver, type OpenDriver, type Row, SqlError } from './driver.ts';
 import { isWholeReading, mendHeader, sizeOf } from './inspect.ts';
 import { insertRevision } from './jobShelf.ts';
-import { fieldsOf, valueOf } from './personShelf.ts';
+import { fieldsOf, jsonOf } from './personShelf.ts';
 import { isBytes, type RevisionRow, revisionColumns, wholeRow } from './revisionRow.ts';
 import { migrate } from './schema.ts';
 
 /** What belongs to one database, by the endings of its names. */
 const endings = ['', '-wal', '-shm', '-journal'] as const;
-/** A stretch of missing rows longer than this is the end of what can be read. */
+/** A stretch of unreadable rows longer than this is the end of what can be read; one bad page hides fewer. */
 const longestGap = 20_000;
+/** The same beyond the row that is said to be the last. */
+const longestGapAtEnd = 500;
+const pageBytes = 4096;
+const headBytes = 100;
 
 export interface StorePaths {
   readonly folder: string;
@@ -64,29 +68,49 @@ async function copyReadable({ file, mending, recovered }: StorePaths, open: Open
   const fresh = await open({ file: recovered });
   try {
     migrate(fresh);
-    const broken = await openMended(file, mending, open);
-    if (broken === undefined) return nothing;
-    try {
-      return fresh.transaction(() => copyAll(broken, fresh));
-    } finally {
-      broken.close();
-    }
+    if (sizeOf(file) < headBytes) return nothing;
+    const tally = await copyFrom(file, { mending, open, fresh });
+    if (tally.revisions > 0) return tally;
+    // Every store of this program has its first tables in the same places, so the list of tables of a new one serves as well.
+    const borrowed = await copyFrom(file, { mending, open, fresh, firstPage: firstBytes(recovered, pageBytes) });
+    return borrowed.revisions > 0 ? borrowed : tally;
   } finally {
     fresh.close();
   }
 }
 
+interface Mending {
+  readonly mending: string;
+  readonly open: OpenDriver;
+  readonly fresh: Driver;
+  readonly firstPage?: Buffer;
+}
+
+async function copyFrom(file: string, { mending, open, fresh, firstPage }: Mending): Promise<Tally> {
+  remove(mending);
+  const broken = await openMended(file, mending, { open, firstPage });
+  if (broken === undefined) return nothing;
+  try {
+    return fresh.transaction(() => copyAll(broken, fresh));
+  } finally {
+    broken.close();
+  }
+}
+
 /** The damaged store is read as a copy with its head put right; `undefined` where not even its list of tables can be read. */
-async function openMended(file: string, mending: string, open: OpenDriver): Promise<Driver | undefined> {
-  if (sizeOf(file) < 100) return undefined;
+async function openMended(
+  file: string,
+  mending: string,
+  { open, firstPage }: { readonly open: OpenDriver; readonly firstPage: Buffer | undefined },
+): Promise<Driver | undefined> {
   copyFileSync(file, mending);
-  if (existsSync(`${file}-wal`)) copyFileSync(`${file}-wal`, `${mending}-wal`);
+  // With a borrowed first page the log is left out, since it may hold the damaged one again.
+  if (firstPage === undefined && existsSync(`${file}-wal`)) copyFileSync(`${file}-wal`, `${mending}-wal`);
+  const head = firstPage ?? firstBytes(file, headBytes);
+  mendHeader(head);
   const descriptor = openSync(mending, 'r+');
   try {
-    const header = Buffer.alloc(100);
-    readSync(descriptor, header, 0, header.length, 0);
-    mendHeader(header);
-    writeSync(descriptor, header, 0, header.length, 0);
+    writeSync(descriptor, head, 0, head.length, 0);
   } finally {
     closeSync(descriptor);
   }
@@ -100,6 +124,17 @@ async function openMended(file: string, mending: string, open: OpenDriver): Prom
     if (error instanceof SqlError && error.kind !== 'FULL') return undefined;
     throw error;
   }
+}
+
+function firstBytes(file: string, length: number): Buffer {
+  const bytes = Buffer.alloc(length);
+  const descriptor = openSync(file, 'r');
+  try {
+    readSync(descriptor, bytes, 0, length, 0);
+  } finally {
+    closeSync(descriptor);
+  }
+  return bytes;
 }
 
 interface Tally {
@@ -173,38 +208,45 @@ function copyJobs(broken: Driver, fresh: Driver, newest: ReadonlyMap<string, Rev
   return lost;
 }
 
-function copyRest(
-  broken: Driver,
-  fresh: Driver,
-  { kept, jobs }: { readonly kept: ReadonlySet<number>; readonly jobs: ReadonlySet<string> },
-): void {
-  const isKept = (value: unknown): boolean => typeof value === 'number' && kept.has(value);
-  copyTable(broken, fresh, 'snapshots', ['revision', 'name'], (row) => isKept(row['revision']));
-  copyTable(broken, fresh, 'visited', ['parent', 'child'], (row) => {
-    if (!isKept(row['parent']) || !isKept(row['child'])) return false;
-    const parent = fresh.prepare('SELECT parent FROM revisions WHERE revision = ?').get(row['child']!)?.['parent'];
-    return parent === row['parent'];
-  });
-  copyTable(broken, fresh, 'readings', ['entry', 'job', 'at', 'reading', 'digest'], (row) => {
-    return isWholeReading(row) && jobs.has(String(row['job']));
-  });
-  copyTable(broken, fresh, 'ownParts', ['id', 'label', 'part'], (row) => fieldsOf(row['part']) !== undefined);
-  copyTable(broken, fresh, 'preferences', ['name', 'value'], (row) => valueOf(row['value']) !== undefined);
+interface Recovered {
+  readonly kept: ReadonlySet<number>;
+  readonly jobs: ReadonlySet<string>;
 }
 
-function copyTable(
-  broken: Driver,
-  fresh: Driver,
-  table: string,
-  columns: readonly string[],
-  isSound: (row: Row) => boolean,
-): void {
+function copyRest(broken: Driver, fresh: Driver, { kept, jobs }: Recovered): void {
+  const isKept = (value: unknown): boolean => typeof value === 'number' && kept.has(value);
+  const parentOf = fresh.prepare('SELECT parent FROM revisions WHERE revision = ?');
+  const copy = (table: string, columns: readonly string[], isSound: (row: Row) => boolean): void => {
+    copyTable({ broken, fresh, table, columns, isSound });
+  };
+  copy('snapshots', ['revision', 'name'], ({ revision, name }) => isKept(revision) && typeof name === 'string');
+  copy('visited', ['parent', 'child'], ({ parent, child }) => {
+    return isKept(parent) && isKept(child) && parentOf.get(child!)?.['parent'] === parent;
+  });
+  copy('readings', ['entry', 'job', 'at', 'reading', 'digest'], (row) => {
+    return typeof row['entry'] === 'number' && isWholeReading(row) && jobs.has(String(row['job']));
+  });
+  copy('ownParts', ['id', 'label', 'part'], ({ id, label, part }) => {
+    return typeof id === 'string' && typeof label === 'string' && fieldsOf(part) !== undefined;
+  });
+  copy('preferences', ['name', 'value'], ({ name, value }) => {
+    return typeof name === 'string' && jsonOf(value) !== undefined;
+  });
+}
+
+interface TableCopy {
+  readonly broken: Driver;
+  readonly fresh: Driver;
+  readonly table: string;
+  readonly columns: readonly string[];
+  readonly isSound: (row: Row) => boolean;
+}
+
+function copyTable({ broken, fresh, table, columns, isSound }: TableCopy): void {
   const places = columns.map(() => '?').join(', ');
   const insert = fresh.prepare(`INSERT OR IGNORE INTO ${table} (${columns.join(', ')}) VALUES (${places})`);
   for (const row of readable(broken, table, columns.join(', ')).found) {
-    if (columns.every((name) => row[name] !== null && row[name] !== undefined) && isSound(row)) {
-      insert.run(...columns.map((name) => row[name]!));
-    }
+    if (isSound(row)) insert.run(...columns.map((name) => row[name]!));
   }
 }
 
@@ -212,24 +254,37 @@ function copyTable(
 function readable(driver: Driver, table: string, columns: string): Readable {
   const found: Row[] = [];
   let failed = 0;
-  try {
-    const one = driver.prepare(`SELECT ${columns} FROM ${table} WHERE rowid = ?`);
-    for (let number = 1, last = 0; number - last <= longestGap; number += 1) {
-      try {
-        const row = one.get(number);
-        if (row === undefined) continue;
-        found.push(row);
-        last = number;
-      } catch (error) {
-        if (!(error instanceof SqlError)) throw error;
-        failed += 1;
-      }
-    }
-  } catch (error) {
-    if (!(error instanceof SqlError)) throw error; // a table of a later version, or one whose description is gone
+  const one = trying(() => driver.prepare(`SELECT ${columns} FROM ${table} WHERE rowid = ?`));
+  if (one === undefined) return { found, failed }; // a table of a later version, or one whose description is gone
+  const last = Number(trying(() => driver.prepare(`SELECT max(rowid) AS last FROM ${table}`).get())?.['last'] ?? 0);
+  const isKnown = last > 0;
+  for (let number = 1, good = 0; ; number += 1) {
+    const gap = number - good;
+    if (gap > longestGap || (isKnown && number > last && gap > longestGapAtEnd)) break;
+    let isFailed = false;
+    const row = trying(
+      () => one.get(number),
+      () => {
+        isFailed = true;
+      },
+    );
+    if (isFailed) failed += 1;
+    if (row === undefined) continue;
+    found.push(row);
+    good = number;
   }
-  // Rows beyond the last one read fail up to the longest gap where the way to them is cut: how many there were is not known.
-  return { found, failed: Math.min(failed, longestGap - 1) };
+  return { found, failed };
+}
+
+/** `undefined` where the engine refuses. */
+function trying<T>(work: () => T, onRefusal: () => void = () => {}): T | undefined {
+  try {
+    return work();
+  } catch (error) {
+    if (!(error instanceof SqlError)) throw error;
+    onRefusal();
+    return undefined;
+  }
 }
 
 /** Moves the files of a database to names that no other has; answers where the main one lies then. */
@@ -261,4 +316,3 @@ function noticesOf({ jobs, revisions, lost, isReadable }: Tally, kept: string, w
   const rest = lost === 0 ? 'Nothing else was found in it.' : `More were in it that could not be read.`;
   return [set, { kind: 'store-recovered', message: `${states} were recovered from the damaged store. ${rest}` }];
 }
-

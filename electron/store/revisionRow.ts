@@ -51,7 +51,9 @@ export function wholeRow(row: Row | undefined): RevisionRow | undefined {
 
 /** Over one entry of the log of readings. */
 export function readingDigest(job: string, at: string, reading: string): Uint8Array {
-  return createHash('sha256').update(JSON.stringify([job, at, reading]), 'utf8').digest();
+  return createHash('sha256')
+    .update(JSON.stringify([job, at, reading]), 'utf8')
+    .digest();
 }
 
 export function isBytes(value: SqlValue | undefined): value is Uint8Array {

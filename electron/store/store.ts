@@ -2,9 +2,10 @@
 import { mkdirSync } from 'node:fs';
 import type { HostNotice } from '../../core/host.ts';
 import { Connection } from './connection.ts';
-import { type Driver, type OpenDriver, openDriver, SqlError } from './driver.ts';
+import { type Driver, type OpenDriver, SqlError } from './driver.ts';
 import { inspect, isDamage } from './inspect.ts';
 import { JobShelf } from './jobShelf.ts';
+import { openDriver } from './openDriver.ts';
 import { PersonShelf } from './personShelf.ts';
 import { finishRecovery, recover, type StorePaths, storePaths } from './recover.ts';
 import { Refused, storeRefusal } from './refused.ts';

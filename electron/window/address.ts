@@ -28,7 +28,7 @@ export function pathOf(address: string): string {
 
 function isOurs(parsed: URL): boolean {
   const { protocol, host, username, password } = parsed;
-  return protocol === `${pageScheme}:` && host === pageHost && true;
+  return protocol === `${pageScheme}:` && host === pageHost && username === '' && password === '';
 }
 
 function parsedAddress(address: string): URL | undefined {

@@ -1,6 +1,6 @@
 /** A question of a field, with its answers as buttons; the first is at hand for Enter. */
 import { styled } from '@mui/material/styles';
-import { type ReactElement, useEffect, useRef } from 'react';
+import { type ReactElement, type RefObject, useEffect, useRef } from 'react';
 import type { FieldChoice, FieldReading } from '../../core/api.ts';
 
 const Answers = styled('div')({ display: 'flex', flexWrap: 'wrap', gap: '0.25rem', paddingBlock: '0.25rem' });
@@ -28,19 +28,22 @@ export const SmallButton = styled('button')({
 
 export function AskRow({
   question: { question, choices },
+  field,
   onChoose,
   onEscape,
 }: {
   readonly question: Extract<FieldReading<never>, { reading: 'ask' }>;
+  /** The field that asks. */
+  readonly field: RefObject<HTMLElement | null>;
   readonly onChoose: (choice: FieldChoice) => void;
   readonly onEscape: () => void;
 }): ReactElement {
   const first = useRef<HTMLButtonElement>(null);
   useEffect(() => {
-    // Whoever left the field with the mouse has gone elsewhere: the focus is not taken back.
-    const isHere = first.current?.closest('fieldset')?.parentElement?.parentElement?.contains(document.activeElement);
-    if (isHere === true) first.current?.focus();
-  }, []);
+    // Whoever left the field has gone elsewhere: the focus is not taken back.
+    const { activeElement } = document;
+    if (activeElement === document.body || activeElement === field.current) first.current?.focus();
+  }, [field]);
   return (
     <Group
       aria-label={question}

@@ -16,7 +16,7 @@ export interface FieldRowProps {
 /** Narrow places put the name above the field; the width that counts is the container's, so that large text does so too. */
 const Row = styled('div')({
   display: 'grid',
-  gridTemplateColumns: 'minmax(6rem, 8.5rem) minmax(6.5rem, 1fr) auto',
+  gridTemplateColumns: 'minmax(5.5rem, 7.25rem) minmax(6.5rem, 1fr) auto',
   columnGap: '0.5rem',
   alignItems: 'start',
   paddingBlock: '0.125rem',

@@ -1,6 +1,6 @@
 /** A figure of an answer: the number in even digits, its unit lighter. */
 import type { ReactElement } from 'react';
-import { formatQuantity } from '../../core/api.ts';
+import { figureText } from '../../core/api.ts';
 
 export interface FigureProps {
   readonly value: number | null | undefined;
@@ -24,8 +24,7 @@ export function Figure({
   absent = 'not determined',
 }: FigureProps): ReactElement {
   if (value === null || value === undefined) return <span style={{ color: 'var(--soft)' }}>{absent}</span>;
-  const text = formatQuantity({ value, unit, digits, prefix });
-  const [, number = text, sign = ''] = /^(\S*?[\d.]+(?:e[+-]?\d+)?)(.*)$/.exec(text) ?? [];
+  const { number, sign } = figureText({ value, unit, digits, prefix });
   return (
     <span
       style={{
@@ -34,8 +33,8 @@ export function Figure({
         color: tone === undefined ? 'inherit' : `var(--${tone})`,
       }}
     >
-      <span style={{ fontWeight: 600 }}>{number.replace('-', '−')}</span>
-      <span style={{ fontWeight: 300 }}>{sign.replace(' ', '\u00a0')}</span>
+      <span style={{ fontWeight: 600 }}>{number}</span>
+      <span style={{ fontWeight: 300 }}>{sign}</span>
     </span>
   );
 }

@@ -84,9 +84,9 @@ export function MonthsField({ label, unit, given, focusKey, onCommit }: MonthsFi
         ))}
       </Grid>
       {missing > 0 && (
-        <p role="status" style={{ margin: '0.25rem 0 0', color: 'var(--soft)', fontSize: '0.8125rem' }}>
+        <output style={{ display: 'block', margin: '0.25rem 0 0', color: 'var(--soft)', fontSize: '0.8125rem' }}>
           {`${String(missing)} ${missing === 1 ? 'month is' : 'months are'} still to come; the twelve go into the job together.`}
-        </p>
+        </output>
       )}
     </fieldset>
   );

@@ -4,6 +4,7 @@ import {
   type Field,
   type FieldUnit,
   factor,
+  firstText,
   formatQuantity,
   milliohm,
   type Origin,
@@ -17,8 +18,10 @@ import {
   setField,
   setInCase,
   setOrigin,
+  type UnitsFirst,
 } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
+import { usePreferences } from '../state/preferences.ts';
 import { ChoiceField } from './ChoiceField.tsx';
 import { CountField } from './CountField.tsx';
 import { FlagField } from './FlagField.tsx';
@@ -94,9 +97,10 @@ interface ControlProps extends PartFieldProps {
 function Control(props: ControlProps): ReactElement | null {
   const { field, raw, drawn, rule, figure, set, inCase, partId } = props;
   const practice = useOpenJob((open) => open.job.practice);
+  const first = usePreferences((preferences) => preferences.units);
   const given = set ?? raw[field];
   const commit = (value: unknown): Taken => takeEdit(editOf(props, value));
-  const assumed = assumedText({ rule, figure, field });
+  const assumed = assumedText({ rule, figure, field, first });
   const name = props.label ?? fieldWord(field);
   const hint = fieldHint(field);
   const common: FieldProps = {
@@ -106,7 +110,7 @@ function Control(props: ControlProps): ReactElement | null {
     ...(rule.required === true && inCase === undefined ? { required: true } : {}),
     focusKey: `${partId}.${field}`,
     ...(props.plain === true || !hasOrigin(rule) ? {} : { mark: <Mark {...props} name={name} /> }),
-    ...caseNote(props),
+    ...caseNote(props, first),
   };
   const figureGiven = given as number | string | undefined;
   switch (rule.rule.holds) {
@@ -187,30 +191,33 @@ function assumedText(request: {
   readonly rule: Field;
   readonly figure: PartFigure | undefined;
   readonly field: string;
+  readonly first: UnitsFirst;
 }): string | undefined {
-  const { rule, figure, field } = request;
+  const { rule, figure, field, first } = request;
   const value = figure?.value ?? rule.standard;
   if (value === undefined || value === null) return undefined;
-  return valueText({ value, field, rule });
+  return valueText({ value, field, rule, first });
 }
 
 function valueText({
   value,
   field,
   rule: { rule },
+  first,
 }: {
   readonly value: number | string | boolean;
   readonly field: string;
   readonly rule: Field;
+  readonly first: UnitsFirst;
 }): string {
   if (typeof value === 'boolean') return value ? flagWords(field).yes : flagWords(field).no;
   if (typeof value === 'string') return rule.holds === 'choice' ? choiceWord(field, value) : value;
-  if (rule.holds === 'quantity') return formatQuantity({ value, unit: rule.unit });
+  if (rule.holds === 'quantity') return firstText({ value, unit: rule.unit, first });
   return rule.holds === 'efficiency' ? formatQuantity({ value, unit: '1' }) : String(value);
 }
 
 /** Said under a field that the chosen case changes. */
-function caseNote(props: ControlProps): { readonly below?: ReactElement } {
+function caseNote(props: ControlProps, first: UnitsFirst): { readonly below?: ReactElement } {
   const { figure, field, rule, inCase, set, partId: part } = props;
   if (inCase !== undefined) {
     if (set === undefined) return {};
@@ -239,7 +246,7 @@ function caseNote(props: ControlProps): { readonly below?: ReactElement } {
     };
   }
   if (figure?.changedInCase !== true || figure.value === null) return {};
-  return { below: <span>{`This case sets ${valueText({ value: figure.value, field, rule })}.`}</span> };
+  return { below: <span>{`This case sets ${valueText({ value: figure.value, field, rule, first })}.`}</span> };
 }
 
 function Mark(props: ControlProps & { readonly name: string }): ReactElement {

@@ -2,7 +2,7 @@
  * A field that a person types into. What was typed is kept whatever becomes of it: it is committed by Enter or by leaving the field,
  * asked about where it means two things, or answered with a sentence where it cannot be. Escape brings back what stood there.
  */
-import { type FocusEvent, type KeyboardEvent, type ReactElement, type ReactNode, useId, useRef, useState } from 'react';
+import { type KeyboardEvent, type ReactElement, type ReactNode, useEffect, useId, useRef, useState } from 'react';
 import { type FieldReading, isBareNumber, type ShownField, type Way } from '../../core/api.ts';
 import { AskRow } from './AskRow.tsx';
 import { FieldBox, FieldRow, Sign } from './FieldRow.tsx';
@@ -50,6 +50,7 @@ export function TypedField<Value>(props: TypedFieldProps<Value>): ReactElement {
   useFocusField(props.focusKey, input);
   const typing = useTyping(props, input);
   const { text, message, question, note } = typing;
+  useLeaving(wrap, typing.commit);
   const standing = text ?? shown.text;
   const beside = text === null ? shown.sign : isBareNumber(standing) ? sign : '';
   const echo = text === null ? shown.echo : '';
@@ -66,9 +67,6 @@ export function TypedField<Value>(props: TypedFieldProps<Value>): ReactElement {
     'aria-required': props.required === true ? true : undefined,
     onChange: (event: { readonly target: { readonly value: string } }) => typing.type(event.target.value),
     onKeyDown: typing.key,
-    onBlur: (event: FocusEvent) => {
-      if (!(wrap.current?.contains(event.relatedTarget) ?? false)) typing.commit();
-    },
     onFocus: () => input.current?.select(),
   };
   return (
@@ -109,8 +107,13 @@ export function TypedField<Value>(props: TypedFieldProps<Value>): ReactElement {
               </div>
               {question !== null && (
                 <AskRow
+                  key={question.question}
                   question={question}
-                  onChoose={(choice) => typing.settle(props.read(choice.text, choice.way))}
+                  field={input}
+                  onChoose={(choice) => {
+                    input.current?.focus();
+                    typing.settle(props.read(choice.text, choice.way));
+                  }}
                   onEscape={typing.restore}
                 />
               )}
@@ -123,34 +126,57 @@ export function TypedField<Value>(props: TypedFieldProps<Value>): ReactElement {
   );
 }
 
+/** Calls back when the focus leaves the field with all that belongs to it, its buttons too. */
+function useLeaving(wrap: { readonly current: HTMLElement | null }, leave: () => void): void {
+  const latest = useRef(leave);
+  useEffect(() => {
+    latest.current = leave;
+  });
+  useEffect(() => {
+    const { current } = wrap;
+    const out = (event: FocusEvent): void => {
+      const to = event.relatedTarget;
+      if (!(to instanceof Node && current?.contains(to) === true)) latest.current();
+    };
+    current?.addEventListener('focusout', out);
+    return () => current?.removeEventListener('focusout', out);
+  }, [wrap]);
+}
+
 /** What is being typed: `text` is null where the field shows what the job holds. */
 function useTyping<Value>(
   props: TypedFieldProps<Value>,
   input: { readonly current: (HTMLInputElement & HTMLTextAreaElement) | null },
 ) {
-  const [text, setText] = useState<string | null>(null);
-  const [message, setMessage] = useState('');
-  const [question, setQuestion] = useState<Question | null>(null);
+  const { text: stands } = props.shown;
+  const [typed, setTyped] = useState<{ readonly text: string; readonly over: string } | null>(null);
+  const [trouble, setTrouble] = useState('');
+  const [asked, setAsked] = useState<Question | null>(null);
   const [note, setNote] = useState('');
 
+  // Picked from a list, undone, shown in other units: what was being typed over the old figure is overtaken.
+  const text = typed?.over === stands ? typed.text : null;
+  const message = text === null ? '' : trouble;
+  const question = text === null ? null : asked;
+
   const clear = (): void => {
-    setText(null);
-    setMessage('');
-    setQuestion(null);
+    setTyped(null);
+    setTrouble('');
+    setAsked(null);
   };
   const restore = (): void => {
     clear();
     input.current?.focus();
   };
   const settle = (reading: FieldReading<Value>): void => {
-    setQuestion(null);
+    setAsked(null);
     if (reading.reading === 'ask') {
-      setQuestion(reading);
+      setAsked(reading);
       return;
     }
-    const trouble = troubleOf(reading, props);
-    setMessage(trouble ?? '');
-    if (trouble !== null) return;
+    const why = troubleOf(reading, props);
+    setTrouble(why ?? '');
+    if (why !== null) return;
     setNote(reading.reading === 'value' ? (reading.note ?? '') : '');
     clear();
   };
@@ -159,10 +185,10 @@ function useTyping<Value>(
     if (text.trim() === props.shown.text.trim()) clear();
     else settle(props.read(text));
   };
-  const type = (typed: string): void => {
-    setText(typed);
-    setMessage('');
-    setQuestion(null);
+  const type = (text: string): void => {
+    setTyped({ text, over: stands });
+    setTrouble('');
+    setAsked(null);
     setNote('');
   };
   const key = (event: KeyboardEvent): void => {

@@ -61,18 +61,18 @@ const HINTS: Readonly<Record<string, string>> = {
 
 const CHOICES: Readonly<Record<string, Readonly<Record<string, string>>>> = {
   chemistry: {
-    flooded: 'Lead-acid, flooded (wet cells)',
-    agm: 'Lead-acid, AGM (sealed, glass mat)',
-    gel: 'Lead-acid, gel (sealed)',
+    flooded: 'Lead-acid, wet (flooded)',
+    agm: 'Lead-acid, AGM (glass mat)',
+    gel: 'Lead-acid, gel',
     lfp: 'LFP, lithium iron phosphate',
-    nmc: 'NMC, lithium nickel manganese cobalt',
+    nmc: 'NMC, lithium with nickel',
     nicd: 'NiCd, nickel-cadmium',
   },
   metal: { copper: 'Copper', 'tinned-copper': 'Tinned copper', aluminium: 'Aluminium' },
   stranding: {
     solid: 'Solid, one wire',
-    stranded: 'Stranded, some thick wires',
-    flexible: 'Flexible, many fine wires',
+    stranded: 'Stranded, thick wires',
+    flexible: 'Flexible, fine wires',
   },
   run: {
     'free-air': 'Free air',
@@ -82,8 +82,8 @@ const CHOICES: Readonly<Record<string, Readonly<Record<string, string>>>> = {
     buried: 'Ground',
   },
   state: { closed: 'Closed', open: 'Open' },
-  type: { mppt: 'MPPT, finds the best working point', pwm: 'PWM, joins array to battery' },
-  dropClass: { critical: 'Critical (lights of a vessel, radio …)', ordinary: 'Ordinary' },
+  type: { mppt: 'MPPT, finds the best point', pwm: 'PWM, plain on and off' },
+  dropClass: { critical: 'Critical', ordinary: 'Ordinary' },
   supply: { dc: 'DC', ac: 'AC, through the inverter' },
 };
 

@@ -1,26 +1,38 @@
 /** A busbar: an upright or level bar on which its junctions lie. */
 import type { NodeProps } from '@xyflow/react';
 import { memo, type ReactElement } from 'react';
+import type { JunctionId } from '../../core/api.ts';
 import { SeverityMark } from '../controls/SeverityMark.tsx';
 import { useOpenJob } from '../state/openJob.ts';
 import type { PartFlowNode } from './flowNodes.ts';
 import { useLive } from './live.ts';
 import { classesOf } from './PartNode.tsx';
 
-export const BarNode = memo(function BarNode({ data: { placed }, selected, width = 0, height = 0 }: NodeProps<PartFlowNode>): ReactElement {
+export const BarNode = memo(function BarNode({
+  data: { placed },
+  selected,
+  width = 0,
+  height = 0,
+}: NodeProps<PartFlowNode>): ReactElement {
   const { part, drawn, rating } = placed;
   const live = useLive((now) => now.parts.get(part.id));
   const isLit = useOpenJob(({ lit }) => lit.includes(part.id));
   const figure = live?.line ?? '';
+  const volts = useLive(
+    (now) => (part.kind === 'busbar' ? now.volts.get(part.junctions[0] as JunctionId) : undefined) ?? '',
+  );
   return (
-    <div className={`${classesOf('bar', { selected, isLit, live })} ${drawn.pose.isUpright ? 'upright' : 'level'}`}>
+    <div
+      className={`${classesOf('bar', { selected, isLit, live })} ${drawn.pose.isUpright ? 'upright' : 'level'} ${placed.isLow ? 'low' : ''}`}
+    >
       <div className="stroke" style={drawn.pose.isUpright ? { height } : { width }} />
       <div className="words" aria-hidden>
         <span className="id">
-        {live?.severity != null && <SeverityMark severity={live.severity} hideWord />}
+          {live?.severity != null && <SeverityMark severity={live.severity} bare />}
           {part.id}
         </span>
         {rating !== '' && <span className="rating">{rating}</span>}
+        {volts !== '' && <span className="volts">{volts}</span>}
         {figure !== '' && <span className="figure">{figure}</span>}
       </div>
     </div>

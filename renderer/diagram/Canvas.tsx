@@ -21,23 +21,23 @@ import { GRID } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { BarNode } from './BarNode.tsx';
 import { ConductorNode } from './ConductorNode.tsx';
+import { DRAGGED_PART } from './draggedPart.ts';
 import { commitMove, putPart } from './edits.ts';
 import { type FlowNode, junctionOfNode, NodeMaker, partOfNode } from './flowNodes.ts';
 import { JunctionNode } from './JunctionNode.tsx';
 import { followAnswers, useLive } from './live.ts';
+import { openGroundMenu, openMenuOf } from './openMenus.ts';
 import { PartNode } from './PartNode.tsx';
 import { type Drawing, useDrawing } from './placedParts.ts';
 import { useDiagramKeys } from './useDiagramKeys.ts';
 import { useLongPress } from './useLongPress.ts';
-import { useView } from './view.ts';
+import { FIT_WHOLE, useView } from './view.ts';
 import { Wires } from './Wires.tsx';
 
 const nodeTypes = { part: PartNode, conductor: ConductorNode, bar: BarNode, junction: JunctionNode };
 const SELECT_KEYS = ['Shift', 'Control', 'Meta'];
-const FIT = { padding: 0.08, maxZoom: 1.25 };
+
 const ORIGIN: [number, number] = [0.5, 0.5];
-/** What a palette entry carries while it is dragged. */
-export const DRAGGED_PART = 'application/x-ohmwright-part';
 
 export function Canvas(): ReactElement {
   const drawing = useDrawing();
@@ -47,7 +47,7 @@ export function Canvas(): ReactElement {
   const flow = useReactFlow();
   const pressed = useLongPress();
   useEffect(followAnswers, []);
-  useFirstFit(nodes.length);
+  const onTouched = useFirstFit(nodes.length);
 
   const onConnect = useCallback<OnConnect>(() => undefined, []);
   const onConnectEnd = useCallback(
@@ -86,6 +86,10 @@ export function Canvas(): ReactElement {
         onNodeContextMenu={openNodeMenu}
         onPaneContextMenu={(event) => openGroundMenu(event, flow.screenToFlowPosition)}
         onPaneClick={() => useOpenJob.getState().light([])}
+        onMoveStart={(event) => {
+          if (event !== null) onTouched();
+        }}
+        onNodeDragStart={onTouched}
         onDragOver={(event) => event.preventDefault()}
         onDrop={onDrop}
         connectionMode={ConnectionMode.Loose}
@@ -123,8 +127,20 @@ function DrawingFrame({ children }: { readonly children: ReactElement }): ReactE
   const detail = zoom >= 0.8 ? 'near' : zoom >= 0.5 ? 'mid' : 'far';
   // Words never get smaller on the screen than this share of their usual size.
   const k = Math.round(Math.min(2.6, Math.max(0.8, 0.95 / zoom)) * 20) / 20;
-  useEffect(() => frame.current?.style.setProperty('--k', String(k)), [k]);
-  const classes = ['drawing', detail, zoom >= 1.1 ? 'names' : '', volts ? '' : 'no-volts', amps ? '' : 'no-amps', labels ? '' : 'no-labels', isOld ? 'old' : ''];
+  const s = Math.round(Math.min(1.9, Math.max(1, 0.7 / zoom)) * 20) / 20;
+  useEffect(() => {
+    frame.current?.style.setProperty('--k', String(k));
+    frame.current?.style.setProperty('--s', String(s));
+  }, [k, s]);
+  const classes = [
+    'drawing',
+    detail,
+    zoom >= 1.1 ? 'names' : '',
+    volts ? '' : 'no-volts',
+    amps ? '' : 'no-amps',
+    labels ? '' : 'no-labels',
+    isOld ? 'old' : '',
+  ];
   return (
     <div ref={frame} className={classes.filter((name) => name !== '').join(' ')}>
       {children}
@@ -143,17 +159,20 @@ function useNodes(drawing: Drawing): FlowNode[] {
   );
 }
 
-/** Fits the drawing into view once, when it is first there. */
-function useFirstFit(count: number): void {
+/** Fits the drawing into view when a job is opened, and again as its room changes, until the person has moved the view. */
+function useFirstFit(count: number): () => void {
   const { fitView } = useReactFlow();
   const key = useOpenJob((job) => job.key);
   const width = useStore((flow) => flow.width);
-  const fitted = useRef<string | null>(null);
+  const height = useStore((flow) => flow.height);
+  const touched = useRef<string | null>(null);
+  const isThere = count > 0 && width > 0;
   useEffect(() => {
-    if (count === 0 || width === 0 || fitted.current === key) return;
-    fitted.current = key;
-    void fitView(FIT);
-  }, [count, width, key, fitView]);
+    if (isThere && touched.current !== key) void fitView(FIT_WHOLE);
+  }, [isThere, width, height, key, fitView]);
+  return useCallback(() => {
+    touched.current = key;
+  }, [key]);
 }
 
 /** Selection and moves, as the canvas reports them. */
@@ -167,7 +186,8 @@ function useChanges({ positions }: Drawing): (changes: NodeChange<FlowNode>[]) =
       if (first === undefined) return;
       if (first.dragging === true && first.position !== undefined) {
         for (const { id, position } of moves) {
-          if (!start.current.has(id) && position !== undefined) start.current.set(id, firstPlace(id, positions) ?? position);
+          if (!start.current.has(id) && position !== undefined)
+            start.current.set(id, firstPlace(id, positions) ?? position);
         }
         const from = start.current.get(first.id) ?? first.position;
         const by = { x: snapped(first.position.x - from.x), y: snapped(first.position.y - from.y) };
@@ -237,21 +257,4 @@ function pointerOf(event: globalThis.MouseEvent | TouchEvent): Point {
 function openNodeMenu(event: MouseEvent, { id }: FlowNode): void {
   event.preventDefault();
   openMenuOf(id, { x: event.clientX, y: event.clientY });
-}
-export function openMenuOf(node: string, at: Point): void {
-  const part = partOfNode(node);
-  const junction = junctionOfNode(node);
-  const { selection, select } = useOpenJob.getState();
-  if (part !== undefined) {
-    if (!selection.parts.includes(part)) select({ parts: [part] });
-    useView.setState({ menu: { menu: 'part', part, at } });
-  } else if (junction !== undefined) {
-    select({ junctions: [junction] });
-    useView.setState({ menu: { menu: 'junction', junction, at } });
-  }
-}
-function openGroundMenu(event: globalThis.MouseEvent | MouseEvent, toPlace: (at: Point) => Point): void {
-  event.preventDefault();
-  const at = { x: event.clientX, y: event.clientY };
-  useView.setState({ menu: { menu: 'ground', at, place: toPlace(at) } });
 }

@@ -7,7 +7,10 @@ import type { PartFlowNode } from './flowNodes.ts';
 import { useLive } from './live.ts';
 import { classesOf } from './PartNode.tsx';
 
-export const ConductorNode = memo(function ConductorNode({ data: { placed }, selected }: NodeProps<PartFlowNode>): ReactElement {
+export const ConductorNode = memo(function ConductorNode({
+  data: { placed },
+  selected,
+}: NodeProps<PartFlowNode>): ReactElement {
   const { part, drawn, rating } = placed;
   const live = useLive((now) => now.parts.get(part.id));
   const isLit = useOpenJob(({ lit }) => lit.includes(part.id));
@@ -15,7 +18,7 @@ export const ConductorNode = memo(function ConductorNode({ data: { placed }, sel
   return (
     <div className={`${classesOf('conductor', { selected, isLit, live })} ${kind}`}>
       <div className="chip" aria-hidden>
-        {live?.severity != null && <SeverityMark severity={live.severity} hideWord />}
+        {live?.severity != null && <SeverityMark severity={live.severity} bare />}
         <span className="id">{part.id}</span>
         {rating !== '' && <span className="rating">{rating}</span>}
       </div>

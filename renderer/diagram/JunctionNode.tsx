@@ -4,7 +4,10 @@ import { memo, type ReactElement } from 'react';
 import type { JunctionFlowNode } from './flowNodes.ts';
 import { useLive } from './live.ts';
 
-export const JunctionNode = memo(function JunctionNode({ data: { placed }, selected }: NodeProps<JunctionFlowNode>): ReactElement {
+export const JunctionNode = memo(function JunctionNode({
+  data: { placed },
+  selected,
+}: NodeProps<JunctionFlowNode>): ReactElement {
   const volts = useLive((now) => now.volts.get(placed.id) ?? '');
   const classes = ['junction', placed.isLow ? 'low' : 'high', placed.isMain ? 'main' : '', selected ? 'chosen' : ''];
   return (

@@ -9,22 +9,38 @@ import { type LivePart, useLive } from './live.ts';
 import type { PlacedPart } from './placedParts.ts';
 import { Shapes } from './Shapes.tsx';
 
-export const PartNode = memo(function PartNode({ data: { placed }, selected, width = 0, height = 0 }: NodeProps<PartFlowNode>): ReactElement {
+export const PartNode = memo(function PartNode({
+  data: { placed },
+  selected,
+  width = 0,
+  height = 0,
+}: NodeProps<PartFlowNode>): ReactElement {
   const { part, drawn } = placed;
   const live = useLive((now) => now.parts.get(part.id));
   const isLit = useOpenJob(({ lit }) => lit.includes(part.id));
   const isDevice = 'plus' in part;
   const isClosed = live === undefined ? !('state' in part && part.state === 'open') : !live.isOpen;
   return (
-    <div className={classesOf('part', { selected, isLit, live })}>
-      <svg className="symbol" width={width} height={height} viewBox={`${String(-width / 2)} ${String(-height / 2)} ${String(width)} ${String(height)}`} aria-hidden>
+    <div
+      className={classesOf(
+        isDevice || part.kind === 'controller' || part.kind === 'converter' ? 'part device' : 'part',
+        { selected, isLit, live },
+      )}
+    >
+      <svg
+        className="symbol"
+        width={width}
+        height={height}
+        viewBox={`${String(-width / 2)} ${String(-height / 2)} ${String(width)} ${String(height)}`}
+        aria-hidden
+      >
         <rect className="halo" x={-width / 2 - 4} y={-height / 2 - 4} width={width + 8} height={height + 8} rx="3" />
         <Shapes shapes={partSymbol(part, drawn.pose, { isClosed })} />
         <Signs placed={placed} />
       </svg>
       {live?.severity != null && (
         <div className={`verdict ${isDevice ? placed.side : drawn.pose.isUpright ? 'aside' : 'over'}`} aria-hidden>
-          <SeverityMark severity={live.severity} hideWord />
+          <SeverityMark severity={live.severity} bare />
         </div>
       )}
       <Words placed={placed} live={live} />
@@ -35,7 +51,11 @@ export const PartNode = memo(function PartNode({ data: { placed }, selected, wid
 
 export function classesOf(
   base: string,
-  { selected, isLit, live }: { readonly selected?: boolean; readonly isLit: boolean; readonly live: LivePart | undefined },
+  {
+    selected,
+    isLit,
+    live,
+  }: { readonly selected?: boolean; readonly isLit: boolean; readonly live: LivePart | undefined },
 ): string {
   return [base, selected === true ? 'chosen' : '', isLit ? 'lit' : '', live?.isDead === true ? 'dead' : '']
     .filter((name) => name !== '')
@@ -65,24 +85,42 @@ function Signs({ placed: { drawn, at, part } }: { readonly placed: PlacedPart })
 
 function Words({ placed, live }: { readonly placed: PlacedPart; readonly live: LivePart | undefined }): ReactElement {
   const { part, drawn, side, rating } = placed;
-  const place = 'plus' in part ? side : drawn.pose.isUpright && part.kind !== 'bond' ? 'right' : part.kind === 'bond' ? 'right' : 'around';
+  const place =
+    'plus' in part
+      ? side
+      : part.kind === 'controller' || part.kind === 'converter'
+        ? 'under'
+        : drawn.pose.isUpright && part.kind !== 'bond'
+          ? 'right'
+          : part.kind === 'bond'
+            ? 'right'
+            : 'around';
   const label = part.label === undefined || part.label === part.id ? null : <span className="label">{part.label}</span>;
   const figure = live === undefined ? '' : live.line;
   const state = live?.state ?? '';
   const figures = (
     <>
       {rating !== '' && <span className="rating">{rating}</span>}
+      {live !== undefined && live.volts !== '' && <span className="volts">{live.volts}</span>}
       {figure !== '' && !(live?.isDead === true && state !== '') && <span className="figure">{figure}</span>}
-      {state !== '' && <span className="state">{state}</span>}
+      {state !== '' && <span className={state === 'no current' ? 'state plain' : 'state'}>{state}</span>}
     </>
   );
-  if (place !== 'around') {
+  if (place === 'left' || place === 'right') {
     const isSplit = part.kind === 'string' && part.midpoint !== undefined && side === 'left';
     return (
       <div className={`words beside ${place}${isSplit ? ' split' : ''}`} aria-hidden>
         <span className="id">{part.id}</span>
         {label}
-        {isSplit && <span className="gap" />}
+        {figures}
+      </div>
+    );
+  }
+  if (place === 'under') {
+    return (
+      <div className="words below" aria-hidden>
+        <span className="id">{part.id}</span>
+        {label}
         {figures}
       </div>
     );
@@ -100,7 +138,15 @@ function Words({ placed, live }: { readonly placed: PlacedPart; readonly live: L
 }
 
 /** A wire can be drawn from each terminal; it begins at the terminal's junction. */
-function Terminals({ placed: { drawn, at }, width, height }: { readonly placed: PlacedPart; readonly width: number; readonly height: number }): ReactElement {
+function Terminals({
+  placed: { drawn, at },
+  width,
+  height,
+}: {
+  readonly placed: PlacedPart;
+  readonly width: number;
+  readonly height: number;
+}): ReactElement {
   return (
     <>
       {drawn.terminals.map(({ role, junction, x, y }) => (

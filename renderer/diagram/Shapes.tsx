@@ -1,5 +1,5 @@
 /** Draws the shapes of core on the screen: the same symbols as on paper. */
-import type { ReactElement } from 'react';
+import type { CSSProperties, ReactElement } from 'react';
 import type { Shape, Stroke, Tone } from '../../core/api.ts';
 
 const WIDTH: Readonly<Record<Stroke, number>> = { hair: 1, line: 1.6, heavy: 5 };
@@ -34,10 +34,19 @@ function shapeOf(shape: Shape, key: string): ReactElement {
       return <rect key={key} {...{ x, y, width, height }} fill={FILL[shape.fill]} {...strokeOf(shape)} />;
     }
     case 'circle':
-      return <circle key={key} cx={shape.x} cy={shape.y} r={shape.radius} fill={FILL[shape.fill]} {...strokeOf(shape)} />;
+      return (
+        <circle key={key} cx={shape.x} cy={shape.y} r={shape.radius} fill={FILL[shape.fill]} {...strokeOf(shape)} />
+      );
     case 'text':
       return (
-        <text key={key} x={shape.x} y={shape.y} fontSize={shape.sizePt} textAnchor={ANCHOR[shape.align]} fill={COLOUR[shape.tone]}>
+        <text
+          key={key}
+          x={shape.x}
+          y={shape.y}
+          fontSize={shape.sizePt}
+          textAnchor={ANCHOR[shape.align]}
+          fill={COLOUR[shape.tone]}
+        >
           {shape.text}
         </text>
       );
@@ -47,7 +56,8 @@ const ANCHOR = { left: 'start', centre: 'middle', right: 'end' } as const;
 
 function strokeOf({ stroke, tone }: { readonly stroke: Stroke; readonly tone: Tone }): {
   readonly stroke: string;
-  readonly strokeWidth: number;
+  readonly style: CSSProperties;
 } {
-  return { stroke: COLOUR[tone], strokeWidth: WIDTH[stroke] };
+  // Lines stay visible as a drawing gets smaller: --s is 1 elsewhere.
+  return { stroke: COLOUR[tone], style: { strokeWidth: `calc(${String(WIDTH[stroke])}px * var(--s, 1))` } };
 }

@@ -2,8 +2,8 @@
  * All wires of the drawing in one sheet under the symbols: thickness by current, and on every conductor the number in amps with an
  * arrow that says which way it flows.
  */
-import { memo, type MouseEvent, type ReactElement } from 'react';
-import { figurePlace, isConductor, lineWeight, type DrawnWire } from '../../core/api.ts';
+import { type CSSProperties, type MouseEvent, memo, type ReactElement } from 'react';
+import { type DrawnWire, figurePlace, isConductor, lineWeight } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { type LivePart, useLive } from './live.ts';
 import type { PlacedPart } from './placedParts.ts';
@@ -80,25 +80,45 @@ function OneWire({
   return (
     <g className={isDead ? 'wire dead' : 'wire'}>
       <path className="hit" d={path} />
-      <path className="under" d={path} strokeWidth={weight + 6} />
-      <path className="line" d={path} strokeWidth={weight} />
+      <path className="under" d={path} style={strokeOf(weight + 6)} />
+      <path className="line" d={path} style={strokeOf(weight)} />
       {isTold && flow !== undefined && <Figure wire={wire} text={flow.text} currentA={flow.currentA} weight={weight} />}
     </g>
   );
+}
+
+function strokeOf(weight: number): CSSProperties {
+  return { strokeWidth: `calc(${String(weight)}px * var(--s))` };
 }
 
 function pathOf({ points }: DrawnWire): string {
   return points.map(({ x, y }, index) => `${index === 0 ? 'M' : 'L'}${String(x)} ${String(y)}`).join('');
 }
 
-function Figure({ wire, text, currentA, weight }: { readonly wire: DrawnWire; readonly text: string; readonly currentA: number | null; readonly weight: number }): ReactElement {
+function Figure({
+  wire,
+  text,
+  currentA,
+  weight,
+}: {
+  readonly wire: DrawnWire;
+  readonly text: string;
+  readonly currentA: number | null;
+  readonly weight: number;
+}): ReactElement {
   const { at, isUpright, forward, length } = figurePlace(wire);
   const isFlowing = currentA !== null && Math.abs(currentA) >= 0.001;
   const way = (currentA ?? 0) < 0 ? -forward : forward;
   const turn = isUpright ? (way > 0 ? 90 : -90) : way > 0 ? 0 : 180;
   return (
     <g className={length < 60 ? 'amps tight' : 'amps'} transform={`translate(${String(at.x)} ${String(at.y)})`}>
-      {isFlowing && <path className="arrow" d="M-6-6.5 7 0-6 6.5z" transform={`rotate(${String(turn)}) scale(${String(0.8 + weight / 12)})`} />}
+      {isFlowing && (
+        <path
+          className="arrow"
+          d="M-6-6.5 7 0-6 6.5z"
+          transform={`rotate(${String(turn)}) scale(${String(0.8 + weight / 12)})`}
+        />
+      )}
       <text className={isUpright ? 'aside' : 'under'}>{text}</text>
     </g>
   );

@@ -36,7 +36,9 @@ const asRecord = (places: ReadonlyMap<string, Point>): Readonly<Record<string, P
 
 /** Places that the drawing has found for itself are stored with the first move, so that they stay. */
 function unstored(job: CheckedJob, positions: Positions): Positions {
-  const parts = new Map([...positions.parts].filter(([id]) => job.parts.find((part) => part.id === id)?.at === undefined));
+  const parts = new Map(
+    [...positions.parts].filter(([id]) => job.parts.find((part) => part.id === id)?.at === undefined),
+  );
   const junctions = new Map([...positions.junctions].filter(([id]) => job.junctions.get(id)?.at === undefined));
   return { parts, junctions };
 }
@@ -99,7 +101,9 @@ export function paste(text: string, at?: Point): void {
   if (isIssues(edit)) useView.setState({ refusal: 'The clipboard holds no parts of a drawing.' });
   else make(edit);
 }
-function isIssues(edit: ReturnType<typeof pasteParts>): edit is Extract<ReturnType<typeof pasteParts>, readonly unknown[]> {
+function isIssues(
+  edit: ReturnType<typeof pasteParts>,
+): edit is Extract<ReturnType<typeof pasteParts>, readonly unknown[]> {
   return Array.isArray(edit);
 }
 

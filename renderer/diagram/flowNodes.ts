@@ -32,7 +32,9 @@ export class NodeMaker {
       const ariaLabel = spoken(placed.part.id);
       return this.kept(partNode(placed, chosenParts.has(placed.part.id), ariaLabel));
     });
-    const junctions = drawing.junctions.map((placed) => this.kept(junctionNode(placed, chosenJunctions.has(placed.id))));
+    const junctions = drawing.junctions.map((placed) =>
+      this.kept(junctionNode(placed, chosenJunctions.has(placed.id))),
+    );
     const nodes = [...parts, ...junctions];
     this.made = new Map(nodes.map((node) => [node.id, node]));
     return nodes;

@@ -12,6 +12,8 @@ export interface LiveCurrent {
 export interface LivePart {
   /** The line under the part. */
   readonly line: string;
+  /** Volts at its own poles. */
+  readonly volts: string;
   /** `off`, `open`, `unfed` … where it says something. */
   readonly state: string;
   /** Carries nothing: drawn in grey. */
@@ -98,7 +100,8 @@ export function ampText(currentA: number | null | undefined): string {
   return formatQuantity({ value, unit: 'A', digits: 3 });
 }
 export function voltText(volts: number): string {
-  return formatQuantity({ value: Math.abs(volts) < 0.0005 ? 0 : volts, unit: 'V', digits: 4 }).replace(/^-/, '\u2212');
+  const digits = Math.abs(volts) < 1 ? 3 : 4;
+  return formatQuantity({ value: Math.abs(volts) < 0.00005 ? 0 : volts, unit: 'V', digits }).replace(/^-/, '\u2212');
 }
 function wattText(value: number): string {
   return formatQuantity({ value, unit: 'W', digits: 3 });
@@ -121,13 +124,15 @@ function livePart(part: Part, point: OperatingPoint | undefined, severity: Sever
   const rawState = answer?.state ?? '';
   const isDead =
     point !== undefined &&
-    (DEAD_STATES.includes(rawState) || (known.length > 0 && known.every(({ currentA }) => currentA !== null && Math.abs(currentA) < 0.001)));
+    (DEAD_STATES.includes(rawState) ||
+      (known.length > 0 && known.every(({ currentA }) => currentA !== null && Math.abs(currentA) < 0.001)));
   const state = STATE_WORDS[rawState] ?? rawState;
   const drawnOpen = 'state' in part && part.state === 'open';
   const line = lineOf(part, point, currents);
   const dead = isDead && state === '' && part.kind !== 'busbar' ? 'no current' : state;
   return {
     line,
+    volts: 'plus' in part && answer?.voltageV != null ? voltText(answer.voltageV) : '',
     state: dead,
     isDead,
     isOpen: point === undefined ? drawnOpen : rawState === 'open',
@@ -139,7 +144,10 @@ function livePart(part: Part, point: OperatingPoint | undefined, severity: Sever
 
 function currentsOf(part: Part, point: OperatingPoint | undefined): Readonly<Record<string, LiveCurrent>> {
   if (point === undefined) return {};
-  const current = (value: number | null | undefined): LiveCurrent => ({ currentA: value ?? null, text: ampText(value ?? null) });
+  const current = (value: number | null | undefined): LiveCurrent => ({
+    currentA: value ?? null,
+    text: ampText(value ?? null),
+  });
   if (part.kind === 'pair') {
     return {
       plus: current(point.parts.get(`${part.id}.plus` as PartId)?.currentA),
@@ -154,7 +162,11 @@ function currentsOf(part: Part, point: OperatingPoint | undefined): Readonly<Rec
   return { through: current(answer.currentA) };
 }
 
-function lineOf(part: Part, point: OperatingPoint | undefined, currents: Readonly<Record<string, LiveCurrent>>): string {
+function lineOf(
+  part: Part,
+  point: OperatingPoint | undefined,
+  currents: Readonly<Record<string, LiveCurrent>>,
+): string {
   const answer = point?.parts.get(part.id);
   const through = currents['through'];
   switch (part.kind) {
@@ -216,7 +228,8 @@ function spokenOf(
 
 function spokenCurrent(part: Part, currents: Readonly<Record<string, LiveCurrent>>): string {
   const through = currents['through'] ?? currents['plus'];
-  if (currents['input'] !== undefined) return `takes ${currents['input'].text}, gives ${currents['output']?.text ?? ''}`;
+  if (currents['input'] !== undefined)
+    return `takes ${currents['input'].text}, gives ${currents['output']?.text ?? ''}`;
   if (through === undefined) return '';
   if (through.currentA === null) return 'current not determined';
   const back = through.currentA < 0;
@@ -226,6 +239,9 @@ function spokenCurrent(part: Part, currents: Readonly<Record<string, LiveCurrent
   }
   if (part.kind === 'busbar') return `carries at most ${through.text}`;
   if (!('from' in part)) return '';
-  const [from, to] = typeof part.from === 'string' ? [part.from, part.to as string] : [part.from.plus, (part.to as { plus: string }).plus];
+  const [from, to] =
+    typeof part.from === 'string'
+      ? [part.from, part.to as string]
+      : [part.from.plus, (part.to as { plus: string }).plus];
   return back ? `carries ${through.text} from ${to} to ${from}` : `carries ${through.text} from ${from} to ${to}`;
 }

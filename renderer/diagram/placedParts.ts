@@ -1,7 +1,17 @@
 /** The drawing of the open job: where everything stands and what is drawn for each part, with the hand's move on top. */
 import { useMemo, useRef } from 'react';
 import type { CheckedJob, DrawnPart, JunctionId, Part, PartId, Point, Positions } from '../../core/api.ts';
-import { drawPart, EARTH, entriesOf, freeSide, junctionsOf, moveBy, positionsOf, ratingWords } from '../../core/api.ts';
+import {
+  drawPart,
+  EARTH,
+  entriesOf,
+  freeSide,
+  junctionsOf,
+  minusSide,
+  moveBy,
+  positionsOf,
+  ratingWords,
+} from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { type Drag, useView } from './view.ts';
 
@@ -14,6 +24,8 @@ export interface PlacedPart {
   /** Side of a device that is free for its words. */
   readonly side: 'left' | 'right';
   readonly rating: string;
+  /** A bar of the minus pole: its name stands at its foot. */
+  readonly isLow: boolean;
 }
 export interface PlacedJunction {
   readonly key: string;
@@ -73,15 +85,23 @@ function placeParts(job: CheckedJob, positions: Positions): readonly PlacedPart[
   const entries = entriesOf(job.parts, placeOf);
   const around = { placeOf, entryOf: (junction: JunctionId) => entries.get(junction) ?? 'any' } as const;
   const far = farEnds(job);
+  const low = minusSide(job);
   return job.parts.flatMap((part): readonly PlacedPart[] => {
     const at = positions.parts.get(part.id);
     if (at === undefined) return [];
     const drawn = drawPart(part, at, around);
     const rating = ratingWords(part);
-    const side = 'plus' in part ? freeSide(at, (far.get(part.id) ?? []).flatMap((id) => positions.parts.get(id) ?? [])) : 'right';
+    const side =
+      'plus' in part
+        ? freeSide(
+            at,
+            (far.get(part.id) ?? []).flatMap((id) => positions.parts.get(id) ?? []),
+          )
+        : 'right';
     const state = 'state' in part ? part.state : '';
-    const key = JSON.stringify([part.kind, part.label, rating, state, at, side, drawn]);
-    return [{ key, part, at, drawn, side, rating }];
+    const isLow = part.kind === 'busbar' && part.junctions.some((each) => low.has(each));
+    const key = JSON.stringify([part.kind, part.label, rating, state, at, side, isLow, drawn]);
+    return [{ key, part, at, drawn, side, rating, isLow }];
   });
 }
 
@@ -94,32 +114,26 @@ function farEnds(job: CheckedJob): ReadonlyMap<PartId, readonly PartId[]> {
   return new Map(
     job.parts
       .filter((part) => 'plus' in part)
-      .map((part) => [part.id, junctionsOf(part).flatMap((each) => touching.get(each) ?? []).filter((id) => id !== part.id)]),
+      .map((part) => [
+        part.id,
+        junctionsOf(part)
+          .flatMap((each) => touching.get(each) ?? [])
+          .filter((id) => id !== part.id),
+      ]),
   );
 }
 
 function placeJunctions(job: CheckedJob, positions: Positions): readonly PlacedJunction[] {
-  const low = new Set<JunctionId>();
-  const main = new Set<JunctionId>();
-  for (const part of job.parts) {
-    if ('plus' in part) {
-      low.add(part.minus);
-      main.add(part.plus).add(part.minus);
-    } else if (part.kind === 'pair' || part.kind === 'controller' || part.kind === 'converter') {
-      low.add(part.from.minus).add(part.to.minus);
-    } else if (part.kind === 'busbar') {
-      const [first] = part.junctions;
-      if (first !== undefined) main.add(first);
-    }
-  }
-  const bars = job.parts.filter((part) => part.kind === 'busbar');
-  for (const bar of bars) if (bar.junctions.some((each) => low.has(each))) for (const each of bar.junctions) low.add(each);
+  const low = minusSide(job);
+  const main = new Set(job.parts.flatMap((part) => ('plus' in part ? [part.plus, part.minus] : [])));
   return [...positions.junctions].flatMap(([id, at]): readonly PlacedJunction[] => {
     if (id === EARTH) return [];
     const note = job.junctions.get(id);
     const label = note?.label ?? id;
     const isReference = note?.reference === true;
     const [isLow, isMain] = [low.has(id), main.has(id)];
-    return [{ key: JSON.stringify([at, label, isReference, isLow, isMain]), id, at, label, isReference, isLow, isMain }];
+    return [
+      { key: JSON.stringify([at, label, isReference, isLow, isMain]), id, at, label, isReference, isLow, isMain },
+    ];
   });
 }

@@ -6,7 +6,7 @@ import { GRID, junctionsOf } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { copiedText, duplicateSelected, goToLedger, nudge, paste, removeSelected, selectAll } from './edits.ts';
 import { junctionOfNode, partOfNode } from './flowNodes.ts';
-import { useView } from './view.ts';
+import { FIT_WHOLE, useView } from './view.ts';
 
 const ARROWS: Readonly<Record<string, Point>> = {
   ArrowLeft: { x: -GRID, y: 0 },
@@ -38,7 +38,9 @@ export function useDiagramKeys(): DiagramKeys {
 }
 
 function isTyping(target: EventTarget): boolean {
-  return target instanceof HTMLInputElement || target instanceof HTMLTextAreaElement || target instanceof HTMLSelectElement;
+  return (
+    target instanceof HTMLInputElement || target instanceof HTMLTextAreaElement || target instanceof HTMLSelectElement
+  );
 }
 
 function controlKey({ key }: KeyboardEvent): (() => void) | undefined {
@@ -55,7 +57,7 @@ function controlKey({ key }: KeyboardEvent): (() => void) | undefined {
 interface Zooming {
   readonly zoomIn: () => Promise<boolean>;
   readonly zoomOut: () => Promise<boolean>;
-  readonly fitView: () => Promise<boolean>;
+  readonly fitView: (options?: typeof FIT_WHOLE) => Promise<boolean>;
 }
 
 function plainKey(event: KeyboardEvent<HTMLElement>, { zoomIn, zoomOut, fitView }: Zooming): (() => void) | undefined {
@@ -74,7 +76,7 @@ function plainKey(event: KeyboardEvent<HTMLElement>, { zoomIn, zoomOut, fitView 
     case '-':
       return () => void zoomOut();
     case '0':
-      return () => void fitView();
+      return () => void fitView(FIT_WHOLE);
     case 'Delete':
     case 'Backspace':
       return () => {

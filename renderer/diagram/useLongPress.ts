@@ -1,6 +1,6 @@
 /** A finger that stays opens the menu that the right button opens. */
 import { type PointerEvent, useCallback, useRef } from 'react';
-import { openMenuOf } from './Canvas.tsx';
+import { openMenuOf } from './openMenus.ts';
 
 const LONG_MS = 550;
 /** A finger trembles this far, px. */

@@ -8,17 +8,19 @@ import { StartScreen } from '../start/StartScreen.tsx';
 import { useOpenJob } from '../state/openJob.ts';
 import { readPreferences } from '../state/preferences.ts';
 import { useSession } from '../state/session.ts';
-import { Frame } from './Frame.tsx';
 import { DropFile } from './DropFile.tsx';
+import { Frame } from './Frame.tsx';
 import { listenToHost } from './hostEvents.ts';
 import { rememberedJob } from './openings.ts';
 import { TroubleBar } from './TroubleBar.tsx';
 import { useKeys } from './useKeys.ts';
+import { useUnkept } from './useUnkept.ts';
 
 export function App(): ReactElement {
   const ready = useHost();
   const isOpen = useOpenJob((job) => job.key !== null);
   useKeys();
+  useUnkept();
   return (
     <DropFile>
       <TroubleBar />

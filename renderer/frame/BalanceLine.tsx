@@ -44,6 +44,7 @@ function solvedText(proof: Proof, { ms }: Answers): string {
 }
 
 function unsolvedText({ outcome, collapse }: OperatingPoint): string {
-  if (outcome === 'collapse') return `No balance in this case: ${collapse?.message ?? 'a load asks for more than can be delivered'}`;
+  if (outcome === 'collapse')
+    return `No balance in this case: ${collapse?.message ?? 'a load asks for more than can be delivered'}`;
   return 'Nothing to balance: no source feeds anything in this case.';
 }

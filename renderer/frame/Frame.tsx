@@ -1,9 +1,9 @@
 /** The frame round every stage: spine at the left, stage, ledger where it helps, top bar, balance line at the foot. */
 import Box from '@mui/material/Box';
-import { type ReactElement, lazy, Suspense } from 'react';
+import { lazy, type ReactElement, Suspense } from 'react';
 import { Ledger } from '../ledger/Ledger.tsx';
-import { type Stage, useSession } from '../state/session.ts';
 import { WiringStage } from '../stages/wiring/WiringStage.tsx';
+import { type Stage, useSession } from '../state/session.ts';
 import { BalanceLine } from './BalanceLine.tsx';
 import { ConflictDialog } from './ConflictDialog.tsx';
 import { FindBox } from './FindBox.tsx';

@@ -11,7 +11,13 @@ import { useChannel, useSession } from '../state/session.ts';
 
 const AT_ONCE = 200;
 
-export function HistoryDrawer({ open, onClose }: { readonly open: boolean; readonly onClose: () => void }): ReactElement {
+export function HistoryDrawer({
+  open,
+  onClose,
+}: {
+  readonly open: boolean;
+  readonly onClose: () => void;
+}): ReactElement {
   return (
     <Drawer
       anchor="right"
@@ -70,7 +76,9 @@ function useHistory() {
     setRevisions(answer.value.revisions);
     setHead(answer.value.head);
   }, [channel, key]);
-  useEffect(() => void read(), [read]);
+  useEffect(() => {
+    queueMicrotask(() => void read());
+  }, [read]);
   return { revisions, head, onlyNamed, setOnlyNamed, read };
 }
 
@@ -155,5 +163,7 @@ function Entry({
 /** As the person's own system writes dates. */
 export function when(at: string): string {
   const date = new Date(at);
-  return Number.isNaN(date.getTime()) ? at : date.toLocaleString(undefined, { dateStyle: 'medium', timeStyle: 'short' });
+  return Number.isNaN(date.getTime())
+    ? at
+    : date.toLocaleString(undefined, { dateStyle: 'medium', timeStyle: 'short' });
 }

@@ -29,7 +29,15 @@ export function KeptMark(): ReactElement {
   }
 }
 
-function Word({ tone, text, title }: { readonly tone: string; readonly text: string; readonly title: string }): ReactElement {
+function Word({
+  tone,
+  text,
+  title,
+}: {
+  readonly tone: string;
+  readonly text: string;
+  readonly title: string;
+}): ReactElement {
   return (
     <Box component="span" title={title} sx={{ color: tone, fontSize: '0.875rem', minWidth: '4.5rem' }} data-kept={text}>
       {text}

@@ -65,7 +65,7 @@ function One<K extends keyof Preferences>({
   const value = usePreferences((preferences) => preferences[name]);
   const take = (text: string): void => {
     const chosen = typeof value === 'number' ? Number(text) : text;
-    changePreferences(channel, { [name]: chosen } as Partial<Preferences>);
+    changePreferences(channel, { [name]: chosen });
   };
   return (
     <FormControl sx={{ display: 'block', mb: 1 }}>

@@ -27,7 +27,12 @@ export function Spine(): ReactElement {
     <Box
       component="nav"
       aria-label="Stages of the job"
-      sx={{ gridArea: 'spine', borderRight: '1px solid var(--hair)', width: { xs: '7rem', lg: '10.5rem' }, overflow: 'auto' }}
+      sx={{
+        gridArea: 'spine',
+        borderRight: '1px solid var(--hair)',
+        width: { xs: '7rem', lg: '10.5rem' },
+        overflow: 'auto',
+      }}
     >
       <Box component="ol" sx={{ listStyle: 'none', m: 0, p: 0, pt: 1 }}>
         {stages.map((stage) => (

@@ -126,7 +126,7 @@ function Title(): ReactElement {
         py: 0.25,
         width: '16rem',
         minWidth: '8rem',
-        flex: '0 10 22rem',
+        flex: '0 10 20rem',
         textOverflow: 'ellipsis',
         '&:hover': { borderColor: 'var(--edge)' },
       }}
@@ -142,7 +142,7 @@ function CaseChoice(): ReactElement {
     ? cases
     : [...cases, { id: 'at-rest', label: 'At rest, all off' }];
   return (
-    <Choice label="Operating case" width="13rem" value={caseId} onChange={chooseCase}>
+    <Choice label="Operating case" width="12rem" value={caseId} onChange={chooseCase}>
       {options.map(({ id, label }) => (
         <MenuItem key={id} value={id}>
           {label ?? (id === 'as-drawn' ? 'As drawn' : id)}
@@ -157,7 +157,7 @@ function PracticeChoice(): ReactElement {
   return (
     <Choice
       label="Rule book"
-      width="9.5rem"
+      width="12.5rem"
       value={practice}
       onChange={(value) =>
         void useOpenJob.getState().edit(setTop({ path: 'practice', value: value === '' ? undefined : value }))
@@ -220,7 +220,8 @@ function Choice({
 function UndoRedo(): ReactElement {
   const undoes = useOpenJob(({ line }) => (line.at > 0 ? (line.states[line.at]?.label ?? null) : null));
   const redoes = useOpenJob(({ line }) => line.states[line.at + 1]?.label ?? null);
-  const { undo, redo } = useOpenJob.getState();
+  const undo = useOpenJob((job) => job.undo);
+  const redo = useOpenJob((job) => job.redo);
   return (
     <Box sx={{ display: 'flex' }}>
       <Act

@@ -2,9 +2,9 @@
 import type { HostChannel, HostEvent, MenuCommand } from '../../core/host.ts';
 import { readAgain, useOpenJob } from '../state/openJob.ts';
 import { useSession } from '../state/session.ts';
-import { saveJob } from './saving.ts';
-import { leaveJob, enter, openKept } from './openings.ts';
 import { useFind } from './find.ts';
+import { enter, leaveJob, openKept } from './openings.ts';
+import { saveJob } from './saving.ts';
 
 export function listenToHost(channel: HostChannel): () => void {
   return channel.listen((event) => void take(channel, event));

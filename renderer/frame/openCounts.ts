@@ -1,5 +1,5 @@
 /** What is open in each stage, for the marks of the spine. */
-import type { Severity } from '../../core/api.ts';
+import type { OperatingPoint, Severity } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import type { Stage } from '../state/session.ts';
 import type { OpenCount } from './Spine.tsx';
@@ -37,11 +37,18 @@ function wiringCount(answers: Answers): OpenCount | null {
   const points = [...answers.points.values()];
   const collapsed = points.filter(({ outcome }) => outcome === 'collapse').length;
   if (collapsed > 0) return { severity: 'stop', count: collapsed, words: `${String(collapsed)} unsolved` };
-  const loose = new Set(
-    points
-      .filter((point) => point.case !== 'at-rest')
-      .flatMap(({ remarks }) => remarks.filter(({ kind }) => kind === 'unfed' || kind === 'island-unsupplied'))
-      .flatMap(({ parts }) => parts),
-  ).size;
+  const loose = looseParts(points.filter((point) => point.case !== 'at-rest'));
   return loose === 0 ? null : { severity: 'look', count: loose, words: `${String(loose)} unfed` };
+}
+
+/** Parts that nothing feeds in any case: what one case switches off is meant to be off. */
+function looseParts(points: readonly OperatingPoint[]): number {
+  const unfedIn = points.map(
+    ({ remarks }) =>
+      new Set(
+        remarks.filter(({ kind }) => kind === 'unfed' || kind === 'island-unsupplied').flatMap(({ parts }) => parts),
+      ),
+  );
+  const [first, ...others] = unfedIn;
+  return [...(first ?? [])].filter((part) => others.every((unfed) => unfed.has(part))).length;
 }

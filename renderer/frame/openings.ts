@@ -1,6 +1,6 @@
 /** The ways into a job: from the list, from a file, from a starter, and back to the one that was open. */
-import { draftText, type Draft } from '../../core/api.ts';
-import type { HostChannel, HostAnswer, KeptJob, Trouble } from '../../core/host.ts';
+import { type Draft, draftText } from '../../core/api.ts';
+import type { HostAnswer, HostChannel, KeptJob, Trouble } from '../../core/host.ts';
 import { closeJob, hasUnkept, openJob } from '../state/openJob.ts';
 import { useSession } from '../state/session.ts';
 
@@ -62,7 +62,10 @@ export async function rememberedJob(channel: HostChannel): Promise<void> {
 /** Back to the list of jobs. Changes on their way are waited for by the person, never dropped: the mark in the top bar tells. */
 export function leaveJob(): void {
   if (hasUnkept()) {
-    refuse({ code: 'busy', message: 'The last change is still on its way to the disk. Leave the job once it is kept.' });
+    refuse({
+      code: 'busy',
+      message: 'The last change is still on its way to the disk. Leave the job once it is kept.',
+    });
     return;
   }
   sessionStorage.removeItem(REMEMBERED);

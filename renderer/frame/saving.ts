@@ -8,7 +8,9 @@ export async function saveJob(channel: HostChannel, where: 'known' | 'ask'): Pro
   const { key, line } = useOpenJob.getState();
   const revision = line.states[line.at]?.revision ?? null;
   if (key === null || revision === null || hasUnkept()) {
-    useSession.getState().tell({ code: 'busy', message: 'The last change is still on its way to the disk; save again in a moment.' });
+    useSession
+      .getState()
+      .tell({ code: 'busy', message: 'The last change is still on its way to the disk; save again in a moment.' });
     return;
   }
   const answer = await channel.call('files.saveJob', { job: key, revision, where });

@@ -1,13 +1,16 @@
 /** What the box that finds anything can find in the open job, and how one gets there. */
 import type { Finding, Part } from '../../core/api.ts';
 import { junctionsOf } from '../../core/api.ts';
+import { kindWord } from '../controls/words.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { stages, useSession } from '../state/session.ts';
-import { downloadJob } from './saving.ts';
 import { leaveJob } from './openings.ts';
 import { stageWords } from './Spine.tsx';
+import { downloadJob } from './saving.ts';
 
 export interface Hit {
+  /** Typed in full, it stands first. */
+  readonly id?: string;
   readonly name: string;
   /** What it is, in a word. */
   readonly kind: string;
@@ -22,7 +25,9 @@ export function searchEverything(text: string): readonly Hit[] {
   const ranked = everything().flatMap((hit) => {
     const name = `${hit.name} ${hit.kind}`.toLowerCase();
     const places = words.map((word) => name.indexOf(word));
-    return places.some((place) => place < 0) ? [] : [{ hit, rank: places.reduce((sum, place) => sum + place, 0) }];
+    if (places.some((place) => place < 0)) return [];
+    const isIt = hit.id?.toLowerCase() === text.trim().toLowerCase();
+    return [{ hit, rank: isIt ? -1 : places.reduce((sum, place) => sum + place, 0) }];
   });
   ranked.sort((a, b) => a.rank - b.rank || a.hit.name.length - b.hit.name.length);
   return ranked.slice(0, MOST_HITS).map(({ hit }) => hit);
@@ -35,6 +40,7 @@ function everything(): readonly Hit[] {
     ...actions(),
     ...job.parts.map(partHit),
     ...junctions.map((junction) => ({
+      id: junction,
       name: junction,
       kind: 'junction',
       go: () => inWiring(() => useOpenJob.getState().select({ junctions: [junction] })),
@@ -45,8 +51,9 @@ function everything(): readonly Hit[] {
 
 function partHit(part: Part): Hit {
   return {
+    id: part.id,
     name: part.label === undefined ? part.id : `${part.id}, ${part.label}`,
-    kind: part.kind,
+    kind: kindWord(part.kind),
     go: () => inWiring(() => useOpenJob.getState().select({ parts: [part.id] })),
   };
 }

@@ -55,7 +55,9 @@ function useJobs() {
     if (answer.ok) setJobs(answer.value);
     else useSession.getState().tell(answer.trouble);
   }, [channel]);
-  useEffect(() => void read(), [read]);
+  useEffect(() => {
+    queueMicrotask(() => void read());
+  }, [read]);
   const remove = async (job: JobSummary): Promise<void> => {
     const answer = await channel.call('jobs.remove', { job: job.job });
     if (answer.ok) setRemoved(job);
@@ -78,7 +80,15 @@ function JobRow({ job, onRemove }: { readonly job: JobSummary; readonly onRemove
     <Box component="li" sx={{ display: 'flex', alignItems: 'center', borderTop: '1px solid var(--hair)' }}>
       <ButtonBase
         onClick={() => void openKept(channel, job.job)}
-        sx={{ flex: 1, minWidth: 0, display: 'block', textAlign: 'left', py: 0.75, px: 0.5, '&:hover': { bgcolor: 'var(--lit)' } }}
+        sx={{
+          flex: 1,
+          minWidth: 0,
+          display: 'block',
+          textAlign: 'left',
+          py: 0.75,
+          px: 0.5,
+          '&:hover': { bgcolor: 'var(--lit)' },
+        }}
       >
         <Box component="span" sx={{ display: 'block', fontWeight: 600, overflowWrap: 'anywhere' }}>
           {job.title}

@@ -3,9 +3,9 @@ import Box from '@mui/material/Box';
 import ButtonBase from '@mui/material/ButtonBase';
 import Typography from '@mui/material/Typography';
 import type { ReactElement } from 'react';
+import { examples } from '../../data/index.ts';
 import { startJob } from '../frame/openings.ts';
 import { useChannel } from '../state/session.ts';
-import { examples } from '../../data/index.ts';
 
 export function Patterns(): ReactElement {
   const channel = useChannel();

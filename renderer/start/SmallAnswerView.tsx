@@ -57,7 +57,9 @@ function lines({ walk, point, job }: SmallAnswer): readonly Line[] {
   const { outV, backV, sagV } = walk.totals;
   const amps = (id: string): string => {
     const currentA = point.parts.get(id as Part['id'])?.currentA;
-    return currentA === null || currentA === undefined ? '–' : formatQuantity({ value: currentA, unit: 'A', digits: 3 });
+    return currentA === null || currentA === undefined
+      ? '–'
+      : formatQuantity({ value: currentA, unit: 'A', digits: 3 });
   };
   const lost = (value: number): string => formatQuantity({ value, unit: 'V', digits: 2 });
   return [
@@ -96,7 +98,13 @@ function Taken({ taken }: { readonly taken: SmallAnswer['taken'] }): ReactElemen
         <Box
           component="li"
           key={`${part} ${figure.field} ${figure.text ?? ''}`}
-          sx={{ display: 'flex', gap: 1, justifyContent: 'space-between', borderTop: '1px solid var(--hair)', py: 0.25 }}
+          sx={{
+            display: 'flex',
+            gap: 1,
+            justifyContent: 'space-between',
+            borderTop: '1px solid var(--hair)',
+            py: 0.25,
+          }}
         >
           <span>{figure.text ?? `${part}, ${fieldWord(figure.field).toLowerCase()}: ${valueText(figure)}`}</span>
           <OriginMark origin={figure.origin} />

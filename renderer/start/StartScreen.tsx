@@ -41,14 +41,23 @@ export function StartScreen(): ReactElement {
 function Head(): ReactElement {
   const [looks, setLooks] = useState(false);
   return (
-    <Box sx={{ display: 'flex', flexWrap: 'wrap', alignItems: 'end', gap: 2, borderBottom: '2px solid var(--ink)', pb: 1.5 }}>
+    <Box
+      sx={{
+        display: 'flex',
+        flexWrap: 'wrap',
+        alignItems: 'end',
+        gap: 2,
+        borderBottom: '2px solid var(--ink)',
+        pb: 1.5,
+      }}
+    >
       <Box sx={{ flex: '1 1 24rem' }}>
         <Typography variant="h1" sx={{ fontSize: '2rem' }}>
           Ohmwright
         </Typography>
         <Typography sx={{ color: 'var(--soft)', maxWidth: '46rem' }}>
-          Solves an off-grid 12, 24 or 48 V system as it is really wired: what every cable carries, where the volts go, what the
-          rule books say to it.
+          Solves an off-grid 12, 24 or 48 V system as it is really wired: what every cable carries, where the volts go,
+          what the rule books say to it.
         </Typography>
       </Box>
       <OpenFile />

@@ -52,7 +52,13 @@ export function StartSmall(): ReactElement {
       <Typography variant="body2" sx={{ color: 'var(--soft)', mb: 1 }}>
         Say what you know; the answer beside it is worked out as you type. Lengths are along the cable, one way.
       </Typography>
-      <Box sx={{ display: 'grid', gridTemplateColumns: { xs: 'minmax(0, 1fr)', sm: 'minmax(0, 11fr) minmax(0, 10fr)' }, gap: 3 }}>
+      <Box
+        sx={{
+          display: 'grid',
+          gridTemplateColumns: { xs: 'minmax(0, 1fr)', sm: 'minmax(0, 11fr) minmax(0, 10fr)' },
+          gap: 3,
+        }}
+      >
         <Form small={small} change={change} />
         <Box>
           {answer.ok ? (

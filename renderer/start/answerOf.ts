@@ -1,5 +1,6 @@
 /** Asks the engine about a small job: its answer, its findings, and all that was taken for granted. */
 import {
+  type CheckedJob,
   type CheckReport,
   type Draft,
   type Issue,
@@ -15,7 +16,6 @@ import {
   startSmall,
   type VoltWalk,
   voltWalk,
-  type CheckedJob,
 } from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
 

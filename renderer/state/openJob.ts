@@ -67,6 +67,7 @@ export const useOpenJob = create<OpenJob>()((set, get) => ({
   said: '',
 
   edit: (edit) => {
+    performance.mark(EDIT);
     const { draft } = get();
     const edited = applyEdit(draft, edit, tables);
     if (!edited.ok) return edited;
@@ -128,6 +129,22 @@ function receive(reply: SolveReply): void {
   if (reply.generation !== generation) return;
   const { points, report, ms } = reply;
   useOpenJob.setState({ answers: { generation, job, points, report, ms }, solverTrouble: null });
+  measureToScreen(ms);
+}
+
+/** Marks of the browser's own performance record: how long from an edit to its answer on the screen. */
+const EDIT = 'ohmwright edit';
+const SHOWN = 'ohmwright edit to answer';
+
+function measureToScreen(engineMs: Answers['ms']): void {
+  if (performance.getEntriesByName(EDIT).length === 0) return;
+  requestAnimationFrame(() => {
+    // The next task begins after the frame has been painted.
+    setTimeout(() => {
+      if (performance.getEntriesByName(EDIT).length > 0) performance.measure(SHOWN, { start: EDIT, detail: engineMs });
+      performance.clearMarks(EDIT);
+    });
+  });
 }
 
 /** Walks to another state of the line; its draft is fetched where only the host has it. */

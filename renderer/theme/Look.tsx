@@ -1,6 +1,7 @@
 /** Puts the theme, the custom properties and the text size round everything below it. */
-import GlobalStyles from '@mui/material/GlobalStyles';
+
 import CssBaseline from '@mui/material/CssBaseline';
+import GlobalStyles from '@mui/material/GlobalStyles';
 import { ThemeProvider } from '@mui/material/styles';
 import useMediaQuery from '@mui/material/useMediaQuery';
 import { type ReactElement, type ReactNode, useMemo } from 'react';
@@ -33,7 +34,9 @@ export function Look({ children }: { readonly children: ReactNode }): ReactEleme
             clipPath: 'inset(50%)',
             whiteSpace: 'nowrap',
           },
-          ...(calm ? { '*, *::before, *::after': { animation: 'none !important', transition: 'none !important' } } : {}),
+          ...(calm
+            ? { '*, *::before, *::after': { animation: 'none !important', transition: 'none !important' } }
+            : {}),
         }}
       />
       {children}

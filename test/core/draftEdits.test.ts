@@ -454,11 +454,14 @@ describe('cases', () => {
   });
 
   it('can show a bad lug, and leave the honest job alone', () => {
-    const { draft, job } = edited(exampleDraft('weekend-hut').draft, seedBadLug());
+    const honest = exampleDraft('weekend-hut');
+    const { draft, job } = edited(honest.draft, seedBadLug(honest, tables));
     const bad = runChecks({ job, tables }).findings.filter(({ severity }) => severity !== 'note');
     expect(bad.length).toBeGreaterThan(0);
     expect(new Set(bad.map((finding) => finding.case))).toStrictEqual(new Set(['bad-lug']));
-    expect(applied(removeCase('bad-lug'), draft)).toStrictEqual(exampleDraft('weekend-hut').draft);
+    expect(applied(removeCase('bad-lug'), draft)).toStrictEqual(honest.draft);
+    const nothing = read(JSON.stringify(empty24));
+    expect(applied(seedBadLug(nothing, tables), nothing.draft)).toBe(nothing.draft);
   });
 });
 

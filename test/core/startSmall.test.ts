@@ -28,6 +28,12 @@ function seriousOf(small: Partial<SmallJob>) {
   return findings.filter(({ severity }) => severity === 'stop' || severity === 'fix');
 }
 
+/** Of the run from the switch to the load. */
+function areaOf(small: Partial<SmallJob>): number {
+  const run = made(small).job.parts.find(({ id }) => id === 'W2');
+  return run?.kind === 'pair' && run.size?.system === 'mm2' ? run.size.areaMm2 : Number.NaN;
+}
+
 const blocks = [
   ['agm', 12, [12, 24, 48]],
   ['flooded', 6, [12, 24, 48]],
@@ -82,11 +88,7 @@ describe('starting small', () => {
   });
 
   it('takes a thicker cable for a longer way, and a larger fuse for a larger load', () => {
-    const area = (small: Partial<SmallJob>) => {
-      const run = made(small).job.parts.find(({ id }) => id === 'W2');
-      return run?.kind === 'pair' && run.size?.system === 'mm2' ? run.size.areaMm2 : Number.NaN;
-    };
-    expect(area({ mainToLoadM: 20 })).toBeGreaterThan(area({}));
+    expect(areaOf({ mainToLoadM: 20 })).toBeGreaterThan(areaOf({}));
     const rating = (small: Partial<SmallJob>) => {
       const fuse = made(small).job.parts.find(({ id }) => id === 'F1');
       return fuse?.kind === 'fuse' ? fuse.ratingA : Number.NaN;
@@ -97,10 +99,9 @@ describe('starting small', () => {
   it('says by findings where no listed size will do, and where the bank is too small for the load', () => {
     expect(seriousOf({ loadW: 9000, mainToLoadM: 30 })).not.toHaveLength(0);
     const tooSmall = { loadW: 400, supply: 'ac', capacityAh: 20 } as const;
-    expect(seriousOf(tooSmall).map(({ rule }) => rule)).toContain('string-discharge-high');
+    expect(seriousOf(tooSmall).map(({ rule }) => rule)).toContain('load-starved');
     // The cable is no thicker than for a bank that is large enough.
-    const sizeOf = (small: Partial<SmallJob>) => made(small).job.parts.find(({ id }) => id === 'W2');
-    expect(sizeOf(tooSmall)).toStrictEqual(sizeOf({ ...tooSmall, capacityAh: 300 }));
+    expect(areaOf(tooSmall)).toBeLessThanOrEqual(areaOf({ ...tooSmall, capacityAh: 300 }));
   });
 
   it('says what is wrong with a figure that no job can hold', () => {

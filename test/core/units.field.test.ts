@@ -5,6 +5,8 @@ import {
   type FieldReading,
   factor,
   fieldUnit,
+  figureText,
+  firstText,
   halvedText,
   milliohm,
   type Parsed,
@@ -22,6 +24,7 @@ import {
   type UnitName,
   type UnitsFirst,
   usualSizes,
+  wholeFigureText,
 } from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
 
@@ -246,7 +249,7 @@ describe('The grey figure beside a size', () => {
     const size = { system: 'mm2', areaMm2: 70 } as const;
     const flexible = sizeEcho({ size, metal: 'copper', stranding: 'flexible' }, context);
     expect(flexible.short).toBe('between 2/0 AWG and 3/0 AWG');
-    expect(flexible.detail).toMatch(/^No more resistance, flexible: .* AWG\. No less metal: 3\/0 AWG\.$/);
+    expect(flexible.detail).toBe('3/0 AWG by metal; 2/0 AWG by resistance, flexible');
   });
 
   test('owns up where a trade list does not hold the size', () => {
@@ -327,5 +330,27 @@ describe('A field for a whole number', () => {
     expect(value(readCount(' 4 '))).toMatchObject({ value: 4, store: 4 });
     expect(readCount('4.5')).toEqual({ reading: 'trouble', message: 'Expected a whole number such as 4, got "4.5".' });
     expect(readCount('4 A').reading).toBe('trouble');
+  });
+});
+
+describe('A figure of an answer', () => {
+  test('comes as number and unit apart, with a real minus sign', () => {
+    expect(figureText({ value: 6.2174, unit: 'A' })).toEqual({ number: '6.217', sign: '\u00a0A' });
+    expect(figureText({ value: -0.0032, unit: 'V' })).toEqual({ number: '−3.2', sign: '\u00a0mV' });
+    expect(wholeFigureText({ value: 0.72, unit: '1' })).toBe('72\u00a0%');
+    expect(figureText({ value: 35, unit: 'deg' })).toEqual({ number: '35', sign: '°' });
+  });
+
+  test('is nought where only the dust of a calculation is left, and a picoampere is dust', () => {
+    expect(wholeFigureText({ value: 1.1e-55, unit: 'A' })).toBe('0\u00a0A');
+    expect(wholeFigureText({ value: -1e-12, unit: 'V' })).toBe('0\u00a0V');
+    expect(wholeFigureText({ value: 2e-6, unit: 'ohm' })).toBe('2\u00a0µΩ');
+  });
+
+  test('that is assumed stands in the units that come first', () => {
+    expect(firstText({ value: 20, unit: 'degC', first: 'us' })).toBe('68 °F');
+    expect(firstText({ value: 3.2, unit: 'm', first: 'us' })).toBe('10 ft 6 in');
+    expect(firstText({ value: 20, unit: 'degC', first: 'metric' })).toBe('20 °C');
+    expect(firstText({ value: 0.0021, unit: 'ohm', first: 'us' })).toBe('2.1 mΩ');
   });
 });

@@ -76,8 +76,11 @@ export function pageOf(url: string, window: string): HttpChannel {
 
 /** A browser says by itself from which page it asks; Node has to be told. */
 function fetchFrom(origin: string): typeof fetch {
-  return async (what, how) =>
-    await fetch(what, { ...how, headers: { ...how?.headers, Origin: origin } as HeadersInit });
+  return async (what, how) => {
+    const headers = new Headers(how?.headers);
+    headers.set('Origin', origin);
+    return await fetch(what, { ...how, headers });
+  };
 }
 
 async function firstLine(child: ChildProcess, complained: () => string): Promise<string> {

@@ -175,6 +175,44 @@ describe('report', () => {
   });
 });
 
+describe('lists', () => {
+  test('writes the cut list, the fuse list and the parts list as CSV into a folder', async () => {
+    const out = at('lists');
+    const run = await runCli(['lists', at('thinCable.job.json'), '--out', out]);
+    expect([run.status, run.stdout]).toEqual([0, '']);
+    expect(readdirSync(out).toSorted()).toEqual(['cables.csv', 'fuses.csv', 'parts.csv']);
+    const cables = readFileSync(join(out, 'cables.csv'), 'utf8').split('\r\n');
+    expect(cables[0]).toMatch(/^\ufeffId,Label,From,To,Size,/);
+    expect(cables[1]).toMatch(/^C1,,F\+,L\+,1\.5 mm²,.*,5,/);
+    expect(cables).toHaveLength(4);
+    expect(readFileSync(join(out, 'fuses.csv'), 'utf8')).toContain('F1,,fuse,,300,32,20000,,B+,F+,C1; C2,');
+    expect(readFileSync(join(out, 'parts.csv'), 'utf8').trimEnd().split('\r\n')).toHaveLength(6);
+  });
+  test('never writes over a list that is there, and then writes none', async () => {
+    const out = at('other-lists');
+    mkdirSync(out);
+    writeFileSync(join(out, 'parts.csv'), 'mine');
+    const run = await runCli(['lists', at('thinCable.job.json'), '--out', out]);
+    expect([run.status, run.stdout]).toEqual([4, '']);
+    expect(run.stderr).toContain('parts.csv cannot be written: it exists already');
+    expect(readdirSync(out)).toEqual(['parts.csv']);
+    expect(readFileSync(join(out, 'parts.csv'), 'utf8')).toBe('mine');
+  });
+  test('answers the same rows as JSON; without either it has nowhere to go', async () => {
+    const run = await runCli(['lists', at('thinCable.job.json'), '--json']);
+    expect(run.status).toBe(0);
+    const lists = JSON.parse(run.stdout) as Record<string, { headings: string[]; rows: string[][] }>;
+    expect(Object.entries(lists).map(([name, { rows }]) => [name, rows.length])).toEqual([
+      ['cables', 2],
+      ['fuses', 1],
+      ['parts', 5],
+    ]);
+    const nowhere = await runCli(['lists', at('thinCable.job.json')]);
+    expect([nowhere.status, nowhere.stdout]).toEqual([2, '']);
+    expect((await runCli(['lists', at('thinCable.job.json'), '--out', at('thinCable.job.json')])).status).toBe(4);
+  });
+});
+
 describe('new', () => {
   test('lists the starters, and writes one that solves', async () => {
     const list = await runCli(['new']);

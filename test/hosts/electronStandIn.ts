@@ -270,7 +270,7 @@ export class StandIn {
   readonly schemes: object[] = [];
   readonly asked: Asked[] = [];
   readonly shown: string[] = [];
-  /** Answers to the next dialogs, in order; where there is none the dialog is cancelled. */
+  /** Answers to the next dialogs, in order, or promises of them; where there is none the dialog is cancelled. */
   readonly answers: object[] = [];
   menu: MenuItemConstructorOptions[] = [];
   screens = [{ workArea: { x: 0, y: 0, width: 1920, height: 1080 } }];
@@ -308,6 +308,11 @@ export class StandIn {
   /** A request of the page, which the session may cancel before the scheme answers. */
   async ask(url: string, method = 'GET'): Promise<Response> {
     if (!this.mayRequest(url)) throw new Error(`net::ERR_BLOCKED_BY_CLIENT ${url}`);
+    return await this.answered(url, method);
+  }
+
+  /** The scheme's own answer, were the session to let everything through. */
+  async answered(url: string, method = 'GET'): Promise<Response> {
     return await this.#scheme!(new Request(url, { method }));
   }
 

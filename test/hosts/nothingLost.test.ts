@@ -191,22 +191,37 @@ describe.skipIf(!mayMount)('a disk that does not take any more', () => {
     expect(after).toMatchObject({ acknowledged: 10, trouble: undefined });
     channel.close();
     await ended(host);
-    expect(integrity(join(disk.folder, 'store'))).toBe('ok');
   });
 
-  test('that cannot be written: the start is refused in words, and nothing is changed', async () => {
+  test('that can only be read: work can be looked at, a change is refused in words, and nothing is changed', async () => {
+    // Another reader leaves the files behind that the database needs to be read at all where nothing can be written.
+    expect(integrity(join(disk.folder, 'store'))).toBe('ok');
     const before = readdirSync(join(disk.folder, 'store'));
+    remount('ro');
+    const reading = await startBuiltLocal(disk.folder);
+    const page = reading.page('page');
+    const [listed] = await ask(page, 'jobs.list', {});
+    const { job, head, text } = await ask(page, 'jobs.open', { job: listed!.job });
+    const answer = await page.call('jobs.keep', { job, after: head, text: titled('Refused'), label: 'Refused' });
+    if (answer.ok) throw new Error('a change was kept on a disk that can only be read');
+    expect(answer.trouble.code).toBe('read-only');
+    expect(answer.trouble.message).toContain('cannot be written');
+    page.close();
+    await ended(reading);
+    expect(readdirSync(join(disk.folder, 'store'))).toEqual(before);
+
+    remount('rw');
+    const writing = await startBuiltLocal(disk.folder);
+    const again = writing.page('page');
+    expect(await ask(again, 'jobs.open', { job })).toMatchObject({ head, text });
+    again.close();
+    await ended(writing);
+
+    expect(readdirSync(join(disk.folder, 'store'))).toEqual(['ohmwright.db']);
     remount('ro');
     await expect(startBuiltLocal(disk.folder)).rejects.toThrow(
       /ended with 1 .*cannot be written.*Nothing was written/s,
     );
-    expect(readdirSync(join(disk.folder, 'store'))).toEqual(before);
-    remount('rw');
-    const host = await startBuiltLocal(disk.folder);
-    const channel = host.page('page');
-    expect((await ask(channel, 'jobs.list', {})).length).toBe(1);
-    channel.close();
-    await ended(host);
   });
 });
 
@@ -218,7 +233,7 @@ describe('a clock that is set back', () => {
       label: string,
     ): Promise<{ notices: readonly string[]; labels: readonly string[] }> => {
       const complaints: string[] = [];
-      const server = await startLocal(
+      const { server } = await startLocal(
         { port: 0, store: join(folder, 'store'), saveFolder: join(folder, 'saved'), browser: false, idle: 60 },
         {
           machine: { platform: process.platform, home: folder, env: {} },

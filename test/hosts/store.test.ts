@@ -21,7 +21,13 @@ describe('a job and its history', () => {
     const folder = tempFolder();
     const text = `{"title":"Hütte ☀ \u0000 \u{1f50b}","x":"${'long '.repeat(50_000)}"}`;
     const first = await tempStore({ folder });
-    const { job } = first.jobs.create({ text, title: 'Hütte ☀', parts: 7, label: 'begun', file: '/home/a/hut.job.json' });
+    const { job } = first.jobs.create({
+      text,
+      title: 'Hütte ☀',
+      parts: 7,
+      label: 'begun',
+      file: '/home/a/hut.job.json',
+    });
     first.close();
     const again = await tempStore({ folder });
     expect(again.notices).toEqual([]);
@@ -65,7 +71,7 @@ describe('a job and its history', () => {
   test('the history comes in portions, newest first', async () => {
     const { store, job, numbers } = await branched();
     expect(labels(store.jobs.history(job, 2))).toBe('d c');
-    expect(labels(store.jobs.history(job, 2, numbers['c']!))).toBe('b a');
+    expect(labels(store.jobs.history(job, 2, numbers['c']))).toBe('b a');
   });
 
   test('a state can be named, renamed and unnamed', async () => {
@@ -207,7 +213,10 @@ test.each([
   [{ env: { OHMWRIGHT_STORE: '', XDG_DATA_HOME: '/x' }, platform: 'linux' }, '/x/ohmwright'],
   [{ env: { XDG_DATA_HOME: 'relative' }, platform: 'linux' }, '/home/a/.local/share/ohmwright'],
   [{ env: {}, platform: 'darwin' }, '/home/a/Library/Application Support/Ohmwright'],
-  [{ env: { APPDATA: 'C:\\Users\\a\\AppData\\Roaming' }, platform: 'win32' }, 'C:\\Users\\a\\AppData\\Roaming\\Ohmwright'],
+  [
+    { env: { APPDATA: 'C:\\Users\\a\\AppData\\Roaming' }, platform: 'win32' },
+    'C:\\Users\\a\\AppData\\Roaming\\Ohmwright',
+  ],
 ] as const)('the store of %j lies in %s', (place, folder) => {
   expect(storeFolder({ home: '/home/a', ...place })).toBe(folder);
 });

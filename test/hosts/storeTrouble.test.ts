@@ -140,37 +140,44 @@ describe('a full disk', () => {
     store.close();
   });
 
-  test.skipIf(!canMount())('is told on a real disk of one megabyte, and every kept state is still there afterwards', async () => {
-    const folder = tempFolder();
-    await mounted(folder, 'size=1m', async () => {
-      const store = await openStore({ folder, now });
-      let { job, head } = store.jobs.create(state('begin'));
-      let code = '';
-      let kept = 1;
-      while (code === '') {
-        try {
-          const text = Array.from({ length: 2000 }, (_, index) => ((index + kept * 7) * 2654435761 % 4294967296).toString(36));
-          head = store.jobs.keep(job, head, state(text.join(''), `change ${String(kept)}`)).head;
-          kept += 1;
-        } catch (error) {
-          code = (await troubleOf(() => Promise.reject(error))).code;
+  test.skipIf(!canMount())(
+    'is told on a real disk of one megabyte, and every kept state is still there afterwards',
+    async () => {
+      const folder = tempFolder();
+      await mounted(folder, 'size=1m', async () => {
+        const store = await openStore({ folder, now });
+        let { job, head } = store.jobs.create(state('begin'));
+        let code = '';
+        let kept = 1;
+        while (code === '') {
+          try {
+            const text = Array.from({ length: 2000 }, (_, index) =>
+              (((index + kept * 7) * 2654435761) % 4294967296).toString(36),
+            );
+            head = store.jobs.keep(job, head, state(text.join(''), `change ${String(kept)}`)).head;
+            kept += 1;
+          } catch (error) {
+            code = (await troubleOf(() => Promise.reject(error))).code;
+          }
         }
-      }
-      expect(code).toBe('disk-full');
-      expect(kept).toBeGreaterThan(5);
-      expect(store.jobs.history(job, 9999)).toHaveLength(kept);
-      expect(store.jobs.open(job).head).toBe(head);
-      store.close();
-      console.log(`a disk of 1 MB held ${String(kept)} states before it was full`);
-    });
-  });
+        expect(code).toBe('disk-full');
+        expect(kept).toBeGreaterThan(5);
+        expect(store.jobs.history(job, 9999)).toHaveLength(kept);
+        expect(store.jobs.open(job).head).toBe(head);
+        store.close();
+        console.log(`a disk of 1 MB held ${String(kept)} states before it was full`);
+      });
+    },
+  );
 
   test.skipIf(!canMount())('met while a damaged store is being recovered leaves that store where it lay', async () => {
     const source = tempFolder();
     const store = await tempStore({ folder: source, now });
     let { job, head } = store.jobs.create(state('begin'));
     for (let step = 0; step < 30; step += 1) {
-      const text = Array.from({ length: 2000 }, (_, index) => ((index + step * 7) * 2654435761 % 4294967296).toString(36));
+      const text = Array.from({ length: 2000 }, (_, index) =>
+        (((index + step * 7) * 2654435761) % 4294967296).toString(36),
+      );
       head = store.jobs.keep(job, head, state(text.join(''), `change ${String(step)}`)).head;
     }
     store.close();

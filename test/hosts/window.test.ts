@@ -323,6 +323,23 @@ describe('the end', () => {
     await expect(contents.key.call('jobs.list', {})).rejects.toThrow('no handler registered');
   });
 
+  test('a file that is being saved is written and noted before the store is closed', async () => {
+    const place = home();
+    const first = await open({ home: place });
+    const { job, head } = await call<KeptJob>(first, 'jobs.create', { text: jobText, label: 'New' });
+    const path = join(place.folder, 'late.job.json');
+    let choose = (_answer: object): void => {};
+    first.electron.answers.push(new Promise<object>((resolve) => (choose = resolve)));
+    const saving = call(first, 'files.saveJob', { job, revision: head, where: 'ask' });
+    await expect.poll(() => first.electron.asked.length).toBe(1);
+    first.window.close();
+    choose({ canceled: false, filePath: path });
+    expect(await saving).toMatchObject({ path });
+    expect(await first.electron.ended()).toBe(0);
+    const second = await open({ home: place });
+    expect(await call<KeptJob>(second, 'jobs.open', { job })).toMatchObject({ file: path });
+  });
+
   test('what was kept is there at the next start', async () => {
     const place = home();
     const first = await open({ home: place });

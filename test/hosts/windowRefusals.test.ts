@@ -1,6 +1,8 @@
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import type { Services } from '../../electron/services/services.ts';
+import { answerCalls } from '../../electron/window/ipc.ts';
 import { buildPreload } from './builtWindow.ts';
-import { type Frame, preventable } from './electronStandIn.ts';
+import { type Frame, preventable, StandIn } from './electronStandIn.ts';
 import { type StartedWindow, startWindow } from './windowStarted.ts';
 
 interface Attempt {
@@ -87,6 +89,21 @@ describe('calls', () => {
 
   test('there is exactly one channel', () => {
     expect([...started.electron.handlers.keys()]).toEqual(['ohmwright:call']);
+  });
+
+  test('an answer that cannot be copied is told as a defect, not as an exception', async () => {
+    const electron = new StandIn('/nowhere');
+    const log: string[] = [];
+    const list = async () => await Promise.resolve({ ok: true, value: () => 1 });
+    const services = {
+      methods: { 'jobs.list': list },
+      log: (line: string) => void log.push(line),
+    } as unknown as Services;
+    answerCalls({ ipcMain: electron.module.ipcMain, services, windowOf: () => 'window' });
+    const answer = await electron.invoke(started.contents, ourFrame, 'ohmwright:call', 'jobs.list', {});
+    expect(answer).toMatchObject({ ok: false, trouble: { code: 'defect' } });
+    expect(log).toHaveLength(1);
+    noted('answer with a function inside', 'defect');
   });
 
   test('a value that cannot be copied does not reach the host', async () => {
@@ -195,6 +212,15 @@ describe('what the page may ask of the system', () => {
 });
 
 describe('the scheme', () => {
+  test.each(['app://elsewhere/', 'app://ohmwright:81/'])(
+    'another host of it has nothing, even if the session let it through: %s',
+    async (url) => {
+      const { status } = await started.electron.answered(url);
+      noted(`GET ${url} past the session`, String(status));
+      expect(status).toBe(404);
+    },
+  );
+
   test.each([
     ['app://ohmwright/', 'GET', 200],
     ['app://ohmwright/', 'POST', 405],

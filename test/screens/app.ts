@@ -101,7 +101,10 @@ export async function axeViolations(page: Page): Promise<readonly string[]> {
 /** Opens a starter pattern from the start screen. */
 export async function openPattern(page: Page, title: RegExp): Promise<void> {
   await page.getByRole('button', { name: title }).first().click();
-  await page.getByRole('contentinfo', { name: 'Balance line' }).getByText(/in .* W = out/).waitFor();
+  await page
+    .getByRole('contentinfo', { name: 'Balance line' })
+    .getByText(/in .* W = out/)
+    .waitFor();
 }
 
 /** Waits until the host has kept every change. */

@@ -29,7 +29,8 @@ export function CaseTrouble({ points }: { readonly points: readonly OperatingPoi
             <SeverityMark severity="stop" />
           </Box>
           <Box>
-            <strong>{caseWords(job, point.case)}.</strong> {plainFields(answerLine(job, point))}
+            <strong>{caseWords(job, point.case)}.</strong>{' '}
+            {plainFields(point.collapse?.message ?? answerLine(job, point))}
             <ShowCase point={point} />
           </Box>
         </Box>

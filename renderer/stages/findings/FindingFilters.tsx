@@ -20,18 +20,20 @@ import {
 
 export interface FindingFiltersProps {
   readonly all: readonly ListedFinding[];
+  /** How many are left by the filter. */
+  readonly shown: number;
   readonly filter: FindingFilter;
   readonly onChange: (filter: FindingFilter) => void;
 }
 
-export function FindingFilters({ all, filter, onChange }: FindingFiltersProps): ReactElement {
+export function FindingFilters({ all, shown, filter, onChange }: FindingFiltersProps): ReactElement {
   const job = useOpenJob(({ job }) => job);
   const { parts, cases, families } = choices(all, job);
   return (
     <Box
       component="search"
       aria-label="Findings to show"
-      sx={{ display: 'flex', flexWrap: 'wrap', gap: '0.5rem', alignItems: 'center' }}
+      sx={{ display: 'flex', flexWrap: 'wrap', gap: '0.5rem', alignItems: 'center', mb: '0.5rem' }}
     >
       <SeverityButtons all={all} filter={filter} onChange={onChange} />
       <Choice
@@ -59,12 +61,16 @@ export function FindingFilters({ all, filter, onChange }: FindingFiltersProps): 
         sx={{ width: '11rem' }}
         slotProps={{ htmlInput: { maxLength: 200, type: 'search' } }}
       />
-      {isFiltered(filter) && <Button onClick={() => onChange(NO_FILTER)}>Show all</Button>}
+      {isFiltered(filter) && (
+        <Button variant="outlined" onClick={() => onChange(NO_FILTER)}>
+          {shown} of {all.length} shown: show all
+        </Button>
+      )}
     </Box>
   );
 }
 
-function SeverityButtons({ all, filter, onChange }: FindingFiltersProps): ReactElement {
+function SeverityButtons({ all, filter, onChange }: Omit<FindingFiltersProps, 'shown'>): ReactElement {
   const toggle = (severity: Severity): void => {
     const severities = new Set(filter.severities);
     if (!severities.delete(severity)) severities.add(severity);

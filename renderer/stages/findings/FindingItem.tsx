@@ -46,8 +46,10 @@ export function FindingItem({ listed, full, open, onToggle, onMade }: FindingIte
             gap: '0.5rem',
             width: '100%',
             textAlign: 'left',
-            padding: '0.5rem 0.75rem',
+            padding: '0.3125rem 0.75rem 0.125rem',
             font: 'inherit',
+            fontSize: '0.9375rem',
+            lineHeight: 1.3,
             '&:hover': { backgroundColor: 'var(--lit)' },
             '&.Mui-focusVisible': { outline: '2px solid var(--volt)', outlineOffset: -2 },
             '@media (pointer: coarse)': { minHeight: 44 },
@@ -68,7 +70,7 @@ export function FindingItem({ listed, full, open, onToggle, onMade }: FindingIte
       </Box>
       {shown && <FindingBody finding={finding} where={where} />}
       {open && (
-        <Box id={panel} sx={{ padding: '0.25rem 0.75rem 0.75rem 6.75rem' }}>
+        <Box id={panel} sx={{ padding: '0.25rem 0.75rem 0.75rem 6.75rem', [NARROW]: { paddingLeft: '0.75rem' } }}>
           <RemedyPanel finding={finding} onMade={onMade} />
         </Box>
       )}
@@ -89,43 +91,57 @@ function Turned({ open }: { readonly open: boolean }): ReactElement {
 function FindingBody({ finding, where }: { readonly finding: Finding; readonly where: string }): ReactElement {
   const job = useOpenJob(({ job }) => job);
   return (
-    <Box
-      component="dl"
-      sx={{
-        m: 0,
-        padding: '0 0.75rem 0.5rem 6.75rem',
-        display: 'grid',
-        gridTemplateColumns: '5rem minmax(0, 1fr)',
-        columnGap: '0.5rem',
-        rowGap: '0.25rem',
-        '& dt': { color: 'var(--soft)' },
-        '& dd': { m: 0, minWidth: 0, overflowWrap: 'anywhere' },
-      }}
-    >
-      <dt>Where</dt>
-      <dd>
-        {where === '' ? 'the system as a whole' : where}
-        {finding.case !== '' && (
-          <Box component="span" sx={{ color: 'var(--soft)' }}>
-            {' '}
-            · {caseWords(job, finding.case)}
-          </Box>
-        )}
-        {finding.parts.length > 0 && <ShowInWiring finding={finding} />}
-      </dd>
-      <dt>Figures</dt>
-      <dd>
+    <Box sx={BODY}>
+      <Box component="dl" sx={FACTS}>
+        <dt>Where</dt>
+        <dd>
+          {where === '' ? 'the system as a whole' : where}
+          {finding.case !== '' && (
+            <Box component="span" sx={{ color: 'var(--soft)' }}>
+              {' '}
+              · {caseWords(job, finding.case)}
+            </Box>
+          )}
+        </dd>
+        <dt>Remedy</dt>
+        <dd>{plainFields(finding.remedy)}</dd>
+        <dt>Basis</dt>
+        <dd>
+          <BasisText text={plainFields(finding.basis)} status={finding.basisStatus} />
+        </dd>
+      </Box>
+      <Box sx={{ flex: '0 1 14rem' }}>
         <LimitBar finding={finding} />
-      </dd>
-      <dt>Remedy</dt>
-      <dd>{plainFields(finding.remedy)}</dd>
-      <dt>Basis</dt>
-      <dd>
-        <BasisText text={plainFields(finding.basis)} status={finding.basisStatus} />
-      </dd>
+        {finding.parts.length > 0 && <ShowInWiring finding={finding} />}
+      </Box>
     </Box>
   );
 }
+
+/** By the list's own width in letters, so that large text counts as narrow too. */
+const NARROW = '@container (max-width: 40rem)';
+
+const BODY = {
+  display: 'flex',
+  flexWrap: 'wrap',
+  gap: '0.125rem 1.5rem',
+  padding: '0 0.75rem 0.25rem 6.75rem',
+  [NARROW]: { paddingLeft: '0.75rem' },
+  fontSize: '0.8125rem',
+  lineHeight: 1.35,
+} as const;
+
+const FACTS = {
+  m: 0,
+  flex: '1 1 22rem',
+  minWidth: 0,
+  display: 'grid',
+  gridTemplateColumns: '4rem minmax(0, 1fr)',
+  alignContent: 'start',
+  columnGap: '0.5rem',
+  '& dt': { color: 'var(--soft)' },
+  '& dd': { m: 0, minWidth: 0, overflowWrap: 'anywhere' },
+} as const;
 
 function ShowInWiring({ finding }: { readonly finding: Finding }): ReactElement {
   const show = (): void => {
@@ -137,7 +153,10 @@ function ShowInWiring({ finding }: { readonly finding: Finding }): ReactElement 
     useSession.getState().goStage('wiring');
   };
   return (
-    <Button onClick={show} sx={{ marginLeft: '0.5rem', textDecoration: 'underline' }}>
+    <Button
+      onClick={show}
+      sx={{ paddingInline: 0, minHeight: '1.5rem', fontSize: '0.8125rem', textDecoration: 'underline' }}
+    >
       Show in the wiring
       <span className="only-read">: {finding.parts.join(', ')}</span>
     </Button>

@@ -41,7 +41,7 @@ export function FindingList({ shown, openKey, onOpen, onMade }: FindingListProps
       ref={list}
       aria-label="Findings, worst first"
       onKeyDown={walk}
-      sx={{ m: 0, p: 0, listStyle: 'none', borderBottom: '1px solid var(--hair)' }}
+      sx={{ m: 0, p: 0, listStyle: 'none', containerType: 'inline-size', borderBottom: '1px solid var(--hair)' }}
     >
       {shown.map((one, index) => (
         <FindingItem

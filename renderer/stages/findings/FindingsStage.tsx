@@ -9,7 +9,7 @@ import { PracticeChoice } from '../site/PracticeChoice.tsx';
 import { CaseTrouble } from './CaseTrouble.tsx';
 import { FindingFilters } from './FindingFilters.tsx';
 import { FindingList } from './FindingList.tsx';
-import { filtered, isFiltered, listed, NO_FILTER, severityCounts } from './findingList.ts';
+import { filtered, listed, NO_FILTER, severityCounts } from './findingList.ts';
 import { NotDone } from './NotDone.tsx';
 import { PassedList } from './PassedList.tsx';
 
@@ -55,10 +55,8 @@ function Verdicts({ report, onMade }: { readonly report: CheckReport; readonly o
     <>
       {all.length > 0 && (
         <>
-          <FindingFilters all={all} filter={filter} onChange={setFilter} />
-          <Box sx={{ minHeight: '1.75rem', pt: '0.375rem', color: 'var(--soft)' }}>
-            {isFiltered(filter) && `${String(shown.length)} of ${String(all.length)} shown`}
-          </Box>
+          <FindingFilters all={all} shown={shown.length} filter={filter} onChange={setFilter} />
+          <h2 className="only-read">The findings</h2>
           <FindingList shown={shown} openKey={openKey} onOpen={setOpenKey} onMade={onMade} />
         </>
       )}

@@ -27,7 +27,7 @@ export function LimitBar({ finding }: { readonly finding: Finding }): ReactEleme
   const shares = barShares(finding);
   const { severity } = finding;
   return (
-    <Box sx={{ display: 'grid', gap: '0.25rem', maxWidth: '34rem' }}>
+    <Box sx={{ display: 'grid', gap: '0.125rem' }}>
       <Box sx={{ fontVariantNumeric: 'tabular-nums' }}>
         Measured <strong>{formatQuantity(finding.measured)}</strong> · limit{' '}
         <strong>{formatQuantity(finding.limit)}</strong>

@@ -1,7 +1,7 @@
 /** Checks not done, each missing figure with its field to fill in place. */
 import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
-import { type ReactElement, useMemo, useState } from 'react';
+import { type ReactElement, type RefObject, useEffect, useLayoutEffect, useMemo, useRef, useState } from 'react';
 import type { CheckedJob, MissingField, NotChecked } from '../../../core/api.ts';
 import { partName, plainFields } from '../../../core/api.ts';
 import { PartField } from '../../controls/PartField.tsx';
@@ -15,8 +15,11 @@ const FIRST_SHOWN = 12;
 
 export function NotDone({ rows }: { readonly rows: readonly NotChecked[] }): ReactElement {
   const job = useOpenJob(({ job }) => job);
-  const figures = useMemo(() => missingFigures(rows, job).filter((figure) => !waitsForPractice(figure)), [rows, job]);
+  const missing = useMemo(() => missingFigures(rows, job), [rows, job]);
+  const figures = useMemo(() => missing.filter((figure) => !waitsForPractice(figure)), [missing]);
+  const forPractice = missing.filter(waitsForPractice).reduce((sum, { checks }) => sum + checks.length, 0);
   const [all, setAll] = useState(false);
+  const list = useFocusInPlace();
   const shown = all ? figures : figures.slice(0, FIRST_SHOWN);
   if (rows.length === 0) {
     return <Box sx={{ color: 'var(--soft)' }}>None: every check had the figures that it needs.</Box>;
@@ -25,8 +28,9 @@ export function NotDone({ rows }: { readonly rows: readonly NotChecked[] }): Rea
     <Box>
       <Box sx={{ color: 'var(--soft)', mb: '0.5rem' }}>
         They count neither as passed nor as failed. Fill in what is known; the list follows.
+        {forPractice > 0 && ` ${String(forPractice)} of them wait for the choice of a rule book, above.`}
       </Box>
-      <Box component="ul" sx={{ m: 0, p: 0, listStyle: 'none' }}>
+      <Box component="ul" ref={list} sx={{ m: 0, p: 0, listStyle: 'none' }}>
         {shown.map((figure) => (
           <Figure key={figure.key} figure={figure} job={job} />
         ))}
@@ -36,6 +40,36 @@ export function NotDone({ rows }: { readonly rows: readonly NotChecked[] }): Rea
       )}
     </Box>
   );
+}
+
+/** A figure that was filled in leaves the list, and its field with it: whoever was in it goes on in the one that took its place. */
+function useFocusInPlace(): RefObject<HTMLUListElement | null> {
+  const list = useRef<HTMLUListElement>(null);
+  const at = useRef(-1);
+  useEffect(() => {
+    const note = (): void => {
+      const row = document.activeElement?.closest('li') ?? null;
+      at.current = row?.parentElement === list.current && row !== null ? siblingsBefore(row) : -1;
+    };
+    const forget = (): void => {
+      at.current = -1;
+    };
+    document.addEventListener('focusin', note);
+    // A click beside the fields leaves them for good.
+    document.addEventListener('pointerdown', forget);
+    return () => {
+      document.removeEventListener('focusin', note);
+      document.removeEventListener('pointerdown', forget);
+    };
+  }, []);
+  // After every drawing, since only then is it known whether the field is still there.
+  useLayoutEffect(() => {
+    const rows = list.current?.children ?? [];
+    if (at.current < 0 || rows.length === 0 || document.activeElement !== document.body) return;
+    const row = rows[Math.min(at.current, rows.length - 1)];
+    row?.querySelector<HTMLElement>('input, select, textarea')?.focus();
+  });
+  return list;
 }
 
 function Figure({ figure, job }: { readonly figure: MissingFigure; readonly job: CheckedJob }): ReactElement {
@@ -93,4 +127,8 @@ function whose({ fields, checks }: MissingFigure, job: CheckedJob): string {
 
 function capital(text: string): string {
   return text.charAt(0).toUpperCase() + text.slice(1);
+}
+
+function siblingsBefore(element: Element): number {
+  return [...(element.parentElement?.children ?? [])].indexOf(element);
 }

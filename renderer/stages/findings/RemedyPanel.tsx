@@ -3,8 +3,8 @@ import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
 import LinearProgress from '@mui/material/LinearProgress';
 import { type ReactElement, useEffect, useState } from 'react';
-import type { CheckedJob, Finding } from '../../../core/api.ts';
-import { formatQuantity, partNames, plainFields } from '../../../core/api.ts';
+import type { Finding } from '../../../core/api.ts';
+import { formatQuantity, plainFields } from '../../../core/api.ts';
 import { SeverityMark } from '../../controls/SeverityMark.tsx';
 import { useOpenJob } from '../../state/openJob.ts';
 import type { TriedRemedy } from '../../workers/remedyMessages.ts';
@@ -38,7 +38,7 @@ export function RemedyPanel({ finding, onMade }: RemedyPanelProps): ReactElement
       )}
       {state.status === 'tried' &&
         state.trials.map((trial) => (
-          <Trial key={trial.label} trial={trial} generation={state.generation} onMade={onMade} />
+          <Trial key={trial.label} trial={trial} itself={finding} generation={state.generation} onMade={onMade} />
         ))}
     </Box>
   );
@@ -70,12 +70,12 @@ function Trying({ onStop }: { readonly onStop: () => void }): ReactElement {
 
 interface TrialProps {
   readonly trial: TriedRemedy;
+  readonly itself: Finding;
   readonly generation: number;
   readonly onMade: () => void;
 }
 
-function Trial({ trial, generation, onMade }: TrialProps): ReactElement {
-  const job = useOpenJob(({ job }) => job);
+function Trial({ trial, itself, generation, onMade }: TrialProps): ReactElement {
   const edit = useOpenJob(({ edit }) => edit);
   const current = useOpenJob((open) => open.generation === generation);
   const [refused, setRefused] = useState<string | null>(null);
@@ -90,8 +90,8 @@ function Trial({ trial, generation, onMade }: TrialProps): ReactElement {
       <Box sx={{ fontWeight: 600 }}>{plainFields(trial.label)}</Box>
       {trial.cost !== undefined && <Box sx={{ color: 'var(--soft)' }}>Takes: {trial.cost}</Box>}
       <Box sx={{ fontVariantNumeric: 'tabular-nums' }}>{beforeAndAfter(trial)}</Box>
-      <FindingsMoved title="Goes with it" findings={trial.gone} job={job} none="No finding goes with it." />
-      <FindingsMoved title="Comes by it" findings={trial.arisen} job={job} none="No new finding comes by it." />
+      <FindingsMoved title="Goes with it" findings={trial.gone} itself={itself} none="No finding goes with it." />
+      <FindingsMoved title="Comes by it" findings={trial.arisen} itself={itself} none="No new finding comes by it." />
       <Box>
         <Button
           variant={trial.stillThere || trial.arisen.length > 0 ? 'outlined' : 'contained'}
@@ -123,11 +123,11 @@ function beforeAndAfter({ before, after, stillThere }: TriedRemedy): string {
 interface FindingsMovedProps {
   readonly title: string;
   readonly findings: readonly Finding[];
-  readonly job: CheckedJob;
+  readonly itself: Finding;
   readonly none: string;
 }
 
-function FindingsMoved({ title, findings, job, none }: FindingsMovedProps): ReactElement {
+function FindingsMoved({ title, findings, itself, none }: FindingsMovedProps): ReactElement {
   if (findings.length === 0) return <Box sx={{ color: 'var(--soft)' }}>{none}</Box>;
   return (
     <Box>
@@ -142,12 +142,14 @@ function FindingsMoved({ title, findings, job, none }: FindingsMovedProps): Reac
             sx={{ display: 'flex', gap: '0.5rem', alignItems: 'baseline' }}
           >
             <SeverityMark severity={finding.severity} />
-            <span>
-              {partNames(job, finding.parts)}: {plainFields(finding.message)}
-            </span>
+            <span>{isSame(finding, itself) ? 'this finding' : plainFields(finding.message)}</span>
           </Box>
         ))}
       </Box>
     </Box>
   );
+}
+
+function isSame(one: Finding, other: Finding): boolean {
+  return one.rule === other.rule && one.parts.join(' ') === other.parts.join(' ');
 }

@@ -11,7 +11,7 @@ export interface MissingFigure {
   readonly checks: readonly NotChecked[];
 }
 
-/** One entry a missing figure, the one that most checks wait for first. */
+/** One entry a missing figure: what can be filled in first, and of that what most checks wait for. */
 export function missingFigures(rows: readonly NotChecked[], job: CheckedJob): readonly MissingFigure[] {
   const groups = new Map<string, { missing: string; fields: readonly MissingField[]; checks: NotChecked[] }>();
   for (const row of rows) {
@@ -23,7 +23,8 @@ export function missingFigures(rows: readonly NotChecked[], job: CheckedJob): re
     groups.set(key, group);
   }
   const gathered = [...groups].map(([key, group]) => ({ key, ...group }));
-  return gathered.toSorted((a, b) => b.checks.length - a.checks.length);
+  const canFill = ({ fields }: MissingFigure): number => (fields.length > 0 ? 1 : 0);
+  return gathered.toSorted((a, b) => canFill(b) - canFill(a) || b.checks.length - a.checks.length);
 }
 
 /** True for a check that waits for the choice of a rule book; that choice stands at the head of the stage. */

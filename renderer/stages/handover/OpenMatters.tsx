@@ -3,7 +3,7 @@ import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
 import type { ReactElement } from 'react';
 import { SEVERITY_WORDS } from '../../../core/api.ts';
-import { SeverityMark } from '../../controls/SeverityMark.tsx';
+import { NotDoneMark, SeverityMark } from '../../controls/SeverityMark.tsx';
 import { useOpenJob } from '../../state/openJob.ts';
 import { useSession } from '../../state/session.ts';
 
@@ -33,7 +33,7 @@ export function OpenMatters(): ReactElement {
           ))}
         {notChecked.length > 0 && (
           <Box component="li" sx={LINE}>
-            <SeverityMark severity="look" />
+            <NotDoneMark />
             <span>
               {notChecked.length === 1 ? '1 check was' : `${String(notChecked.length)} checks were`} not done for want
               of a figure

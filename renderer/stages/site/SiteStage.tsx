@@ -28,8 +28,10 @@ export function SiteStage(): ReactElement {
         Site
       </Typography>
       <Part title="The job">
-        <Box sx={GRID}>
+        <Box sx={{ mb: '0.5rem', maxWidth: '60rem' }}>
           <JobText path="title" label="Title" />
+        </Box>
+        <Box sx={GRID}>
           <JobText path="preparedFor" label="Prepared for" />
           <JobText path="preparedBy" label="Prepared by" />
         </Box>

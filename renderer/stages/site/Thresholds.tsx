@@ -9,7 +9,7 @@ import { type JobFigure, thresholds } from './jobFigures.ts';
 
 export function Thresholds(): ReactElement {
   return (
-    <Box component="ul" sx={{ m: 0, p: 0, listStyle: 'none', maxWidth: '60rem' }}>
+    <Box component="ul" sx={{ m: 0, p: 0, listStyle: 'none', maxWidth: '36rem' }}>
       {thresholds.map((figure) => (
         <Threshold key={figure.path} figure={figure} />
       ))}
