@@ -153,10 +153,12 @@ const coldVerdict: Judgement = (context, { string, one, charger }) => {
   if (coldest !== undefined && isUnder(coldest, lowest.value))
     return [tooCold({ ...at, degC: coldest, severity: 'look' })];
   return [
-    isTold === undefined ? missing(
+    isTold === undefined
+      ? missing(
           `temperatureDegC of string ${string.id}, or ambientDegC of case ${one.id}`,
           wanted(string, 'temperatureDegC'),
-        ) : PASS,
+        )
+      : PASS,
   ];
 };
 

@@ -44,7 +44,8 @@ function dropVerdict(
   const feed = feedersOf(one).of(part);
   if (feed === undefined) return [missing(`a source that feeds ${part.kind} ${part.id} in case ${one.id}`)];
   const nominalV = context.volts.nominalBetween(part.plus, part.minus);
-  if (nominalV === undefined) return [missing(`nominalV in the settings: nominal volts of ${part.kind} ${part.id}`, NOMINAL_VOLTS)];
+  if (nominalV === undefined)
+    return [missing(`nominalV in the settings: nominal volts of ${part.kind} ${part.id}`, NOMINAL_VOLTS)];
   const fraction = (feed.volts - voltageV) / nominalV;
   const critical = limitOf(context, 'critical');
   const ordinary = limitOf(context, 'ordinary');

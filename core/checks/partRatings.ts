@@ -50,7 +50,10 @@ function runVoltsRating(context: CheckContext): RuleOutcome {
         ],
       );
     } else {
-      tally.judge([part.id], [highest.missing === undefined ? PASS : missing(highest.missing.words, highest.missing.field)]);
+      tally.judge(
+        [part.id],
+        [highest.missing === undefined ? PASS : missing(highest.missing.words, highest.missing.field)],
+      );
     }
   }
   return tally.outcome();

@@ -8,6 +8,7 @@ import { loadOverfed, loadStarved } from './loadVolts.ts';
 import { ratingUnderCurrent, shuntSmall, voltsRatingLow } from './partRatings.ts';
 import { polarityCrossed } from './polarityRule.ts';
 import type { Rule } from './rule.ts';
+import { shareUneven } from './sharingRule.ts';
 import { deadShort, noFuseOnSource } from './shortRules.ts';
 import { chargeTooStrong, stringChargeHigh, stringDischargeHigh } from './stringRules.ts';
 import { surgeSag } from './surgeRules.ts';
@@ -39,6 +40,7 @@ export const rules: readonly Rule[] = [
   stringDischargeHigh,
   stringChargeHigh,
   chargeTooStrong,
+  shareUneven,
   chargerVoltsOff,
   coldCharge,
 ];

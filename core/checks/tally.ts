@@ -2,9 +2,9 @@
 import type { CablePart, PartId } from '../job/part.ts';
 import type { Basis, Status } from '../tables/status.ts';
 import type { Measure, Severity, WantedField } from './finding.ts';
+import type { NotJudged, RankedFinding, Rule, RuleOutcome } from './rule.ts';
 import type { SinglePart } from './wiring.ts';
 import { field } from './wording.ts';
-import type { NotJudged, RankedFinding, Rule, RuleOutcome } from './rule.ts';
 
 /** Rounding slack of every comparison, as a fraction: a figure exactly at its limit passes, also after a solve. */
 const ROUNDING = 1e-9;
@@ -99,7 +99,9 @@ export class Tally {
       this.passed++;
       return;
     }
-    const gaps = new Map(verdicts.flatMap((verdict) => (verdict.kind === 'missing' ? [[verdict.missing, verdict] as const] : [])));
+    const gaps = new Map(
+      verdicts.flatMap((verdict) => (verdict.kind === 'missing' ? [[verdict.missing, verdict] as const] : [])),
+    );
     for (const { missing: gap, fields } of gaps.values()) {
       this.notChecked.push({ parts, missing: gap, ...(fields.length === 0 ? {} : { fields }) });
     }

@@ -68,25 +68,32 @@ export function poseOf(part: Part, placeOf: PlaceOf, at?: Point): Pose {
   }
 }
 
-/** Level where the ends lie more beside the part than above and below it. */
+/** In line with an end that lies straight beside or above the part; else by where its ends lie more. */
 function linePose(from: Point | undefined, to: Point | undefined, at?: Point): Pose {
   if (from === undefined || to === undefined) return { isUpright: false, isTurned: false };
-  const apart = (axis: 'x' | 'y'): number =>
-    at === undefined
-      ? Math.abs(to[axis] - from[axis])
-      : Math.abs(to[axis] - at[axis]) + Math.abs(from[axis] - at[axis]);
-  const isUpright = apart('y') > apart('x');
+  const isUpright = at === undefined ? isSteep(from, to) : isInLine(from, to, at);
   return { isUpright, isTurned: isUpright ? from.y > to.y : from.x > to.x };
+}
+function isSteep(from: Point, to: Point): boolean {
+  return Math.abs(to.y - from.y) > Math.abs(to.x - from.x);
+}
+function isInLine(from: Point, to: Point, at: Point): boolean {
+  const level = [from, to].filter(({ y }) => y === at.y).length;
+  const upright = [from, to].filter(({ x }) => x === at.x).length;
+  if (level !== upright) return upright > level;
+  const apart = (axis: 'x' | 'y'): number => Math.abs(to[axis] - at[axis]) + Math.abs(from[axis] - at[axis]);
+  return apart('y') > apart('x');
 }
 
 function portPose(part: Extract<Part, { from: { plus: JunctionId } }>, placeOf: PlaceOf): Pose {
   const from = [part.from.plus, part.from.minus].flatMap((each) => placeOf(each) ?? []);
   const to = [part.to.plus, part.to.minus].flatMap((each) => placeOf(each) ?? []);
   if (from.length === 0 || to.length === 0) return { isUpright: false, isTurned: false };
-  const { isUpright, isTurned } = linePose(middleOf(from), middleOf(to));
+  const [a, b] = [middleOf(from), middleOf(to)];
+  const isUpright = isSteep(a, b);
   // A two-port box stands level; only a run of two conductors goes upright.
-  if (part.kind !== 'pair') return { isUpright: false, isTurned: middleOf(from).x > middleOf(to).x };
-  return { isUpright, isTurned };
+  if (part.kind !== 'pair') return { isUpright: false, isTurned: a.x > b.x };
+  return { isUpright, isTurned: isUpright ? a.y > b.y : a.x > b.x };
 }
 
 function isSpreadUpright(points: readonly Point[], otherwise: boolean): boolean {

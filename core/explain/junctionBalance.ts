@@ -55,9 +55,11 @@ export function junctionBalance({ job, operatingCase, point, junction }: Junctio
   const parts = withoutPairs(partsInCase(job, operatingCase));
   const ends = parts.flatMap((part) => endsOf(part, point));
   const { group, inside } = groupOf(junction, ends);
-  const currents = ends.flat().flatMap(({ currentA, ...end }): readonly JunctionCurrent[] =>
-    currentA === null || !group.has(end.junction) ? [] : [{ ...end, currentA: currentA === 0 ? 0 : currentA }],
-  );
+  const currents = ends
+    .flat()
+    .flatMap(({ currentA, ...end }): readonly JunctionCurrent[] =>
+      currentA === null || !group.has(end.junction) ? [] : [{ ...end, currentA: currentA === 0 ? 0 : currentA }],
+    );
   return {
     junction,
     voltageV: point.junctions.get(junction) ?? null,
@@ -118,9 +120,7 @@ function endsOf(part: SinglePart, point: OperatingPoint): readonly Ends[] {
     case 'converter':
       return portEnds(part, answer, through);
     case 'busbar':
-      return part.junctions
-        .slice(1)
-        .map((to, k) => through(part.junctions[k]!, to, answer.segmentsA?.[k] ?? null, k));
+      return part.junctions.slice(1).map((to, k) => through(part.junctions[k]!, to, answer.segmentsA?.[k] ?? null, k));
     default:
       return isOpen(part) ? [through(part.from, part.to, 0)] : [through(part.from, part.to, answer.currentA)];
   }

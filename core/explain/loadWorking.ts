@@ -47,7 +47,15 @@ export function loadWorking(part: LoadPart, { operatingCase }: PartRequest, line
     });
   } else {
     const origins = lines.origin('currentA');
-    lines.add({ name: 'Current', formula: 'I', values: 'as given', value: currentA, unit: 'A', answers: 'currentA', origins });
+    lines.add({
+      name: 'Current',
+      formula: 'I',
+      values: 'as given',
+      value: currentA,
+      unit: 'A',
+      answers: 'currentA',
+      origins,
+    });
   }
   lines.add({
     name: 'Power taken',
@@ -143,7 +151,11 @@ export function controllerWorking(part: ControllerPart, lines: Lines): void {
     unit: 'A',
     answers: 'inputA',
   });
-  loss(lines, product(lines.answer.inputV ?? null, inputA ?? null), product(lines.answer.outputV ?? null, outputA ?? null));
+  loss(
+    lines,
+    product(lines.answer.inputV ?? null, inputA ?? null),
+    product(lines.answer.outputV ?? null, outputA ?? null),
+  );
 }
 
 /** Output power over efficiency is what the input takes. */

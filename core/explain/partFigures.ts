@@ -64,16 +64,24 @@ export function partFigures(request: PartRequest): readonly PartFigure[] {
   const assumptions = once(point.assumptions.filter((one) => one.part !== null && ids.includes(one.part)));
   const assumed = assumedBy(part, assumptions, request);
   const isChanged = (field: string) =>
-    operatingCase.changed.has(part.id) && drawn !== undefined && valueOf(drawn, field) !== valueOf(part, field);
+    operatingCase.changed.has(part.id) &&
+    drawn !== undefined &&
+    figureOfField(drawn, field) !== figureOfField(part, field);
   const fields = Object.entries(partFields.get(part.kind) ?? {}).filter(([, { rule }]) => isFigure(rule));
-  const listed = fields.map(([field, { rule }]) => figureOf(part, { field, rule, assumed, changedInCase: isChanged(field) }));
+  const listed = fields.map(([field, { rule }]) =>
+    figureOf(part, { field, rule, assumed, changedInCase: isChanged(field) }),
+  );
   const known = new Set([...fields.map(([field]) => field), ...assumed.keys()]);
   const others = assumptions.filter((one) => !known.has(fieldOf(part, one)));
   return [...listed, ...others.map(loose)];
 }
 
 /** The part as it stands in the case; a cable of an out-and-back run by its own id. */
-export function partAsked({ job, operatingCase, part }: Pick<PartRequest, 'job' | 'operatingCase' | 'part'>): Part | undefined {
+export function partAsked({
+  job,
+  operatingCase,
+  part,
+}: Pick<PartRequest, 'job' | 'operatingCase' | 'part'>): Part | undefined {
   return partById(partsInCase(job, operatingCase), part);
 }
 
@@ -96,7 +104,7 @@ function figureOf(
 ): PartFigure {
   const { field, rule, assumed, changedInCase } = at;
   const unit = 'unit' in rule ? rule.unit : '';
-  const own = valueOf(part, field);
+  const own = figureOfField(part, field);
   const note = assumed.get(field);
   const base = { field, unit, changedInCase, range: part.range.get(field) ?? note?.range ?? null };
   if (own !== undefined) {
@@ -111,7 +119,7 @@ function figureOf(
 }
 
 /** A field's value as one figure or one word. */
-function valueOf(part: Part, field: string): number | string | boolean | undefined {
+function figureOfField(part: Part, field: string): number | string | boolean | undefined {
   const value = (part as unknown as Readonly<Record<string, unknown>>)[field];
   if (value === undefined || typeof value === 'number' || typeof value === 'string' || typeof value === 'boolean') {
     return value;
@@ -124,7 +132,12 @@ function valueOf(part: Part, field: string): number | string | boolean | undefin
 function assumedBy(part: Part, assumptions: readonly Assumption[], request: PartRequest): ReadonlyMap<string, Assumed> {
   const found = new Map<string, Assumed>();
   for (const field of NOTHING_UNLESS_GIVEN[part.kind] ?? []) {
-    found.set(field, { value: 0, range: null, basis: COMMON_PRACTICE, text: `${field} of ${part.id} taken as nothing` });
+    found.set(field, {
+      value: 0,
+      range: null,
+      basis: COMMON_PRACTICE,
+      text: `${field} of ${part.id} taken as nothing`,
+    });
   }
   for (const [field, assumed] of surroundings(part, request)) found.set(field, assumed);
   for (const one of assumptions) {
@@ -136,7 +149,10 @@ function assumedBy(part: Part, assumptions: readonly Assumption[], request: Part
 }
 
 /** Temperatures and bands that follow from the case, the site and the tables. */
-function surroundings(part: Part, { job, operatingCase, point, tables }: PartRequest): readonly (readonly [string, Assumed])[] {
+function surroundings(
+  part: Part,
+  { job, operatingCase, point, tables }: PartRequest,
+): readonly (readonly [string, Assumed])[] {
   const ambientDegC = ambientOf(job, operatingCase);
   const of =
     operatingCase.ambientDegC !== undefined

@@ -17,7 +17,11 @@ export interface Route {
 /** The routes from every source that reaches the load, the one that feeds it most first. */
 export function routesTo(
   load: LoadPort,
-  { parts, wires, point }: { readonly parts: readonly SinglePart[]; readonly wires: Wires; readonly point: OperatingPoint },
+  {
+    parts,
+    wires,
+    point,
+  }: { readonly parts: readonly SinglePart[]; readonly wires: Wires; readonly point: OperatingPoint },
 ): readonly Route[] {
   const routes = parts.flatMap((part) => {
     const route = part.id === load.part ? undefined : routeFrom(sourcePorts(part, point), load, wires);
@@ -27,9 +31,7 @@ export function routesTo(
   // Ties in the least current are the rule (the load's own): then the stronger source, then the shorter way.
   routes.sort(
     (a, b) =>
-      b.leastA - a.leastA ||
-      givenA(b) - givenA(a) ||
-      a.out.length + a.back.length - b.out.length - b.back.length,
+      b.leastA - a.leastA || givenA(b) - givenA(a) || a.out.length + a.back.length - b.out.length - b.back.length,
   );
   return routes;
 }

@@ -78,7 +78,8 @@ function halves(upper: number | null, lower: number | null): number | null {
 
 function power(part: StringPart, { emfV, ohm, request }: Inside, lines: Lines): void {
   const { currentA, voltageV } = lines.answer;
-  const name = currentA !== null && currentA < 0 ? 'Power delivered (negative: it is being charged)' : 'Power delivered';
+  const name =
+    currentA !== null && currentA < 0 ? 'Power delivered (negative: it is being charged)' : 'Power delivered';
   if (part.midpoint === undefined) {
     lines.add({
       name,

@@ -33,7 +33,9 @@ export function voltWalk({ job, operatingCase, point, load, source }: WalkReques
   const wires = new Wires(parts, point);
   if (source === undefined) {
     const [route] = routesTo(port, { parts, wires, point });
-    return route === undefined ? no(`no source reaches both poles of ${load} by what is closed`) : walkAlong(route, point);
+    return route === undefined
+      ? no(`no source reaches both poles of ${load} by what is closed`)
+      : walkAlong(route, point);
   }
   const giver = byId(source);
   const route = routeFrom(giver === undefined ? [] : sourcePorts(giver, point), port, wires);
@@ -67,7 +69,10 @@ function walkAlong({ source, load, out, back }: Route, point: OperatingPoint): V
 }
 
 function lost(steps: readonly WalkStep[], side: WalkSide): number {
-  const sum = steps.reduce((soFar, step) => (step.side === side && step.kind === 'part' ? soFar - step.changeV : soFar), 0);
+  const sum = steps.reduce(
+    (soFar, step) => (step.side === side && step.kind === 'part' ? soFar - step.changeV : soFar),
+    0,
+  );
   return sum === 0 ? 0 : sum;
 }
 

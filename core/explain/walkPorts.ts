@@ -69,9 +69,7 @@ export function lowerHalfA(string: StringPart, point: OperatingPoint): number | 
   if (string.midpoint === undefined) return point.parts.get(string.id)?.currentA ?? null;
   const figures = stringFigures(string, point);
   const lowerV = voltsBetween(point, string.midpoint, string.minus);
-  return figures === undefined || lowerV === null
-    ? null
-    : sagOf(figures.emfV / 2 - lowerV, figures.ohm / 2).currentA;
+  return figures === undefined || lowerV === null ? null : sagOf(figures.emfV / 2 - lowerV, figures.ohm / 2).currentA;
 }
 
 function voltsBetween({ junctions }: OperatingPoint, plus: JunctionId, minus: JunctionId): number | null {
@@ -83,8 +81,12 @@ function voltsBetween({ junctions }: OperatingPoint, plus: JunctionId, minus: Ju
 export function loadPort(part: SinglePart, point: OperatingPoint): LoadPort | undefined {
   const answer = point.parts.get(part.id);
   if (answer === undefined) return undefined;
-  const port = (plus: JunctionId, minus: JunctionId, voltageV: number | null | undefined, a: number | null | undefined) =>
-    typeof voltageV === 'number' ? { part: part.id, plus, minus, voltageV, currentA: a ?? null } : undefined;
+  const port = (
+    plus: JunctionId,
+    minus: JunctionId,
+    voltageV: number | null | undefined,
+    a: number | null | undefined,
+  ) => (typeof voltageV === 'number' ? { part: part.id, plus, minus, voltageV, currentA: a ?? null } : undefined);
   switch (part.kind) {
     case 'load':
     case 'inverter':

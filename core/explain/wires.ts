@@ -33,7 +33,7 @@ export class Wires {
   private readonly place = new Map<JunctionId, number>();
   private readonly names: JunctionId[] = [];
   /** By junction: the wire of the tree towards its root. */
-  private readonly up: (Stretch & { readonly above: number } | undefined)[] = [];
+  private readonly up: ((Stretch & { readonly above: number }) | undefined)[] = [];
   private readonly depth: number[] = [];
   private readonly root: number[] = [];
 
@@ -71,7 +71,8 @@ export class Wires {
         b = above;
       }
     }
-    return [...out, ...back.reverse()];
+    back.reverse();
+    return [...out, ...back];
   }
 
   private touch(junction: JunctionId): void {
@@ -129,7 +130,7 @@ function wiresOf(part: SinglePart, point: OperatingPoint): readonly Wire[] {
     const [from, to] = joined(part);
     const passes = answer.state !== 'blocking' && answer.voltageV !== null;
     if (!passes || from === undefined || to === undefined) return [];
-    return [{ part: part.id, from, to, fallV: answer.voltageV!, currentA: answer.currentA }];
+    return [{ part: part.id, from, to, fallV: answer.voltageV, currentA: answer.currentA }];
   }
   if (part.kind === 'string') return seriesWires(part, point);
   return part.kind === 'controller' && part.type === 'pwm' ? linksOf(part, answer) : [];

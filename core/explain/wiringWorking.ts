@@ -1,7 +1,8 @@
 /** The working of cables, devices, joints, bars and diodes. */
+
+import { isOpen, type WiringPart } from '../checks/wiring.ts';
 import { conductorResistance } from '../conductor/resistance.ts';
 import { heatingLaw } from '../conductor/temperature.ts';
-import { isOpen, type WiringPart } from '../checks/wiring.ts';
 import type { BondPart, BusbarPart, CablePart, DiodePart } from '../job/part.ts';
 import { ambientOf } from '../network/circuit.ts';
 import { conductorModel } from '../network/conductorModel.ts';
@@ -141,7 +142,11 @@ function perMetre({ lengthM, inParallel }: CablePart, at20Ohm: number): number {
 /** Writes how warm the conductor is; null where its current is not determined. */
 function temperature(
   part: CablePart,
-  { request, caseDegC, kelvinPerA2 }: { readonly request: PartRequest; readonly caseDegC: number; readonly kelvinPerA2: number },
+  {
+    request,
+    caseDegC,
+    kelvinPerA2,
+  }: { readonly request: PartRequest; readonly caseDegC: number; readonly kelvinPerA2: number },
   lines: Lines,
 ): number | null {
   const name = 'Temperature of the conductor';
@@ -266,7 +271,10 @@ function bar(part: BusbarPart, lines: Lines): void {
     name: 'Heat',
     formula: 'P = ΣI_k² · R_segment',
     values: `(${segments.map((a) => `(${figure(a, 'A')})²`).join(' + ')}) × ${figure(segmentOhm, 'ohm')}`,
-    value: product(known.reduce((sum, a) => sum + a * a, 0), segmentOhm),
+    value: product(
+      known.reduce((sum, a) => sum + a * a, 0),
+      segmentOhm,
+    ),
     unit: 'W',
     answers: 'powerW',
     origins: lines.origin('segmentOhm'),

@@ -1,7 +1,7 @@
 /** Thicker cables, more of them side by side, joints made anew. */
 import { areaOf, nextSizeUp } from '../conductor/size.ts';
-import { setField } from '../draft/fields.ts';
 import { type Edit, together } from '../draft/edit.ts';
+import { setField } from '../draft/fields.ts';
 import type { ConductorSize, JointPart, PartId } from '../job/part.ts';
 import { nameOf } from '../job/part.ts';
 import { sizeText } from '../units/conductorSize.ts';
@@ -42,7 +42,13 @@ export function conductorOf({ job }: Pick<Bench, 'job'>, id: PartId): Conductor 
     const backM = part.minusLengthM ?? lengthM;
     const base = { part: part.id, inParallel, isMeasured };
     if (part.minusSize === undefined) {
-      return { ...base, name: `Run ${nameOf(part)}, both conductors`, field: 'size', size: part.size, metres: lengthM + backM };
+      return {
+        ...base,
+        name: `Run ${nameOf(part)}, both conductors`,
+        field: 'size',
+        size: part.size,
+        metres: lengthM + backM,
+      };
     }
     return pole === 'minus'
       ? { ...base, name: `Return of run ${nameOf(part)}`, field: 'minusSize', size: part.minusSize, metres: backM }

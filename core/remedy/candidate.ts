@@ -1,8 +1,8 @@
 /** Changes worth trying for a finding, before any of them has been tried. */
 import type { CheckReport, Finding } from '../checks/finding.ts';
+import { setInCase } from '../draft/cases.ts';
 import type { Draft } from '../draft/draft.ts';
 import type { Edit } from '../draft/edit.ts';
-import { setInCase } from '../draft/cases.ts';
 import { setField } from '../draft/fields.ts';
 import { Defect } from '../job/issue.ts';
 import type { CheckedJob, OperatingCase } from '../job/job.ts';

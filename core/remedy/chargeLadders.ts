@@ -3,9 +3,9 @@ import { chargeWindow } from '../battery/limits.ts';
 import { factsOf } from '../battery/stringSource.ts';
 import { setInCase } from '../draft/cases.ts';
 import { setField } from '../draft/fields.ts';
+import { partsInCase } from '../job/job.ts';
 import type { ChargerPart, ControllerPart, ConverterPart, Part, PartId } from '../job/part.ts';
 import { nameOf } from '../job/part.ts';
-import { partsInCase } from '../job/job.ts';
 import { ambientOf } from '../network/circuit.ts';
 import { formatQuantity } from '../units/formatQuantity.ts';
 import { type Bench, type Candidate, type Ladder, relabelled, stepped } from './candidate.ts';
@@ -26,7 +26,10 @@ export function otherSetpoint(bench: Bench, [chargerId, stringId]: readonly Part
   const keptV = setpointOf(charger) - measured.value;
   const context = { ambientDegC: ambientOf(bench.job, bench.operatingCase), tables: bench.tables.chemistry };
   const { cells, temperatureDegC } = factsOf(string, context);
-  const usual = chargeWindow({ chemistry: string.chemistry, cells, temperatureDegC }, bench.tables.chemistry).absorptionV;
+  const usual = chargeWindow(
+    { chemistry: string.chemistry, cells, temperatureDegC },
+    bench.tables.chemistry,
+  ).absorptionV;
   const bound = measured.value > limit.value ? down(limit.value + keptV) : up(limit.value + keptV);
   const wanted = usual === undefined ? [] : [Number((usual.value + keptV).toFixed(1))];
   return [...wanted, bound].map((volts) => stepped([setpoint(bench, charger, volts)]));

@@ -19,7 +19,9 @@ function standardRatings({ job, tables }: Bench): readonly number[] {
 export function smallerRating(bench: Bench, device: Part): Ladder {
   const limitA = bench.finding.limit.value;
   const fitting = standardRatings(bench).filter((ratingA) => ratingA <= limitA * (1 + ROUNDING));
-  return ratings(bench, device, fitting.slice(-MOST_RATINGS).reverse());
+  const largestFirst = fitting.slice(-MOST_RATINGS);
+  largestFirst.reverse();
+  return ratings(bench, device, largestFirst);
 }
 
 /** Larger standard ratings, from the one that the measured current with its margin asks for. */
@@ -59,7 +61,13 @@ export function higherVolts(bench: Bench, part: Part): Ladder {
     .map((volts): Candidate => {
       const text = formatQuantity({ value: volts, unit: 'V' });
       const edit = bench.set(part, 'ratingV', volts, `${titleOf(part)}: one rated for ${text} direct current`);
-      return { edit, cost: `one ${part.kind} rated ${text} direct current`, effort: 'device', amount: volts, sameAnswers: true };
+      return {
+        edit,
+        cost: `one ${part.kind} rated ${text} direct current`,
+        effort: 'device',
+        amount: volts,
+        sameAnswers: true,
+      };
     });
   return stepped(rungs);
 }
@@ -71,8 +79,10 @@ export function fuseAtString(bench: Bench, id: PartId): readonly Ladder[] {
   const leads = bench.job.parts.flatMap((part): readonly { cable: PartId; end: 'from' | 'to' }[] => {
     if (part.kind === 'cable' && part.from === string.plus) return [{ cable: part.id, end: 'from' }];
     if (part.kind === 'cable' && part.to === string.plus) return [{ cable: part.id, end: 'to' }];
-    if (part.kind === 'pair' && part.from.plus === string.plus) return [{ cable: `${part.id}.plus` as PartId, end: 'from' }];
-    if (part.kind === 'pair' && part.to.plus === string.plus) return [{ cable: `${part.id}.plus` as PartId, end: 'to' }];
+    if (part.kind === 'pair' && part.from.plus === string.plus)
+      return [{ cable: `${part.id}.plus` as PartId, end: 'from' }];
+    if (part.kind === 'pair' && part.to.plus === string.plus)
+      return [{ cable: `${part.id}.plus` as PartId, end: 'to' }];
     return [];
   });
   const [lead, ...others] = leads;

@@ -60,8 +60,7 @@ const byRule: Readonly<Record<string, LaddersOf>> = {
   'rating-under-current': otherRating,
   'shunt-small': otherRating,
   'drop-too-big': lessLost,
-  'charge-drop-too-big': (bench, [charger, string]) =>
-    string === undefined ? [] : lessLostTo(bench, string, charger),
+  'charge-drop-too-big': (bench, [charger, string]) => (string === undefined ? [] : lessLostTo(bench, string, charger)),
   'load-starved': lessLost,
   'load-overfed': (bench, [id]) => {
     const part = bench.inCase(id);

@@ -166,7 +166,9 @@ class Tester {
     if (job === undefined || rule === undefined) return false;
     const one = job.cases.filter(({ id }) => id === caseId);
     const cases = one.length === 0 ? job.cases : one;
-    const outcome = rule.run(new CheckContext({ job, tables: this.request.tables, cases, points: this.pointsToAsk(candidate) }));
+    const outcome = rule.run(
+      new CheckContext({ job, tables: this.request.tables, cases, points: this.pointsToAsk(candidate) }),
+    );
     return !outcome.findings.some(({ finding }) => identityOf(finding) === this.identity);
   }
 

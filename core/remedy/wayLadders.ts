@@ -1,14 +1,15 @@
 /** What can be done about volts lost on the way to a load, or from a charger to a string. */
+
+import { parallelString } from '../draft/connect.ts';
 import { voltWalk } from '../explain/voltWalk.ts';
 import type { WalkStep } from '../explain/walk.ts';
-import { parallelString } from '../draft/connect.ts';
 import type { OperatingCase } from '../job/job.ts';
 import type { DiodePart, Part, PartId } from '../job/part.ts';
 import { nameOf } from '../job/part.ts';
 import type { OperatingPoint } from '../network/answer.ts';
 import { formatQuantity } from '../units/formatQuantity.ts';
-import { type Bench, type Ladder, relabelled, stepped } from './candidate.ts';
 import { type Conductor, conductorOf, endsAnew, joinedAnew, moreInParallel, thicker } from './cableLadders.ts';
+import { type Bench, type Ladder, relabelled, stepped } from './candidate.ts';
 
 /** A piece of the way is worth changing from this part of all that the wiring loses on it. */
 const WORTH_CHANGING = 0.1;
@@ -33,7 +34,9 @@ export function lessLostTo(bench: Bench, load: PartId, source?: PartId): readonl
     ...anotherString(bench, walk.source),
   ];
 
-  function lossesOf(steps: readonly WalkStep[]): readonly { part: Part | undefined; conductor: Conductor | undefined }[] {
+  function lossesOf(
+    steps: readonly WalkStep[],
+  ): readonly { part: Part | undefined; conductor: Conductor | undefined }[] {
     const pieces = steps.filter(({ kind, changeV }) => kind === 'part' && changeV < 0);
     const lostV = pieces.reduce((sum, { changeV }) => sum - changeV, 0);
     const worth = pieces.filter(({ changeV }) => -changeV >= WORTH_CHANGING * lostV);
@@ -48,7 +51,12 @@ const TRANSISTOR_ISOLATOR_V = 0.1;
 function keepsLess(bench: Bench, diode: DiodePart): Ladder {
   if (diode.forwardV !== undefined && diode.forwardV <= TRANSISTOR_ISOLATOR_V) return stepped([]);
   const text = formatQuantity({ value: TRANSISTOR_ISOLATOR_V, unit: 'V', prefix: false });
-  const edit = bench.set(diode, 'forwardV', TRANSISTOR_ISOLATOR_V, `Diode ${nameOf(diode)}: an isolator that keeps ${text}`);
+  const edit = bench.set(
+    diode,
+    'forwardV',
+    TRANSISTOR_ISOLATOR_V,
+    `Diode ${nameOf(diode)}: an isolator that keeps ${text}`,
+  );
   return stepped([{ edit, cost: 'one isolator with transistors', effort: 'device', amount: 1 }]);
 }
 
@@ -59,7 +67,9 @@ export function anotherString(bench: Bench, source: PartId): readonly Ladder[] {
   const label = `Another string like ${nameOf(string)} beside it, with leads like its own`;
   const cost = `${string.blocksInSeries} more ${string.blocksInSeries === 1 ? 'block' : 'blocks'} of ${string.capacityAh} Ah, with leads and fuse`;
   return [
-    stepped([{ edit: relabelled(parallelString(string.id), label), cost, effort: 'string', amount: string.capacityAh }]),
+    stepped([
+      { edit: relabelled(parallelString(string.id), label), cost, effort: 'string', amount: string.capacityAh },
+    ]),
   ];
 }
 
@@ -71,7 +81,10 @@ function walkTo(bench: Bench, load: PartId, source: PartId | undefined) {
 }
 
 /** The case's answer; where it has none, or the load has dropped out, the same with the load lighter, so that there is a way to see. */
-function pointWith(bench: Bench, load: PartId): { readonly operatingCase: OperatingCase; readonly point: OperatingPoint } {
+function pointWith(
+  bench: Bench,
+  load: PartId,
+): { readonly operatingCase: OperatingCase; readonly point: OperatingPoint } {
   const { operatingCase, point } = bench;
   const state = point.parts.get(load)?.state;
   if (point.outcome === 'solved' && state !== 'dropped-out') return { operatingCase, point };

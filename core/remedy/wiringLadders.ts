@@ -17,7 +17,9 @@ export function swappedLeads(bench: Bench, id: PartId): readonly Ladder[] {
   const part = bench.drawn(id);
   if (part === undefined) return [];
   const paths = pathsOf(part.kind);
-  const pairs = paths.filter((path) => path.endsWith('plus')).map((plus) => [plus, plus.replace(/plus$/, 'minus')] as const);
+  const pairs = paths
+    .filter((path) => path.endsWith('plus'))
+    .map((plus) => [plus, plus.replace(/plus$/, 'minus')] as const);
   return pairs.map(([plus, minus]) => {
     const where = pairs.length > 1 ? ` (${plus.split('.')[0] === 'from' ? 'input' : 'output'})` : '';
     const edit: Edit = {
@@ -69,7 +71,8 @@ function shortestWay(bench: Bench, from: JunctionId, to: JunctionId): readonly P
     }
   }
   const way: PartId[] = [];
-  for (let step = cameBy.get(to); step !== undefined && step !== null; step = cameBy.get(step.before)) way.push(step.part);
+  for (let step = cameBy.get(to); step !== undefined && step !== null; step = cameBy.get(step.before))
+    way.push(step.part);
   return way;
 }
 

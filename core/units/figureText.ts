@@ -28,8 +28,9 @@ export function wholeFigureText(quantity: QuantityText): string {
 }
 
 /** A quantity in the units that come first: `20 °C` or `68 °F`, `3.2 m` or `10 ft 6 in`; all others as they are. */
-export function firstText({ value, unit, first }: QuantityText & { readonly first: UnitsFirst }): string {
+export function firstText({ first, ...quantity }: QuantityText & { readonly first: UnitsFirst }): string {
+  const { value, unit } = quantity;
   if (first === 'us' && unit === 'degC') return fahrenheitText({ temperatureDegC: value });
   if (first === 'us' && unit === 'm') return feetText({ lengthM: value });
-  return formatQuantity({ value, unit });
+  return formatQuantity(quantity);
 }

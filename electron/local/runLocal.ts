@@ -4,7 +4,7 @@ import { dispatch } from '../channel/dispatch.ts';
 import { programVersion } from '../cli/programVersion.ts';
 import { staticFiles } from '../page/staticFiles.ts';
 import { createServices } from '../services/services.ts';
-import { openStore } from '../store/store.ts';
+import { openStore, type Store } from '../store/store.ts';
 import { storeFolder } from '../store/storeFolder.ts';
 import { type Machine, usualSaveFolder } from './folders.ts';
 import { localCan, localFileDoor } from './localDoor.ts';
@@ -33,15 +33,16 @@ export interface LocalHost {
 /** Opens the store and the door, and says where. */
 export async function startLocal(options: LocalOptions, surroundings: LocalSurroundings): Promise<LocalHost> {
   const { machine, now, print, complain } = surroundings;
+  const log = (line: string): void => {
+    complain(`ohmwright: ${line}`);
+  };
   const store = await openStore({ folder: resolve(storeFolder({ argument: options.store, ...machine })), now });
   let server: LocalServer | undefined;
   const services = createServices({
     store,
     door: localFileDoor(machine, resolve(options.saveFolder ?? usualSaveFolder(machine))),
     about: { kind: 'browser', version: programVersion, can: localCan(machine) },
-    log: (line) => {
-      complain(`ohmwright: ${line}`);
-    },
+    log,
     end: () => void server?.end(),
   });
   try {
@@ -49,7 +50,7 @@ export async function startLocal(options: LocalOptions, surroundings: LocalSurro
       page: staticFiles(options.page ?? surroundings.builtPage),
       answer: async (method, ask, window) => await dispatch(services, method, ask, { window }),
       closeStore: () => {
-        store.close();
+        closeQuietly(store, log);
       },
       address: loopback,
       port: options.port,
@@ -67,6 +68,15 @@ export async function startLocal(options: LocalOptions, surroundings: LocalSurro
     if (options.browser) await showPage(machine, url, join(store.folder, 'browser'), complain);
   };
   return { server, welcome };
+}
+
+/** What was acknowledged is on the disk already, so a store that does not close well is told of and keeps nobody from ending. */
+function closeQuietly(store: Store, log: (line: string) => void): void {
+  try {
+    store.close();
+  } catch (error) {
+    log(`the store did not close well: ${error instanceof Error ? error.message : String(error)}`);
+  }
 }
 
 async function showPage(

@@ -111,10 +111,8 @@ export class JobShelf {
       const below = this.rows(descendants, head, most).map((row) => Number(row['revision']));
       const ahead = Math.min(below.length, Math.max(Math.floor((most - 1) / 2), most - 1 - above.length));
       const behind = Math.min(above.length, most - 1 - ahead);
-      const nearest = new Set([head, ...above.slice(0, behind), ...below.slice(0, ahead)]);
-      // A parent has always the smaller number.
-      const oldestFirst = [...nearest].sort((one, other) => one - other);
-      return oldestFirst.map((revision) => this.summary(job, revision));
+      const numbers = [...above.slice(above.length - behind), head, ...below.slice(0, ahead)];
+      return numbers.map((revision) => this.summary(job, revision));
     });
   }
 
@@ -288,20 +286,21 @@ const summarySelect =
 const revisionSelect =
   'SELECT revisions.revision, parent, label, at, name FROM revisions LEFT JOIN snapshots ON snapshots.revision = revisions.revision';
 
+/** A parent has always the smaller number, so the nearest ancestors have the largest. */
 const ancestors = `
-  WITH RECURSIVE way (revision, steps) AS (
-    SELECT parent, 1 FROM revisions WHERE revision = ?
+  WITH RECURSIVE way (revision) AS (
+    SELECT parent FROM revisions WHERE revision = ?
     UNION ALL
-    SELECT revisions.parent, steps + 1 FROM way JOIN revisions ON revisions.revision = way.revision
+    SELECT revisions.parent FROM way JOIN revisions ON revisions.revision = way.revision
   )
-  SELECT revision FROM way WHERE revision IS NOT NULL LIMIT ?`;
+  SELECT revision FROM (SELECT revision FROM way WHERE revision IS NOT NULL ORDER BY revision DESC LIMIT ?) ORDER BY revision`;
 const descendants = `
   WITH RECURSIVE way (revision) AS (
     SELECT child FROM visited WHERE parent = ?
     UNION ALL
     SELECT child FROM way JOIN visited ON visited.parent = way.revision
   )
-  SELECT revision FROM way LIMIT ?`;
+  SELECT revision FROM way ORDER BY revision LIMIT ?`;
 const rememberWay = `
   INSERT OR REPLACE INTO visited (parent, child)
     WITH RECURSIVE way (revision, parent) AS (

@@ -26,6 +26,22 @@ export const SmallButton = styled('button')({
   '@media (pointer: coarse)': { minHeight: 44, minWidth: 44 },
 });
 
+/** Text that can be pressed, for names of parts and junctions. */
+export const LinkButton = styled('button')({
+  minHeight: '1.5rem',
+  padding: 0,
+  border: 0,
+  background: 'none',
+  color: 'var(--copper)',
+  font: 'inherit',
+  textAlign: 'start',
+  textDecoration: 'underline',
+  textUnderlineOffset: '0.15em',
+  overflowWrap: 'anywhere',
+  cursor: 'pointer',
+  '@media (pointer: coarse)': { minHeight: 44, minWidth: 44 },
+});
+
 export function AskRow({
   question: { question, choices },
   field,

@@ -22,6 +22,7 @@ import {
 } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { usePreferences } from '../state/preferences.ts';
+import { LinkButton } from './AskRow.tsx';
 import { ChoiceField } from './ChoiceField.tsx';
 import { CountField } from './CountField.tsx';
 import { FlagField } from './FlagField.tsx';
@@ -110,7 +111,7 @@ function Control(props: ControlProps): ReactElement | null {
     ...(rule.required === true && inCase === undefined ? { required: true } : {}),
     focusKey: `${partId}.${field}`,
     ...(props.plain === true || !hasOrigin(rule) ? {} : { mark: <Mark {...props} name={name} /> }),
-    ...caseNote(props, first),
+    ...notes(props, first),
   };
   const figureGiven = given as number | string | undefined;
   switch (rule.rule.holds) {
@@ -216,37 +217,48 @@ function valueText({
   return rule.holds === 'efficiency' ? formatQuantity({ value, unit: '1' }) : String(value);
 }
 
-/** Said under a field that the chosen case changes. */
-function caseNote(props: ControlProps, first: UnitsFirst): { readonly below?: ReactElement } {
-  const { figure, field, rule, inCase, set, partId: part } = props;
-  if (inCase !== undefined) {
-    if (set === undefined) return {};
-    return {
-      below: (
-        <span>
-          {'Set in this case. '}
-          <button
-            type="button"
-            style={{
-              border: 0,
-              padding: 0,
-              minHeight: '1.5rem',
-              background: 'none',
-              color: 'var(--copper)',
-              font: 'inherit',
-              textDecoration: 'underline',
-              cursor: 'pointer',
-            }}
-            onClick={() => takeEdit(setInCase({ case: inCase, part, field, value: undefined }))}
-          >
-            As drawn
-          </button>
-        </span>
-      ),
-    };
+/** Said under a field: the range of its figure, and what the chosen case makes of it. */
+function notes(props: ControlProps, first: UnitsFirst): { readonly below?: ReactElement } {
+  const range = rangeNote(props, first);
+  const inCase = <CaseNote {...props} first={first} />;
+  const isChanged = props.inCase === undefined ? props.figure?.changedInCase === true : props.set !== undefined;
+  if (range === '' && !isChanged) return {};
+  return {
+    below: (
+      <>
+        {range !== '' && <span>{`${range} `}</span>}
+        {isChanged && inCase}
+      </>
+    ),
+  };
+}
+
+function rangeOf({ raw, field, drawn, figure }: ControlProps): readonly [number, number] | undefined {
+  return raw[field] === undefined ? (figure?.range ?? undefined) : drawn.range.get(field);
+}
+
+function rangeNote(props: ControlProps, first: UnitsFirst): string {
+  const range = rangeOf(props);
+  const { rule } = props.rule;
+  if (range === undefined || rule.holds !== 'quantity') return '';
+  const [low, high] = range.map((value) => firstText({ value, unit: rule.unit, first, digits: 3 }));
+  return `Between ${low ?? ''} and ${high ?? ''}.`;
+}
+
+function CaseNote(props: ControlProps & { readonly first: UnitsFirst }): ReactElement | null {
+  const { figure, field, rule, inCase, partId: part, first } = props;
+  if (inCase === undefined) {
+    if (figure === undefined || figure.value === null) return null;
+    return <span>{`This case sets ${valueText({ value: figure.value, field, rule, first })}.`}</span>;
   }
-  if (figure?.changedInCase !== true || figure.value === null) return {};
-  return { below: <span>{`This case sets ${valueText({ value: figure.value, field, rule, first })}.`}</span> };
+  return (
+    <span>
+      {'Set in this case. '}
+      <LinkButton type="button" onClick={() => takeEdit(setInCase({ case: inCase, part, field, value: undefined }))}>
+        As drawn
+      </LinkButton>
+    </span>
+  );
 }
 
 function Mark(props: ControlProps & { readonly name: string }): ReactElement {
@@ -254,7 +266,6 @@ function Mark(props: ControlProps & { readonly name: string }): ReactElement {
   const isGiven = raw[field] !== undefined;
   const origin: Origin = isGiven ? originOf(drawn, field) : (figure?.origin ?? 'default');
   const unit = rule.rule.holds === 'quantity' ? rule.rule.unit : undefined;
-  const range = isGiven ? drawn.range.get(field) : (figure?.range ?? undefined);
   if (!isGiven)
     return figure?.value === null && rule.standard === undefined ? <span /> : <OriginMark origin={origin} />;
   return (
@@ -264,7 +275,13 @@ function Mark(props: ControlProps & { readonly name: string }): ReactElement {
       onChange={(chosen) => takeEdit(setOrigin({ part, field, origin: chosen }))}
       more={
         unit === undefined ? null : (
-          <RangeFields part={part} field={field} unit={unit} bare={bareOf(drawn, rule).bare} range={range} />
+          <RangeFields
+            part={part}
+            field={field}
+            unit={unit}
+            bare={bareOf(drawn, rule).bare}
+            range={drawn.range.get(field)}
+          />
         )
       }
     />

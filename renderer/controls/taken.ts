@@ -7,5 +7,7 @@ export type Taken = string | null;
 
 export function takeEdit(edit: Edit): Taken {
   const result = useOpenJob.getState().edit(edit);
-  return result.ok ? null : plainFields(result.issues[0]?.message ?? 'That cannot be.');
+  if (result.ok) return null;
+  const why = plainFields(result.issues[0]?.message ?? 'That cannot be.');
+  return why.charAt(0).toUpperCase() + why.slice(1);
 }

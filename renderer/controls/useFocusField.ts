@@ -6,6 +6,13 @@ export function useFocusField(key: string | undefined, field: RefObject<HTMLElem
   const wanted = useSession((session) => session.focusField);
   useEffect(() => {
     if (key === undefined || wanted !== key || field.current === null) return;
+    for (
+      let fold = field.current.closest('details');
+      fold !== null;
+      fold = fold.parentElement?.closest('details') ?? null
+    ) {
+      fold.open = true;
+    }
     field.current.focus();
     field.current.scrollIntoView({ block: 'center' });
     useSession.setState({ focusField: null });

@@ -82,7 +82,7 @@ const CHOICES: Readonly<Record<string, Readonly<Record<string, string>>>> = {
     buried: 'Ground',
   },
   state: { closed: 'Closed', open: 'Open' },
-  type: { mppt: 'MPPT, finds the best point', pwm: 'PWM, plain on and off' },
+  type: { mppt: 'MPPT, tracking', pwm: 'PWM, switching' },
   dropClass: { critical: 'Critical', ordinary: 'Ordinary' },
   supply: { dc: 'DC', ac: 'AC, through the inverter' },
 };
@@ -111,10 +111,6 @@ export const STATUS_MEANING: Readonly<Record<Status, string>> = {
 /** `battery string`, `out-and-back run`. */
 export function kindWord(kind: PartKind): string {
   return KIND_WORDS[kind];
-}
-
-export function chemistryWord(chemistry: keyof typeof CHEMISTRY_WORDS): string {
-  return CHEMISTRY_WORDS[chemistry];
 }
 
 /** The name of a field as it stands before it: `Rated amps`. A field of the job itself goes by its path. */

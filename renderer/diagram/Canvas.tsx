@@ -2,8 +2,6 @@
 import '@xyflow/react/dist/base.css';
 import './diagram.css';
 import {
-  Background,
-  BackgroundVariant,
   ConnectionLineType,
   ConnectionMode,
   type FinalConnectionState,
@@ -108,7 +106,6 @@ export function Canvas(): ReactElement {
         autoPanOnNodeFocus
         aria-label="One-line diagram. Tab goes from part to part."
       >
-        <Background variant={BackgroundVariant.Dots} gap={40} size={1.2} color="var(--hair)" bgColor="transparent" />
         <ViewportPortal>
           <Wires parts={drawing.parts} />
         </ViewportPortal>

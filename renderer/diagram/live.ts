@@ -94,7 +94,7 @@ function severitiesOf(
 
 export function ampText(currentA: number | null | undefined): string {
   if (currentA === undefined) return '';
-  if (currentA === null) return 'amps open';
+  if (currentA === null) return '? A';
   // Below a milliampere is rounding of the solve, not a current.
   const value = Math.abs(currentA) < 0.001 ? 0 : Math.abs(currentA);
   return formatQuantity({ value, unit: 'A', digits: 3 });

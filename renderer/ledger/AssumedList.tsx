@@ -45,10 +45,7 @@ function Alike({ alike }: { readonly alike: readonly Assumption[] }): ReactEleme
     <li style={{ paddingBlock: '0.375rem', fontSize: '0.875rem' }}>
       <div style={{ display: 'flex', flexWrap: 'wrap', justifyContent: 'space-between', columnGap: '0.5rem' }}>
         <span>
-          {`${fieldWord(field)}: `}
-          <strong style={{ fontWeight: 600 }}>
-            {typeof value === 'number' ? formatQuantity({ value, unit }) : choiceWord(field, value)}
-          </strong>
+          <AssumedFigure field={field} value={value} unit={unit} />
           {range !== null && (
             <span
               style={{ color: 'var(--soft)' }}
@@ -69,5 +66,21 @@ function Alike({ alike }: { readonly alike: readonly Assumption[] }): ReactEleme
       )}
       <BasisText text={basis.text} status={basis.status} />
     </li>
+  );
+}
+
+/** A figure with the name of its field; what the solve says in words speaks for itself. */
+function AssumedFigure({ field, value, unit }: Pick<Assumption, 'field' | 'value' | 'unit'>): ReactElement {
+  if (typeof value === 'string' && unit === '') {
+    const words = plainFields(value);
+    return <span>{`${words.charAt(0).toUpperCase()}${words.slice(1)}`}</span>;
+  }
+  return (
+    <>
+      {`${fieldWord(field)}: `}
+      <strong style={{ fontWeight: 600 }}>
+        {typeof value === 'number' ? formatQuantity({ value, unit }) : choiceWord(field, value)}
+      </strong>
+    </>
   );
 }

@@ -1,7 +1,7 @@
 /** The operating cases: which one is looked at, and what each sets. */
 import type { ReactElement } from 'react';
 import { addCase, type CaseField, removeCase, renameCase, setCase } from '../../core/api.ts';
-import { Group, SmallButton } from '../controls/AskRow.tsx';
+import { Group, LinkButton, SmallButton } from '../controls/AskRow.tsx';
 import { ChoiceField } from '../controls/ChoiceField.tsx';
 import { Folded } from '../controls/Folded.tsx';
 import { QuantityField } from '../controls/QuantityField.tsx';
@@ -9,7 +9,7 @@ import { TextField } from '../controls/TextField.tsx';
 import { type Taken, takeEdit } from '../controls/taken.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { caseWords, type ListedCase, listedCases } from './chosenCase.ts';
-import { Buttons, LinkButton, Section, SectionTitle, Under } from './parts.tsx';
+import { Buttons, Section, SectionTitle, Under } from './parts.tsx';
 
 export function CaseList(): ReactElement {
   const job = useOpenJob((open) => open.job);
@@ -33,7 +33,7 @@ export function CaseList(): ReactElement {
               name="looked-at"
               checked={id === caseId}
               onChange={() => choose(id)}
-              style={{ accentColor: 'var(--copper)', width: '1.125rem', height: '1.125rem', flex: 'none' }}
+              style={{ accentColor: 'var(--copper)', flex: 'none' }}
             />
             {words}
           </label>
@@ -79,7 +79,7 @@ function CaseFields({ raw }: { readonly raw: ListedCase }): ReactElement {
     <>
       <TextField label="Label" value={raw.label} onCommit={set('label')} />
       <QuantityField
-        label="All strings at"
+        label="Strings at"
         unit="1"
         given={figure('stateOfCharge')}
         assumed="as drawn"
@@ -107,6 +107,7 @@ function CaseFields({ raw }: { readonly raw: ListedCase }): ReactElement {
         words={(part) => words.get(part) ?? part}
         onCommit={set('surge')}
       />
+      <EachString raw={raw} />
       <SetHere raw={raw} />
       <TextField label="Short name" value={id} required onCommit={(name) => rename(id, name)} />
     </>
@@ -120,11 +121,39 @@ function rename(id: string, name: string | undefined): Taken {
   return trouble;
 }
 
+/** The charge of single strings, where they are not all alike. */
+function EachString({ raw }: { readonly raw: ListedCase }): ReactElement | null {
+  const parts = useOpenJob((open) => open.job.parts);
+  const strings = parts.filter((part) => part.kind === 'string');
+  if (strings.length < 2) return null;
+  const set = (raw['stateOfChargeByString'] ?? {}) as Readonly<Record<string, number | string>>;
+  const count = Object.keys(set).length;
+  const commit = (string: string, charge: number | string | undefined): Taken => {
+    const { [string]: _, ...others } = set;
+    const next = charge === undefined ? others : { ...others, [string]: charge };
+    const value = Object.keys(next).length === 0 ? undefined : next;
+    return takeEdit(setCase({ case: raw.id, field: 'stateOfChargeByString', value }));
+  };
+  return (
+    <Folded title="Charge of each string" aside={count === 0 ? 'all alike' : `${String(count)} set`}>
+      {strings.map(({ id }) => (
+        <QuantityField
+          key={id}
+          label={id}
+          unit="1"
+          given={set[id]}
+          assumed="as the others"
+          onCommit={(charge) => commit(id, charge)}
+        />
+      ))}
+    </Folded>
+  );
+}
+
 /** The parts that this case sets apart from the drawing. */
 function SetHere({ raw }: { readonly raw: ListedCase }): ReactElement | null {
   const set = (raw['set'] ?? {}) as Readonly<Record<string, Readonly<Record<string, unknown>>>>;
-  const byString = (raw['stateOfChargeByString'] ?? {}) as Readonly<Record<string, unknown>>;
-  const ids = [...new Set([...Object.keys(set), ...Object.keys(byString)])];
+  const ids = Object.keys(set);
   if (ids.length === 0) return null;
   return (
     <Folded title="Set in this case" aside={`${String(ids.length)} ${ids.length === 1 ? 'part' : 'parts'}`}>

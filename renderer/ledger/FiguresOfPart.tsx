@@ -6,6 +6,8 @@ import { figuresOf } from '../controls/figuresOf.ts';
 import { PartField } from '../controls/PartField.tsx';
 import { useOpenJob } from '../state/openJob.ts';
 
+/** What a person looks for first, beside the figures that every part of its kind must have. */
+const leading = ['size', 'minusSize', 'minusLengthM', 'powerW', 'currentA'];
 const touching = ['junction', 'poles', 'junction-list', 'point', 'anything'];
 
 export function FiguresOfPart({
@@ -23,8 +25,11 @@ export function FiguresOfPart({
     field.required === true ||
     part.given.has(name) ||
     figures.get(name)?.from === 'assumed' ||
+    figures.get(name)?.changedInCase === true ||
     (field.rule.holds === 'flag' && field.standard !== undefined);
-  const told = fields.filter(isTold);
+  const leads = ([name, field]: [string, Field]): boolean => field.required === true || leading.includes(name);
+  const inRuleOrder = fields.filter(isTold);
+  const told = [...inRuleOrder.filter(leads), ...inRuleOrder.filter((field) => !leads(field))];
   const others = fields.filter((field) => !isTold(field));
   const control = ([name]: [string, Field]): ReactElement => (
     <PartField key={name} partId={part.id} field={name} inCase={inCase} />

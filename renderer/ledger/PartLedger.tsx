@@ -40,7 +40,7 @@ export function PartLedger({ part }: { readonly part: Part }): ReactElement {
       <PartJunctions part={part} chosen={chosen} />
       <Section aria-label="Name and note">
         <SectionTitle>Name and note</SectionTitle>
-        <TextField label="Name" value={part.id} required onCommit={(name) => rename(part.id, name)} />
+        <TextField label="Short name" value={part.id} required onCommit={(name) => rename(part.id, name)} />
         <PartField partId={part.id} field="label" label="Label" />
         <KindChoice part={part} />
         <PartField partId={part.id} field="locationTag" />

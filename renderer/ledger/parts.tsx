@@ -2,6 +2,7 @@
 import { styled } from '@mui/material/styles';
 import type { ReactElement, ReactNode } from 'react';
 import type { JunctionId, PartId } from '../../core/api.ts';
+import { LinkButton } from '../controls/AskRow.tsx';
 import { useOpenJob } from '../state/openJob.ts';
 
 export const Page = styled('div')({
@@ -43,22 +44,6 @@ export const Section = styled('section')({ borderTop: '1px solid var(--hair)', p
 export const SectionTitle = styled('h3')({ margin: '0 0 0.125rem', fontSize: '0.9375rem', fontWeight: 600 });
 
 export const Buttons = styled('div')({ display: 'flex', flexWrap: 'wrap', gap: '0.25rem', paddingBlock: '0.375rem' });
-
-/** Text that can be pressed, for names of parts and junctions. */
-export const LinkButton = styled('button')({
-  minHeight: '1.5rem',
-  padding: 0,
-  border: 0,
-  background: 'none',
-  color: 'var(--copper)',
-  font: 'inherit',
-  textAlign: 'start',
-  textDecoration: 'underline',
-  textUnderlineOffset: '0.15em',
-  overflowWrap: 'anywhere',
-  cursor: 'pointer',
-  '@media (pointer: coarse)': { minHeight: 44, minWidth: 44 },
-});
 
 /** Goes to a part; a cable of an out-and-back run goes to the run. */
 export function PartLink({ id }: { readonly id: string }): ReactElement {

@@ -6,7 +6,7 @@ import { largestBodyBytes } from '../../electron/local/doorman.ts';
 import { startServer } from '../../electron/local/server.ts';
 import { staticFiles } from '../../electron/page/staticFiles.ts';
 import { buildLocal, type RunningLocal, startBuiltLocal, testFolder } from './builtLocal.ts';
-import { type RawRequest, rawRequest } from './rawHttp.ts';
+import { hangUp, type RawRequest, rawRequest } from './rawHttp.ts';
 
 let host: RunningLocal;
 let otherStartsKey: string;
@@ -273,6 +273,16 @@ describe('the door of the local browser host', () => {
     outcomes.push(['1000 requests at once', `${String(answered)} answered, ${String(1000 - answered)} refused`]);
     expect(answered).toBe(1000);
     await attempt('one more after them', { ...call(), target: '/call/host.about' }, 200);
+  });
+
+  test('those who hang up in the middle leave the host as it was', async () => {
+    const { headers, body = '' } = call();
+    const head = headers.map(([name, value]) => `${name}: ${value}\r\n`).join('');
+    const whole = `POST /call/host.about HTTP/1.1\r\n${head}\r\n${body}`;
+    const lengths = Array.from({ length: 300 }, (_, index) => Math.floor((whole.length * (index + 1)) / 300));
+    await Promise.all(lengths.map(async (length) => await hangUp(host.port, whole.slice(0, length))));
+    outcomes.push(['300 that hang up in the middle', 'no answer asked for']);
+    await attempt('one more after those', { ...call(), target: '/call/host.about' }, 200);
   });
 
   test('after all that nothing was kept and nothing was complained about', async () => {

@@ -42,3 +42,18 @@ export async function rawRequest(request: RawRequest): Promise<RawOutcome> {
     }
   });
 }
+
+/** Sends a beginning and hangs up at once, without waiting for an answer. */
+export async function hangUp(port: number, beginning: string): Promise<void> {
+  await new Promise<void>((resolve) => {
+    const socket = connect(port, '127.0.0.1', () => {
+      socket.write(beginning, () => {
+        socket.resetAndDestroy();
+      });
+    });
+    socket.on('error', () => {}); // our own hanging up
+    socket.on('close', () => {
+      resolve();
+    });
+  });
+}

@@ -58,7 +58,7 @@ export function FindingFilters({ all, shown, filter, onChange }: FindingFiltersP
         label="Words"
         value={filter.text}
         onChange={({ target }) => onChange({ ...filter, text: target.value })}
-        sx={{ width: '11rem' }}
+        sx={{ width: '11rem', ...COARSE }}
         slotProps={{ htmlInput: { maxLength: 200, type: 'search' } }}
       />
       {isFiltered(filter) && (
@@ -99,6 +99,8 @@ function SeverityButtons({ all, filter, onChange }: Omit<FindingFiltersProps, 's
   );
 }
 
+const COARSE = { '@media (pointer: coarse)': { '& .MuiInputBase-root': { minHeight: 44 } } } as const;
+
 const SEVERITIES_IN_A_ROW = { display: 'flex', gap: '0.25rem', flexWrap: 'wrap', border: 0, m: 0, p: 0 } as const;
 
 const SEVERITY_BUTTON = {
@@ -136,7 +138,7 @@ function Choice({ label, value, options, onChange }: ChoiceProps): ReactElement 
       disabled={options.length < 2 && value === ''}
       onChange={({ target }) => onChange(target.value)}
       slotProps={{ select: { native: true }, inputLabel: { shrink: true } }}
-      sx={{ width: '10rem' }}
+      sx={{ width: '10rem', ...COARSE }}
     >
       <option value="">all</option>
       {options.map(([id, words]) => (

@@ -143,6 +143,14 @@ const FACTS = {
   '& dd': { m: 0, minWidth: 0, overflowWrap: 'anywhere' },
 } as const;
 
+const SHOW = {
+  paddingInline: 0,
+  minHeight: '1.5rem',
+  fontSize: '0.8125rem',
+  textDecoration: 'underline',
+  '@media (pointer: coarse)': { minHeight: 44 },
+} as const;
+
 function ShowInWiring({ finding }: { readonly finding: Finding }): ReactElement {
   const show = (): void => {
     const { job, light, select, chooseCase } = useOpenJob.getState();
@@ -153,10 +161,7 @@ function ShowInWiring({ finding }: { readonly finding: Finding }): ReactElement 
     useSession.getState().goStage('wiring');
   };
   return (
-    <Button
-      onClick={show}
-      sx={{ paddingInline: 0, minHeight: '1.5rem', fontSize: '0.8125rem', textDecoration: 'underline' }}
-    >
+    <Button onClick={show} sx={SHOW}>
       Show in the wiring
       <span className="only-read">: {finding.parts.join(', ')}</span>
     </Button>

@@ -1,7 +1,7 @@
 /** The verdicts, worst first; what could not be judged and the figure it waits for; what was compared and held. */
 import Box from '@mui/material/Box';
 import Typography from '@mui/material/Typography';
-import { type ReactElement, useMemo, useRef, useState } from 'react';
+import { type ReactElement, useMemo, useRef } from 'react';
 import type { CheckReport } from '../../../core/api.ts';
 import { Folded } from '../../controls/Folded.tsx';
 import { useOpenJob } from '../../state/openJob.ts';
@@ -9,7 +9,8 @@ import { PracticeChoice } from '../site/PracticeChoice.tsx';
 import { CaseTrouble } from './CaseTrouble.tsx';
 import { FindingFilters } from './FindingFilters.tsx';
 import { FindingList } from './FindingList.tsx';
-import { filtered, listed, NO_FILTER, severityCounts } from './findingList.ts';
+import { filtered, listed, severityCounts } from './findingList.ts';
+import { changeView, useFindingsView } from './findingsView.ts';
 import { NotDone } from './NotDone.tsx';
 import { PassedList } from './PassedList.tsx';
 
@@ -46,8 +47,7 @@ export function FindingsStage(): ReactElement {
 
 function Verdicts({ report, onMade }: { readonly report: CheckReport; readonly onMade: () => void }): ReactElement {
   const job = useOpenJob(({ job }) => job);
-  const [filter, setFilter] = useState(NO_FILTER);
-  const [openKey, setOpenKey] = useState<string | null>(null);
+  const { filter, openKey } = useFindingsView();
   const all = useMemo(() => listed(report.findings), [report]);
   const shown = useMemo(() => filtered(all, filter, job), [all, filter, job]);
   const held = report.passed.reduce((sum, { count }) => sum + count, 0);
@@ -55,9 +55,14 @@ function Verdicts({ report, onMade }: { readonly report: CheckReport; readonly o
     <>
       {all.length > 0 && (
         <>
-          <FindingFilters all={all} shown={shown.length} filter={filter} onChange={setFilter} />
+          <FindingFilters
+            all={all}
+            shown={shown.length}
+            filter={filter}
+            onChange={(changed) => changeView({ filter: changed })}
+          />
           <h2 className="only-read">The findings</h2>
-          <FindingList shown={shown} openKey={openKey} onOpen={setOpenKey} onMade={onMade} />
+          <FindingList shown={shown} openKey={openKey} onOpen={(key) => changeView({ openKey: key })} onMade={onMade} />
         </>
       )}
       <Box sx={{ mt: '1rem' }}>

@@ -8,6 +8,7 @@ import { formatQuantity, plainFields } from '../../../core/api.ts';
 import { SeverityMark } from '../../controls/SeverityMark.tsx';
 import { useOpenJob } from '../../state/openJob.ts';
 import type { TriedRemedy } from '../../workers/remedyMessages.ts';
+import { findingName } from './findingList.ts';
 import { useRemedy } from './useRemedy.ts';
 
 export interface RemedyPanelProps {
@@ -151,5 +152,5 @@ function FindingsMoved({ title, findings, itself, none }: FindingsMovedProps): R
 }
 
 function isSame(one: Finding, other: Finding): boolean {
-  return one.rule === other.rule && one.parts.join(' ') === other.parts.join(' ');
+  return findingName(one) === findingName(other);
 }

@@ -24,11 +24,16 @@ export function isFiltered(filter: FindingFilter): boolean {
   return severities.size > 0 || part !== '' || caseId !== '' || family !== '' || text.trim() !== '';
 }
 
+/** The name of a finding: what is judged, and of which parts. */
+export function findingName({ rule, parts }: Finding): string {
+  return [rule, ...parts].join(' ');
+}
+
 /** The findings in the order in which the checks rank them, worst first. */
 export function listed(findings: readonly Finding[]): readonly ListedFinding[] {
   const seen = new Map<string, number>();
   return findings.map((finding) => {
-    const name = [finding.rule, ...finding.parts].join(' ');
+    const name = findingName(finding);
     const before = seen.get(name) ?? 0;
     seen.set(name, before + 1);
     return { key: before === 0 ? name : `${name} #${String(before + 1)}`, finding };
