@@ -4,7 +4,7 @@ import type { Point } from './point.ts';
 import type { PlaceOf, Pose, TerminalPlace } from './pose.ts';
 import { poseOf, terminalPlaces } from './pose.ts';
 import type { Entry } from './routeWire.ts';
-import { longestStretch, routeWire } from './routeWire.ts';
+import { longestStretch, routeWire, straightened } from './routeWire.ts';
 
 /** A line on the drawing that carries one current. */
 export interface DrawnWire {
@@ -59,7 +59,11 @@ function wiresOf(part: Part, terminals: readonly TerminalPlace[], around: Surrou
     return end === undefined ? [] : routeWire(terminal, end, around.entryOf(terminal.junction));
   };
   const byRole = new Map(terminals.map((terminal) => [terminal.role, route(terminal)]));
-  const inward = (role: string): readonly Point[] => [...(byRole.get(role) ?? [])].reverse();
+  const inward = (role: string): readonly Point[] => {
+    const points = [...(byRole.get(role) ?? [])];
+    points.reverse();
+    return points;
+  };
   const outward = (role: string): readonly Point[] => byRole.get(role) ?? [];
   const through: WireCurrent = { of: 'through' };
   switch (part.kind) {
@@ -118,7 +122,7 @@ function wiresOf(part: Part, terminals: readonly TerminalPlace[], around: Surrou
 
 /** Two stretches that meet at a label, as one line. */
 function joined(first: readonly Point[], second: readonly Point[]): readonly Point[] {
-  return [...first, ...second.slice(first.length > 0 ? 1 : 0)];
+  return straightened([...first, ...second]);
 }
 
 /** The bar reaches over its junctions; a junction that stands off it hangs on a short tap. */

@@ -82,7 +82,9 @@ function sortLayers(layers: JunctionId[][], neighbours: ReadonlyMap<JunctionId, 
   const rank = new Map<JunctionId, number>();
   for (const layer of layers) for (const [index, junction] of layer.entries()) rank.set(junction, index);
   for (let sweep = 0; sweep < SWEEPS; sweep += 1) {
-    for (const layer of sweep % 2 === 0 ? layers : [...layers].reverse()) {
+    const walked = [...layers];
+    if (sweep % 2 === 1) walked.reverse();
+    for (const layer of walked) {
       const wanted = new Map(
         layer.map((junction) => {
           const near = (neighbours.get(junction) ?? []).map((each) => rank.get(each) ?? 0);

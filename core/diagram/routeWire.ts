@@ -21,7 +21,7 @@ export function routeWire(
   const start: Point = { x: terminal.x, y: terminal.y };
   const isLevel = terminal.way === 'left' || terminal.way === 'right';
   // The rules are written for a level start; an upright one is the same with the axes changed over.
-  if (isLevel) return tidyLine(levelRoute(start, { end, ahead: terminal.way === 'right' ? 1 : -1, entry }));
+  if (isLevel) return straightened(levelRoute(start, { end, ahead: terminal.way === 'right' ? 1 : -1, entry }));
   const swap = ({ x, y }: Point): Point => ({ x: y, y: x });
   const turned: Entry = entry === 'level' ? 'upright' : entry === 'upright' ? 'level' : 'any';
   const route = levelRoute(swap(start), {
@@ -30,7 +30,7 @@ export function routeWire(
     entry: turned,
     isPole: true,
   });
-  return tidyLine(route.map(swap));
+  return straightened(route.map(swap));
 }
 
 function levelRoute(
@@ -66,7 +66,7 @@ function halfway(a: number, b: number): number {
 }
 
 /** Without points that say nothing: repeated ones, and those in the middle of a straight stretch. */
-function tidyLine(points: readonly Point[]): readonly Point[] {
+export function straightened(points: readonly Point[]): readonly Point[] {
   const kept: Point[] = [];
   for (const point of points) {
     const last = kept.at(-1);

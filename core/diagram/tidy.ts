@@ -58,7 +58,9 @@ export function islandsOf(parts: readonly Part[]): readonly (readonly Part[])[] 
     for (const each of merged)
       for (const junction of junctionsOf(each)) if (junction !== EARTH) groupOf.set(junction, merged);
   }
-  return [...groups].sort((a, b) => b.length - a.length);
+  const islands = [...groups];
+  islands.sort((a, b) => b.length - a.length);
+  return islands;
 }
 
 function plannedPositions(job: CheckedJob): Positions | undefined {
@@ -245,7 +247,8 @@ class Planned {
 function xOfPoints({ points }: Layout): ReadonlyMap<PlacedPoint, number> {
   const paperSlot = 8;
   const layerOf = (point: PlacedPoint): number => Math.round((point.x - point.slot * paperSlot) * 100) / 100;
-  const layers = [...new Set(points.map(layerOf))].sort((a, b) => a - b);
+  const layers = [...new Set(points.map(layerOf))];
+  layers.sort((a, b) => a - b);
   const slots = new Map<number, number>();
   for (const point of points) slots.set(layerOf(point), Math.max(slots.get(layerOf(point)) ?? 0, point.slot));
   const left = new Map<number, number>();

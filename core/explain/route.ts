@@ -46,8 +46,8 @@ export function routeFrom(ports: readonly SourcePort[], load: LoadPort, wires: W
       const stretches = [...out, ...back];
       const strings = stretches.filter(({ wire }) => wire.emfV !== undefined);
       if (plain && strings.length > 0) continue;
-      // A walk that falls through a string, or meets its own source or load again, is no feed.
-      if (strings.some(({ forward }) => !forward)) continue;
+      // A walk that falls through a string, unless that is being charged on the way, or meets its own source or load is no feed.
+      if (strings.some((stretch) => !stretch.forward && (alongA(stretch) ?? 0) <= 0)) continue;
       if (stretches.some(({ wire }) => wire.part === source.part || wire.part === load.part)) continue;
       return { source, load, out, back, leastA: leastOf([source.currentA, load.currentA, ...stretches.map(alongA)]) };
     }

@@ -110,10 +110,15 @@ class Footsteps {
     const [from, to] = forward ? [wire.from, wire.to] : [wire.to, wire.from];
     const currentA = alongA(stretch);
     if (wire.emfV !== undefined) {
-      // Strings are only ever walked from minus to plus.
-      this.step('source', side, wire.part, from, null, wire.emfV, currentA);
-      this.step('sag', side, wire.part, null, to, -wire.fallV - wire.emfV, currentA);
-      this.otherSourcesV += -wire.fallV;
+      const sagV = wire.fallV + wire.emfV;
+      if (forward) {
+        this.step('source', side, wire.part, from, null, wire.emfV, currentA);
+        this.step('sag', side, wire.part, null, to, -sagV, currentA);
+      } else {
+        this.step('sag', side, wire.part, from, null, sagV, currentA);
+        this.step('load', side, wire.part, null, to, -wire.emfV, currentA);
+      }
+      this.otherSourcesV += forward ? -wire.fallV : wire.fallV;
       return;
     }
     const fallV = forward ? wire.fallV : -wire.fallV;

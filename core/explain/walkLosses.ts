@@ -20,10 +20,9 @@ export function walkLosses(walk: VoltWalk, job: CheckedJob): readonly WalkLoss[]
     const group = kind === 'sag' ? 'battery' : groupOf(kindOf.get(part) ?? kindOf.get(ownerOf(part)));
     lost.set(group, (lost.get(group) ?? 0) - changeV);
   }
-  return [...lost]
-    .map(([group, lostV]) => ({ group, lostV }))
-    .filter(({ lostV }) => lostV > 0)
-    .sort((a, b) => b.lostV - a.lostV);
+  const losses = [...lost].map(([group, lostV]) => ({ group, lostV })).filter(({ lostV }) => lostV > 0);
+  losses.sort((a, b) => b.lostV - a.lostV);
+  return losses;
 }
 
 /** The run that a cable of it belongs to. */

@@ -3,7 +3,7 @@ import type { Finding } from '../checks/finding.ts';
 
 /** Rules that judge a part together with another; the rest judge their first part, and name others beside it. */
 const JUDGES_TWO: ReadonlySet<string> = new Set(['charger-volts-off', 'cold-charge']);
-const JUDGES_ALL: ReadonlySet<string> = new Set(['group-unconnected']);
+const JUDGES_ALL: ReadonlySet<string> = new Set(['group-unconnected', 'share-uneven']);
 
 /**
  * Same rule about the same judged parts, whatever case or neighbour is worst: a fuse that is too large for another cable after

@@ -4,6 +4,7 @@ import { conductorOf, moreInParallel, thicker } from './cableLadders.ts';
 import type { Bench, Ladder } from './candidate.ts';
 import { lowerSetpoints, noColdCharge, offInCase, otherSetpoint, weakerCharge } from './chargeLadders.ts';
 import { fuseAtString, higherVolts, largerRating, smallerRating } from './deviceLadders.ts';
+import { evenLeads } from './shareLadders.ts';
 import { anotherString, lessLostTo } from './wayLadders.ts';
 import { broughtIntoUse, closedAgain, linksAway, swappedLeads, takenOut } from './wiringLadders.ts';
 
@@ -70,6 +71,7 @@ const byRule: Readonly<Record<string, LaddersOf>> = {
   'string-discharge-high': (bench, [id]) => anotherString(bench, id),
   'string-charge-high': (bench, [id]) => [...weakerCharge(bench), ...anotherString(bench, id)],
   'charge-too-strong': (bench, [id]) => [...weakerCharge(bench), ...anotherString(bench, id)],
+  'share-uneven': (bench, ids) => evenLeads(bench, ids),
   'charger-volts-off': (bench, ids) => otherSetpoint(bench, ids),
   'cold-charge': (bench, ids) => noColdCharge(bench, ids),
 };

@@ -233,7 +233,8 @@ export function cautionsForPart(part: Part, job: CheckedJob): readonly Pick<Caut
   const alone = { ...job, parts: [part] };
   const beside = part.kind === 'string' && withSeveralStrings(job) ? [withSeveralStrings] : [];
   const own = CAUTIONS.filter(
-    ({ place, appliesTo }) => place === PLACES[part.kind] && (appliesTo(alone) || beside.some((one) => one === appliesTo)),
+    ({ place, appliesTo }) =>
+      place === PLACES[part.kind] && (appliesTo(alone) || beside.some((one) => one === appliesTo)),
   );
   const tools = CAUTIONS.filter(({ place, basis }) => place === 'isolating' && basis === ACID_AND_TOOLS);
   return part.kind === 'string' ? [...tools, ...own] : own;

@@ -60,7 +60,7 @@ export function VoltWalk(): ReactElement {
             variant="standard"
             value={chosen?.load ?? ''}
             inputProps={{ 'aria-label': 'Walk to' }}
-            onChange={({ target }) => useView.setState({ walkLoad: target.value as PartId })}
+            onChange={({ target }) => useView.setState({ walkLoad: target.value })}
           >
             {choices.map(({ load }) => (
               <MenuItem key={load} value={load}>
@@ -152,21 +152,21 @@ function Steps({ shape, width }: { readonly shape: WalkShape; readonly width: nu
   const selected = useOpenJob(({ selection }) => selection.parts);
   const [at, setAt] = useState(0);
   const named = placeNames(shape.steps, width);
-  const onKeyDown = (event: KeyboardEvent<SVGSVGElement>): void => {
-    const step = event.key === 'ArrowRight' ? 1 : event.key === 'ArrowLeft' ? -1 : 0;
-    if (step !== 0) {
+  const onKeyDown = (event: KeyboardEvent<SVGGElement>, { index, step }: ChartStep): void => {
+    const by = event.key === 'ArrowRight' ? 1 : event.key === 'ArrowLeft' ? -1 : 0;
+    if (by !== 0) {
       event.preventDefault();
-      const next = Math.min(shape.steps.length - 1, Math.max(0, at + step));
+      const next = Math.min(shape.steps.length - 1, Math.max(0, index + by));
       setAt(next);
-      event.currentTarget.querySelectorAll<SVGElement>('[role="button"]')[next]?.focus();
+      event.currentTarget.ownerSVGElement?.querySelectorAll<SVGElement>('[role="button"]')[next]?.focus();
     } else if (event.key === 'Enter' || event.key === ' ') {
       event.preventDefault();
-      const chosen = shape.steps[at];
-      if (chosen !== undefined) selectStep(chosen.step);
+      selectStep(step);
     }
   };
   return (
-    <svg width={width} height={HEIGHT} role="group" aria-label="Steps of the volt walk" onKeyDown={onKeyDown}>
+    // biome-ignore lint/a11y/useSemanticElements: a chart has no fieldset
+    <svg width={width} height={HEIGHT} role="group" aria-label="Steps of the volt walk">
       <Axis shape={shape} width={width} />
       <path className="line" d={linePath(shape.steps)} />
       {shape.steps.map((each) => (
@@ -177,6 +177,7 @@ function Steps({ shape, width }: { readonly shape: WalkShape; readonly width: nu
           isSelected={selected.includes(ownerOf(each.step.part))}
           isStop={each.index === Math.min(at, shape.steps.length - 1)}
           onStop={() => setAt(each.index)}
+          onKeyDown={(event) => onKeyDown(event, each)}
         />
       ))}
     </svg>
@@ -228,7 +229,7 @@ const LINE = 13;
 /** Names of the largest drops, the source and the load, each where no other name stands. */
 function placeNames(steps: readonly ChartStep[], width: number): ReadonlyMap<number, PlacedName> {
   const drops = steps.filter(({ step }) => (step.kind === 'part' || step.kind === 'sag') && step.changeV < -0.0005);
-  const largest = [...drops].sort((a, b) => a.step.changeV - b.step.changeV).slice(0, MOST_NAMED);
+  const largest = drops.toSorted((a, b) => a.step.changeV - b.step.changeV).slice(0, MOST_NAMED);
   const placed = new Map<number, PlacedName>();
   const taken: { readonly x1: number; readonly x2: number; readonly y: number }[] = [];
   for (const each of [...steps.filter(({ isAcross }) => isAcross), ...largest]) {
@@ -263,17 +264,20 @@ function StepMark({
   isSelected,
   isStop,
   onStop,
+  onKeyDown,
 }: {
   readonly placed: ChartStep;
   readonly name: PlacedName | undefined;
   readonly isSelected: boolean;
   readonly isStop: boolean;
   readonly onStop: () => void;
+  readonly onKeyDown: (event: KeyboardEvent<SVGGElement>) => void;
 }): ReactElement {
   const { step, x, width, startY, endY } = placed;
   const middle = x + width / 2;
   const words = wordsOf(step);
   return (
+    // biome-ignore lint/a11y/useSemanticElements: a button of HTML cannot stand inside a chart
     <g
       role="button"
       tabIndex={isStop ? 0 : -1}
@@ -281,6 +285,7 @@ function StepMark({
       aria-pressed={isSelected}
       className={isSelected ? 'step chosen' : 'step'}
       onFocus={onStop}
+      onKeyDown={onKeyDown}
       onClick={() => selectStep(step)}
     >
       <title>{words}</title>

@@ -25,12 +25,13 @@ const Row = styled('div')({
 });
 
 const Name = styled('label')({
+  gridRow: '1 / span 2',
   paddingTop: '0.3rem',
   fontSize: '0.875rem',
   lineHeight: 1.3,
   color: 'var(--soft)',
   overflowWrap: 'anywhere',
-  '@container (max-width: 18rem)': { gridColumn: '1 / -1', paddingBottom: '0.125rem' },
+  '@container (max-width: 18rem)': { gridRow: 'auto', gridColumn: '1 / -1', paddingBottom: '0.125rem' },
 });
 
 const Below = styled('div')({
@@ -85,6 +86,7 @@ export const FieldBox = styled('div')({
   },
   '& > textarea': { resize: 'vertical' },
   '& option': { backgroundColor: 'var(--sheet)', color: 'var(--ink)' },
+  '& > select': { fontSize: '0.875rem', paddingInline: '0.2rem' },
   '& > select[data-assumed]': { color: 'var(--soft)' },
   '& > input::placeholder, & > textarea::placeholder': { color: 'var(--soft)', opacity: 1 },
   '@media (pointer: coarse)': { minHeight: 44 },

@@ -17,6 +17,7 @@ export function PointsField({ given, onCommit, ...field }: PointsFieldProps): Re
       {...field}
       shown={{ text: pointsText(given), sign: '', echo: '' }}
       sign="%"
+      {...(Array.isArray(given) ? { rows: 3 } : {})}
       read={readPoints}
       onCommit={(reading) => onCommit(reading?.value)}
     />

@@ -1,13 +1,5 @@
 /** Plain words for what the job file calls by short names: kinds, fields, choices, states. One thing has one name on every screen. */
-import {
-  CHEMISTRY_WORDS,
-  fieldWords,
-  KIND_WORDS,
-  type Origin,
-  type PartKind,
-  type Practice,
-  type Status,
-} from '../../core/api.ts';
+import { fieldWords, KIND_WORDS, type Origin, type PartKind, type Practice, type Status } from '../../core/api.ts';
 
 /** Names of fields that read better on a screen than the report's running words; else the report's are used. */
 const FIELDS: Readonly<Record<string, string>> = {
@@ -62,7 +54,7 @@ const HINTS: Readonly<Record<string, string>> = {
 const CHOICES: Readonly<Record<string, Readonly<Record<string, string>>>> = {
   chemistry: {
     flooded: 'Lead-acid, wet (flooded)',
-    agm: 'Lead-acid, AGM (glass mat)',
+    agm: 'Lead-acid, AGM',
     gel: 'Lead-acid, gel',
     lfp: 'LFP, lithium iron phosphate',
     nmc: 'NMC, lithium with nickel',
@@ -89,10 +81,10 @@ const CHOICES: Readonly<Record<string, Readonly<Record<string, string>>>> = {
 
 /** The rule books, by whose tables and rules a job is judged. */
 export const practiceWords: Readonly<Record<Practice, { readonly short: string; readonly long: string }>> = {
-  'us-land': { short: 'US land', long: 'United States, on land' },
-  'us-marine': { short: 'US marine', long: 'United States, aboard a boat' },
-  'iso-marine': { short: 'ISO marine', long: 'International, aboard a boat (ISO)' },
-  'iec-land': { short: 'IEC land', long: 'International, on land (IEC)' },
+  'us-land': { short: 'US land', long: 'US, on land' },
+  'us-marine': { short: 'US marine', long: 'US, aboard a boat' },
+  'iso-marine': { short: 'ISO marine', long: 'ISO, aboard a boat' },
+  'iec-land': { short: 'IEC land', long: 'IEC, on land' },
 };
 
 export const ORIGIN_MEANING: Readonly<Record<Origin, { readonly word: string; readonly meaning: string }>> = {

@@ -17,7 +17,6 @@ export const BarNode = memo(function BarNode({
   const { part, drawn, rating } = placed;
   const live = useLive((now) => now.parts.get(part.id));
   const isLit = useOpenJob(({ lit }) => lit.includes(part.id));
-  const figure = live?.line ?? '';
   const volts = useLive(
     (now) => (part.kind === 'busbar' ? now.volts.get(part.junctions[0] as JunctionId) : undefined) ?? '',
   );
@@ -33,7 +32,6 @@ export const BarNode = memo(function BarNode({
         </span>
         {rating !== '' && <span className="rating">{rating}</span>}
         {volts !== '' && <span className="volts">{volts}</span>}
-        {figure !== '' && <span className="figure">{figure}</span>}
       </div>
     </div>
   );

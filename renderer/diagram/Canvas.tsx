@@ -13,7 +13,16 @@ import {
   useStore,
   ViewportPortal,
 } from '@xyflow/react';
-import { type DragEvent, type MouseEvent, type ReactElement, useCallback, useEffect, useMemo, useRef } from 'react';
+import {
+  type DragEvent,
+  type MouseEvent,
+  type ReactElement,
+  useCallback,
+  useEffect,
+  useMemo,
+  useRef,
+  useState,
+} from 'react';
 import type { JunctionId, PartFieldsGiven, PartId, Point } from '../../core/api.ts';
 import { GRID } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
@@ -121,7 +130,7 @@ function DrawingFrame({ children }: { readonly children: ReactElement }): ReactE
   const { volts, amps, labels } = useView();
   const isOld = useLive((now) => now.isOld);
   const zoom = useStore((flow) => flow.transform[2]);
-  const detail = zoom >= 0.8 ? 'near' : zoom >= 0.5 ? 'mid' : 'far';
+  const detail = zoom >= 0.75 ? 'near' : zoom >= 0.45 ? 'mid' : 'far';
   // Words never get smaller on the screen than this share of their usual size.
   const k = Math.round(Math.min(2.6, Math.max(0.8, 0.95 / zoom)) * 20) / 20;
   const s = Math.round(Math.min(1.9, Math.max(1, 0.7 / zoom)) * 20) / 20;
@@ -146,13 +155,12 @@ function DrawingFrame({ children }: { readonly children: ReactElement }): ReactE
 }
 
 function useNodes(drawing: Drawing): FlowNode[] {
-  const maker = useRef<NodeMaker>(null);
-  maker.current ??= new NodeMaker();
+  const [maker] = useState(() => new NodeMaker());
   const selection = useOpenJob((job) => job.selection);
   const live = useLive((now) => now.parts);
   return useMemo(
-    () => maker.current?.make(drawing, selection, (id: PartId) => live.get(id)?.spoken ?? id) ?? [],
-    [drawing, selection, live],
+    () => maker.make(drawing, selection, (id: PartId) => live.get(id)?.spoken ?? id),
+    [maker, drawing, selection, live],
   );
 }
 
@@ -164,9 +172,10 @@ function useFirstFit(count: number): () => void {
   const height = useStore((flow) => flow.height);
   const touched = useRef<string | null>(null);
   const isThere = count > 0 && width > 0;
+  const room = `${String(width)} × ${String(height)}`;
   useEffect(() => {
-    if (isThere && touched.current !== key) void fitView(FIT_WHOLE);
-  }, [isThere, width, height, key, fitView]);
+    if (isThere && room !== '' && touched.current !== key) void fitView(FIT_WHOLE);
+  }, [isThere, room, key, fitView]);
   return useCallback(() => {
     touched.current = key;
   }, [key]);

@@ -4,6 +4,7 @@ import { type ReactElement, useState } from 'react';
 import { EARTH, type JunctionId, junctionsOf } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { useLive } from './live.ts';
+import { useFocusAtFirst } from './useFocusAtFirst.ts';
 
 const Row = styled('button')({
   display: 'flex',
@@ -35,6 +36,7 @@ export function JunctionChooser({
   const job = useOpenJob((open) => open.job);
   const volts = useLive((now) => now.volts);
   const [asked, setAsked] = useState('');
+  const field = useFocusAtFirst<HTMLInputElement>();
   const meets = new Map<JunctionId, string[]>();
   for (const part of job.parts)
     for (const each of new Set(junctionsOf(part))) meets.set(each, [...(meets.get(each) ?? []), part.id]);
@@ -46,7 +48,7 @@ export function JunctionChooser({
     <div>
       <input
         type="search"
-        autoFocus
+        ref={field}
         value={asked}
         aria-label="Find a junction by its name or by a part"
         placeholder="Name or part"

@@ -15,8 +15,8 @@ export const JunctionNode = memo(function JunctionNode({
       <Handle id={placed.id} type="source" position={Position.Top} className="dot" />
       <div className="tag" aria-hidden>
         <span className="name">{placed.label}</span>
-        {volts !== '' && <span className="volts">{volts}</span>}
-        {placed.isReference && <span className="zero">0 V here</span>}
+        {volts !== '' && !placed.isReference && <span className="volts">{volts}</span>}
+        {placed.isReference && <span className="zero">0 V, reference</span>}
       </div>
     </div>
   );

@@ -71,7 +71,7 @@ export function DrawingMenus(): ReactElement | null {
       return (
         <Box menu={menu} name={`A new part at ${menu.from}`}>
           <PaletteList
-            autoFocus
+            focusFirst
             onPick={({ part }) => {
               close();
               putPart(part, menu.place, menu.from);

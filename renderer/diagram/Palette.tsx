@@ -105,7 +105,7 @@ function SmallPalette({ onPick }: { readonly onPick: (entry: PaletteEntry) => vo
         }}
       >
         <PaletteList
-          autoFocus
+          focusFirst
           onPick={(entry) => {
             setAnchor(null);
             onPick(entry);

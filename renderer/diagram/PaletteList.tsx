@@ -7,6 +7,7 @@ import { useSession } from '../state/session.ts';
 import { DRAGGED_PART } from './draggedPart.ts';
 import { found, kindGroups, libraryGroups, ownGroup, type PaletteEntry, type PaletteGroup } from './paletteEntries.ts';
 import { Shapes } from './Shapes.tsx';
+import { useFocusAtFirst } from './useFocusAtFirst.ts';
 
 const Field = styled('input')({
   width: '100%',
@@ -52,12 +53,14 @@ const Entry = styled('button')({
 
 export interface PaletteListProps {
   readonly onPick: (entry: PaletteEntry) => void;
-  readonly autoFocus?: boolean;
+  /** The keyboard goes to the field at once. */
+  readonly focusFirst?: boolean;
 }
 
-export function PaletteList({ onPick, autoFocus = false }: PaletteListProps): ReactElement {
+export function PaletteList({ onPick, focusFirst = false }: PaletteListProps): ReactElement {
   const [asked, setAsked] = useState('');
   const own = useOwnParts();
+  const field = useFocusAtFirst<HTMLInputElement>(focusFirst);
   const isAsking = asked.trim() !== '';
   const groups = isAsking
     ? found([...kindGroups, ...(own.length > 0 ? [ownGroup(own)] : []), ...libraryGroups], asked)
@@ -69,7 +72,7 @@ export function PaletteList({ onPick, autoFocus = false }: PaletteListProps): Re
         value={asked}
         placeholder="Find a part"
         aria-label="Find a part to put on the drawing"
-        autoFocus={autoFocus}
+        ref={field}
         onChange={(event) => setAsked(event.target.value)}
       />
       {groups.map((group) => (

@@ -44,7 +44,7 @@ export const PartNode = memo(function PartNode({
         </div>
       )}
       <Words placed={placed} live={live} />
-      <Terminals placed={placed} width={width} height={height} />
+      {selected && <Terminals placed={placed} width={width} height={height} />}
     </div>
   );
 });
@@ -120,8 +120,8 @@ function Words({ placed, live }: { readonly placed: PlacedPart; readonly live: L
     return (
       <div className="words below" aria-hidden>
         <span className="id">{part.id}</span>
-        {label}
-        {figures}
+        {figure !== '' && live?.isDead !== true && <span className="figure">{figure}</span>}
+        {state !== '' && <span className="state">{state}</span>}
       </div>
     );
   }
@@ -137,7 +137,10 @@ function Words({ placed, live }: { readonly placed: PlacedPart; readonly live: L
   );
 }
 
-/** A wire can be drawn from each terminal; it begins at the terminal's junction. */
+/**
+ * A wire can be drawn from each terminal of a selected part; it begins at the terminal's junction. Only there: every handle listens to
+ * every move of the view, and a large drawing has thousands of terminals.
+ */
 function Terminals({
   placed: { drawn, at },
   width,

@@ -28,13 +28,14 @@ const PartWires = memo(function PartWires({ placed }: { readonly placed: PlacedP
   const isTold = isConductor(part) || part.kind === 'joint';
   const classes = ['wire-group', live?.isDead === true ? 'dead' : '', isLit ? 'lit' : '', isChosen ? 'chosen' : ''];
   return (
+    // biome-ignore lint/a11y/noStaticElementInteractions: the keyboard reaches the same part by its node; a wire is a larger target for a hand
     <g
       className={classes.filter((name) => name !== '').join(' ')}
       onClick={(event) => choose(event, placed)}
       onContextMenu={(event) => openMenu(event, placed)}
     >
       {drawn.wires.map((wire) => (
-        <OneWire key={wire.role} wire={wire} live={live} largestA={largestA} isTold={isTold} />
+        <OneWire key={wire.role} wire={wire} live={live} largestA={largestA} isTold={isTold} middleY={placed.at.y} />
       ))}
     </g>
   );
@@ -63,11 +64,13 @@ function OneWire({
   live,
   largestA,
   isTold,
+  middleY,
 }: {
   readonly wire: DrawnWire;
   readonly live: LivePart | undefined;
   readonly largestA: number;
   readonly isTold: boolean;
+  readonly middleY: number;
 }): ReactElement | null {
   if (wire.points.length < 2) return null;
   const { current } = wire;
@@ -82,7 +85,9 @@ function OneWire({
       <path className="hit" d={path} />
       <path className="under" d={path} style={strokeOf(weight + 6)} />
       <path className="line" d={path} style={strokeOf(weight)} />
-      {isTold && flow !== undefined && <Figure wire={wire} text={flow.text} currentA={flow.currentA} weight={weight} />}
+      {isTold && flow !== undefined && (
+        <Figure wire={wire} text={flow.text} currentA={flow.currentA} weight={weight} middleY={middleY} />
+      )}
     </g>
   );
 }
@@ -100,11 +105,14 @@ function Figure({
   text,
   currentA,
   weight,
+  middleY,
 }: {
   readonly wire: DrawnWire;
   readonly text: string;
   readonly currentA: number | null;
   readonly weight: number;
+  /** Of the part: the upper line of a run has its number above it, for the run's name stands between the two. */
+  readonly middleY: number;
 }): ReactElement {
   const { at, isUpright, forward, length } = figurePlace(wire);
   const isFlowing = currentA !== null && Math.abs(currentA) >= 0.001;
@@ -119,7 +127,7 @@ function Figure({
           transform={`rotate(${String(turn)}) scale(${String(0.8 + weight / 12)})`}
         />
       )}
-      <text className={isUpright ? 'aside' : 'under'}>{text}</text>
+      <text className={isUpright ? 'aside' : at.y < middleY ? 'over' : 'under'}>{text}</text>
     </g>
   );
 }

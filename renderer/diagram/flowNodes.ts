@@ -28,7 +28,7 @@ export class NodeMaker {
   make(drawing: Drawing, selection: Selection, spoken: (part: PartId) => string): FlowNode[] {
     const chosenParts = new Set<string>(selection.parts);
     const chosenJunctions = new Set<string>(selection.junctions);
-    const parts = [...drawing.parts].sort(inReadingOrder).map((placed) => {
+    const parts = drawing.parts.toSorted(inReadingOrder).map((placed) => {
       const ariaLabel = spoken(placed.part.id);
       return this.kept(partNode(placed, chosenParts.has(placed.part.id), ariaLabel));
     });
@@ -74,7 +74,7 @@ function partNode(placed: PlacedPart, selected: boolean, ariaLabel: string): Par
     selected,
     ariaLabel,
     ariaRole: 'button',
-    zIndex: isBar ? 1 : 2,
+    zIndex: isBar ? 1 : 4,
   };
 }
 

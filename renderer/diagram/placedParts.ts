@@ -1,5 +1,5 @@
 /** The drawing of the open job: where everything stands and what is drawn for each part, with the hand's move on top. */
-import { useMemo, useRef } from 'react';
+import { useMemo, useState } from 'react';
 import type { CheckedJob, DrawnPart, JunctionId, Part, PartId, Point, Positions } from '../../core/api.ts';
 import {
   drawPart,
@@ -50,25 +50,31 @@ export function useDrawing(): Drawing {
   const job = useOpenJob((open) => open.job);
   const drag = useView((view) => view.drag);
   const positions = useMemo(() => positionsOf(job), [job]);
-  const before = useRef<{ parts: Map<string, PlacedPart>; junctions: Map<string, PlacedJunction> }>({
-    parts: new Map(),
-    junctions: new Map(),
-  });
+  const [parts] = useState(() => new Kept<PlacedPart>());
+  const [junctions] = useState(() => new Kept<PlacedJunction>());
   return useMemo(() => {
     const shown = withDrag(job, positions, drag);
-    const parts = placeParts(job, shown).map((placed) => kept(placed, placed.part.id, before.current.parts));
-    const junctions = placeJunctions(job, shown).map((placed) => kept(placed, placed.id, before.current.junctions));
-    before.current = {
-      parts: new Map(parts.map((placed) => [placed.part.id, placed])),
-      junctions: new Map(junctions.map((placed) => [placed.id, placed])),
+    return {
+      job,
+      positions,
+      parts: parts.of(placeParts(job, shown), ({ part }) => part.id),
+      junctions: junctions.of(placeJunctions(job, shown), ({ id }) => id),
     };
-    return { job, positions, parts, junctions };
-  }, [job, positions, drag]);
+  }, [job, positions, drag, parts, junctions]);
 }
 
-function kept<T extends { readonly key: string }>(now: T, id: string, before: ReadonlyMap<string, T>): T {
-  const old = before.get(id);
-  return old?.key === now.key ? old : now;
+/** Gives back the objects of the last time wherever nothing of them has changed. */
+class Kept<T extends { readonly key: string }> {
+  private last = new Map<string, T>();
+
+  of(now: readonly T[], idOf: (one: T) => string): readonly T[] {
+    const kept = now.map((one) => {
+      const old = this.last.get(idOf(one));
+      return old?.key === one.key ? old : one;
+    });
+    this.last = new Map(kept.map((one) => [idOf(one), one]));
+    return kept;
+  }
 }
 
 export function withDrag(job: CheckedJob, positions: Positions, drag: Drag | null): Positions {

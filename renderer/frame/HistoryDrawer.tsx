@@ -23,7 +23,12 @@ export function HistoryDrawer({
       anchor="right"
       open={open}
       onClose={onClose}
-      slotProps={{ paper: { sx: { width: 'min(26rem, 92vw)', p: 2, borderLeft: '1px solid var(--edge)' } } }}
+      slotProps={{
+        paper: {
+          'aria-label': 'History',
+          sx: { width: 'min(26rem, 92vw)', p: 2, borderLeft: '1px solid var(--edge)' },
+        },
+      }}
     >
       {open && <History onClose={onClose} />}
     </Drawer>

@@ -1,11 +1,12 @@
 /** The stages of the job from top to bottom, in the order the work is done, each with a mark of what is open in it. */
 import Box from '@mui/material/Box';
 import ButtonBase from '@mui/material/ButtonBase';
-import type { ReactElement } from 'react';
+import type { ReactElement, ReactNode } from 'react';
 import type { Severity } from '../../core/api.ts';
 import { SeverityMark } from '../controls/SeverityMark.tsx';
 import { type Stage, stages, useSession } from '../state/session.ts';
 import { useOpenCounts } from './openCounts.ts';
+import type { Room } from './useRoom.ts';
 
 export const stageWords: Readonly<Record<Stage, { readonly name: string; readonly purpose: string }>> = {
   site: { name: 'Site', purpose: 'where, how cold, which rule book' },
@@ -21,34 +22,44 @@ export interface OpenCount {
   readonly words: string;
 }
 
-export function Spine(): ReactElement {
+export function Spine({ room, children }: { readonly room: Room; readonly children?: ReactNode }): ReactElement {
   const counts = useOpenCounts();
+  const lies = room === 'tight';
   return (
     <Box
       component="nav"
       aria-label="Stages of the job"
       sx={{
         gridArea: 'spine',
-        borderRight: '1px solid var(--hair)',
-        width: { xs: '7rem', lg: '10.5rem' },
         overflow: 'auto',
+        ...(lies
+          ? { display: 'flex', alignItems: 'center', borderBottom: '1px solid var(--hair)' }
+          : { borderRight: '1px solid var(--hair)', width: room === 'wide' ? '10.5rem' : '7rem' }),
       }}
     >
-      <Box component="ol" sx={{ listStyle: 'none', m: 0, p: 0, pt: 1 }}>
+      <Box component="ol" sx={{ listStyle: 'none', m: 0, p: 0, ...(lies ? { display: 'flex' } : { pt: 1 }) }}>
         {stages.map((stage) => (
           <li key={stage}>
-            <StageButton stage={stage} open={counts[stage]} />
+            <StageButton stage={stage} open={counts[stage]} room={room} />
           </li>
         ))}
       </Box>
+      {children}
     </Box>
   );
 }
 
-function StageButton({ stage, open }: { readonly stage: Stage; readonly open: OpenCount | null }): ReactElement {
+interface StageButtonProps {
+  readonly stage: Stage;
+  readonly open: OpenCount | null;
+  readonly room: Room;
+}
+
+function StageButton({ stage, open, room }: StageButtonProps): ReactElement {
   const isHere = useSession((session) => session.stage === stage);
   const goStage = useSession((session) => session.goStage);
   const { name, purpose } = stageWords[stage];
+  const edge = room === 'tight' ? 'borderBottom' : 'borderLeft';
   return (
     <ButtonBase
       onClick={() => goStage(stage)}
@@ -58,9 +69,9 @@ function StageButton({ stage, open }: { readonly stage: Stage; readonly open: Op
         width: '100%',
         textAlign: 'left',
         px: 1.5,
-        py: 1,
+        py: room === 'tight' ? 0.5 : 1,
         minHeight: 44,
-        borderLeft: isHere ? '4px solid var(--copper)' : '4px solid transparent',
+        [edge]: isHere ? '4px solid var(--copper)' : '4px solid transparent',
         bgcolor: isHere ? 'var(--sheet)' : 'transparent',
         '&:hover': { bgcolor: 'var(--lit)' },
         '&.Mui-focusVisible': { outline: '2px solid var(--volt)', outlineOffset: -2 },
@@ -69,12 +80,11 @@ function StageButton({ stage, open }: { readonly stage: Stage; readonly open: Op
       <Box component="span" sx={{ display: 'block', fontWeight: 600, fontSize: '1rem' }}>
         {name}
       </Box>
-      <Box
-        component="span"
-        sx={{ display: { xs: 'none', lg: 'block' }, color: 'var(--soft)', fontSize: '0.8125rem', lineHeight: 1.3 }}
-      >
-        {purpose}
-      </Box>
+      {room === 'wide' && (
+        <Box component="span" sx={{ display: 'block', color: 'var(--soft)', fontSize: '0.8125rem', lineHeight: 1.3 }}>
+          {purpose}
+        </Box>
+      )}
       {open !== null && (
         <Box component="span" sx={{ display: 'flex', alignItems: 'center', gap: 0.5, mt: 0.25, fontSize: '0.8125rem' }}>
           <SeverityMark severity={open.severity} bare />

@@ -17,10 +17,12 @@ import { KeptMark } from './KeptMark.tsx';
 import { leaveJob } from './openings.ts';
 import { PreferencesDialog } from './PreferencesDialog.tsx';
 import { downloadJob, saveJob } from './saving.ts';
+import type { Room } from './useRoom.ts';
 
 const PRACTICES: readonly Practice[] = ['iec-land', 'us-land', 'iso-marine', 'us-marine'];
 
-export function TopBar(): ReactElement {
+export function TopBar({ room }: { readonly room: Room }): ReactElement {
+  const isWide = room === 'wide';
   const [open, setOpen] = useState<'history' | 'preferences' | null>(null);
   return (
     <Box
@@ -41,9 +43,9 @@ export function TopBar(): ReactElement {
       <Title />
       <KeptMark />
       <Box sx={{ flex: '1 1 0' }} />
-      <CaseChoice />
-      <PracticeChoice />
-      <UnitChoice />
+      <CaseChoice width={isWide ? '12rem' : '10rem'} />
+      <PracticeChoice width={isWide ? '12.5rem' : '8rem'} />
+      {isWide && <UnitChoice />}
       <UndoRedo />
       <Act
         word="Find"
@@ -125,7 +127,7 @@ function Title(): ReactElement {
         px: 0.5,
         py: 0.25,
         width: '16rem',
-        minWidth: '8rem',
+        minWidth: '6rem',
         flex: '0 10 20rem',
         textOverflow: 'ellipsis',
         '&:hover': { borderColor: 'var(--edge)' },
@@ -134,7 +136,7 @@ function Title(): ReactElement {
   );
 }
 
-function CaseChoice(): ReactElement {
+function CaseChoice({ width }: { readonly width: string }): ReactElement {
   const cases = useOpenJob((job) => job.job.cases);
   const caseId = useOpenJob((job) => job.caseId);
   const chooseCase = useOpenJob((job) => job.chooseCase);
@@ -142,7 +144,7 @@ function CaseChoice(): ReactElement {
     ? cases
     : [...cases, { id: 'at-rest', label: 'At rest, all off' }];
   return (
-    <Choice label="Operating case" width="12rem" value={caseId} onChange={chooseCase}>
+    <Choice label="Operating case" width={width} value={caseId} onChange={chooseCase}>
       {options.map(({ id, label }) => (
         <MenuItem key={id} value={id}>
           {label ?? (id === 'as-drawn' ? 'As drawn' : id)}
@@ -152,12 +154,12 @@ function CaseChoice(): ReactElement {
   );
 }
 
-function PracticeChoice(): ReactElement {
+function PracticeChoice({ width }: { readonly width: string }): ReactElement {
   const practice = useOpenJob((job) => (job.job.practiceAssumed === true ? '' : job.job.practice));
   return (
     <Choice
       label="Rule book"
-      width="12.5rem"
+      width={width}
       value={practice}
       onChange={(value) =>
         void useOpenJob.getState().edit(setTop({ path: 'practice', value: value === '' ? undefined : value }))

@@ -2,9 +2,10 @@
 import { type Draft, draftText } from '../../core/api.ts';
 import type { HostAnswer, HostChannel, KeptJob, Trouble } from '../../core/host.ts';
 import { closeJob, hasUnkept, openJob } from '../state/openJob.ts';
-import { useSession } from '../state/session.ts';
+import { stages, useSession } from '../state/session.ts';
 
 const REMEMBERED = 'ohmwright.open-job';
+const STAGE = 'ohmwright.stage';
 
 /** Larger files are no jobs; the host would refuse them too. */
 const LARGEST_FILE_BYTES = 32 * 1024 * 1024;
@@ -27,14 +28,18 @@ function refuse(trouble: Trouble): false {
   return false;
 }
 
+/** Opens a job of the store at its wiring. */
 export async function openKept(channel: HostChannel, job: string): Promise<boolean> {
-  return enter(channel, await channel.call('jobs.open', { job }));
+  return atWiring(await enter(channel, await channel.call('jobs.open', { job })));
+}
+
+function atWiring(entered: boolean): boolean {
+  if (entered) useSession.getState().goStage('wiring');
+  return entered;
 }
 
 export async function startJob(channel: HostChannel, text: string, label: string): Promise<boolean> {
-  const entered = await enter(channel, await channel.call('jobs.create', { text, label }));
-  if (entered) useSession.getState().goStage('wiring');
-  return entered;
+  return atWiring(await enter(channel, await channel.call('jobs.create', { text, label })));
 }
 
 export function startDraft(channel: HostChannel, draft: Draft, label: string): Promise<boolean> {
@@ -48,7 +53,7 @@ export async function openPicked(channel: HostChannel, file: File): Promise<bool
   }
   const text = await file.text();
   const answer = await channel.call('jobs.create', { text, label: `Read from ${file.name}`, file: file.name });
-  if (answer.ok || answer.trouble.issues === undefined) return enter(channel, answer);
+  if (answer.ok || answer.trouble.issues === undefined) return atWiring(await enter(channel, answer));
   const message = `${file.name} cannot be read as a job; the file is as it was.`;
   return refuse({ ...answer.trouble, message });
 }
@@ -56,7 +61,10 @@ export async function openPicked(channel: HostChannel, file: File): Promise<bool
 /** After a reload of the page. */
 export async function rememberedJob(channel: HostChannel): Promise<void> {
   const job = sessionStorage.getItem(REMEMBERED);
-  if (job !== null) await openKept(channel, job);
+  if (job !== null) await enter(channel, await channel.call('jobs.open', { job }));
+  const stage = stages.find((one) => one === sessionStorage.getItem(STAGE));
+  if (stage !== undefined) useSession.getState().goStage(stage);
+  useSession.subscribe((session) => sessionStorage.setItem(STAGE, session.stage));
 }
 
 /** Back to the list of jobs. Changes on their way are waited for by the person, never dropped: the mark in the top bar tells. */

@@ -1,7 +1,7 @@
 /** The currents that meet at a junction, and that what flows in flows out. */
 import { styled } from '@mui/material/styles';
 import type { ReactElement } from 'react';
-import { type JunctionBalance, type JunctionId, junctionBalance } from '../../core/api.ts';
+import { figureText, type JunctionBalance, type JunctionId, junctionBalance } from '../../core/api.ts';
 import { Figure } from '../controls/Figure.tsx';
 import type { ChosenCase } from './chosenCase.ts';
 import { PartLink } from './parts.tsx';
@@ -51,7 +51,7 @@ export function BalanceTable({ balance }: { readonly balance: JunctionBalance })
                 <PartLink id={part} />
                 {segment === undefined ? '' : ` piece ${String(segment + 1)}`}
               </th>
-              <td>{currentA === 0 ? '' : currentA > 0 ? 'in' : 'out'}</td>
+              <td>{flowWord(currentA)}</td>
               <td>
                 <Figure value={currentA} unit="A" prefix={false} tone="copper" />
               </td>
@@ -78,6 +78,11 @@ export function BalanceTable({ balance }: { readonly balance: JunctionBalance })
 }
 
 const Small = styled('p')({ margin: '0.125rem 0', color: 'var(--soft)', fontSize: '0.8125rem' });
+
+function flowWord(currentA: number): string {
+  if (figureText({ value: currentA, unit: 'A' }).number === '0') return '';
+  return currentA > 0 ? 'in' : 'out';
+}
 
 /** Three decimals, as in the balance line; never a minus nought. */
 function sumText(sumA: number): string {

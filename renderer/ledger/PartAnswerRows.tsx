@@ -1,6 +1,6 @@
 /** What a part does in the chosen case, with directions in words. */
 import type { ReactElement, ReactNode } from 'react';
-import { fahrenheitText, type Part, type PartAnswer } from '../../core/api.ts';
+import { fahrenheitText, figureText, type Part, type PartAnswer } from '../../core/api.ts';
 import { Figure } from '../controls/Figure.tsx';
 import { stateWord } from '../controls/words.ts';
 import type { ChosenCase } from './chosenCase.ts';
@@ -84,7 +84,7 @@ function isTwoEnded(part: Part): part is Extract<Part, { readonly to: unknown }>
 function CurrentWords({ part, answer }: { readonly part: Part; readonly answer: PartAnswer }): ReactElement {
   const { currentA } = answer;
   const figure = <Figure value={currentA === null ? null : Math.abs(currentA)} unit="A" tone="copper" />;
-  if (currentA === null || currentA === 0) return figure;
+  if (isNothing(currentA)) return figure;
   if (part.kind === 'pair') {
     const plus = answer.id.endsWith('.plus');
     const [from, to] = plus ? [part.from.plus, part.to.plus] : [part.to.minus, part.from.minus];
@@ -98,6 +98,11 @@ function CurrentWords({ part, answer }: { readonly part: Part; readonly answer: 
       {figure} {poleWords(part, currentA)}
     </>
   );
+}
+
+/** Nothing flows, or nothing that has a direction worth telling. */
+function isNothing(currentA: number | null): currentA is null {
+  return currentA === null || figureText({ value: currentA, unit: 'A' }).number === '0';
 }
 
 function poleWords(part: Part, currentA: number): string {
@@ -141,7 +146,7 @@ function SegmentWords({
   readonly to: Parameters<typeof JunctionLink>[0]['id'] | undefined;
 }): ReactElement {
   const figure = <Figure value={currentA === null ? null : Math.abs(currentA)} unit="A" tone="copper" />;
-  if (currentA === null || from === undefined || to === undefined) return figure;
+  if (isNothing(currentA) || from === undefined || to === undefined) return figure;
   return <Along figure={figure} from={currentA < 0 ? to : from} to={currentA < 0 ? from : to} />;
 }
 

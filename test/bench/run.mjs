@@ -53,14 +53,17 @@ async function bundled(file) {
     root,
     configFile: false,
     logLevel: 'error',
-    ssr: { noExternal: [/^(?!mathjs|ml-matrix|node:)/] },
+    ssr: { noExternal: [/^(?!mathjs|ml-matrix|playwright-core|@axe-core|node:)/] },
     build: {
       ssr: join(here, file),
       outDir: folder,
       emptyOutDir: false,
       minify: false,
       target: 'es2022',
-      rollupOptions: { output: { entryFileNames: `${name}.mjs`, format: 'es' }, external: ['mathjs', 'ml-matrix'] },
+      rollupOptions: {
+        output: { entryFileNames: `${name}.mjs`, format: 'es' },
+        external: ['mathjs', 'ml-matrix', 'playwright-core', '@axe-core/playwright'],
+      },
     },
   });
   return join(folder, `${name}.mjs`);

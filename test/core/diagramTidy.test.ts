@@ -85,8 +85,10 @@ describe.each(examples)('the example $name', ({ text }) => {
   test('keeps the places that it stores', () => {
     const positions = positionsOf(example);
     expect(missing(example, positions)).toEqual([]);
-    for (const { id, at } of example.parts) if (at !== undefined) expect(positions.parts.get(id)).toEqual(at);
-    for (const [id, { at }] of example.junctions) if (at !== undefined) expect(positions.junctions.get(id)).toEqual(at);
+    const stored = new Map([...example.parts].flatMap(({ id, at }) => (at === undefined ? [] : [[id, at]])));
+    expect(new Map([...positions.parts].filter(([id]) => stored.has(id)))).toEqual(stored);
+    const noted = new Map([...example.junctions].flatMap(([id, { at }]) => (at === undefined ? [] : [[id, at]])));
+    expect(new Map([...positions.junctions].filter(([id]) => noted.has(id)))).toEqual(noted);
   });
 });
 

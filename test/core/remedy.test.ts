@@ -122,6 +122,18 @@ const troubles: Readonly<Record<string, readonly [job: RawJob, first: RegExp]>> 
     oneCircuit({ more: [{ id: 'SPAN', kind: 'cable', from: 'P', to: 'N', lengthM: 1, size: '35 mm2' }] }),
     /^Removed SPAN$/,
   ],
+  'share-uneven': [
+    {
+      parts: [
+        battery('B1', { plus: 'B1+' }),
+        battery('B2', { plus: 'B2+' }),
+        { id: 'C1', kind: 'cable', from: 'B1+', to: 'P', lengthM: 1, size: '35 mm2' },
+        { id: 'C2', kind: 'cable', from: 'B2+', to: 'P', lengthM: 4, size: '35 mm2' },
+        { id: 'L1', kind: 'load', plus: 'P', minus: 'N', currentA: 60 },
+      ],
+    },
+    /^All leads of the strings alike: /,
+  ],
   'no-fuse-on-source': [
     {
       parts: [

@@ -163,7 +163,7 @@ function remount(options: string): void {
 }
 
 afterAll(() => {
-  if (mayMount) spawnSync('umount', [disk.folder]);
+  if (mayMount) spawnSync('umount', ['--lazy', disk.folder]); // a host that a failed test left may still hold it
   disk.remove();
 });
 

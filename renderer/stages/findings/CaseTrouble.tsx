@@ -51,7 +51,7 @@ function ShowCase({ point }: { readonly point: OperatingPoint }): ReactElement {
   };
   return (
     <Button onClick={show} sx={{ marginLeft: '0.5rem', textDecoration: 'underline' }}>
-      Show in the wiring<span className="only-read">: case {point.case}</span>
+      Show in the wiring<span className="only-read"> case {point.case}</span>
     </Button>
   );
 }

@@ -163,7 +163,7 @@ function ShowInWiring({ finding }: { readonly finding: Finding }): ReactElement 
   return (
     <Button onClick={show} sx={SHOW}>
       Show in the wiring
-      <span className="only-read">: {finding.parts.join(', ')}</span>
+      <span className="only-read"> {finding.parts.join(', ')}</span>
     </Button>
   );
 }
