@@ -7,7 +7,5 @@ import { practices } from './practices/practices.ts';
 
 export const tables: Tables = { conductors, chemistry: chemistryTables, devices, practices };
 
-export type { Example } from './examples/index.ts';
 export { examples } from './examples/index.ts';
-export type { StarterPattern } from './starters.ts';
 export { starterPatterns, starters } from './starters.ts';

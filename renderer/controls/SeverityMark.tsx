@@ -43,17 +43,6 @@ export function SeverityMark({ severity, count, bare = false }: SeverityMarkProp
   return <MarkLine tone={`var(--${severity})`} shape={SHAPES[severity]} words={words} bare={bare} />;
 }
 
-/** A check that was made and found nothing. */
-export function PassedMark({ count }: { readonly count?: number }): ReactElement {
-  return (
-    <MarkLine
-      tone="var(--ink)"
-      shape={<path d="M2.5 8.5l3.6 3.6L13.5 4.5" fill="none" stroke="currentColor" strokeWidth="1.8" />}
-      words={count === undefined ? 'Passed' : `${String(count)} passed`}
-    />
-  );
-}
-
 /** A check that could not be made: an empty box, dashed. */
 export function NotDoneMark({ count }: { readonly count?: number }): ReactElement {
   return (

@@ -1,5 +1,5 @@
 /** Plain words for what the job file calls by short names: kinds, fields, choices, states. One thing has one name on every screen. */
-import { fieldWords, KIND_WORDS, type Origin, type PartKind, type Practice, type Status } from '../../core/api.ts';
+import { fieldWords, KIND_WORDS, type Origin, type PartKind, type Status } from '../../core/api.ts';
 
 /** Names of fields that read better on a screen than the report's running words; else the report's are used. */
 const FIELDS: Readonly<Record<string, string>> = {
@@ -77,14 +77,12 @@ const CHOICES: Readonly<Record<string, Readonly<Record<string, string>>>> = {
   type: { mppt: 'MPPT, tracking', pwm: 'PWM, switching' },
   dropClass: { critical: 'Critical', ordinary: 'Ordinary' },
   supply: { dc: 'DC', ac: 'AC, through the inverter' },
-};
-
-/** The rule books, by whose tables and rules a job is judged. */
-export const practiceWords: Readonly<Record<Practice, { readonly short: string; readonly long: string }>> = {
-  'us-land': { short: 'US land', long: 'US, on land' },
-  'us-marine': { short: 'US marine', long: 'US, aboard a boat' },
-  'iso-marine': { short: 'ISO marine', long: 'ISO, aboard a boat' },
-  'iec-land': { short: 'IEC land', long: 'IEC, on land' },
+  practice: {
+    'us-land': 'US, on land',
+    'us-marine': 'US, aboard a boat',
+    'iso-marine': 'ISO, aboard a boat',
+    'iec-land': 'IEC, on land',
+  },
 };
 
 export const ORIGIN_MEANING: Readonly<Record<Origin, { readonly word: string; readonly meaning: string }>> = {
@@ -97,7 +95,7 @@ export const ORIGIN_MEANING: Readonly<Record<Origin, { readonly word: string; re
 export const STATUS_MEANING: Readonly<Record<Status, string>> = {
   published: 'published',
   'common-practice': 'common practice, no source',
-  'from-memory': 'from memory: look it up before you rely on it',
+  'from-memory': 'from memory: confirm against the text',
 };
 
 /** `battery string`, `out-and-back run`. */
@@ -118,7 +116,6 @@ export function fieldHint(field: string): string | undefined {
 
 /** A choice of a field in plain words; the word of the job file where there are none. */
 export function choiceWord(field: string, choice: string): string {
-  if (field === 'practice' && Object.hasOwn(practiceWords, choice)) return practiceWords[choice as Practice].long;
   return CHOICES[field]?.[choice] ?? choice;
 }
 

@@ -3,10 +3,10 @@ import type { NodeProps } from '@xyflow/react';
 import { memo, type ReactElement } from 'react';
 import type { JunctionId } from '../../core/api.ts';
 import { SeverityMark } from '../controls/SeverityMark.tsx';
-import { useOpenJob } from '../state/openJob.ts';
 import type { PartFlowNode } from './flowNodes.ts';
 import { useLive } from './live.ts';
 import { classesOf } from './PartNode.tsx';
+import { useIsLit } from './useLit.ts';
 
 export const BarNode = memo(function BarNode({
   data: { placed },
@@ -16,7 +16,7 @@ export const BarNode = memo(function BarNode({
 }: NodeProps<PartFlowNode>): ReactElement {
   const { part, drawn, rating } = placed;
   const live = useLive((now) => now.parts.get(part.id));
-  const isLit = useOpenJob(({ lit }) => lit.includes(part.id));
+  const isLit = useIsLit(part.id);
   const volts = useLive(
     (now) => (part.kind === 'busbar' ? now.volts.get(part.junctions[0] as JunctionId) : undefined) ?? '',
   );

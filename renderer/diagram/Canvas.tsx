@@ -37,6 +37,7 @@ import { openGroundMenu, openMenuOf } from './openMenus.ts';
 import { PartNode } from './PartNode.tsx';
 import { type Drawing, useDrawing } from './placedParts.ts';
 import { useDiagramKeys } from './useDiagramKeys.ts';
+import { useShowLit } from './useLit.ts';
 import { useLongPress } from './useLongPress.ts';
 import { FIT_WHOLE, useView } from './view.ts';
 import { Wires } from './Wires.tsx';
@@ -55,6 +56,7 @@ export function Canvas(): ReactElement {
   const pressed = useLongPress();
   useEffect(followAnswers, []);
   const onTouched = useFirstFit(nodes.length);
+  useShowLit(drawing.positions);
 
   const onConnect = useCallback<OnConnect>(() => undefined, []);
   const onConnectEnd = useCallback(
@@ -130,7 +132,7 @@ function DrawingFrame({ children }: { readonly children: ReactElement }): ReactE
   const { volts, amps, labels } = useView();
   const isOld = useLive((now) => now.isOld);
   const zoom = useStore((flow) => flow.transform[2]);
-  const detail = zoom >= 0.75 ? 'near' : zoom >= 0.45 ? 'mid' : 'far';
+  const detail = zoom >= 0.75 ? 'near' : zoom >= 0.45 ? 'mid' : zoom >= 0.24 ? 'far' : 'far tiny';
   // Words never get smaller on the screen than this share of their usual size.
   const k = Math.round(Math.min(2.6, Math.max(0.8, 0.95 / zoom)) * 20) / 20;
   const s = Math.round(Math.min(1.9, Math.max(1, 0.7 / zoom)) * 20) / 20;

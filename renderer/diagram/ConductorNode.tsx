@@ -3,10 +3,10 @@ import type { NodeProps } from '@xyflow/react';
 import { memo, type ReactElement } from 'react';
 import { figurePlace } from '../../core/api.ts';
 import { SeverityMark } from '../controls/SeverityMark.tsx';
-import { useOpenJob } from '../state/openJob.ts';
 import type { PartFlowNode } from './flowNodes.ts';
 import { useLive } from './live.ts';
 import { classesOf } from './PartNode.tsx';
+import { useIsLit } from './useLit.ts';
 
 /** What the volts of its first junction need, and the mean width of a letter, in units of the drawing. */
 const ROOM_FOR_VOLTS = 70;
@@ -18,7 +18,7 @@ export const ConductorNode = memo(function ConductorNode({
 }: NodeProps<PartFlowNode>): ReactElement {
   const { part, drawn, rating } = placed;
   const live = useLive((now) => now.parts.get(part.id));
-  const isLit = useOpenJob(({ lit }) => lit.includes(part.id));
+  const isLit = useIsLit(part.id);
   // Where the line is too short for both, the size gives way: the ledger has it.
   const [wire] = drawn.wires;
   const room = wire === undefined ? 0 : figurePlace(wire).length - ROOM_FOR_VOLTS;

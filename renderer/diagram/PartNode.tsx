@@ -3,11 +3,11 @@ import { Handle, type NodeProps, Position } from '@xyflow/react';
 import { memo, type ReactElement } from 'react';
 import { partSymbol } from '../../core/api.ts';
 import { SeverityMark } from '../controls/SeverityMark.tsx';
-import { useOpenJob } from '../state/openJob.ts';
 import type { PartFlowNode } from './flowNodes.ts';
 import { type LivePart, useLive } from './live.ts';
 import type { PlacedPart } from './placedParts.ts';
 import { Shapes } from './Shapes.tsx';
+import { useIsLit } from './useLit.ts';
 
 export const PartNode = memo(function PartNode({
   data: { placed },
@@ -17,7 +17,7 @@ export const PartNode = memo(function PartNode({
 }: NodeProps<PartFlowNode>): ReactElement {
   const { part, drawn } = placed;
   const live = useLive((now) => now.parts.get(part.id));
-  const isLit = useOpenJob(({ lit }) => lit.includes(part.id));
+  const isLit = useIsLit(part.id);
   const isDevice = 'plus' in part;
   const isClosed = live === undefined ? !('state' in part && part.state === 'open') : !live.isOpen;
   return (

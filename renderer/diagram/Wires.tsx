@@ -7,6 +7,7 @@ import { type DrawnWire, figurePlace, isConductor, lineWeight } from '../../core
 import { useOpenJob } from '../state/openJob.ts';
 import { type LivePart, useLive } from './live.ts';
 import type { PlacedPart } from './placedParts.ts';
+import { useIsLit } from './useLit.ts';
 import { useView } from './view.ts';
 
 export function Wires({ parts }: { readonly parts: readonly PlacedPart[] }): ReactElement {
@@ -23,7 +24,7 @@ const PartWires = memo(function PartWires({ placed }: { readonly placed: PlacedP
   const { part, drawn } = placed;
   const live = useLive((now) => now.parts.get(part.id));
   const largestA = useLive((now) => now.largestA);
-  const isLit = useOpenJob(({ lit }) => lit.includes(part.id));
+  const isLit = useIsLit(part.id);
   const isChosen = useOpenJob(({ selection }) => selection.parts.includes(part.id));
   const isTold = isConductor(part) || part.kind === 'joint';
   const classes = ['wire-group', live?.isDead === true ? 'dead' : '', isLit ? 'lit' : '', isChosen ? 'chosen' : ''];

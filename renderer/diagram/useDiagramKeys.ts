@@ -80,8 +80,11 @@ function plainKey(event: KeyboardEvent<HTMLElement>, { zoomIn, zoomOut, fitView 
     case 'Delete':
     case 'Backspace':
       return () => {
+        const next = focusedNode(event)?.nextElementSibling;
         takeFocused(event);
         removeSelected();
+        // The keyboard goes on from where it was.
+        if (next instanceof HTMLElement) next.focus();
       };
     case 'Escape':
       return () => {

@@ -30,9 +30,9 @@ export function TopBar({ room }: { readonly room: Room }): ReactElement {
       sx={{
         gridArea: 'top',
         display: 'flex',
-        flexWrap: 'wrap',
+        flexWrap: room === 'tight' ? 'wrap' : 'nowrap',
         alignItems: 'center',
-        columnGap: 1,
+        columnGap: isWide ? 1 : 0.5,
         rowGap: 0.5,
         px: 1.5,
         py: 0.75,

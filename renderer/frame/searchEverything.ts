@@ -2,6 +2,7 @@
 import type { Finding, Part } from '../../core/api.ts';
 import { junctionsOf } from '../../core/api.ts';
 import { kindWord } from '../controls/words.ts';
+import { goToFinding } from '../stages/findings/findingsView.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { stages, useSession } from '../state/session.ts';
 import { leaveJob } from './openings.ts';
@@ -62,10 +63,7 @@ function findingHit(finding: Finding): Hit {
   return {
     name: finding.message,
     kind: finding.severity,
-    go: () => {
-      useOpenJob.getState().light(finding.parts);
-      useSession.getState().goStage('findings');
-    },
+    go: () => goToFinding(finding),
   };
 }
 

@@ -5,14 +5,13 @@ import { SmallButton } from '../controls/AskRow.tsx';
 import { BasisText } from '../controls/BasisText.tsx';
 import { Folded } from '../controls/Folded.tsx';
 import { NotDoneMark, SeverityMark } from '../controls/SeverityMark.tsx';
+import { goToFindingsOf } from '../stages/findings/findingsView.ts';
 import { useOpenJob } from '../state/openJob.ts';
-import { useSession } from '../state/session.ts';
 import { caseWords } from './chosenCase.ts';
 import { Buttons, Section, SectionTitle } from './parts.tsx';
 
 export function FindingsHere({ part }: { readonly part: Part }): ReactElement | null {
   const report = useOpenJob((open) => open.answers?.report);
-  const goStage = useSession((session) => session.goStage);
   const names = (parts: readonly string[]): boolean =>
     parts.some((id) => id === part.id || id === `${part.id}.plus` || id === `${part.id}.minus`);
   const findings = (report?.findings ?? []).filter(({ parts }) => names(parts));
@@ -27,7 +26,7 @@ export function FindingsHere({ part }: { readonly part: Part }): ReactElement | 
       ))}
       {notDone.length > 0 && <NotDoneList rows={notDone} />}
       <Buttons>
-        <SmallButton type="button" onClick={() => goStage('findings')}>
+        <SmallButton type="button" onClick={() => goToFindingsOf(part.id)}>
           To the findings
         </SmallButton>
       </Buttons>

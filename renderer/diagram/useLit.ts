@@ -1,0 +1,42 @@
+/** What a finding or a walk points at, on the drawing: lit, and brought into view. */
+import { useReactFlow, useStoreApi } from '@xyflow/react';
+import { useEffect } from 'react';
+import type { PartId, Positions } from '../../core/api.ts';
+import { useOpenJob } from '../state/openJob.ts';
+
+/** A run is lit by either of its conductors. */
+export function useIsLit(part: PartId): boolean {
+  return useOpenJob(({ lit }) => lit.some((id) => ownerOf(id, part)));
+}
+function ownerOf(lit: string, part: string): boolean {
+  return lit === part || lit === `${part}.plus` || lit === `${part}.minus`;
+}
+
+/** Room that a part needs round its middle to be seen with its words, px. */
+const MARGIN_PX = 60;
+/** Smaller than this, words cannot be read. */
+const LEAST_ZOOM = 0.5;
+
+/** Moves the view to the first part that is lit, or selected elsewhere, where it lies outside what is seen. */
+export function useShowLit(positions: Positions): void {
+  const lit = useOpenJob((job) => job.lit);
+  const chosen = useOpenJob(({ selection }) => (selection.parts.length === 1 ? selection.parts[0] : undefined));
+  const { setCenter } = useReactFlow();
+  const store = useStoreApi();
+  const shown = lit[0] ?? chosen;
+  useEffect(() => {
+    const id = shown?.replace(/\.(?:plus|minus)$/, '') as PartId | undefined;
+    const at = id === undefined ? undefined : positions.parts.get(id);
+    if (at === undefined) return;
+    const {
+      transform: [x, y, zoom],
+      width,
+      height,
+    } = store.getState();
+    const [left, top] = [at.x * zoom + x, at.y * zoom + y];
+    const isSeen = left > MARGIN_PX && left < width - MARGIN_PX && top > MARGIN_PX / 2 && top < height - MARGIN_PX / 2;
+    if (!isSeen) void setCenter(at.x, at.y, { zoom: Math.max(zoom, LEAST_ZOOM) });
+    // Moving a part by hand must not move the view: only another part shown does.
+    // eslint-disable-next-line react-hooks/exhaustive-deps
+  }, [shown]);
+}
