@@ -66,7 +66,7 @@ export { heatingLaw, temperatureAt } from './conductor/temperature.ts';
 export type { DrawnPart, DrawnWire, FigurePlace, Surroundings, WireCurrent } from './diagram/drawPart.ts';
 export { drawPart, entriesOf, figurePlace, freeSide, lineWeight } from './diagram/drawPart.ts';
 export { CHEMISTRY_WORDS, KIND_WORDS } from './diagram/kindWords.ts';
-export { minusSide } from './diagram/minusSide.ts';
+export { minusSide, returnOf } from './diagram/minusSide.ts';
 export type { Moved } from './diagram/moveWith.ts';
 export { moveBy } from './diagram/moveWith.ts';
 export { kindSymbol, partSymbol } from './diagram/partSymbol.ts';
@@ -123,7 +123,7 @@ export type { NoWalk, VoltWalk, WalkChoice, WalkSide, WalkStep, WalkStepKind, Wa
 export type { WalkChoicesRequest } from './explain/walkChoices.ts';
 export { walkChoices } from './explain/walkChoices.ts';
 export type { LossGroup, WalkLoss } from './explain/walkLosses.ts';
-export { walkLosses } from './explain/walkLosses.ts';
+export { walkLosses, walkRiseV } from './explain/walkLosses.ts';
 export type { FigureOrigin, PartRequest, WorkingLine, WorkingResult } from './explain/workingLine.ts';
 export type { Bounds, Field, Fields, Rule } from './job/field.ts';
 export type { Issue, IssueCode, Result } from './job/issue.ts';

@@ -58,3 +58,10 @@ function neighbours(parts: readonly Part[]): ReadonlyMap<JunctionId, readonly Ju
   }
   return near;
 }
+
+/** The minus that belongs to a plus, by the first source, load or run that has both: where a run of two conductors would return. */
+export function returnOf(job: CheckedJob, plus: JunctionId): JunctionId | undefined {
+  const devices = job.parts.filter((part) => 'plus' in part);
+  const runs = job.parts.filter((part) => !('plus' in part));
+  return [...devices, ...runs].flatMap(polesOf).find((poles) => poles.plus === plus)?.minus;
+}

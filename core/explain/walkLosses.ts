@@ -11,6 +11,11 @@ export interface WalkLoss {
   readonly lostV: number;
 }
 
+/** What the sources of the walk give together, at rest volts: the sum of their rises. */
+export function walkRiseV({ steps }: VoltWalk): number {
+  return steps.reduce((sum, { kind, changeV }) => (kind === 'source' ? sum + changeV : sum), 0);
+}
+
 /** Losses of the wiring and inside strings, largest first; groups that lose nothing are left out. */
 export function walkLosses(walk: VoltWalk, job: CheckedJob): readonly WalkLoss[] {
   const kindOf = new Map<PartId, PartKind>(job.parts.map(({ id, kind }) => [id, kind]));

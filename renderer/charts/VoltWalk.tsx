@@ -17,6 +17,7 @@ import {
   type WalkStep,
   walkChoices,
   walkLosses,
+  walkRiseV,
 } from '../../core/api.ts';
 import { useView } from '../diagram/view.ts';
 import { useOpenJob } from '../state/openJob.ts';
@@ -118,7 +119,7 @@ function answerOf(walk: Walk, job: CheckedJob): string {
         `${group} ${index === 0 ? `${group === 'battery' ? 'takes' : 'take'} ` : ''}${volts(lostV, 2)}`,
     );
   const rest = losses.length === 0 ? 'nothing worth telling is lost' : losses.join(', ');
-  return `Of ${volts(walk.emfV)} at ${walk.source}, ${nameOf(job, walk.load)} gets ${volts(walk.totals.loadV)}; ${rest}.`;
+  return `Of ${volts(walkRiseV(walk))} at ${walk.source}${walk.totals.otherSourcesV === 0 ? '' : ' and what is in series'}, ${nameOf(job, walk.load)} gets ${volts(walk.totals.loadV)}; ${rest}.`;
 }
 
 function useWidth(): readonly [React.RefObject<HTMLDivElement | null>, number] {
@@ -138,7 +139,7 @@ function Chart({ walk }: { readonly walk: Walk }): ReactElement {
   const [ref, width] = useWidth();
   const shape = useMemo(
     () =>
-      width < 120 ? undefined : walkShape(walk, { left: 64, right: width - 8, top: 14, bottom: HEIGHT - 14, gap: 22 }),
+      width < 120 ? undefined : walkShape(walk, { left: 64, right: width - 8, top: 14, bottom: HEIGHT - 14, gap: 26 }),
     [walk, width],
   );
   return (
@@ -184,26 +185,34 @@ function Steps({ shape, width }: { readonly shape: WalkShape; readonly width: nu
   );
 }
 
-/** Both ends of both bands, and that the scale is broken between them. */
-function Axis({ shape: { high, low }, width }: { readonly shape: WalkShape; readonly width: number }): ReactElement {
-  const middle = (high.bottom + low.top) / 2;
-  const marks = [
-    { y: high.top, volts: high.highV },
-    { y: high.bottom, volts: high.lowV },
-    { y: low.top, volts: low.highV },
-    { y: low.bottom, volts: low.lowV },
-  ];
+/** The ends of each band, and that the scale is broken between them. */
+function Axis({ shape: { bands }, width }: { readonly shape: WalkShape; readonly width: number }): ReactElement {
   return (
     <g className="axis" aria-hidden>
-      {marks.map(({ y, volts: value }, index) => (
-        <text key={String(index)} x="56" y={y + 4} textAnchor="end">
-          {plainVolts(value)}
-        </text>
-      ))}
-      <path d={`M62 ${String(middle)}H${String(width)}`} className="break" />
-      <text x="56" y={middle + 4} textAnchor="end" className="quiet">
-        break
-      </text>
+      {bands.map(({ top, bottom, highV, lowV }, index) => {
+        const next = bands[index + 1];
+        const isTall = bottom - top >= LINE;
+        return (
+          <g key={String(highV)}>
+            <text x="56" y={(isTall ? top : (top + bottom) / 2) + 4} textAnchor="end">
+              {plainVolts(highV)}
+            </text>
+            {isTall && (
+              <text x="56" y={bottom + 4} textAnchor="end">
+                {plainVolts(lowV)}
+              </text>
+            )}
+            {next !== undefined && (
+              <>
+                <path d={`M62 ${String((bottom + next.top) / 2)}H${String(width)}`} className="break" />
+                <text x="56" y={(bottom + next.top) / 2 + 4} textAnchor="end" className="quiet">
+                  break
+                </text>
+              </>
+            )}
+          </g>
+        );
+      })}
     </g>
   );
 }

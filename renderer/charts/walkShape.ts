@@ -1,4 +1,4 @@
-/** Where the steps of a volt walk stand in the chart: potentials in two bands of one scale, the source and the load across them. */
+/** Where the steps of a volt walk stand in the chart: potentials in bands of one scale, sources and the load across the breaks. */
 import type { VoltWalk, WalkStep } from '../../core/api.ts';
 
 export interface ChartStep {
@@ -8,7 +8,7 @@ export interface ChartStep {
   readonly width: number;
   readonly startY: number;
   readonly endY: number;
-  /** Across the break between the bands. */
+  /** Across the break between two bands. */
   readonly isAcross: boolean;
 }
 export interface Band {
@@ -19,8 +19,8 @@ export interface Band {
 }
 export interface WalkShape {
   readonly steps: readonly ChartStep[];
-  readonly high: Band;
-  readonly low: Band;
+  /** From the highest potentials to the lowest. */
+  readonly bands: readonly Band[];
 }
 
 export interface WalkRoom {
@@ -32,48 +32,55 @@ export interface WalkRoom {
   readonly gap: number;
 }
 
-/** Both bands have the same volts to a pixel, so that a drop is as tall on the way back as on the way out. */
+/** Potentials further apart than this share of the smallest rise or fall belong to two bands. */
+const BREAK_SHARE = 0.4;
+/** Never so fine that rounding of the solve looks like a drop. */
+const LEAST_SPAN_V = 0.01;
+
+/** All bands have the same volts to a pixel, so that a drop is as tall on the way back as on the way out. */
 export function walkShape(walk: VoltWalk, { left, right, top, bottom, gap }: WalkRoom): WalkShape {
-  const across = (step: WalkStep): boolean => step.kind === 'load' || step.kind === 'source';
-  const { highs, lows } = potentials(walk, across);
-  const [highTop, highLow] = [Math.max(...highs), Math.min(...highs)];
-  const [lowTop, lowLow] = [Math.max(...lows), Math.min(...lows)];
-  const room = bottom - top - gap;
-  // Never so fine that rounding of the solve looks like a drop.
-  const voltsToRoom = Math.max(highTop - highLow + (lowTop - lowLow), 0.01);
-  const pixelsPerV = room / (voltsToRoom * 1.1);
-  const highHeight = Math.max(16, (highTop - highLow) * pixelsPerV);
-  const high: Band = { top, bottom: top + highHeight, highV: highTop, lowV: highLow };
-  const low: Band = {
-    top: Math.max(high.bottom + gap, bottom - (lowTop - lowLow) * pixelsPerV),
-    bottom,
-    highV: lowTop,
-    lowV: lowLow,
-  };
-  const yOf = (volts: number, isHigh: boolean): number =>
-    isHigh ? top + (highTop - volts) * pixelsPerV : bottom - (volts - lowLow) * pixelsPerV;
-  const width = (right - left) / walk.steps.length;
-  let isHigh = false;
-  const steps = walk.steps.map((step, index): ChartStep => {
-    const isAcross = across(step);
-    const startY = yOf(step.startV, isHigh);
-    if (isAcross) isHigh = step.changeV > 0;
-    return { step, index, x: left + index * width, width, startY, endY: yOf(step.endV, isHigh), isAcross };
+  const ranges = rangesOf(walk);
+  const span = Math.max(
+    LEAST_SPAN_V,
+    ranges.reduce((sum, { highV, lowV }) => sum + highV - lowV, 0),
+  );
+  const pixelsPerV = Math.max(20, bottom - top - gap * (ranges.length - 1)) / span;
+  let y = top;
+  const bands = ranges.map(({ highV, lowV }): Band => {
+    const band = { top: y, bottom: y + (highV - lowV) * pixelsPerV, highV, lowV };
+    y = band.bottom + gap;
+    return band;
   });
-  return { steps, high, low };
+  const yOf = (volts: number): number => {
+    const band = bands.find(({ lowV }) => volts >= lowV) ?? bands.at(-1);
+    return band === undefined ? top : band.top + (band.highV - volts) * pixelsPerV;
+  };
+  const width = (right - left) / walk.steps.length;
+  const steps = walk.steps.map((step, index) => ({
+    step,
+    index,
+    x: left + index * width,
+    width,
+    startY: yOf(step.startV),
+    endY: yOf(step.endV),
+    isAcross: isAcross(step),
+  }));
+  return { steps, bands };
 }
 
-function potentials(
-  walk: VoltWalk,
-  across: (step: WalkStep) => boolean,
-): { readonly highs: readonly number[]; readonly lows: readonly number[] } {
-  const highs: number[] = [];
-  const lows: number[] = [];
-  let isHigh = false;
-  for (const step of walk.steps) {
-    (isHigh ? highs : lows).push(step.startV);
-    if (across(step)) isHigh = step.changeV > 0;
-    (isHigh ? highs : lows).push(step.endV);
+function isAcross({ kind }: WalkStep): boolean {
+  return kind === 'load' || kind === 'source';
+}
+
+function rangesOf({ steps }: VoltWalk): readonly { readonly highV: number; readonly lowV: number }[] {
+  const rises = steps.filter(isAcross).map(({ changeV }) => Math.abs(changeV));
+  const breakV = BREAK_SHARE * Math.min(...rises);
+  const potentials = steps.flatMap(({ startV, endV }) => [startV, endV]).toSorted((a, b) => b - a);
+  const ranges: { highV: number; lowV: number }[] = [];
+  for (const volts of potentials) {
+    const last = ranges.at(-1);
+    if (last === undefined || last.lowV - volts > breakV) ranges.push({ highV: volts, lowV: volts });
+    else last.lowV = volts;
   }
-  return { highs, lows };
+  return ranges;
 }

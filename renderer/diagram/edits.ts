@@ -21,6 +21,11 @@ import {
 import { useOpenJob } from '../state/openJob.ts';
 import { useView } from './view.ts';
 
+interface PolePair {
+  readonly plus: JunctionId;
+  readonly minus: JunctionId;
+}
+
 /** Makes the edit, selects what it has put in, and tells why where it cannot be. */
 export function make(edit: Edit): boolean {
   const before = useOpenJob.getState().draft;
@@ -134,6 +139,10 @@ function firstTerminal(kind: PartFieldsGiven['kind']): string {
 }
 
 export function connectWith(from: JunctionId, to: JunctionId, part: PartFieldsGiven): void {
+  make(connect({ from, to, with: part }));
+}
+/** A run of two conductors between two pairs of poles. */
+export function connectPair(from: PolePair, to: PolePair, part: PartFieldsGiven): void {
   make(connect({ from, to, with: part }));
 }
 export function makeOne(from: JunctionId, to: JunctionId): void {

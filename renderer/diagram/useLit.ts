@@ -1,6 +1,6 @@
 /** What a finding or a walk points at, on the drawing: lit, and brought into view. */
 import { useReactFlow, useStoreApi } from '@xyflow/react';
-import { useEffect } from 'react';
+import { useEffect, useRef } from 'react';
 import type { PartId, Positions } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 
@@ -24,7 +24,11 @@ export function useShowLit(positions: Positions): void {
   const { setCenter } = useReactFlow();
   const store = useStoreApi();
   const shown = lit[0] ?? chosen;
+  const last = useRef<PartId | undefined>(undefined);
   useEffect(() => {
+    // Moving a part by hand must not move the view: only another part to show does.
+    if (shown === last.current) return;
+    last.current = shown;
     const id = shown?.replace(/\.(?:plus|minus)$/, '') as PartId | undefined;
     const at = id === undefined ? undefined : positions.parts.get(id);
     if (at === undefined) return;
@@ -36,7 +40,5 @@ export function useShowLit(positions: Positions): void {
     const [left, top] = [at.x * zoom + x, at.y * zoom + y];
     const isSeen = left > MARGIN_PX && left < width - MARGIN_PX && top > MARGIN_PX / 2 && top < height - MARGIN_PX / 2;
     if (!isSeen) void setCenter(at.x, at.y, { zoom: Math.max(zoom, LEAST_ZOOM) });
-    // Moving a part by hand must not move the view: only another part shown does.
-    // eslint-disable-next-line react-hooks/exhaustive-deps
-  }, [shown]);
+  }, [shown, positions, setCenter, store]);
 }

@@ -5,7 +5,7 @@ import { type ReactElement, useEffect, useState } from 'react';
 import type { HostChannel } from '../../core/host.ts';
 import { openChannel } from '../host/channel.ts';
 import { StartScreen } from '../start/StartScreen.tsx';
-import { useOpenJob } from '../state/openJob.ts';
+import { useOpenJob, wakeSolver } from '../state/openJob.ts';
 import { readPreferences } from '../state/preferences.ts';
 import { useSession } from '../state/session.ts';
 import { DropFile } from './DropFile.tsx';
@@ -33,6 +33,7 @@ export function App(): ReactElement {
 function useHost(): boolean {
   const [ready, setReady] = useState(false);
   useEffect(() => {
+    wakeSolver();
     const channel = openChannel();
     const stop = listenToHost(channel);
     void begin(channel).then(() => setReady(true));

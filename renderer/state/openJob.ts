@@ -110,8 +110,8 @@ function show(state: {
     selection: { ...before.selection, parts: before.selection.parts.filter((id) => parts.has(id)) },
     lit: before.lit.filter((id) => parts.has(id)),
   });
-  solver ??= new Solver(receive);
-  solver.ask({ generation, draft: state.draft });
+  wakeSolver();
+  solver?.ask({ generation, draft: state.draft });
 }
 
 function caseFor(job: CheckedJob, wanted: string): string {
@@ -167,6 +167,11 @@ async function fetchState(job: string, revision: number | null): Promise<{ draft
   }
   const read = draftOf(answer.value.text);
   return read.ok ? read.value : null;
+}
+
+/** Starts the solver before it is needed. */
+export function wakeSolver(): void {
+  solver ??= new Solver(receive);
 }
 
 /** Opens a job that the host has handed over; returns its issues where this program cannot read it. */

@@ -1,13 +1,28 @@
 /** Solves every operating case of a job and runs the checks, off the screen's thread. */
 /// <reference lib="webworker" />
-import type { CheckedJob, OperatingCase, OperatingPoint } from '../../core/api.ts';
+import type { CheckedJob, Draft, OperatingCase, OperatingPoint } from '../../core/api.ts';
 import { caseById, checkJob, operatingPoint, runChecks } from '../../core/api.ts';
-import { tables } from '../../data/index.ts';
+import { starters, tables } from '../../data/index.ts';
 import type { SolveAsk, SolveReply } from './solveMessages.ts';
 
+let isAsked = false;
+
 self.addEventListener('message', ({ data }: MessageEvent<SolveAsk>) => {
+  isAsked = true;
   self.postMessage(answer(data));
 });
+
+/** Times that it takes for the browser to have compiled what a solve runs through. */
+const WARMING_ROUNDS = 6;
+
+/** While the person still reads the start screen: the first answer then comes as fast as the hundredth. */
+function warm(round: number): void {
+  const [text] = starters.values();
+  if (isAsked || round === 0 || text === undefined) return;
+  answer({ generation: 0, draft: JSON.parse(text) as Draft });
+  setTimeout(() => warm(round - 1));
+}
+setTimeout(() => warm(WARMING_ROUNDS));
 
 function answer({ generation, draft }: SolveAsk): SolveReply {
   try {

@@ -1,7 +1,7 @@
 /** Small pure geometry of the drawing: how parts stand, how wires run, what moves along, how thick a line is. */
 import { describe, expect, test } from 'vitest';
 import { drawPart, freeSide, lineWeight } from '../../core/diagram/drawPart.ts';
-import { minusSide } from '../../core/diagram/minusSide.ts';
+import { minusSide, returnOf } from '../../core/diagram/minusSide.ts';
 import { moveBy } from '../../core/diagram/moveWith.ts';
 import { kindSymbol, partSymbol } from '../../core/diagram/partSymbol.ts';
 import { placeShapes } from '../../core/diagram/placeShapes.ts';
@@ -191,6 +191,11 @@ describe('a move', () => {
 
 test('the minus side is what conductors join to the minus of something', () => {
   expect([...minusSide(small)].toSorted()).toEqual(['M', 'N']);
+});
+
+test('a run from the plus of a battery returns to its minus', () => {
+  expect(returnOf(small, 'P' as JunctionId)).toBe('N');
+  expect(returnOf(small, 'Q' as JunctionId)).toBeUndefined();
 });
 
 describe('the weight of a line', () => {

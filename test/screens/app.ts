@@ -10,6 +10,8 @@ import { type Browser, type BrowserContextOptions, chromium, type Page } from 'p
 
 const root = fileURLToPath(new URL('../..', import.meta.url));
 const chromiumPath = process.env['CHROMIUM'] ?? '/usr/bin/chromium';
+/** Another built page than that of the last build, such as one that nobody builds over while a test runs. */
+const otherPage = process.env['OHMWRIGHT_TEST_PAGE'];
 /** Screenshots are kept here, to be looked at. */
 export const shotsFolder = join(root, 'test-results', 'screens');
 
@@ -23,11 +25,11 @@ export interface Host {
 export async function startHost(store = mkdtempSync(join(tmpdir(), 'ohmwright-store-'))): Promise<Host> {
   const save = join(store, 'saved');
   mkdirSync(save, { recursive: true });
-  const child = spawn(
-    process.execPath,
-    [join(root, 'dist/local.mjs'), '--no-browser', '--store', store, '--save-folder', save, '--idle', '600'],
-    { stdio: ['ignore', 'pipe', 'inherit'] },
-  );
+  const words = ['--no-browser', '--store', store, '--save-folder', save, '--idle', '600'];
+  if (otherPage !== undefined) words.push('--page', otherPage);
+  const child = spawn(process.execPath, [join(root, 'dist/local.mjs'), ...words], {
+    stdio: ['ignore', 'pipe', 'inherit'],
+  });
   for await (const line of createInterface({ input: child.stdout })) {
     const url = /http:\/\/127\.0\.0\.1:\d+\/#\S+/.exec(line)?.[0];
     if (url !== undefined) return { url, store, process: child };
@@ -36,12 +38,19 @@ export async function startHost(store = mkdtempSync(join(tmpdir(), 'ohmwright-st
 }
 
 export async function endHost({ process: child, store }: Host, keepStore = false): Promise<void> {
-  if (child.exitCode === null) {
+  if (child.exitCode === null && child.signalCode === null) {
     const gone = new Promise((resolve) => child.once('exit', resolve));
     child.kill('SIGTERM');
     await gone;
   }
   if (!keepStore) rmSync(store, { recursive: true, force: true });
+}
+
+/** Pulls the host away under its page, as a power cut does. */
+export async function killHost({ process: child }: Host): Promise<void> {
+  const gone = new Promise((resolve) => child.once('exit', resolve));
+  child.kill('SIGKILL');
+  await gone;
 }
 
 export function launch(): Promise<Browser> {
