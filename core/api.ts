@@ -77,6 +77,8 @@ export { boxAround, isConductor, roomOf } from './diagram/pose.ts';
 export { freePlace, positionsOf } from './diagram/positions.ts';
 export type { Entry } from './diagram/routeWire.ts';
 export type { Shape, Stroke, Tone } from './diagram/shape.ts';
+export type { LaidSurroundings } from './diagram/surroundings.ts';
+export { drawParts, surroundingsOf } from './diagram/surroundings.ts';
 export { tidyPositions } from './diagram/tidy.ts';
 export { ratingWords } from './diagram/wiringWords.ts';
 export type { CaseField } from './draft/cases.ts';

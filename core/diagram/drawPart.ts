@@ -1,5 +1,5 @@
 /** What is drawn for one part besides its symbol: wires to its junctions, the lanes of a run, the bar of a busbar. */
-import type { JunctionId, Part } from '../job/part.ts';
+import type { JunctionId, Part, PartId } from '../job/part.ts';
 import type { Point } from './point.ts';
 import type { PlaceOf, Pose, TerminalPlace } from './pose.ts';
 import { poseOf, terminalPlaces } from './pose.ts';
@@ -40,10 +40,12 @@ export interface Surroundings {
   readonly placeOf: PlaceOf;
   /** How wires come into a junction: across the bar that it lies on. */
   readonly entryOf: (junction: JunctionId) => Entry;
+  /** The route from a terminal to its junction, laid clear of the rest by `surroundingsOf`; else each wire runs by itself. */
+  readonly routeOf?: (part: PartId, role: string) => readonly Point[] | undefined;
 }
 
 /** How far a bar reaches beyond its outermost taps. */
-const BEYOND = 20;
+const BEYOND = 10;
 
 /** A part that stands at `at` among its junctions. Junctions without a place get no wire. */
 export function drawPart(part: Part, at: Point, around: Surroundings): DrawnPart {
@@ -55,6 +57,8 @@ export function drawPart(part: Part, at: Point, around: Surroundings): DrawnPart
 
 function wiresOf(part: Part, terminals: readonly TerminalPlace[], around: Surroundings): readonly DrawnWire[] {
   const route = (terminal: TerminalPlace): readonly Point[] => {
+    const laid = around.routeOf?.(part.id, terminal.role);
+    if (laid !== undefined) return laid;
     const end = around.placeOf(terminal.junction);
     return end === undefined ? [] : routeWire(terminal, end, around.entryOf(terminal.junction));
   };
@@ -125,19 +129,32 @@ function joined(first: readonly Point[], second: readonly Point[]): readonly Poi
   return straightened([...first, ...second]);
 }
 
-/** The bar reaches over its junctions; a junction that stands off it hangs on a short tap. */
+/** A junction that stands off its bar hangs on a short tap. */
 function drawBar(
   part: Extract<Part, { kind: 'busbar' }>,
   at: Point,
   { pose: { isUpright }, placeOf }: { readonly pose: Pose; readonly placeOf: PlaceOf },
 ): Pick<DrawnPart, 'wires' | 'bar'> {
+  const bar = barOf(part, at, placeOf);
+  const foot = ({ x, y }: Point): Point => (isUpright ? { x: at.x, y } : { x, y: at.y });
+  const wires = part.junctions.flatMap((junction): readonly DrawnWire[] => {
+    const tap = placeOf(junction);
+    if (tap === undefined || (isUpright ? tap.x === at.x : tap.y === at.y)) return [];
+    return [{ role: `tap ${junction}`, points: [foot(tap), tap], current: { of: 'none' } }];
+  });
+  return { wires, bar };
+}
+
+/** The ends of a bar that stands at `at`: it reaches over its junctions. */
+export function barOf(part: Extract<Part, { kind: 'busbar' }>, at: Point, placeOf: PlaceOf): readonly [Point, Point] {
+  const { isUpright } = poseOf(part, placeOf, at);
   const taps = part.junctions.flatMap((each) => placeOf(each) ?? []);
   const along = taps.map(({ x, y }) => (isUpright ? y : x));
   const [low, high] = [
     Math.min(...along, isUpright ? at.y : at.x) - BEYOND,
     Math.max(...along, isUpright ? at.y : at.x) + BEYOND,
   ];
-  const bar: readonly [Point, Point] = isUpright
+  return isUpright
     ? [
         { x: at.x, y: low },
         { x: at.x, y: high },
@@ -146,13 +163,6 @@ function drawBar(
         { x: low, y: at.y },
         { x: high, y: at.y },
       ];
-  const foot = ({ x, y }: Point): Point => (isUpright ? { x: at.x, y } : { x, y: at.y });
-  const wires = part.junctions.flatMap((junction): readonly DrawnWire[] => {
-    const tap = placeOf(junction);
-    if (tap === undefined || (isUpright ? tap.x === at.x : tap.y === at.y)) return [];
-    return [{ role: `tap ${junction}`, points: [foot(tap), tap], current: { of: 'none' } }];
-  });
-  return { wires, bar };
 }
 
 /** How wires come into each junction of a bar that lies on the bar: across it. */

@@ -209,14 +209,20 @@ function laneTerminals(
   });
 }
 
-/** Whether the plus ends lie further along an axis than the minus ends. */
+/**
+ * Whether the plus ends lie further along an axis than the minus ends. Where the two ports disagree, the one counts whose poles
+ * stand more exactly one above the other.
+ */
 function isPoleTurned(part: Extract<Part, { from: { plus: JunctionId } }>, placeOf: PlaceOf, axis: 'x' | 'y'): boolean {
-  const sum = (pole: 'plus' | 'minus'): number | undefined => {
-    const ends = [part.from[pole], part.to[pole]].flatMap((each) => placeOf(each)?.[axis] ?? []);
-    return ends.length === 0 ? undefined : ends.reduce((so, each) => so + each, 0) / ends.length;
-  };
-  const [plus, minus] = [sum('plus'), sum('minus')];
-  return plus !== undefined && minus !== undefined && plus > minus;
+  const across = axis === 'x' ? 'y' : 'x';
+  const ports = (['from', 'to'] as const).flatMap((port) => {
+    const [plus, minus] = [placeOf(part[port].plus), placeOf(part[port].minus)];
+    if (plus === undefined || minus === undefined || plus[axis] === minus[axis]) return [];
+    return [{ further: plus[axis] - minus[axis], aside: Math.abs(plus[across] - minus[across]) }];
+  });
+  const [first, second] = ports;
+  if (first === undefined) return false;
+  return (second === undefined || first.aside <= second.aside ? first : second).further > 0;
 }
 
 export interface Box {

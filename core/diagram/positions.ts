@@ -2,11 +2,15 @@
 import type { CheckedJob } from '../job/job.ts';
 import type { JunctionId, Part, PartId } from '../job/part.ts';
 import { junctionsOf } from '../job/part.ts';
+import { clearRoute } from './clearRoute.ts';
+import { cableBetween } from './freeShift.ts';
 import { placeBetween } from './layered.ts';
 import type { Point, Positions } from './point.ts';
 import { EARTH, middleOf, onGrid, POLES, samePoint } from './point.ts';
 import { boxAround, terminalPlaces } from './pose.ts';
+import { longestStretch } from './routeWire.ts';
 import { TakenRoom } from './separate.ts';
+import { roomFor } from './surroundings.ts';
 import { tidyPositions } from './tidy.ts';
 
 /** From the terminal of a two-ended part to a junction that has no place of its own. */
@@ -98,13 +102,28 @@ function fillParts(job: CheckedJob, parts: Map<PartId, Point>, junctions: Readon
     const at = parts.get(part.id);
     if (at !== undefined) room.take(boxAround(part, at, placeOf));
   }
+  // A name on a dot would hide it.
+  for (const { x, y } of junctions.values()) room.take({ x1: x - 1, y1: y - 1, x2: x + 1, y2: y + 1 });
   for (const part of missing) {
     if (!junctionsOf(part).some((each) => junctions.has(each))) continue;
-    const wanted = wantedPlace(part, junctions);
+    const wanted =
+      (part.kind === 'cable' ? onClearRoute(part, { job, parts, junctions }) : undefined) ??
+      wantedPlace(part, junctions);
     const at = part.kind === 'busbar' ? wanted : room.nearestFree(wanted, (place) => boxAround(part, place, placeOf));
     room.take(boxAround(part, at, placeOf));
     parts.set(part.id, at);
   }
+}
+
+/** A cable between two known junctions has its name on the longest stretch of a route clear of symbols. */
+function onClearRoute(
+  part: Extract<Part, { kind: 'cable' }>,
+  { job, parts, junctions }: { readonly job: CheckedJob } & Positions,
+): Point | undefined {
+  const [start, end] = [junctions.get(part.from), junctions.get(part.to)];
+  if (start === undefined || end === undefined || samePoint(start, end)) return undefined;
+  const { points } = clearRoute(roomFor(job.parts, { parts, junctions }), cableBetween(start, { end, to: part.to }));
+  return onGrid(longestStretch(points).at);
 }
 
 /** Between its junctions; a run between its lines; something with one junction known, beside it. */

@@ -1,6 +1,11 @@
 /** Parts put between junctions, into a line, or beside a string that is there. */
-import { changed, type Draft, type OpenDraft, type OpenPart, type Point, type RawPart } from './draft.ts';
+import { freeShift } from '../diagram/freeShift.ts';
+import { positionsOf } from '../diagram/positions.ts';
+import { checkJob } from '../job/parseJob.ts';
+import type { JunctionId, PartId } from '../job/part.ts';
+import { changed, type Draft, type OpenDraft, type OpenPart, type Point, type RawPart, rawParts } from './draft.ts';
 import type { Edit } from './edit.ts';
+import { noteOn } from './junctions.ts';
 import { freshJunction, idLike, idsOf, junctionNamesOf } from './naming.ts';
 import { type PartFieldsGiven, putIn, structuredCopy } from './parts.ts';
 import { junctionAt, putTerminal, terminalsOf, touchOf } from './terminals.ts';
@@ -84,8 +89,6 @@ function conductorEnd(
   return { part: pair, path: `${port}.${pole}` };
 }
 
-/** How far below its model a string is put, in the drawing's pixels. */
-const stringStep: Point = { x: 0, y: 160 };
 /** Longest lead that is followed, in parts. */
 const mostInLead = 8;
 /** A lead ends with its cable; what may stand in line with it. */
@@ -103,17 +106,69 @@ export function parallelString(id: string): Edit {
       const string = (draft['parts'] as readonly RawPart[]).find((part) => part.id === id);
       if (string?.kind !== 'string') return draft;
       const leads = (['plus', 'minus'] as const).map((pole) => ({ pole, ...leadOf(draft, string, pole) }));
+      const beside = placeBesideOnce(draft, string, leads);
       return changed(draft, (open) => {
         const taken = junctionNamesOf(open);
-        const added = copyBeside(open, string);
+        const added = copyBeside(open, string, beside);
         for (const { junction, path } of terminalsOf(string)) {
-          if (junction !== '') putTerminal(added, path, freshJunction(added.id, path, taken));
+          if (junction === '') continue;
+          const fresh = freshJunction(added.id, path, taken);
+          putTerminal(added, path, fresh);
+          placeJunction(open, fresh, beside?.junction(junction));
         }
         open.parts.push(added);
-        for (const lead of leads) putLead(open, junctionAt(added, lead.pole) ?? '', lead);
+        for (const lead of leads) putLead(open, junctionAt(added, lead.pole) ?? '', { ...lead, beside });
       });
     },
   };
+}
+
+/** Where copies of parts and junctions go. */
+interface Beside {
+  readonly part: (id: string) => Point | undefined;
+  readonly junction: (id: string) => Point | undefined;
+}
+
+/** Remedies try the same step on the same draft again and again. */
+const placesBeside = new WeakMap<Draft, Map<string, Beside | undefined>>();
+function placeBesideOnce(draft: Draft, string: RawPart, leads: readonly Lead[]): Beside | undefined {
+  const known = placesBeside.get(draft) ?? new Map<string, Beside | undefined>();
+  placesBeside.set(draft, known);
+  if (!known.has(string.id)) known.set(string.id, placeBeside(draft, string, leads));
+  return known.get(string.id);
+}
+
+/** A place where the string and what stands in line with it lie on nothing; none where nothing has a place yet. */
+function placeBeside(draft: Draft, string: RawPart, leads: readonly Lead[]): Beside | undefined {
+  if (!rawParts(draft).some(({ at }) => at !== undefined)) return undefined;
+  const checked = checkJob(draft);
+  if (!checked.ok) return undefined;
+  const positions = positionsOf(checked.value);
+  const copied = new Set([string.id, ...leads.flatMap(({ parts }) => parts.map(({ part }) => part.id))]);
+  const hasCable = (lead: Lead): boolean => lead.parts.at(-1)?.part.kind === 'cable';
+  // A cable runs on from the last junction of its lead that is copied.
+  const cables = leads.flatMap((lead) => {
+    const last = lead.parts.at(-1);
+    const from = hasCable(lead) && last !== undefined ? junctionAt(last.part, last.near) : lead.far;
+    return from === undefined ? [] : [{ from: from as JunctionId, to: lead.far as JunctionId }];
+  });
+  const inside = leads.flatMap(({ parts }) => parts.flatMap(({ part, near }) => junctionAt(part, near) ?? []));
+  const junctions = new Set([
+    ...terminalsOf(string).map(({ junction }) => junction),
+    ...inside,
+    ...cables.map(({ from }) => from),
+  ]) as Set<JunctionId>;
+  const by = freeShift(checked.value, positions, { parts: copied as Set<PartId>, junctions, cables });
+  const shifted = (at: Point | undefined): Point | undefined =>
+    at === undefined ? undefined : { x: at.x + by.x, y: at.y + by.y };
+  return {
+    part: (id) => shifted(positions.parts.get(id as PartId)),
+    junction: (id) => shifted(positions.junctions.get(id as JunctionId)),
+  };
+}
+
+function placeJunction(open: OpenDraft, junction: string, at: Point | undefined): void {
+  if (at !== undefined) noteOn(open, junction).at = at;
 }
 
 interface Lead {
@@ -145,18 +200,19 @@ function leadOf(draft: Draft, string: RawPart, pole: 'plus' | 'minus'): Lead {
 function putLead(
   open: OpenDraft,
   post: string,
-  { parts, far, pole }: Lead & { readonly pole: 'plus' | 'minus' },
+  { parts, far, pole, beside }: Lead & { readonly pole: 'plus' | 'minus'; readonly beside: Beside | undefined },
 ): void {
   const hasCable = parts.some(({ part }) => part.kind === 'cable');
   let at = post;
   parts.forEach(({ part, near }, index) => {
-    const copy = copyBeside(open, part);
+    const copy = copyBeside(open, part, beside);
     const away = near === 'from' ? 'to' : 'from';
     const isLast = hasCable && index === parts.length - 1;
     const next = isLast ? far : freshJunction(copy.id, away, junctionNamesOf(open));
     putTerminal(copy, near, at);
     putTerminal(copy, away, next);
     open.parts.push(copy);
+    if (!isLast) placeJunction(open, next, beside?.junction(junctionAt(part, away) ?? ''));
     at = next;
   });
   if (hasCable) return;
@@ -164,10 +220,12 @@ function putLead(
   putIn(open, { part: { kind: 'cable' }, junctions });
 }
 
-function copyBeside(open: OpenDraft, model: RawPart): OpenPart {
+/** A cable's name finds its own place on its route. */
+function copyBeside(open: OpenDraft, model: RawPart, beside: Beside | undefined): OpenPart {
   const copy = structuredCopy(model) as unknown as OpenPart;
   copy.id = idLike(model.id, model.kind, idsOf(open));
-  const at = model['at'] as Point | undefined;
-  if (at !== undefined) copy['at'] = { x: at.x + stringStep.x, y: at.y + stringStep.y };
+  delete copy['at'];
+  const at = model.kind === 'cable' ? undefined : beside?.part(model.id);
+  if (at !== undefined) copy['at'] = at;
   return copy;
 }

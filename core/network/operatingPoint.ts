@@ -1,6 +1,7 @@
 /** One job in one operating case, solved: volts, amps, watts, states, and the proof. */
 import { Defect } from '../job/issue.ts';
 import { nameOf } from '../job/part.ts';
+import { formatQuantity } from '../units/formatQuantity.ts';
 import type { Collapse, OperatingPoint } from './answer.ts';
 import { Reader } from './answers.ts';
 import type { Circuit, CircuitRequest, Sink } from './circuit.ts';
@@ -111,20 +112,24 @@ function withoutPoint(circuit: Circuit, graph: GraphView, nose: Nose): Collapse 
   if (sink === undefined) throw new Defect('a case without constant-power or constant-current sinks has a solution');
   const part = circuit.parts[sink.element.partIndex]!;
   const wantedW = sink.element.law === Law.power ? sink.element.a : sink.element.a * Math.abs(sink.element.v);
-  const asks = `${nameOf(part)} asks for ${wantedW.toPrecision(4)} W at its terminals`;
+  const asks = `${nameOf(part)} asks for ${wattsText(wantedW)} at its terminals`;
   if (othersSolve(circuit, graph, sink)) {
     const peak = largestDeliverableW(circuit, graph, sink, 1);
     const isPower = sink.element.law === Law.power;
     const assembled = isPower && peak.powerW > wantedW ? solveFromConductance(circuit, graph, sink, peak) : null;
     if (assembled !== null) return { assembled };
     const most = isPower ? Math.min(peak.powerW, wantedW) : peak.powerW;
-    const message = `${asks}; the network can deliver at most ${most.toPrecision(4)} W to it with everything else as drawn. There is no operating point.`;
+    const message = `${asks}; the network can deliver at most ${wattsText(most)} to it with everything else as drawn. There is no operating point.`;
     return { load: part.id, wantedW, largestDeliverableW: most, message };
   }
   const percent = Math.floor(100 * nose.share);
   const shareW = nose.share * wantedW;
-  const message = `The loads together ask for more than the network can deliver: at most ${percent} % of it all. ${asks} and gives way first; it could have ${shareW.toPrecision(4)} W then. There is no operating point.`;
+  const message = `The loads together ask for more than the network can deliver: at most ${percent} % of it all. ${asks} and gives way first; it could have ${wattsText(shareW)} then. There is no operating point.`;
   return { load: part.id, wantedW, largestDeliverableW: shareW, message };
+}
+
+function wattsText(value: number): string {
+  return formatQuantity({ value, unit: 'W', digits: 4 });
 }
 
 function othersSolve(circuit: Circuit, graph: GraphView, sink: Sink): boolean {

@@ -21,10 +21,13 @@ import {
 } from '../../core/api.ts';
 import { useView } from '../diagram/view.ts';
 import { useOpenJob } from '../state/openJob.ts';
+import { usePreferences } from '../state/preferences.ts';
 import { type ChartStep, type WalkShape, walkShape } from './walkShape.ts';
 import './voltWalk.css';
 
+/** Sizes of the chart at the usual size of text, px; all of them grow with it. */
 const HEIGHT = 132;
+const AXIS = 64;
 /** Drops that are named in the chart itself. */
 const MOST_NAMED = 5;
 
@@ -101,8 +104,10 @@ function nameOf(job: CheckedJob, id: PartId): string {
   const label = job.parts.find((part) => part.id === id)?.label;
   return label === undefined || label === id ? id : `${id}, ${label}`;
 }
+/** Below this is rounding of the solve, not a drop. */
+const LEAST_V = 0.00005;
 const volts = (value: number, digits = 3): string =>
-  formatQuantity({ value, unit: 'V', digits }).replace(/^-/, '\u2212');
+  formatQuantity({ value: Math.abs(value) < LEAST_V ? 0 : value, unit: 'V', digits }).replace(/^-/, '\u2212');
 
 /** In one unit, so that the marks of an axis can be compared. */
 function plainVolts(value: number): string {
@@ -135,19 +140,26 @@ function useWidth(): readonly [React.RefObject<HTMLDivElement | null>, number] {
   return [ref, width];
 }
 
+/** The chart is laid out as for text of the usual size and drawn larger or smaller with the person's text. */
 function Chart({ walk }: { readonly walk: Walk }): ReactElement {
-  const [ref, width] = useWidth();
+  const [ref, widthPx] = useWidth();
+  const textSize = usePreferences(({ textPercent }) => textPercent / 100);
+  const width = widthPx / textSize;
   const shape = useMemo(
     () =>
-      width < 120 ? undefined : walkShape(walk, { left: 64, right: width - 8, top: 14, bottom: HEIGHT - 14, gap: 26 }),
+      width < 120
+        ? undefined
+        : walkShape(walk, { left: AXIS, right: width - 8, top: 14, bottom: HEIGHT - 14, gap: 26 }),
     [walk, width],
   );
   return (
-    <div ref={ref} className="chart" style={{ height: HEIGHT }}>
+    <div ref={ref} className="chart" style={{ height: `${String(HEIGHT / USUAL_TEXT_PX)}rem` }}>
       {shape !== undefined && <Steps shape={shape} width={width} />}
     </div>
   );
 }
+/** Of browsers, before any preference. */
+const USUAL_TEXT_PX = 16;
 
 function Steps({ shape, width }: { readonly shape: WalkShape; readonly width: number }): ReactElement {
   const selected = useOpenJob(({ selection }) => selection.parts);
@@ -167,7 +179,14 @@ function Steps({ shape, width }: { readonly shape: WalkShape; readonly width: nu
   };
   return (
     // biome-ignore lint/a11y/useSemanticElements: a chart has no fieldset
-    <svg width={width} height={HEIGHT} role="group" aria-label="Steps of the volt walk">
+    <svg
+      width="100%"
+      height="100%"
+      viewBox={`0 0 ${String(width)} ${String(HEIGHT)}`}
+      preserveAspectRatio="xMinYMin meet"
+      role="group"
+      aria-label="Steps of the volt walk"
+    >
       <Axis shape={shape} width={width} />
       <path className="line" d={linePath(shape.steps)} />
       {shape.steps.map((each) => (

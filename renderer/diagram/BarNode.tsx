@@ -4,6 +4,7 @@ import { memo, type ReactElement } from 'react';
 import type { JunctionId } from '../../core/api.ts';
 import { SeverityMark } from '../controls/SeverityMark.tsx';
 import type { PartFlowNode } from './flowNodes.ts';
+import { Grip } from './Grip.tsx';
 import { useLive } from './live.ts';
 import { classesOf } from './PartNode.tsx';
 import { useIsLit } from './useLit.ts';
@@ -25,6 +26,7 @@ export const BarNode = memo(function BarNode({
       className={`${classesOf('bar', { selected, isLit, live })} ${drawn.pose.isUpright ? 'upright' : 'level'} ${placed.isLow ? 'low' : ''}`}
     >
       <div className="stroke" style={drawn.pose.isUpright ? { height } : { width }} />
+      <Grip part={part.id} selected={selected} />
       <div className="words" aria-hidden>
         <span className="id">
           {live?.severity != null && <SeverityMark severity={live.severity} bare />}

@@ -15,6 +15,7 @@ import {
 } from '@xyflow/react';
 import {
   type DragEvent,
+  type FocusEvent,
   type MouseEvent,
   type ReactElement,
   useCallback,
@@ -30,7 +31,9 @@ import { BarNode } from './BarNode.tsx';
 import { ConductorNode } from './ConductorNode.tsx';
 import { DRAGGED_PART } from './draggedPart.ts';
 import { commitMove, putPart } from './edits.ts';
-import { type FlowNode, junctionOfNode, NodeMaker, partOfNode } from './flowNodes.ts';
+import { type FlowNode, junctionOfNode, MIDDLE, NodeMaker, partOfNode } from './flowNodes.ts';
+import { focusGrip } from './Grip.tsx';
+import { gripShifts, useGripShifts } from './gripPlaces.ts';
 import { JunctionNode } from './JunctionNode.tsx';
 import { followAnswers, useLive } from './live.ts';
 import { openGroundMenu, openMenuOf } from './openMenus.ts';
@@ -45,7 +48,10 @@ import { Wires } from './Wires.tsx';
 const nodeTypes = { part: PartNode, conductor: ConductorNode, bar: BarNode, junction: JunctionNode };
 const SELECT_KEYS = ['Shift', 'Control', 'Meta'];
 
-const ORIGIN: [number, number] = [0.5, 0.5];
+/** Less than this on the screen a hand cannot hit. */
+const LEAST_TARGET_PX = 24;
+/** Where the drawing stands smaller than this, grips of the usual spacing cannot stand side by side. */
+const LEAST_ZOOM_FOR_GRIPS = 0.2;
 
 export function Canvas(): ReactElement {
   const drawing = useDrawing();
@@ -56,7 +62,13 @@ export function Canvas(): ReactElement {
   const pressed = useLongPress();
   useEffect(followAnswers, []);
   const onTouched = useFirstFit(nodes.length);
-  useShowLit(drawing.positions);
+  const bringIntoView = useShowLit(drawing.positions);
+  const showFocused = ({ target }: FocusEvent<HTMLElement>): void => {
+    if (!target.matches('.grip:focus-visible')) return;
+    const id = target.closest<HTMLElement>('.react-flow__node')?.dataset['id'] ?? null;
+    const part = partOfNode(id);
+    if (part !== undefined) bringIntoView(part);
+  };
 
   const onConnect = useCallback<OnConnect>(() => undefined, []);
   const onConnectEnd = useCallback(
@@ -80,7 +92,7 @@ export function Canvas(): ReactElement {
   };
 
   return (
-    <DrawingFrame>
+    <DrawingFrame parts={drawing.parts}>
       {/* The drawing is one thing to the keyboard; its parts are stops inside it. */}
       <ReactFlow<FlowNode>
         {...keys}
@@ -88,10 +100,12 @@ export function Canvas(): ReactElement {
         nodes={nodes}
         edges={NO_EDGES}
         nodeTypes={nodeTypes}
-        nodeOrigin={ORIGIN}
+        nodeOrigin={MIDDLE}
         onNodesChange={onNodesChange}
         onConnect={onConnect}
         onConnectEnd={onConnectEnd}
+        onNodeClick={focusNode}
+        onFocus={showFocused}
         onNodeContextMenu={openNodeMenu}
         onPaneContextMenu={(event) => openGroundMenu(event, flow.screenToFlowPosition)}
         onPaneClick={() => useOpenJob.getState().light([])}
@@ -114,7 +128,7 @@ export function Canvas(): ReactElement {
         disableKeyboardA11y
         elevateNodesOnSelect={false}
         zoomOnDoubleClick={false}
-        autoPanOnNodeFocus
+        tabIndex={-1}
         aria-label="One-line diagram. Tab goes from part to part."
       >
         <ViewportPortal>
@@ -127,19 +141,32 @@ export function Canvas(): ReactElement {
 const NO_EDGES: never[] = [];
 
 /** Classes that say how much is shown: by the person's wish, and by how large the drawing stands. */
-function DrawingFrame({ children }: { readonly children: ReactElement }): ReactElement {
+function DrawingFrame({
+  parts,
+  children,
+}: {
+  readonly parts: Drawing['parts'];
+  readonly children: ReactElement;
+}): ReactElement {
   const frame = useRef<HTMLDivElement>(null);
   const { volts, amps, labels } = useView();
   const isOld = useLive((now) => now.isOld);
   const zoom = useStore((flow) => flow.transform[2]);
-  const detail = zoom >= 0.75 ? 'near' : zoom >= 0.45 ? 'mid' : zoom >= 0.24 ? 'far' : 'far tiny';
+  const detail = zoom >= 0.75 ? 'near' : zoom >= 0.45 ? 'mid' : zoom >= 0.26 ? 'far' : 'far tiny';
   // Words never get smaller on the screen than this share of their usual size.
-  const k = Math.round(Math.min(2.6, Math.max(0.8, 0.95 / zoom)) * 20) / 20;
+  const k = Math.round(Math.min(3.7, Math.max(0.8, 0.95 / zoom)) * 20) / 20;
   const s = Math.round(Math.min(1.9, Math.max(1, 0.7 / zoom)) * 20) / 20;
+  // In units of the drawing, a little more and rounded up, so that few steps of the zoom change it.
+  const grip = Math.ceil((LEAST_TARGET_PX / zoom + 1) / 2) * 2;
   useEffect(() => {
     frame.current?.style.setProperty('--k', String(k));
     frame.current?.style.setProperty('--s', String(s));
-  }, [k, s]);
+    frame.current?.style.setProperty('--grip', `${String(grip)}px`);
+  }, [k, s, grip]);
+  useEffect(() => {
+    const isTooSmall = grip > LEAST_TARGET_PX / LEAST_ZOOM_FOR_GRIPS;
+    useGripShifts.setState({ shifts: isTooSmall ? new Map() : gripShifts(parts, grip) });
+  }, [parts, grip]);
   const classes = [
     'drawing',
     detail,
@@ -159,11 +186,7 @@ function DrawingFrame({ children }: { readonly children: ReactElement }): ReactE
 function useNodes(drawing: Drawing): FlowNode[] {
   const [maker] = useState(() => new NodeMaker());
   const selection = useOpenJob((job) => job.selection);
-  const live = useLive((now) => now.parts);
-  return useMemo(
-    () => maker.make(drawing, selection, (id: PartId) => live.get(id)?.spoken ?? id),
-    [maker, drawing, selection, live],
-  );
+  return useMemo(() => maker.make(drawing, selection), [maker, drawing, selection]);
 }
 
 /** Fits the drawing into view when a job is opened, and again as its room changes, until the person has moved the view. */
@@ -260,6 +283,10 @@ function junctionOf(node: string | undefined, handle: string | null | undefined)
 function pointerOf(event: globalThis.MouseEvent | TouchEvent): Point {
   const at = 'changedTouches' in event ? event.changedTouches[0] : event;
   return { x: at?.clientX ?? 0, y: at?.clientY ?? 0 };
+}
+
+function focusNode({ currentTarget }: MouseEvent): void {
+  focusGrip(currentTarget instanceof Element ? currentTarget : null);
 }
 
 function openNodeMenu(event: MouseEvent, { id }: FlowNode): void {

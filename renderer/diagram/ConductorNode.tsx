@@ -4,6 +4,7 @@ import { memo, type ReactElement } from 'react';
 import { figurePlace } from '../../core/api.ts';
 import { SeverityMark } from '../controls/SeverityMark.tsx';
 import type { PartFlowNode } from './flowNodes.ts';
+import { Grip } from './Grip.tsx';
 import { useLive } from './live.ts';
 import { classesOf } from './PartNode.tsx';
 import { useIsLit } from './useLit.ts';
@@ -26,6 +27,7 @@ export const ConductorNode = memo(function ConductorNode({
   const kind = part.kind === 'pair' ? 'between' : drawn.pose.isUpright ? 'aside' : 'over';
   return (
     <div className={`${classesOf('conductor', { selected, isLit, live })} ${kind}`}>
+      <Grip part={part.id} selected={selected} />
       <div className="chip" aria-hidden>
         {live?.severity != null && <SeverityMark severity={live.severity} bare />}
         <span className="id">{part.id}</span>

@@ -8,6 +8,7 @@ import useMediaQuery from '@mui/material/useMediaQuery';
 import { useReactFlow } from '@xyflow/react';
 import { type ReactElement, useState } from 'react';
 import { KIND_WORDS } from '../../core/api.ts';
+import { useRoom } from '../frame/useRoom.ts';
 import { putPart } from './edits.ts';
 import { KindPicture, PaletteList, startDrag } from './PaletteList.tsx';
 import { kindGroups, type PaletteEntry, SHORT_WORDS } from './paletteEntries.ts';
@@ -22,7 +23,7 @@ const Side = styled('section')({
   boxSizing: 'border-box',
   '&.narrow': { padding: '0.25rem', width: '7.5rem' },
   '& .grid': { display: 'grid', gridTemplateColumns: '1fr 1fr', gap: 1 },
-  '@media (max-width: 1100px)': { position: 'absolute', insetBlock: 0, left: 0, zIndex: 6, background: 'var(--sheet)' },
+  '&.over': { position: 'absolute', insetBlock: 0, left: 0, zIndex: 6, background: 'var(--sheet)' },
 });
 const Small = styled('button')({
   display: 'flex',
@@ -47,12 +48,14 @@ const Small = styled('button')({
     cursor: 'pointer',
     marginTop: '0.25rem',
   },
-  '@media (pointer: coarse)': { minHeight: 48 },
+  '@media (pointer: coarse)': { '&, &.more': { minHeight: 48 } },
 });
 
 export function Palette(): ReactElement | null {
   const isOpen = useView((view) => view.palette);
   const isNarrow = useMediaQuery('(max-width: 1500px)', { noSsr: true });
+  const isSmall = useMediaQuery('(max-width: 1100px)', { noSsr: true });
+  const isOver = useRoom() === 'tight' || isSmall;
   const { screenToFlowPosition } = useReactFlow();
   if (!isOpen) return null;
   const put = ({ part }: PaletteEntry): void => {
@@ -61,7 +64,10 @@ export function Palette(): ReactElement | null {
     putPart(part, screenToFlowPosition(at));
   };
   return (
-    <Side aria-label="Palette: parts to put on the drawing" className={isNarrow ? 'narrow' : ''}>
+    <Side
+      aria-label="Palette: parts to put on the drawing"
+      className={`${isNarrow ? 'narrow' : ''} ${isOver ? 'over' : ''}`}
+    >
       {isNarrow ? <SmallPalette onPick={put} /> : <PaletteList onPick={put} />}
     </Side>
   );

@@ -4,6 +4,7 @@ import { memo, type ReactElement } from 'react';
 import { partSymbol } from '../../core/api.ts';
 import { SeverityMark } from '../controls/SeverityMark.tsx';
 import type { PartFlowNode } from './flowNodes.ts';
+import { Grip } from './Grip.tsx';
 import { type LivePart, useLive } from './live.ts';
 import type { PlacedPart } from './placedParts.ts';
 import { Shapes } from './Shapes.tsx';
@@ -44,6 +45,7 @@ export const PartNode = memo(function PartNode({
         </div>
       )}
       <Words placed={placed} live={live} />
+      <Grip part={part.id} selected={selected} />
       {selected && <Terminals placed={placed} width={width} height={height} />}
     </div>
   );

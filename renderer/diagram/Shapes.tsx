@@ -16,7 +16,7 @@ export function Shapes({ shapes }: { readonly shapes: readonly Shape[] }): React
   return <>{shapes.map((shape, index) => shapeOf(shape, `${shape.shape}${String(index)}`))}</>;
 }
 
-function shapeOf(shape: Shape, key: string): ReactElement {
+function shapeOf(shape: Shape, key: string): ReactElement | null {
   switch (shape.shape) {
     case 'line': {
       const { x1, y1, x2, y2 } = shape;
@@ -38,21 +38,10 @@ function shapeOf(shape: Shape, key: string): ReactElement {
         <circle key={key} cx={shape.x} cy={shape.y} r={shape.radius} fill={FILL[shape.fill]} {...strokeOf(shape)} />
       );
     case 'text':
-      return (
-        <text
-          key={key}
-          x={shape.x}
-          y={shape.y}
-          fontSize={shape.sizePt}
-          textAnchor={ANCHOR[shape.align]}
-          fill={COLOUR[shape.tone]}
-        >
-          {shape.text}
-        </text>
-      );
+      // The canvas writes the signs at the poles itself, never too small to read.
+      return null;
   }
 }
-const ANCHOR = { left: 'start', centre: 'middle', right: 'end' } as const;
 
 function strokeOf({ stroke, tone }: { readonly stroke: Stroke; readonly tone: Tone }): {
   readonly stroke: string;

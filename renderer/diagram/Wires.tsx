@@ -32,6 +32,7 @@ const PartWires = memo(function PartWires({ placed }: { readonly placed: PlacedP
     // biome-ignore lint/a11y/noStaticElementInteractions: the keyboard reaches the same part by its node; a wire is a larger target for a hand
     <g
       className={classes.filter((name) => name !== '').join(' ')}
+      data-part={part.id}
       onClick={(event) => choose(event, placed)}
       onContextMenu={(event) => openMenu(event, placed)}
     >

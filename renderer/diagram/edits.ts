@@ -151,7 +151,10 @@ export function makeOne(from: JunctionId, to: JunctionId): void {
 
 /** Goes with the keyboard to what is selected in the ledger at the right. */
 export function goToLedger(): void {
-  const ledger = document.querySelector<HTMLElement>('aside');
-  const first = ledger?.querySelector<HTMLElement>('input, select, textarea, button, [tabindex="0"]');
-  (first ?? ledger)?.focus();
+  // What has just been selected must stand there first.
+  requestAnimationFrame(() => {
+    const ledger = document.querySelector<HTMLElement>('aside');
+    const first = ledger?.querySelector<HTMLElement>('input, select, textarea, button, [tabindex="0"]');
+    (first ?? ledger)?.focus();
+  });
 }

@@ -18,6 +18,8 @@ export function junctionOfNode(id: string | null): JunctionId | undefined {
   return id?.startsWith('j:') === true ? (id.slice(2) as JunctionId) : undefined;
 }
 
+/** The place of a node is its middle. */
+export const MIDDLE: [number, number] = [0.5, 0.5];
 /** Across a junction's dot. */
 export const JUNCTION_SIZE = 16;
 
@@ -25,13 +27,12 @@ export class NodeMaker {
   private made = new Map<string, FlowNode>();
 
   /** Parts in reading order, so that the Tab key walks them so; then junctions. */
-  make(drawing: Drawing, selection: Selection, spoken: (part: PartId) => string): FlowNode[] {
+  make(drawing: Drawing, selection: Selection): FlowNode[] {
     const chosenParts = new Set<string>(selection.parts);
     const chosenJunctions = new Set<string>(selection.junctions);
-    const parts = drawing.parts.toSorted(inReadingOrder).map((placed) => {
-      const ariaLabel = spoken(placed.part.id);
-      return this.kept(partNode(placed, chosenParts.has(placed.part.id), ariaLabel));
-    });
+    const parts = drawing.parts
+      .toSorted(inReadingOrder)
+      .map((placed) => this.kept(partNode(placed, chosenParts.has(placed.part.id))));
     const junctions = drawing.junctions.map((placed) =>
       this.kept(junctionNode(placed, chosenJunctions.has(placed.id))),
     );
@@ -42,11 +43,7 @@ export class NodeMaker {
 
   private kept(now: FlowNode): FlowNode {
     const old = this.made.get(now.id);
-    const isSame =
-      old !== undefined &&
-      old.data.placed === now.data.placed &&
-      old.selected === now.selected &&
-      old.ariaLabel === now.ariaLabel;
+    const isSame = old !== undefined && old.data.placed === now.data.placed && old.selected === now.selected;
     return isSame ? old : now;
   }
 }
@@ -57,7 +54,7 @@ function inReadingOrder(a: PlacedPart, b: PlacedPart): number {
   return rows === 0 ? a.at.x - b.at.x : rows;
 }
 
-function partNode(placed: PlacedPart, selected: boolean, ariaLabel: string): PartFlowNode {
+function partNode(placed: PlacedPart, selected: boolean): PartFlowNode {
   const { part, drawn } = placed;
   const isBar = drawn.bar !== undefined;
   const room = roomOf(part, drawn.pose);
@@ -72,8 +69,8 @@ function partNode(placed: PlacedPart, selected: boolean, ariaLabel: string): Par
     height,
     measured: { width, height },
     selected,
-    ariaLabel,
-    ariaRole: 'button',
+    // Its grip has the name and the focus.
+    focusable: false,
     zIndex: isBar ? 1 : 4,
   };
 }

@@ -43,12 +43,16 @@ export function followAnswers(): () => void {
 }
 
 function refresh({ job, answers, caseId, generation }: OpenJob): void {
-  const point = answers?.points.get(caseId);
+  const answer = answers?.points.get(caseId);
+  // A case without an operating point has no volts or amps to show.
+  const point = answer?.outcome === 'collapse' ? undefined : answer;
+  const asking = answer?.collapse?.load;
   const before = useLive.getState();
   const severities = severitiesOf(answers?.report.findings ?? [], caseId);
   const parts = new Map(
     (job.parts ?? []).map((part) => {
-      const now = livePart(part, point, severities.get(part.id) ?? null);
+      const severity = severities.get(part.id) ?? null;
+      const now = part.id === asking ? askingTooMuch(part, severity) : livePart(part, point, severity);
       const old = before.parts.get(part.id);
       return [part.id, old !== undefined && JSON.stringify(old) === JSON.stringify(now) ? old : now];
     }),
@@ -140,6 +144,12 @@ function livePart(part: Part, point: OperatingPoint | undefined, severity: Sever
     severity,
     spoken: spokenOf(part, currents, dead, severity),
   };
+}
+
+/** The load for which there is no operating point. */
+function askingTooMuch(part: Part, severity: Severity | null): LivePart {
+  const state = 'asks for more than can be delivered';
+  return { ...livePart(part, undefined, severity), state, spoken: spokenOf(part, {}, state, severity) };
 }
 
 function currentsOf(part: Part, point: OperatingPoint | undefined): Readonly<Record<string, LiveCurrent>> {

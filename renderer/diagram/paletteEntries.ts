@@ -68,9 +68,19 @@ export const libraryGroups: readonly PaletteGroup[] = [...new Set(libraryParts.m
     name: GROUP_WORDS[group] ?? capital(group),
     entries: libraryParts
       .filter((each) => each.group === group)
-      .map(({ id, label, part, choices }) => ({ id, words: label, kind: part.kind, part: withChoices(part, choices) })),
+      .map(({ id, label, part, choices }) => ({
+        id,
+        words: label,
+        kind: part.kind,
+        part: named(withChoices(part, choices), label),
+      })),
   }),
 );
+
+/** A load goes by what it is; of a device the figures say enough. */
+function named(part: PartFieldsGiven, label: string): PartFieldsGiven {
+  return part.kind === 'load' ? { ...part, label } : part;
+}
 
 /** Figures that a label would settle are taken from the middle of the usual ones; the ledger asks for the right one. */
 function withChoices(

@@ -6,6 +6,7 @@ import { GRID, junctionsOf } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { copiedText, duplicateSelected, goToLedger, nudge, paste, removeSelected, selectAll } from './edits.ts';
 import { junctionOfNode, partOfNode } from './flowNodes.ts';
+import { focusGrip } from './Grip.tsx';
 import { FIT_WHOLE, useView } from './view.ts';
 
 const ARROWS: Readonly<Record<string, Point>> = {
@@ -84,7 +85,7 @@ function plainKey(event: KeyboardEvent<HTMLElement>, { zoomIn, zoomOut, fitView 
         takeFocused(event);
         removeSelected();
         // The keyboard goes on from where it was.
-        if (next instanceof HTMLElement) next.focus();
+        focusGrip(next);
       };
     case 'Escape':
       return () => {
@@ -171,8 +172,11 @@ function connectFromHere(event: KeyboardEvent<HTMLElement>): void {
 function menuHere(event: KeyboardEvent<HTMLElement>): void {
   const node = focusedNode(event);
   const at = placeOf(node);
-  const part = focusedPart(event);
-  const junction = junctionOfNode(node?.dataset['id'] ?? null);
+  // With the focus on the drawing itself, what is selected is meant.
+  const isOnDrawing = node === null;
+  const { selection } = useOpenJob.getState();
+  const part = isOnDrawing ? selection.parts[0] : focusedPart(event);
+  const junction = isOnDrawing ? selection.junctions[0] : junctionOfNode(node.dataset['id'] ?? null);
   takeFocused(event);
   if (part !== undefined) useView.setState({ menu: { menu: 'part', part, at } });
   else if (junction !== undefined) useView.setState({ menu: { menu: 'junction', junction, at } });

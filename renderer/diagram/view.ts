@@ -31,6 +31,8 @@ interface View {
   readonly labels: boolean;
   readonly palette: boolean;
   readonly walk: boolean;
+  /** For how much room palette and walk were last folded or unfolded: a person's own choice holds until that changes. */
+  readonly foldedFor: string | null;
   readonly walkLoad: PartId | null;
   readonly drag: Drag | null;
   readonly menu: OpenMenu | null;
@@ -47,6 +49,7 @@ export const useView = create<View>()(() => ({
   labels: true,
   palette: true,
   walk: true,
+  foldedFor: null,
   walkLoad: null,
   drag: null,
   menu: null,

@@ -1,7 +1,7 @@
 /** The whole page: waits for its host, then shows the start or the open job. */
 import Box from '@mui/material/Box';
 import Typography from '@mui/material/Typography';
-import { type ReactElement, useEffect, useState } from 'react';
+import { lazy, type ReactElement, Suspense, useEffect, useState } from 'react';
 import type { HostChannel } from '../../core/host.ts';
 import { openChannel } from '../host/channel.ts';
 import { StartScreen } from '../start/StartScreen.tsx';
@@ -9,12 +9,15 @@ import { useOpenJob, wakeSolver } from '../state/openJob.ts';
 import { readPreferences } from '../state/preferences.ts';
 import { useSession } from '../state/session.ts';
 import { DropFile } from './DropFile.tsx';
-import { Frame } from './Frame.tsx';
 import { listenToHost } from './hostEvents.ts';
 import { rememberedJob } from './openings.ts';
 import { TroubleBar } from './TroubleBar.tsx';
 import { useKeys } from './useKeys.ts';
 import { useUnkept } from './useUnkept.ts';
+
+/** The board with its diagram is fetched while the person reads the start screen. */
+const fetchFrame = async () => ({ default: (await import('./Frame.tsx')).Frame });
+const Frame = lazy(fetchFrame);
 
 export function App(): ReactElement {
   const ready = useHost();
@@ -24,7 +27,7 @@ export function App(): ReactElement {
   return (
     <DropFile>
       <TroubleBar />
-      {ready ? isOpen ? <Frame /> : <StartScreen /> : <Waiting />}
+      <Suspense fallback={<Waiting />}>{ready ? isOpen ? <Frame /> : <StartScreen /> : <Waiting />}</Suspense>
     </DropFile>
   );
 }
@@ -34,7 +37,7 @@ function useHost(): boolean {
   const [ready, setReady] = useState(false);
   useEffect(() => {
     wakeSolver();
-    const channel = openChannel();
+    const channel = openChannel((isHostThere) => useSession.setState({ isHostThere }));
     const stop = listenToHost(channel);
     void begin(channel).then(() => setReady(true));
     return stop;
@@ -49,6 +52,7 @@ async function begin(channel: HostChannel): Promise<void> {
   else useSession.setState({ trouble: about.trouble });
   await readPreferences(channel);
   await rememberedJob(channel);
+  void fetchFrame();
 }
 
 function Waiting(): ReactElement {

@@ -6,7 +6,7 @@ import DialogContent from '@mui/material/DialogContent';
 import DialogTitle from '@mui/material/DialogTitle';
 import type { ReactElement } from 'react';
 import { keepOnTop, takeTheirs, useOpenJob } from '../state/openJob.ts';
-import { useChannel } from '../state/session.ts';
+import { useChannel, useSession } from '../state/session.ts';
 import { startDraft } from './openings.ts';
 
 export function ConflictDialog(): ReactElement | null {
@@ -15,6 +15,10 @@ export function ConflictDialog(): ReactElement | null {
   const channel = useChannel();
   if (kept.status !== 'trouble' || kept.trouble.code !== 'conflict') return null;
   const { head } = kept.trouble;
+  const showTheirs = async (): Promise<void> => {
+    const trouble = await takeTheirs();
+    if (trouble !== null) useSession.getState().tell(trouble);
+  };
   return (
     <Dialog open aria-labelledby="conflict-title">
       <DialogTitle id="conflict-title">This job was changed in another window</DialogTitle>
@@ -23,7 +27,7 @@ export function ConflictDialog(): ReactElement | null {
         both whole; only one can be the present state. Whatever you choose, the other stays in the history.
       </DialogContent>
       <DialogActions sx={{ flexWrap: 'wrap', gap: 1 }}>
-        <Button onClick={() => void takeTheirs()}>Show the other window’s state</Button>
+        <Button onClick={() => void showTheirs()}>Show the other window’s state</Button>
         <Button onClick={() => void startDraft(channel, draft, 'Copied after two windows changed the job')}>
           Keep mine as a job of its own
         </Button>

@@ -1,7 +1,8 @@
 /** The frame round every stage: spine at the left, stage, ledger where it helps, top bar, balance line at the foot. */
 import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
-import { lazy, type ReactElement, Suspense, useState } from 'react';
+import { lazy, type ReactElement, Suspense, useRef, useState } from 'react';
+import { useFocusField } from '../controls/useFocusField.ts';
 import { Ledger } from '../ledger/Ledger.tsx';
 import { WiringStage } from '../stages/wiring/WiringStage.tsx';
 import { type Stage, useSession } from '../state/session.ts';
@@ -73,9 +74,13 @@ function places(room: Room, hasLedger: boolean): Readonly<Record<string, string>
 }
 
 function LedgerPlace(): ReactElement {
+  const place = useRef<HTMLElement>(null);
+  useFocusField('ledger', place);
   return (
     <Box
       component="aside"
+      ref={place}
+      tabIndex={-1}
       aria-label="Ledger of what is selected"
       sx={{ gridArea: 'ledger', minHeight: 0, overflow: 'auto', borderLeft: '1px solid var(--hair)' }}
     >

@@ -3,10 +3,13 @@ import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
 import type { ReactElement } from 'react';
 import { tryKeepingAgain, useOpenJob } from '../state/openJob.ts';
+import { useSession } from '../state/session.ts';
 import { downloadJob } from './saving.ts';
 
 export function KeptMark(): ReactElement {
   const kept = useOpenJob((job) => job.kept);
+  const isHostThere = useSession((session) => session.isHostThere);
+  if (!isHostThere && kept.status !== 'trouble') return <HostGone />;
   switch (kept.status) {
     case 'kept':
       return <Word tone="var(--soft)" text="✓ kept" title="Every change so far is on the disk." />;
@@ -27,6 +30,18 @@ export function KeptMark(): ReactElement {
         </Box>
       );
   }
+}
+
+/** Said as soon as the way is cut, not only once a change cannot be kept. */
+function HostGone(): ReactElement {
+  return (
+    <Box role="alert" sx={{ display: 'flex', alignItems: 'center', gap: 1, color: 'var(--stop)', fontWeight: 600 }}>
+      <span>! The program does not answer. What was kept is kept; start it again.</span>
+      <Button variant="outlined" onClick={downloadJob}>
+        Download the job
+      </Button>
+    </Box>
+  );
 }
 
 function Word({

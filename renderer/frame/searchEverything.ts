@@ -67,8 +67,9 @@ function findingHit(finding: Finding): Hit {
   };
 }
 
+/** The person goes on in the ledger of what was found. */
 function inWiring(then: () => void): void {
-  useSession.getState().goStage('wiring');
+  useSession.getState().goStage('wiring', 'ledger');
   then();
 }
 

@@ -6,18 +6,19 @@ import { windowChannel } from './windowChannel.ts';
 
 let opened: HostChannel | undefined;
 
-/** The page's channel; asked again, the same one. */
-export function openChannel(): HostChannel {
-  opened ??= window.ohmwright === undefined ? browserChannel() : windowChannel(window.ohmwright);
+/** The page's channel; asked again, the same one. `reached` is told when the way to the host is cut, and when it is there again. */
+export function openChannel(reached: (isThere: boolean) => void): HostChannel {
+  opened ??= window.ohmwright === undefined ? browserChannel(reached) : windowChannel(window.ohmwright);
   return opened;
 }
 
-function browserChannel(): HostChannel {
+function browserChannel(reached: (isThere: boolean) => void): HostChannel {
   return httpChannel({
     base: location.origin,
     key: takeKey(location, history, sessionStorage),
     window: newName(),
     fetch: window.fetch.bind(window),
+    reached,
   });
 }
 

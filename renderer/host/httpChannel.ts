@@ -11,6 +11,8 @@ export interface HttpHost {
   readonly window: string;
   /** The browser's own, which tells the host of which page a call is. */
   readonly fetch: typeof fetch;
+  /** Told when the way to the host is cut, and when it is there again. */
+  readonly reached?: (isThere: boolean) => void;
 }
 
 export interface HttpChannel extends HostChannel {
@@ -104,12 +106,14 @@ async function keepListening(host: HttpHost, take: (event: HostEvent) => void, g
       if (response.status === 401) return;
       if (response.ok && response.body !== null) {
         attempt = 0;
+        host.reached?.(true);
         await readLines(response.body, (line) => {
           take(JSON.parse(line) as HostEvent);
         });
       }
     } catch {
-      // The way was cut: to listen again is all that can be done.
+      // The way was cut: to say so and to listen again is all that can be done.
+      if (!gone.aborted) host.reached?.(false);
     }
     await pause(pausesMs[Math.min(attempt, pausesMs.length - 1)]!);
     attempt += 1;

@@ -3,7 +3,7 @@ import Box from '@mui/material/Box';
 import ButtonBase from '@mui/material/ButtonBase';
 import Typography from '@mui/material/Typography';
 import type { ReactElement } from 'react';
-import { examples } from '../../data/index.ts';
+import { examples } from '../../data/examples/index.ts';
 import { startJob } from '../frame/openings.ts';
 import { useChannel } from '../state/session.ts';
 

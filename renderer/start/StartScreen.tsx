@@ -2,13 +2,15 @@
 import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
 import Typography from '@mui/material/Typography';
-import { type ReactElement, useRef, useState } from 'react';
+import { lazy, type ReactElement, Suspense, useRef, useState } from 'react';
 import { enter, openPicked } from '../frame/openings.ts';
 import { PreferencesDialog } from '../frame/PreferencesDialog.tsx';
 import { useChannel, useSession } from '../state/session.ts';
 import { JobList } from './JobList.tsx';
-import { Patterns } from './Patterns.tsx';
 import { StartSmall } from './StartSmall.tsx';
+
+/** The patterns are whole jobs: they come after the first screen stands. */
+const Patterns = lazy(async () => ({ default: (await import('./Patterns.tsx')).Patterns }));
 
 export function StartScreen(): ReactElement {
   return (
@@ -31,7 +33,9 @@ export function StartScreen(): ReactElement {
         <StartSmall />
         <Box sx={{ display: 'grid', rowGap: 3, alignContent: 'start' }}>
           <JobList />
-          <Patterns />
+          <Suspense fallback={null}>
+            <Patterns />
+          </Suspense>
         </Box>
       </Box>
     </Box>

@@ -74,10 +74,10 @@ export class Keeper {
     return this.head;
   }
 
-  /** After a conflict: the page's states go on top of where the job is now. */
-  continueFrom(head: RevisionNumber): void {
+  /** After a conflict: the page's states go on top of where the job is now. Resolves when they have, or have met new trouble. */
+  async continueFrom(head: RevisionNumber): Promise<void> {
     this.head = head;
-    void this.run();
+    await this.run();
   }
 
   tryAgain(): void {

@@ -231,15 +231,19 @@ export async function readAgain(): Promise<Trouble | null> {
 
 /** After a conflict: what was done here goes on top of what was done elsewhere; both stay in the history. */
 export function keepOnTop(head: number): void {
-  keeper?.continueFrom(head);
+  void keeper?.continueFrom(head);
 }
 
-/** After a conflict: gives up what could not be kept here and shows the job as it is elsewhere. */
-export async function takeTheirs(): Promise<void> {
+/** After a conflict: shows the job as it is elsewhere. What was done here is put into the history first, so that it can be gone back to. */
+export async function takeTheirs(): Promise<Trouble | null> {
   const { key } = useOpenJob.getState();
-  if (channel === null || key === null) return;
-  const answer = await channel.call('jobs.open', { job: key });
-  if (answer.ok) await openJob(channel, answer.value);
+  if (channel === null || key === null || keeper === null) return null;
+  const theirs = await channel.call('jobs.open', { job: key });
+  if (!theirs.ok) return theirs.trouble;
+  await keeper.continueFrom(theirs.value.head);
+  // Changed there once more, or the disk full: the mark of what is kept tells.
+  if (hasUnkept()) return null;
+  return goToRevision(theirs.value.head);
 }
 
 export function tryKeepingAgain(): void {

@@ -9,6 +9,8 @@ export type Stage = (typeof stages)[number];
 export interface Session {
   readonly channel: HostChannel | null;
   readonly about: AboutHost | null;
+  /** False while the program behind the page does not answer. */
+  readonly isHostThere: boolean;
   readonly stage: Stage;
   /** Which field of the stage to go to first, as `site.ambientMinDegC` or `F3.ratingV`. */
   readonly focusField: string | null;
@@ -21,6 +23,7 @@ export interface Session {
 export const useSession = create<Session>()((set) => ({
   channel: null,
   about: null,
+  isHostThere: true,
   stage: 'wiring',
   focusField: null,
   trouble: null,

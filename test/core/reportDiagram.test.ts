@@ -134,26 +134,54 @@ describe('the wiring as people do it', () => {
   });
 });
 
-describe('what cannot be drawn is said, and the connections are listed', () => {
-  test('strings that are joined in series point by point', () => {
-    const file = job([string('S1', 'M', 'N'), string('S2', 'P', 'M'), load('L', 'P', 'N')]);
-    expect(figureOf(file)).toBeUndefined();
-    expect(reasonOf(file)).toContain('No diagram is drawn: point M belongs to both poles');
-    const table = diagramSection(checked(file), 'A4').find((block) => block.kind === 'table');
-    expect(table?.kind === 'table' ? table.rows.map(([name]) => name) : []).toEqual([
-      { text: 'S1', under: '' },
-      { text: 'S2', under: '' },
-      { text: 'L', under: '' },
-    ]);
+describe('what does not go into the plan in rows is drawn as it is laid out on the screen', () => {
+  const series = job([string('S1', 'M', 'N'), string('S2', 'P', 'M'), load('L', 'P', 'N')]);
+
+  test('strings that are joined in series point by point, with the reason', () => {
+    expect(reasonOf(series)).toContain('Drawn as it is laid out on the screen');
+    expect(reasonOf(series)).toContain('point M belongs to both poles');
+    const texts = textsOf(figuresOf(series));
+    for (const word of ['S1', 'S2', 'L', '50 W']) expect(texts).toContain(word);
+    expect(texts.some((text) => text.startsWith('Drawn as it is laid out on the screen'))).toBe(true);
   });
 
-  test('a job too large for one sheet', () => {
+  test('every part of the ketch stands on its sheets by its id, and no word is smaller than 6 pt', () => {
+    const ketch = JSON.parse(examples.find(({ name }) => name === 'estuary-ketch')?.text ?? '') as object;
+    const figures = figuresOf(ketch);
+    const texts = textsOf(figures);
+    for (const { id } of checked(ketch).parts) expect(texts).toContain(id);
+    // The room of a figure on a landscape A4 page below its heading; words are 7 pt at full size.
+    for (const { width, height } of figures)
+      expect(7 * Math.min(1, 745 / width, 343 / height)).toBeGreaterThanOrEqual(6);
+  });
+
+  test('no shape of a sheet lies outside it', () => {
+    for (const { width, height, shapes } of figuresOf(series)) {
+      for (const shape of shapes) {
+        if (shape.shape !== 'line') continue;
+        expect(Math.min(shape.x1, shape.x2, shape.y1, shape.y2)).toBeGreaterThanOrEqual(0);
+        expect(Math.max(shape.x1, shape.x2)).toBeLessThanOrEqual(width);
+        expect(Math.max(shape.y1, shape.y2)).toBeLessThanOrEqual(height);
+      }
+    }
+  });
+
+  test('a job too large for a few sheets is drawn on many, with its connections in a table', () => {
     const large = checked(largeJob(300));
     const blocks = buildReport({ ...cabinInput(), job: large, points: [point(large, { case: 'as-drawn' })] }).blocks;
-    expect(blocks.some(({ kind }) => kind === 'figure')).toBe(false);
+    const figures = blocks.filter((block) => block.kind === 'figure');
+    expect(figures.length).toBeGreaterThan(4);
+    const texts = new Set(textsOf(figures));
+    for (const { id } of large.parts) expect([id, texts.has(id)]).toEqual([id, true]);
     const table = blocks.find((block) => block.kind === 'table' && block.caption === 'Connections');
     // 3 parts, and 99 branches whose run is two conductors.
     expect(table?.kind === 'table' ? table.rows.length : 0).toBe(3 + 99 * 4);
+  });
+
+  test('a job larger than anybody would follow from sheet to sheet is listed only', () => {
+    const huge = largeJob(3000);
+    expect(figureOf(huge)).toBeUndefined();
+    expect(reasonOf(huge)).toContain('No diagram is drawn');
   });
 });
 

@@ -15,7 +15,7 @@ export async function find(page: Page, id: string): Promise<void> {
   await page.keyboard.press('Control+k');
   await page.getByRole('combobox', { name: /Find parts/ }).fill(id);
   await page.keyboard.press('Enter');
-  await page.getByRole('article', { name: new RegExp(`^${id}, `) }).waitFor();
+  await page.getByRole('article', { name: new RegExp(`^${id.replaceAll('+', '\\+')}, `) }).waitFor();
 }
 
 /** Gives the page a job file, as a person picks one. */
@@ -24,12 +24,17 @@ export async function pick(page: Page, name: string, text: string): Promise<void
   await page.getByLabel('Job file', { exact: true }).setInputFiles({ name, mimeType: 'application/json', buffer });
 }
 
-/** Picks a job file and waits for its first answers. */
+/** Leaves the open job for the list of jobs. */
+export async function leave(page: Page): Promise<void> {
+  await page.getByRole('button', { name: 'Jobs', exact: true }).click();
+  await page.getByRole('heading', { name: 'Start small' }).waitFor();
+}
+
+/** Picks a job file at the start screen and waits until the job is open. */
 export async function openText(page: Page, text: string): Promise<void> {
+  if ((await page.getByRole('heading', { name: 'Start small' }).count()) === 0) await leave(page);
   await pick(page, 'picked.job.json', text);
-  await balance(page)
-    .getByText(/= out/)
-    .waitFor();
+  await page.getByRole('navigation', { name: 'Stages of the job' }).waitFor();
 }
 
 /** Asks the host behind the page, with the page's own key. */

@@ -70,6 +70,8 @@ export interface Opened {
 export async function openApp(browser: Browser, host: Host, options: BrowserContextOptions = {}): Promise<Opened> {
   const context = await browser.newContext({ viewport: { width: 1280, height: 800 }, ...options });
   const page = await context.newPage();
+  // What does not come within this never comes; the usual half minute only delays the news.
+  page.setDefaultTimeout(Number(process.env['OHMWRIGHT_TEST_WAIT_MS'] ?? 15_000));
   const wrongs: string[] = [];
   const origin = new URL(host.url).origin;
   page.on('console', (message) => {
@@ -98,10 +100,12 @@ export async function shoot(page: Page, name: string): Promise<void> {
   await page.screenshot({ path: join(shotsFolder, `${name}.png`) });
 }
 
-/** Violations of the accessibility rules on what is shown now, each in a line. */
-export async function axeViolations(page: Page): Promise<readonly string[]> {
+/** Violations of the accessibility rules on what is shown now, or in a part of it, each in a line. */
+export async function axeViolations(page: Page, within?: string): Promise<readonly string[]> {
   await page.mouse.move(0, 0);
-  const { violations } = await new AxeBuilder({ page })
+  const builder = new AxeBuilder({ page });
+  if (within !== undefined) builder.include(within);
+  const { violations } = await builder
     .withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'])
     .analyze();
   return violations.map(({ id, nodes }) => `${id}: ${nodes.map(({ target }) => target.join(' ')).join(', ')}`);

@@ -16,7 +16,11 @@ afterAll(async () => {
 
 const stages = ['Site', 'Wiring', 'Findings', 'Handover'] as const;
 
-const looks: readonly { readonly name: string; readonly options: BrowserContextOptions; readonly textPercent?: string }[] = [
+const looks: readonly {
+  readonly name: string;
+  readonly options: BrowserContextOptions;
+  readonly textPercent?: string;
+}[] = [
   { name: 'day-1280x800', options: {} },
   { name: 'night-1280x800', options: { colorScheme: 'dark' } },
   { name: 'tablet-1024x768', options: { viewport: { width: 1024, height: 768 }, hasTouch: true, isMobile: true } },
@@ -24,7 +28,10 @@ const looks: readonly { readonly name: string; readonly options: BrowserContextO
 ];
 
 async function goStage(page: Page, name: string): Promise<void> {
-  await page.getByRole('navigation', { name: 'Stages of the job' }).getByRole('button', { name: new RegExp(`^${name}`) }).click();
+  await page
+    .getByRole('navigation', { name: 'Stages of the job' })
+    .getByRole('button', { name: new RegExp(`^${name}`) })
+    .click();
   await page.getByRole('main').waitFor();
   // Stages are loaded when first gone to, and figures come from the worker.
   await page.waitForTimeout(700);

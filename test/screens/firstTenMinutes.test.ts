@@ -3,7 +3,7 @@ import { readFileSync } from 'node:fs';
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { parseJob } from '../../core/api.ts';
-import { allKept, endHost, type Host, launch, openApp, type Opened, shoot, startHost } from './app.ts';
+import { allKept, endHost, type Host, launch, type Opened, openApp, shoot, startHost } from './app.ts';
 
 let browser: Browser;
 let host: Host;
@@ -34,7 +34,10 @@ async function find(text: string): Promise<void> {
 }
 
 const goStage = (name: string) =>
-  page.getByRole('navigation', { name: 'Stages of the job' }).getByRole('button', { name: new RegExp(`^${name}`) }).click();
+  page
+    .getByRole('navigation', { name: 'Stages of the job' })
+    .getByRole('button', { name: new RegExp(`^${name}`) })
+    .click();
 const ledger = () => page.getByRole('complementary', { name: /Ledger/ });
 const balance = () => page.getByRole('contentinfo', { name: 'Balance line' });
 
@@ -52,7 +55,9 @@ describe.sequential('the first ten minutes', () => {
 
   test('the answer opens as a drawing, live and balanced', async () => {
     await page.getByRole('button', { name: 'Open it in Wiring' }).click();
-    await balance().getByText(/^in 1\d\d(\.\d+)? W = out 150 W \+ heat/).waitFor();
+    await balance()
+      .getByText(/^in 1\d\d(\.\d+)? W = out 150 W \+ heat/)
+      .waitFor();
     await allKept(page);
     await shoot(page, '02-wiring');
   });
@@ -60,7 +65,9 @@ describe.sequential('the first ten minutes', () => {
   test('a second string is added beside the first, and its lead made longer', async () => {
     await find('B1');
     await ledger().getByRole('button', { name: 'Add a string beside it' }).click();
-    await balance().getByText(/= out 150 W/).waitFor();
+    await balance()
+      .getByText(/= out 150 W/)
+      .waitFor();
     await find('C1');
     await fill('Length', '9 m');
     await allKept(page);
@@ -78,7 +85,11 @@ describe.sequential('the first ten minutes', () => {
     await find('C1');
     await fill('Length', '1 m');
     await goStage('Findings');
-    await page.getByRole('main').getByText(/No finding to|No finding in/).first().waitFor();
+    await page
+      .getByRole('main')
+      .getByText(/No finding to|No finding in/)
+      .first()
+      .waitFor();
     await shoot(page, '05-fixed');
   });
 
@@ -86,7 +97,11 @@ describe.sequential('the first ten minutes', () => {
     await page.getByRole('button', { name: 'Undo' }).click();
     await page.getByRole('main').getByText(/share/i).first().waitFor();
     await page.getByRole('button', { name: 'Redo' }).click();
-    await page.getByRole('main').getByText(/No finding in/).first().waitFor();
+    await page
+      .getByRole('main')
+      .getByText(/No finding in/)
+      .first()
+      .waitFor();
     await allKept(page);
   });
 
@@ -115,7 +130,9 @@ describe.sequential('the first ten minutes', () => {
       mimeType: 'application/json',
       buffer: Buffer.from(text),
     });
-    await balance().getByText(/= out 150 W/).waitFor();
+    await balance()
+      .getByText(/= out 150 W/)
+      .waitFor();
     await shoot(page, '07-reopened');
   });
 

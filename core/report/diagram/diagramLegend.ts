@@ -4,7 +4,6 @@ import { KIND_WORDS } from '../../diagram/kindWords.ts';
 import type { Shape } from '../../diagram/shape.ts';
 import * as symbols from '../../diagram/symbols.ts';
 import { label, line, U } from '../../diagram/symbols.ts';
-import type { WiringGraph } from '../../diagram/wiringGraph.ts';
 import { textWidthPt, WORD_PT } from '../../diagram/wiringWords.ts';
 import type { Part } from '../../job/part.ts';
 
@@ -42,11 +41,9 @@ const LEGEND: readonly LegendEntry[] = [
 
 /** A reader then needs no standard beside the sheet. */
 export function drawLegend(
-  graph: WiringGraph,
+  kinds: ReadonlySet<Part['kind']>,
   { widthPt, y, isDivided }: { readonly widthPt: number; readonly y: number; readonly isDivided: boolean },
 ): readonly Shape[] {
-  const parts = [...graph.links.map(({ part }) => part), ...[...graph.bars.values()].flat()];
-  const kinds = new Set(parts.map(({ kind }) => kind));
   let x = 4;
   return LEGEND.filter(({ isShown }) => isShown(kinds, isDivided)).flatMap(({ word, draw }) => {
     const entry = [

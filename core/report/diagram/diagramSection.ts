@@ -11,6 +11,7 @@ import { cablesOfPair } from '../../job/part.ts';
 import type { Block, Cell, FigureBlock, Paper, TableBlock } from '../document.ts';
 import type { Band } from './drawWiring.ts';
 import { drawWiring, sheetHeightPt } from './drawWiring.ts';
+import { laidSheets } from './laidSheets.ts';
 
 type Orientation = 'portrait' | 'landscape';
 
@@ -29,17 +30,28 @@ const MOST_SHEETS = 4;
 export function diagramSection(job: CheckedJob, paper: Paper): readonly Block[] {
   const drawn = diagram(job, paper);
   const heading: Block = { kind: 'heading', level: 1, text: 'One-line diagram' };
-  if ('reason' in drawn) {
+  if (!('reason' in drawn)) return turned(drawn.orientation, [heading, small(HOW_TO_READ), ...drawn.figures]);
+  const figures = job.parts.length === 0 ? undefined : laidSheets(job, roomBelow(ROOM_PT[paper].landscape));
+  if (figures === undefined) {
     const text = `No diagram is drawn: ${drawn.reason}. The connections stand in the table instead.`;
     return [heading, { kind: 'paragraph', tone: 'body', text }, connectionTable(job)];
   }
-  const section: readonly Block[] = [
-    heading,
-    { kind: 'paragraph', tone: 'small', text: HOW_TO_READ },
-    ...drawn.figures,
-  ];
-  if (drawn.orientation === 'portrait') return section;
-  return [{ kind: 'pageBreak', orientation: 'landscape' }, ...section, { kind: 'pageBreak', orientation: 'portrait' }];
+  const why = `Drawn as it is laid out on the screen, because it does not go into the plan in rows: ${drawn.reason}.`;
+  // Many sheets are hard to follow by eye alone.
+  const table = figures.length > MOST_SHEETS ? [connectionTable(job)] : [];
+  return turned('landscape', [heading, small(`${HOW_TO_READ} ${why}`), ...figures, ...table]);
+}
+
+/** Two more lines above the drawing say why it is drawn so. */
+function roomBelow({ width, height }: { readonly width: number; readonly height: number }) {
+  return { width, height: height - 24 };
+}
+function small(text: string): Block {
+  return { kind: 'paragraph', tone: 'small', text };
+}
+function turned(orientation: Orientation, section: readonly Block[]): readonly Block[] {
+  if (orientation === 'portrait') return section;
+  return [{ kind: 'pageBreak', orientation }, ...section, { kind: 'pageBreak', orientation: 'portrait' }];
 }
 
 const HOW_TO_READ =

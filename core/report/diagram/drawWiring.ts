@@ -32,6 +32,8 @@ export function sheetHeightPt(rows: number): number {
 
 /** One figure a band, drawn to the same scale. */
 export function drawWiring(graph: WiringGraph, layout: Layout, bands: readonly Band[]): readonly FigureBlock[] {
+  const parts = [...graph.links.map(({ part }) => part), ...[...graph.bars.values()].flat()];
+  const kinds = new Set(parts.map(({ kind }) => kind));
   return bands.map((band, index) => {
     const isOneOf = bands.length === 1 ? '' : `, sheet ${index + 1} of ${bands.length}`;
     return {
@@ -42,7 +44,7 @@ export function drawWiring(graph: WiringGraph, layout: Layout, bands: readonly B
       height: sheetHeightPt(band.to - band.from),
       shapes: [
         ...new SheetOfRows(layout, band).shapes(),
-        ...drawLegend(graph, {
+        ...drawLegend(kinds, {
           widthPt: layout.width,
           y: sheetHeightPt(band.to - band.from) - 8,
           isDivided: bands.length > 1,

@@ -1,7 +1,7 @@
 /** The verdicts, worst first; what could not be judged and the figure it waits for; what was compared and held. */
 import Box from '@mui/material/Box';
 import Typography from '@mui/material/Typography';
-import { type ReactElement, useMemo, useRef } from 'react';
+import { type ReactElement, useEffect, useMemo, useRef } from 'react';
 import type { CheckReport } from '../../../core/api.ts';
 import { Folded } from '../../controls/Folded.tsx';
 import { useOpenJob } from '../../state/openJob.ts';
@@ -18,6 +18,11 @@ export function FindingsStage(): ReactElement {
   const answers = useOpenJob(({ answers }) => answers);
   const trouble = useOpenJob(({ solverTrouble }) => solverTrouble);
   const count = useRef<HTMLOutputElement>(null);
+  const assumed = useOpenJob(({ job }) => job.practiceAssumed === true);
+  // The choice of a rule book goes once it is made: whoever was in it goes on at the head of the list.
+  useEffect(() => {
+    if (!assumed && document.activeElement === document.body) count.current?.focus();
+  }, [assumed]);
   const points = useMemo(() => [...(answers?.points.values() ?? [])], [answers]);
   return (
     <Box sx={{ height: '100%', minHeight: 0, overflow: 'auto', padding: '1rem 1.5rem 2rem' }}>
@@ -38,7 +43,7 @@ export function FindingsStage(): ReactElement {
           There are no new answers: {trouble}
         </Box>
       )}
-      <NoPractice />
+      {assumed && <NoPractice />}
       <CaseTrouble points={points} />
       {answers !== null && <Verdicts report={answers.report} onMade={() => count.current?.focus()} />}
     </Box>
@@ -92,9 +97,7 @@ export function countWords(report: CheckReport): string {
 }
 
 /** A job that names no practice is judged by no book: that comes first, with the choice at hand. */
-function NoPractice(): ReactElement | null {
-  const assumed = useOpenJob(({ job }) => job.practiceAssumed === true);
-  if (!assumed) return null;
+function NoPractice(): ReactElement {
   return (
     <Box component="section" aria-labelledby="no-practice" sx={{ mb: '1rem', maxWidth: '60rem' }}>
       <Typography component="h2" variant="h2" id="no-practice">

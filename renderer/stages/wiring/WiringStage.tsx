@@ -5,10 +5,12 @@ import { ReactFlowProvider } from '@xyflow/react';
 import { type ReactElement, useEffect } from 'react';
 import { VoltWalk } from '../../charts/VoltWalk.tsx';
 import { Canvas } from '../../diagram/Canvas.tsx';
+import { MIDDLE } from '../../diagram/flowNodes.ts';
 import { DrawingMenus } from '../../diagram/Menus.tsx';
 import { Palette } from '../../diagram/Palette.tsx';
 import { Toolbar } from '../../diagram/Toolbar.tsx';
 import { useView } from '../../diagram/view.ts';
+import { useRoom } from '../../frame/useRoom.ts';
 import { useOpenJob } from '../../state/openJob.ts';
 
 const Stage = styled('div')({
@@ -45,11 +47,11 @@ const Note = styled('div')({
 });
 
 export function WiringStage(): ReactElement {
-  const isNarrow = useMediaQuery('(max-width: 1100px)', { noSsr: true });
   const showsWalk = useView((view) => view.walk);
-  useEffect(() => useView.setState({ palette: !isNarrow }), [isNarrow]);
+  useFolding();
   return (
-    <ReactFlowProvider>
+    <ReactFlowProvider nodeOrigin={MIDDLE}>
+      <h1 className="only-read">Wiring</h1>
       <Stage>
         <div className="tools">
           <Toolbar />
@@ -71,6 +73,17 @@ export function WiringStage(): ReactElement {
       <DrawingMenus />
     </ReactFlowProvider>
   );
+}
+
+/** Where room is short, palette and volt walk begin folded, so that the drawing has it. */
+function useFolding(): void {
+  const isNarrow = useMediaQuery('(max-width: 1100px)', { noSsr: true });
+  const isTight = useRoom() === 'tight';
+  useEffect(() => {
+    const foldedFor = `${isNarrow ? 'narrow' : 'wide'}${isTight ? ', tight' : ''}`;
+    if (useView.getState().foldedFor === foldedFor) return;
+    useView.setState({ foldedFor, palette: !isNarrow && !isTight, walk: !isTight });
+  }, [isNarrow, isTight]);
 }
 
 function Empty(): ReactElement | null {
