@@ -6,6 +6,3 @@ import { devices } from './devices/devices.ts';
 import { practices } from './practices/practices.ts';
 
 export const tables: Tables = { conductors, chemistry: chemistryTables, devices, practices };
-
-export { examples } from './examples/index.ts';
-export { starterPatterns, starters } from './starters.ts';

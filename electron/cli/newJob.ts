@@ -1,6 +1,6 @@
 /** `new`: a starter job from one of the invented examples. */
 import { nearestNameHint, parseJob, quoted } from '../../core/api.ts';
-import { starters } from '../../data/index.ts';
+import { starters } from '../../data/starters.ts';
 import type { Io } from './io.ts';
 import { jsonText } from './jsonText.ts';
 import type { CommandOptions } from './options.ts';

@@ -2,7 +2,8 @@
 /// <reference lib="webworker" />
 import type { CheckedJob, Draft, OperatingCase, OperatingPoint } from '../../core/api.ts';
 import { caseById, checkJob, operatingPoint, runChecks } from '../../core/api.ts';
-import { starters, tables } from '../../data/index.ts';
+import { tables } from '../../data/index.ts';
+import { starters } from '../../data/starters.ts';
 import type { SolveAsk, SolveReply } from './solveMessages.ts';
 
 let isAsked = false;

@@ -1,7 +1,8 @@
 /** What a new job can start from: one example for each usual pattern, each with a bad lug to look at. */
 import { describe, expect, it } from 'vitest';
 import { runChecks, seedBadLug } from '../../core/api.ts';
-import { starterPatterns, starters, tables } from '../../data/index.ts';
+import { tables } from '../../data/index.ts';
+import { starterPatterns, starters } from '../../data/starters.ts';
 import { edited, read } from './draftExamples.ts';
 
 describe('starters', () => {

@@ -21,7 +21,8 @@ import {
   runChecks,
 } from '../../core/api.ts';
 import { examples } from '../../data/examples/index.ts';
-import { starters, tables } from '../../data/index.ts';
+import { tables } from '../../data/index.ts';
+import { starters } from '../../data/starters.ts';
 
 const pages = import.meta.glob<string>('./*.check.md', { query: '?raw', import: 'default', eager: true });
 const rewrite = process.env['OHMWRIGHT_WRITE_GOLDEN'] === '1';

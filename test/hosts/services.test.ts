@@ -3,7 +3,7 @@ import { join } from 'node:path';
 import Papa from 'papaparse';
 import { describe, expect, test } from 'vitest';
 import type { HostAnswer, HostAsk, HostEvent, HostMethod, HostValue, KeptJob, Trouble } from '../../core/host.ts';
-import { starters } from '../../data/index.ts';
+import { starters } from '../../data/starters.ts';
 import { dispatch } from '../../electron/channel/dispatch.ts';
 import { schemas } from '../../electron/channel/schemas.ts';
 import { fileStem } from '../../electron/services/fileName.ts';
