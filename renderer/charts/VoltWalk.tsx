@@ -188,6 +188,11 @@ function Steps({ shape, width }: { readonly shape: WalkShape; readonly width: nu
       aria-label="Steps of the volt walk"
     >
       <Axis shape={shape} width={width} />
+      {shape.steps
+        .filter(({ step }) => selected.includes(ownerOf(step.part)))
+        .map(({ index, x, width: column }) => (
+          <rect key={index} className="lit" x={x} y={2} width={column} height={HEIGHT - 4} />
+        ))}
       <path className="line" d={linePath(shape.steps)} />
       {shape.steps.map((each) => (
         <StepMark

@@ -149,7 +149,11 @@ function livePart(part: Part, point: OperatingPoint | undefined, severity: Sever
 /** The load for which there is no operating point. */
 function askingTooMuch(part: Part, severity: Severity | null): LivePart {
   const state = 'asks for more than can be delivered';
-  return { ...livePart(part, undefined, severity), state, spoken: spokenOf(part, {}, state, severity) };
+  return {
+    ...livePart(part, undefined, severity),
+    state: 'asks too much',
+    spoken: spokenOf(part, {}, state, severity),
+  };
 }
 
 function currentsOf(part: Part, point: OperatingPoint | undefined): Readonly<Record<string, LiveCurrent>> {

@@ -308,6 +308,7 @@ describe.sequential('with the weekend hut open', () => {
     // Nothing is told of what does not exist: no amps and no volts, and the load that asks too much says so.
     expect(await gripOf(page, 'PUMP').getAttribute('aria-label')).toMatch(/, asks for more than can be delivered/);
     expect(await gripOf(page, 'LIGHTS').getAttribute('aria-label')).not.toMatch(/takes|unfed/);
+    await page.locator('.react-flow__node').getByText('asks too much').waitFor();
     expect(await page.locator('.drawing .volts').count()).toBe(0);
     await shoot(page, 'wiring-collapse');
   });
