@@ -19,13 +19,13 @@ export default defineConfig({
         },
       },
       {
-        // A real browser wants the machine for itself: one file at a time, after all else.
+        // Real browsers want the machine for themselves: after all else, two at a time.
         test: {
           ...common,
           name: 'screens',
           include: ['test/screens/**/*.test.ts'],
           testTimeout: 120_000,
-          fileParallelism: false,
+          maxWorkers: 2,
           sequence: { groupOrder: 1 },
         },
       },

@@ -11,8 +11,6 @@ import { WireRoom } from './wireRoom.ts';
 
 /** How far a symbol reaches, leads included, a hair less: what touches its edge does not cross it. */
 const HAIR = 1;
-/** Beside a device, where a wire would run along its frame. */
-const EDGE = 8;
 
 /** The surroundings of a drawing as it was laid: given to the next laying, only wires near what has changed are laid anew. */
 export interface LaidSurroundings extends Surroundings {
@@ -56,9 +54,7 @@ export function roomFor(parts: readonly Part[], positions: Positions): WireRoom 
     if (at === undefined) continue;
     if (part.kind === 'busbar') room.addBar(barOf(part, at, placeOf), part.junctions);
     else if (!isConductor(part)) {
-      const box = symbolBox(part, at, placeOf);
-      room.addSymbol(box);
-      if ('plus' in part) room.addEdge({ ...box, x1: box.x1 - EDGE, x2: box.x2 + EDGE });
+      room.addSymbol(symbolBox(part, at, placeOf));
       // The place where a lead begins is part of the symbol: a wire of another junction there would seem joined to it.
       for (const terminal of terminalPlaces(part, at, placeOf)) room.addDot(terminal, terminal.junction);
     }

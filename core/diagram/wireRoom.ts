@@ -15,13 +15,11 @@ export const CROSSING_DOT = 1e6;
 const CROSSING_SYMBOL = 1e8;
 const BEND = 1000;
 const PLAIN_CROSSING = 150;
-/** A wire right beside a symbol. */
-const NEAR = 500;
 const MOST_PLAIN_CROSSINGS = 18;
 const PER_LENGTH = 1 / 20;
 
-/** Of what it is; `edge` is the room right beside a symbol, `bar` lies where its taps are, `line` is a stretch of a wire. */
-type Kind = 'symbol' | 'edge' | 'dot' | 'bar' | 'line';
+/** Of what it is; `bar` lies where its taps are, `line` is a stretch of a wire. */
+type Kind = 'symbol' | 'dot' | 'bar' | 'line';
 interface Thing extends Box {
   readonly kind: Kind;
   readonly junctions: readonly JunctionId[];
@@ -51,9 +49,6 @@ export class WireRoom {
 
   addSymbol(box: Box): void {
     this.add({ ...box, kind: 'symbol', junctions: [], owner: '', met: 0 });
-  }
-  addEdge(box: Box): void {
-    this.add({ ...box, kind: 'edge', junctions: [], owner: '', met: 0 });
   }
   addDot({ x, y }: Point, junction: JunctionId): void {
     this.add({ x1: x, y1: y, x2: x, y2: y, kind: 'dot', junctions: [junction], owner: '', met: 0 });
@@ -185,7 +180,6 @@ export function boxOf(a: Point, b: Point): Box {
 }
 
 function weightOf(thing: Thing, stretch: Box, { owner, junction }: WireEnds): number {
-  if (thing.kind === 'edge') return overlap(thing, stretch, 0) ? NEAR : 0;
   if (thing.kind === 'symbol') return overlap(thing, stretch, 0) ? CROSSING_SYMBOL : 0;
   if (!overlap(thing, stretch, CLEAR)) return 0;
   const isOwn = thing.junctions.includes(junction);

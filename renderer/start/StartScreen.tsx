@@ -5,6 +5,7 @@ import Typography from '@mui/material/Typography';
 import { lazy, type ReactElement, Suspense, useRef, useState } from 'react';
 import { enter, openPicked } from '../frame/openings.ts';
 import { PreferencesDialog } from '../frame/PreferencesDialog.tsx';
+import { useRoom } from '../frame/useRoom.ts';
 import { useChannel, useSession } from '../state/session.ts';
 import { JobList } from './JobList.tsx';
 import { StartSmall } from './StartSmall.tsx';
@@ -13,6 +14,7 @@ import { StartSmall } from './StartSmall.tsx';
 const Patterns = lazy(async () => ({ default: (await import('./Patterns.tsx')).Patterns }));
 
 export function StartScreen(): ReactElement {
+  const isTight = useRoom() === 'tight';
   return (
     <Box component="main" sx={{ height: '100%', overflow: 'auto' }}>
       <Box
@@ -24,7 +26,7 @@ export function StartScreen(): ReactElement {
           display: 'grid',
           columnGap: 5,
           rowGap: 3,
-          gridTemplateColumns: { xs: 'minmax(0, 1fr)', md: 'minmax(0, 5fr) minmax(0, 4fr)' },
+          gridTemplateColumns: isTight ? 'minmax(0, 1fr)' : 'minmax(0, 5fr) minmax(0, 4fr)',
         }}
       >
         <Box sx={{ gridColumn: '1 / -1' }}>

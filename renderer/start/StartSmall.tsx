@@ -10,6 +10,7 @@ import { LengthField } from '../controls/LengthField.tsx';
 import { QuantityField } from '../controls/QuantityField.tsx';
 import { choiceWord } from '../controls/words.ts';
 import { startDraft } from '../frame/openings.ts';
+import { useRoom } from '../frame/useRoom.ts';
 import { usePreferences } from '../state/preferences.ts';
 import { useChannel } from '../state/session.ts';
 import { answerOf } from './answerOf.ts';
@@ -37,6 +38,7 @@ const FIRST: SmallJob = {
 
 export function StartSmall(): ReactElement {
   const channel = useChannel();
+  const isTight = useRoom() === 'tight';
   const units = usePreferences((preferences) => preferences.units);
   const [small, setSmall] = useState<SmallJob>(() => ({ ...FIRST, practice: units === 'us' ? 'us-land' : 'iec-land' }));
   const answer = useMemo(() => answerOf(small), [small]);
@@ -55,7 +57,7 @@ export function StartSmall(): ReactElement {
       <Box
         sx={{
           display: 'grid',
-          gridTemplateColumns: { xs: 'minmax(0, 1fr)', sm: 'minmax(0, 11fr) minmax(0, 10fr)' },
+          gridTemplateColumns: isTight ? 'minmax(0, 1fr)' : 'minmax(0, 11fr) minmax(0, 10fr)',
           gap: 3,
         }}
       >

@@ -31,7 +31,10 @@ export function themeFrom(tokens: Tokens, mode: 'light' | 'dark', calm: boolean)
     },
     transitions: calm ? { create: () => 'none' } : {},
     components: {
-      MuiButtonBase: { defaultProps: { disableRipple: true }, styleOverrides: { root: { fontFamily: 'inherit' } } },
+      MuiButtonBase: {
+        defaultProps: { disableRipple: true },
+        styleOverrides: { root: { fontFamily: 'inherit', fontSize: 'inherit' } },
+      },
       MuiButton: {
         defaultProps: { disableElevation: true, size: 'small' },
         styleOverrides: {

@@ -177,12 +177,6 @@ describe('what does not go into the plan in rows is drawn as it is laid out on t
     // 3 parts, and 99 branches whose run is two conductors.
     expect(table?.kind === 'table' ? table.rows.length : 0).toBe(3 + 99 * 4);
   });
-
-  test('a job larger than anybody would follow from sheet to sheet is listed only', () => {
-    const huge = largeJob(3000);
-    expect(figureOf(huge)).toBeUndefined();
-    expect(reasonOf(huge)).toContain('No diagram is drawn');
-  });
 });
 
 test('a drawing of many rows is divided into sheets on which every device stands once', () => {

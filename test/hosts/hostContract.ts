@@ -196,7 +196,7 @@ function filesAndPapers(host: HostNow): void {
   test('only a file of this session is shown', async () => {
     const { can } = await ask(host().channel, 'host.about', {});
     const code = await troubleOf(host().channel, 'files.show', { path: '/etc/hostname' });
-    expect(code).toBe(can.showFile ? 'refused' : 'cannot');
+    expect(code).toBe(can.showFile ? 'not-found' : 'cannot');
   });
 
   test('the report comes as a PDF, and is written whole', async () => {

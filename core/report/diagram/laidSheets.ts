@@ -24,6 +24,8 @@ const SLACK_PT = 60;
 const CLEAR_PT = 5;
 /** More sheets than this are no drawing to find one's way in. */
 const MOST_SHEETS = 60;
+/** More parts than this need more sheets than that. */
+const MOST_PARTS = 1000;
 
 interface Room {
   readonly width: number;
@@ -32,6 +34,7 @@ interface Room {
 
 /** One figure a sheet; `undefined` where more sheets are needed than anybody would follow. */
 export function laidSheets(job: CheckedJob, room: Room): readonly FigureBlock[] | undefined {
+  if (job.parts.length > MOST_PARTS) return undefined;
   const most = { width: room.width / SMALLEST, height: room.height / SMALLEST };
   const drawings = SCALES.map((scale) => drawAsLaid(job, scale));
   const sheetsOf = ({ box }: LaidDrawing): number => countOf(box, most).columns * countOf(box, most).rows;
