@@ -34,12 +34,26 @@ export interface Live {
 
 export const useLive = create<Live>()(() => ({ parts: new Map(), volts: new Map(), largestA: 0, isOld: false }));
 
+/** Answers come within a few frames; only figures that have stood longer than this beside a newer drawing are shown as old, ms. */
+const OLD_AFTER_MS = 400;
+
 /** Follows the open job for as long as the drawing is shown. */
 export function followAnswers(): () => void {
+  let growingOld: ReturnType<typeof setTimeout> | undefined;
   refresh(useOpenJob.getState());
-  return useOpenJob.subscribe((now, before) => {
-    if (now.answers !== before.answers || now.caseId !== before.caseId || now.job !== before.job) refresh(now);
+  const stop = useOpenJob.subscribe((now, before) => {
+    if (now.answers !== before.answers || now.caseId !== before.caseId) {
+      clearTimeout(growingOld);
+      refresh(now);
+    } else if (now.job !== before.job) {
+      clearTimeout(growingOld);
+      growingOld = setTimeout(() => refresh(useOpenJob.getState()), OLD_AFTER_MS);
+    }
   });
+  return () => {
+    clearTimeout(growingOld);
+    stop();
+  };
 }
 
 function refresh({ job, answers, caseId, generation }: OpenJob): void {

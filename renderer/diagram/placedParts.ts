@@ -1,16 +1,25 @@
 /** The drawing of the open job: where everything stands and what is drawn for each part, with the hand's move on top. */
 import { useMemo, useState } from 'react';
-import type { CheckedJob, DrawnPart, JunctionId, Part, PartId, Point, Positions } from '../../core/api.ts';
+import type {
+  CheckedJob,
+  DrawnPart,
+  JunctionId,
+  LaidSurroundings,
+  Part,
+  PartId,
+  Point,
+  Positions,
+} from '../../core/api.ts';
 import {
   drawPart,
   EARTH,
-  entriesOf,
   freeSide,
   junctionsOf,
   minusSide,
   moveBy,
   positionsOf,
   ratingWords,
+  surroundingsOf,
 } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import { type Drag, useView } from './view.ts';
@@ -49,18 +58,69 @@ export interface Drawing {
 export function useDrawing(): Drawing {
   const job = useOpenJob((open) => open.job);
   const drag = useView((view) => view.drag);
-  const positions = useMemo(() => positionsOf(job), [job]);
+  const [geometry] = useState(() => new Geometry());
+  const positions = useMemo(() => geometry.positionsOf(job), [geometry, job]);
   const [parts] = useState(() => new Kept<PlacedPart>());
   const [junctions] = useState(() => new Kept<PlacedJunction>());
   return useMemo(() => {
     const shown = withDrag(job, positions, drag);
+    const drawnOf = geometry.drawnOf(job, shown);
     return {
       job,
       positions,
-      parts: parts.of(placeParts(job, shown), ({ part }) => part.id),
+      parts: parts.of(placeParts(job, shown, drawnOf), ({ part }) => part.id),
       junctions: junctions.of(placeJunctions(job, shown), ({ id }) => id),
     };
-  }, [job, positions, drag, parts, junctions]);
+  }, [job, positions, drag, parts, junctions, geometry]);
+}
+
+/**
+ * Places and lines depend on what touches what and where it was put, and on no figure: while a person types lengths and ratings they
+ * are found once.
+ */
+class Geometry {
+  private shape = '';
+  private positions: Positions | null = null;
+  private shown: Positions | null = null;
+  private around: LaidSurroundings | undefined;
+  private drawn: ReadonlyMap<PartId, DrawnPart> = new Map();
+
+  positionsOf(job: CheckedJob): Positions {
+    const shape = shapeOf(job);
+    if (this.positions === null || shape !== this.shape) {
+      this.shape = shape;
+      this.positions = positionsOf(job);
+    }
+    return this.positions;
+  }
+
+  /** The same places in the same shape give the same lines. */
+  drawnOf(job: CheckedJob, shown: Positions): ReadonlyMap<PartId, DrawnPart> {
+    if (this.shown !== shown) {
+      this.shown = shown;
+      const around = surroundingsOf(job.parts, shown, this.around);
+      this.around = around;
+      this.drawn = new Map(
+        job.parts.flatMap((part) => {
+          const at = shown.parts.get(part.id);
+          return at === undefined ? [] : [[part.id, drawPart(part, at, around)] as const];
+        }),
+      );
+    }
+    return this.drawn;
+  }
+}
+
+/** All that places and lines depend on. */
+function shapeOf(job: CheckedJob): string {
+  const parts = job.parts.map((part) => [
+    part.id,
+    part.kind,
+    part.at,
+    'state' in part ? part.state : null,
+    ...junctionsOf(part),
+  ]);
+  return JSON.stringify([parts, [...job.junctions].map(([id, { at }]) => [id, at])]);
 }
 
 /** Gives back the objects of the last time wherever nothing of them has changed. */
@@ -86,16 +146,16 @@ export function withDrag(job: CheckedJob, positions: Positions, drag: Drag | nul
   };
 }
 
-function placeParts(job: CheckedJob, positions: Positions): readonly PlacedPart[] {
-  const placeOf = (junction: JunctionId): Point | undefined => positions.junctions.get(junction);
-  const entries = entriesOf(job.parts, placeOf);
-  const around = { placeOf, entryOf: (junction: JunctionId) => entries.get(junction) ?? 'any' } as const;
+function placeParts(
+  job: CheckedJob,
+  positions: Positions,
+  drawnOf: ReadonlyMap<PartId, DrawnPart>,
+): readonly PlacedPart[] {
   const far = farEnds(job);
   const low = minusSide(job);
   return job.parts.flatMap((part): readonly PlacedPart[] => {
-    const at = positions.parts.get(part.id);
-    if (at === undefined) return [];
-    const drawn = drawPart(part, at, around);
+    const [at, drawn] = [positions.parts.get(part.id), drawnOf.get(part.id)];
+    if (at === undefined || drawn === undefined) return [];
     const rating = ratingWords(part);
     const side =
       'plus' in part
@@ -106,9 +166,20 @@ function placeParts(job: CheckedJob, positions: Positions): readonly PlacedPart[
         : 'right';
     const state = 'state' in part ? part.state : '';
     const isLow = part.kind === 'busbar' && part.junctions.some((each) => low.has(each));
-    const key = JSON.stringify([part.kind, part.label, rating, state, at, side, isLow, drawn]);
+    const key = JSON.stringify([part.kind, part.label, rating, state, at, side, isLow, looksOf(drawn)]);
     return [{ key, part, at, drawn, side, rating, isLow }];
   });
+}
+
+const looks = new WeakMap<DrawnPart, string>();
+/** Two drawn parts look alike where these texts are the same. */
+function looksOf(drawn: DrawnPart): string {
+  let text = looks.get(drawn);
+  if (text === undefined) {
+    text = JSON.stringify(drawn);
+    looks.set(drawn, text);
+  }
+  return text;
 }
 
 /** The parts that each device shares a junction with. */

@@ -4,6 +4,7 @@ import { type ClipboardEvent, type KeyboardEvent, useCallback } from 'react';
 import type { PartId, Point } from '../../core/api.ts';
 import { GRID, junctionsOf } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
+import { useSession } from '../state/session.ts';
 import { copiedText, duplicateSelected, goToLedger, nudge, paste, removeSelected, selectAll } from './edits.ts';
 import { junctionOfNode, partOfNode } from './flowNodes.ts';
 import { focusGrip } from './Grip.tsx';
@@ -95,6 +96,8 @@ function plainKey(event: KeyboardEvent<HTMLElement>, { zoomIn, zoomOut, fitView 
     case 'Enter':
       return () => {
         takeFocused(event);
+        // Where it stands beside the stage already, calling it changes nothing.
+        useSession.getState().callLedger(true);
         goToLedger();
       };
     case ' ':

@@ -1,7 +1,7 @@
 /** The frame round every stage: spine at the left, stage, ledger where it helps, top bar, balance line at the foot. */
 import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
-import { lazy, type ReactElement, Suspense, useRef, useState } from 'react';
+import { lazy, type ReactElement, Suspense, useRef } from 'react';
 import { useFocusField } from '../controls/useFocusField.ts';
 import { Ledger } from '../ledger/Ledger.tsx';
 import { WiringStage } from '../stages/wiring/WiringStage.tsx';
@@ -26,14 +26,15 @@ const HandoverStage = lazy(async () => ({
 export function Frame(): ReactElement {
   const stage = useSession((session) => session.stage);
   const room = useRoom();
-  const [called, setCalled] = useState(false);
+  const called = useSession((session) => session.isLedgerCalled);
+  const callLedger = useSession((session) => session.callLedger);
   const hasLedger = stage === 'wiring' && (room !== 'tight' || called);
   return (
     <Box sx={{ display: 'grid', height: '100%', ...places(room, hasLedger) }}>
       <TopBar room={room} />
       <Spine room={room}>
         {room === 'tight' && stage === 'wiring' && (
-          <Button aria-expanded={called} onClick={() => setCalled(!called)} sx={{ ml: 'auto' }}>
+          <Button aria-expanded={called} onClick={() => callLedger(!called)} sx={{ ml: 'auto' }}>
             Ledger
           </Button>
         )}

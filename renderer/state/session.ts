@@ -16,6 +16,9 @@ export interface Session {
   readonly focusField: string | null;
   /** What went wrong last, until it is read. */
   readonly trouble: Trouble | null;
+  /** Where there is no room for it beside the stage, the ledger is shown only when called. */
+  readonly isLedgerCalled: boolean;
+  readonly callLedger: (isCalled: boolean) => void;
   readonly goStage: (stage: Stage, focusField?: string) => void;
   readonly tell: (trouble: Trouble | null) => void;
 }
@@ -27,6 +30,8 @@ export const useSession = create<Session>()((set) => ({
   stage: 'wiring',
   focusField: null,
   trouble: null,
+  isLedgerCalled: false,
+  callLedger: (isLedgerCalled) => set({ isLedgerCalled }),
   goStage: (stage, focusField) => set({ stage, focusField: focusField ?? null }),
   tell: (trouble) => set({ trouble }),
 }));

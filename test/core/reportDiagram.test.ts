@@ -166,13 +166,10 @@ describe('what does not go into the plan in rows is drawn as it is laid out on t
     }
   });
 
-  test('a job too large for a few sheets is drawn on many, with its connections in a table', () => {
+  test('a job that takes more sheets than anybody would follow is listed only', () => {
     const large = checked(largeJob(300));
     const blocks = buildReport({ ...cabinInput(), job: large, points: [point(large, { case: 'as-drawn' })] }).blocks;
-    const figures = blocks.filter((block) => block.kind === 'figure');
-    expect(figures.length).toBeGreaterThan(4);
-    const texts = new Set(textsOf(figures));
-    for (const { id } of large.parts) expect([id, texts.has(id)]).toEqual([id, true]);
+    expect(blocks.some(({ kind }) => kind === 'figure')).toBe(false);
     const table = blocks.find((block) => block.kind === 'table' && block.caption === 'Connections');
     // 3 parts, and 99 branches whose run is two conductors.
     expect(table?.kind === 'table' ? table.rows.length : 0).toBe(3 + 99 * 4);

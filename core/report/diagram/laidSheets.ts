@@ -23,9 +23,9 @@ const SLACK_PT = 60;
 /** Between a cut and what it should not cut. */
 const CLEAR_PT = 5;
 /** More sheets than this are no drawing to find one's way in. */
-const MOST_SHEETS = 60;
+const MOST_SHEETS = 8;
 /** More parts than this need more sheets than that. */
-const MOST_PARTS = 1000;
+const MOST_PARTS = 250;
 
 interface Room {
   readonly width: number;
