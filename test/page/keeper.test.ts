@@ -91,7 +91,7 @@ describe('the keeper', () => {
     await vi.waitFor(() => expect(statuses.at(-1)?.status).toBe('trouble'));
     await new Promise((resolve) => setTimeout(resolve, 50));
     expect(calls).toHaveLength(1);
-    keeper.continueFrom(9);
+    await keeper.continueFrom(9);
     await vi.waitFor(() => expect(statuses.at(-1)).toEqual({ status: 'kept' }));
     expect(calls[1]?.ask).toMatchObject({ after: 9 });
   });
