@@ -10,12 +10,21 @@ export default defineConfig({
     reporters: countsFile === undefined ? ['default'] : ['default', ['json', { outputFile: countsFile }]],
     projects: [
       {
+        // Pure code leaves nothing behind: its files share what they have loaded.
         test: {
           ...common,
-          name: 'node',
-          include: ['test/**/*.test.ts'],
-          exclude: ['test/screens/**'],
+          name: 'pure',
+          include: ['test/{architecture,core,golden,hand,outside,page,physics}/**/*.test.ts'],
+          isolate: false,
           sequence: { groupOrder: 0 },
+        },
+      },
+      {
+        test: {
+          ...common,
+          name: 'hosts',
+          include: ['test/hosts/**/*.test.ts'],
+          sequence: { groupOrder: 1 },
         },
       },
       {
@@ -26,7 +35,7 @@ export default defineConfig({
           include: ['test/screens/**/*.test.ts'],
           testTimeout: 120_000,
           maxWorkers: 2,
-          sequence: { groupOrder: 1 },
+          sequence: { groupOrder: 2 },
         },
       },
     ],

@@ -20,6 +20,7 @@ import {
   type ReactElement,
   useCallback,
   useEffect,
+  useLayoutEffect,
   useMemo,
   useRef,
   useState,
@@ -40,9 +41,10 @@ import { openGroundMenu, openMenuOf } from './openMenus.ts';
 import { PartNode } from './PartNode.tsx';
 import { type Drawing, useDrawing } from './placedParts.ts';
 import { useDiagramKeys } from './useDiagramKeys.ts';
+import { useFit } from './useFit.ts';
 import { useShowLit } from './useLit.ts';
 import { useLongPress } from './useLongPress.ts';
-import { FIT_WHOLE, useView } from './view.ts';
+import { useView } from './view.ts';
 import { Wires } from './Wires.tsx';
 
 const nodeTypes = { part: PartNode, conductor: ConductorNode, bar: BarNode, junction: JunctionNode };
@@ -61,7 +63,7 @@ export function Canvas(): ReactElement {
   const flow = useReactFlow();
   const pressed = useLongPress();
   useEffect(followAnswers, []);
-  const onTouched = useFirstFit(nodes.length);
+  const onTouched = useFirstFit(nodes);
   const bringIntoView = useShowLit(drawing.positions);
   const showFocused = ({ target }: FocusEvent<HTMLElement>): void => {
     if (!target.matches('.grip:focus-visible')) return;
@@ -190,17 +192,21 @@ function useNodes(drawing: Drawing): FlowNode[] {
 }
 
 /** Fits the drawing into view when a job is opened, and again as its room changes, until the person has moved the view. */
-function useFirstFit(count: number): () => void {
-  const { fitView } = useReactFlow();
+function useFirstFit(nodes: readonly FlowNode[]): () => void {
+  const fitWhole = useFit();
+  const standing = useRef(nodes);
+  useLayoutEffect(() => {
+    standing.current = nodes;
+  }, [nodes]);
   const key = useOpenJob((job) => job.key);
   const width = useStore((flow) => flow.width);
   const height = useStore((flow) => flow.height);
   const touched = useRef<string | null>(null);
-  const isThere = count > 0 && width > 0;
+  const isThere = nodes.length > 0 && width > 0;
   const room = `${String(width)} × ${String(height)}`;
   useEffect(() => {
-    if (isThere && room !== '' && touched.current !== key) void fitView(FIT_WHOLE);
-  }, [isThere, room, key, fitView]);
+    if (isThere && room !== '' && touched.current !== key) fitWhole(standing.current);
+  }, [isThere, room, key, fitWhole]);
   return useCallback(() => {
     touched.current = key;
   }, [key]);

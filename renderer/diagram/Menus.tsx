@@ -2,7 +2,6 @@
 import Menu from '@mui/material/Menu';
 import MenuItem from '@mui/material/MenuItem';
 import Popover from '@mui/material/Popover';
-import { useReactFlow } from '@xyflow/react';
 import type { ReactElement } from 'react';
 import type { JunctionId, PartId } from '../../core/api.ts';
 import {
@@ -30,7 +29,8 @@ import {
 } from './edits.ts';
 import { JunctionChooser } from './JunctionChooser.tsx';
 import { PaletteList } from './PaletteList.tsx';
-import { FIT_WHOLE, type OpenMenu, useView } from './view.ts';
+import { useFit } from './useFit.ts';
+import { type OpenMenu, useView } from './view.ts';
 
 interface Choice {
   readonly words: string;
@@ -214,7 +214,7 @@ function junctionChoices(junction: JunctionId, menu: OpenMenu): readonly Choice[
 }
 
 function GroundMenu({ menu }: { readonly menu: Menus<'ground'> }): ReactElement {
-  const { fitView } = useReactFlow();
+  const fitWhole = useFit();
   const pasteHere = (): void => {
     navigator.clipboard
       .readText()
@@ -225,7 +225,7 @@ function GroundMenu({ menu }: { readonly menu: Menus<'ground'> }): ReactElement 
     { words: 'Paste here', act: pasteHere },
     { words: 'Select everything', act: selectAll },
     { words: 'Tidy the drawing', act: tidy },
-    { words: 'Fit it into view', act: () => void fitView(FIT_WHOLE) },
+    { words: 'Fit it into view', act: () => fitWhole() },
   ];
   return <Choices menu={menu} name="Drawing" choices={choices} />;
 }

@@ -4,7 +4,8 @@ import { useReactFlow } from '@xyflow/react';
 import type { ReactElement } from 'react';
 import { useOpenJob } from '../state/openJob.ts';
 import { tidy } from './edits.ts';
-import { FIT_WHOLE, useView } from './view.ts';
+import { useFit } from './useFit.ts';
+import { useView } from './view.ts';
 
 const Bar = styled('div')({
   display: 'flex',
@@ -33,7 +34,8 @@ const Tool = styled('button')({
 
 export function Toolbar(): ReactElement {
   const view = useView();
-  const { zoomIn, zoomOut, fitView } = useReactFlow();
+  const { zoomIn, zoomOut } = useReactFlow();
+  const fitWhole = useFit();
   const isEmpty = useOpenJob((open) => open.job.parts.length === 0);
   const toggle = (what: 'palette' | 'volts' | 'amps' | 'labels' | 'walk') => useView.setState({ [what]: !view[what] });
   return (
@@ -48,17 +50,12 @@ export function Toolbar(): ReactElement {
         title="Lays the whole drawing out anew; undo brings the old one back"
         onClick={() => {
           tidy();
-          requestAnimationFrame(() => void fitView(FIT_WHOLE));
+          requestAnimationFrame(() => fitWhole());
         }}
       >
         Tidy
       </Tool>
-      <Tool
-        type="button"
-        disabled={isEmpty}
-        title="Fit the whole drawing into view (0)"
-        onClick={() => void fitView(FIT_WHOLE)}
-      >
+      <Tool type="button" disabled={isEmpty} title="Fit the whole drawing into view (0)" onClick={() => fitWhole()}>
         Fit
       </Tool>
       <Tool type="button" aria-label="Zoom out" title="Zoom out (−)" onClick={() => void zoomOut()}>

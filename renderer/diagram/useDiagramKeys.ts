@@ -8,7 +8,8 @@ import { useSession } from '../state/session.ts';
 import { copiedText, duplicateSelected, goToLedger, nudge, paste, removeSelected, selectAll } from './edits.ts';
 import { junctionOfNode, partOfNode } from './flowNodes.ts';
 import { focusGrip } from './Grip.tsx';
-import { FIT_WHOLE, useView } from './view.ts';
+import { useFit } from './useFit.ts';
+import { useView } from './view.ts';
 
 const ARROWS: Readonly<Record<string, Point>> = {
   ArrowLeft: { x: -GRID, y: 0 },
@@ -25,16 +26,17 @@ export interface DiagramKeys {
 }
 
 export function useDiagramKeys(): DiagramKeys {
-  const { zoomIn, zoomOut, fitView } = useReactFlow();
+  const { zoomIn, zoomOut } = useReactFlow();
+  const fitWhole = useFit();
   const onKeyDown = useCallback(
     (event: KeyboardEvent<HTMLElement>) => {
       if (isTyping(event.target) || event.altKey) return;
-      const act = event.ctrlKey || event.metaKey ? controlKey(event) : plainKey(event, { zoomIn, zoomOut, fitView });
+      const act = event.ctrlKey || event.metaKey ? controlKey(event) : plainKey(event, { zoomIn, zoomOut, fitWhole });
       if (act === undefined) return;
       event.preventDefault();
       act();
     },
-    [zoomIn, zoomOut, fitView],
+    [zoomIn, zoomOut, fitWhole],
   );
   return { onKeyDown, onCopy: copy, onCut: cut, onPaste: pasteFrom };
 }
@@ -59,10 +61,10 @@ function controlKey({ key }: KeyboardEvent): (() => void) | undefined {
 interface Zooming {
   readonly zoomIn: () => Promise<boolean>;
   readonly zoomOut: () => Promise<boolean>;
-  readonly fitView: (options?: typeof FIT_WHOLE) => Promise<boolean>;
+  readonly fitWhole: () => void;
 }
 
-function plainKey(event: KeyboardEvent<HTMLElement>, { zoomIn, zoomOut, fitView }: Zooming): (() => void) | undefined {
+function plainKey(event: KeyboardEvent<HTMLElement>, { zoomIn, zoomOut, fitWhole }: Zooming): (() => void) | undefined {
   const arrow = ARROWS[event.key];
   if (arrow !== undefined) {
     const steps = event.shiftKey ? 4 : 1;
@@ -78,7 +80,7 @@ function plainKey(event: KeyboardEvent<HTMLElement>, { zoomIn, zoomOut, fitView 
     case '-':
       return () => void zoomOut();
     case '0':
-      return () => void fitView(FIT_WHOLE);
+      return () => fitWhole();
     case 'Delete':
     case 'Backspace':
       return () => {

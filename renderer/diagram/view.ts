@@ -2,12 +2,6 @@
 import { create } from 'zustand';
 import type { JunctionId, PartId, Point } from '../../core/api.ts';
 
-/** The whole drawing in view, with room for the words beside its outermost parts. */
-export const FIT_WHOLE = {
-  maxZoom: 1.25,
-  padding: { left: '84px', right: '84px', top: '44px', bottom: '40px' },
-} as const;
-
 /** What a hand is moving, and how far. */
 export interface Drag {
   readonly parts: ReadonlySet<PartId>;

@@ -26,7 +26,9 @@ export function JobLedger(): ReactElement {
 function Totals({ chosen: { job, point } }: { readonly chosen: ChosenCase }): ReactElement {
   if (point === undefined) return <Under>Solving …</Under>;
   const { outcome, inW, outW, heatW } = balanceLine(point);
-  const told = <p style={{ margin: 0, fontSize: '0.875rem' }}>{plainFields(answerLine(job, point))}</p>;
+  const told = (
+    <p style={{ margin: 0, fontSize: '0.875rem' }}>{plainFields(point.collapse?.message ?? answerLine(job, point))}</p>
+  );
   if (outcome !== 'solved') return told;
   return (
     <>

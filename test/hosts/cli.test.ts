@@ -87,7 +87,7 @@ describe('solve', () => {
     expect(Math.abs((collapse?.largestDeliverableW ?? 0) / 3969 - 1)).toBeLessThan(1e-3);
     const text = await runCli(['solve', at('tooMuch.job.json')]);
     expect(text.status).toBe(1);
-    expect(text.stdout).toContain('3969 W');
+    expect(text.stdout).toContain('3.969 kW');
   });
 
   test('at-rest is always there by name, and only by name', async () => {
