@@ -114,7 +114,7 @@ function readParts(raw: unknown, issues: IssueList): PartsRead {
   const items: readonly unknown[] = raw;
   const indexById = new Map<string, number>();
   for (const [index, item] of items.entries()) {
-    const part = checkPart(item, itemPath('parts', index), issues);
+    const part = partFrom(item, index, issues);
     if (part !== undefined) checked.push(part);
     if (!isRawObject(item)) continue;
     const id = own(item, 'id');
@@ -132,6 +132,28 @@ function readParts(raw: unknown, issues: IssueList): PartsRead {
       duplicate(index, `id ${quoted(id)} is the id of one cable of the pair of that name`, issues);
   }
   return parts;
+}
+
+const readBefore = new WeakMap<object, Part>();
+
+/**
+ * A part of the file. One that can never change any more (a job that is being edited shares its parts with the one before the edit)
+ * gives the very part that it gave before, so that whatever has been found out about it still holds. A part with issues is
+ * always read anew: its path may be another.
+ */
+function partFrom(item: unknown, index: number, issues: IssueList): Part | undefined {
+  const known = isRawObject(item) ? readBefore.get(item) : undefined;
+  if (known !== undefined) return known;
+  const before = issues.size;
+  const part = checkPart(item, itemPath('parts', index), issues);
+  if (part !== undefined && issues.size === before && isRawObject(item) && isForGood(item)) readBefore.set(item, part);
+  return part;
+}
+
+/** Frozen, and all that is in it. */
+function isForGood(value: unknown): boolean {
+  if (typeof value !== 'object' || value === null) return true;
+  return Object.isFrozen(value) && Object.values(value).every(isForGood);
 }
 
 function duplicate(index: number, words: string, issues: IssueList): void {

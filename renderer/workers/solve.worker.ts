@@ -4,9 +4,11 @@ import type { CheckedJob, Draft, OperatingCase, OperatingPoint } from '../../cor
 import { caseById, checkJob, operatingPoint, runChecks } from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
 import { starters } from '../../data/starters.ts';
+import { SameParts } from './sameParts.ts';
 import type { SolveAsk, SolveReply } from './solveMessages.ts';
 
 let isAsked = false;
+const sameParts = new SameParts();
 
 self.addEventListener('message', ({ data }: MessageEvent<SolveAsk>) => {
   isAsked = true;
@@ -28,7 +30,7 @@ setTimeout(() => warm(WARMING_ROUNDS));
 function answer({ generation, draft }: SolveAsk): SolveReply {
   try {
     const start = performance.now();
-    const read = checkJob(draft);
+    const read = checkJob(sameParts.in(draft));
     if (!read.ok) return { ok: false, generation, message: read.issues.map(({ message }) => message).join(' ') };
     const job = read.value;
     const readAt = performance.now();
