@@ -79,7 +79,8 @@ function OneWire({
   const key = current.of === 'through' ? (current.cable ?? 'through') : current.of;
   const flow = current.of === 'none' ? undefined : live?.currents[key];
   const currentA = flow?.currentA ?? 0;
-  const weight = lineWeight(currentA, largestA);
+  // In quarters of a unit, so that a hundredth of an ampere elsewhere does not paint every line anew.
+  const weight = Math.round(4 * lineWeight(currentA, largestA)) / 4;
   const path = pathOf(wire);
   const isDead = flow !== undefined && flow.currentA !== null && Math.abs(flow.currentA) < 0.001;
   return (
