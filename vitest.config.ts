@@ -24,7 +24,7 @@ export default defineConfig({
           ...common,
           name: 'hosts',
           include: ['test/hosts/**/*.test.ts'],
-          sequence: { groupOrder: 1 },
+          sequence: { groupOrder: 0 },
         },
       },
       {
@@ -35,7 +35,7 @@ export default defineConfig({
           include: ['test/screens/**/*.test.ts'],
           testTimeout: 120_000,
           maxWorkers: 2,
-          sequence: { groupOrder: 2 },
+          sequence: { groupOrder: 1 },
         },
       },
     ],

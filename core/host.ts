@@ -24,7 +24,7 @@ export interface HostCan {
 
 /** Something that the person should know from the start, such as a damaged store that was set aside. */
 export interface HostNotice {
-  readonly kind: 'store-damaged' | 'store-recovered' | 'clock-behind' | 'store-newer';
+  readonly kind: 'store-damaged' | 'store-recovered' | 'clock-behind';
   readonly message: string;
 }
 

@@ -103,6 +103,15 @@ function pathOf({ points }: DrawnWire): string {
   return points.map(({ x, y }, index) => `${index === 0 ? 'M' : 'L'}${String(x)} ${String(y)}`).join('');
 }
 
+/** Stretches on which a figure stands freely only when the drawing is near, and only when it is not far. */
+const TIGHT = 60;
+const SHORT = 110;
+
+function roomFor(length: number): string {
+  if (length < TIGHT) return 'tight short';
+  return length < SHORT ? 'short' : '';
+}
+
 function Figure({
   wire,
   text,
@@ -122,7 +131,7 @@ function Figure({
   const way = (currentA ?? 0) < 0 ? -forward : forward;
   const turn = isUpright ? (way > 0 ? 90 : -90) : way > 0 ? 0 : 180;
   return (
-    <g className={length < 60 ? 'amps tight' : 'amps'} transform={`translate(${String(at.x)} ${String(at.y)})`}>
+    <g className={`amps ${roomFor(length)}`} transform={`translate(${String(at.x)} ${String(at.y)})`}>
       {isFlowing && (
         <path
           className="arrow"

@@ -9,12 +9,12 @@ import { type Bounds, keepPlace, readPlace } from '../../electron/window/windowB
 
 describe('the words of a start', () => {
   const read = (...words: string[]) =>
-    readWords({ words: ['ohmwright', ...words], folder: '/work' }, [resolve('/program')]);
+    readWords({ words: ['ohmwright', ...words], folder: '/folder' }, [resolve('/program')]);
 
   test.each<[string, string[], string[]]>([
-    ['a relative name counts from the folder of the start', ['hut.job.json'], [resolve('/work/hut.job.json')]],
+    ['a relative name counts from the folder of the start', ['hut.job.json'], [resolve('/folder/hut.job.json')]],
     ['a whole path stays', ['/jobs/hut.job.json'], [resolve('/jobs/hut.job.json')]],
-    ['several files keep their order', ['b', 'a'], [resolve('/work/b'), resolve('/work/a')]],
+    ['several files keep their order', ['b', 'a'], [resolve('/folder/b'), resolve('/folder/a')]],
     ['switches are no files, those of Chromium neither', ['--flag', '-x', '--with=value'], []],
     ['the address of a file is its path', [pathToFileURL('/jobs/a b.json').href], [resolve('/jobs/a b.json')]],
     ['any other address is not for us', ['https://elsewhere.example/a.json', 'app://ohmwright/'], []],
@@ -24,7 +24,7 @@ describe('the words of a start', () => {
   });
 
   test('the store is named either way', () => {
-    expect(read('--store', 'mine', 'a')).toEqual({ store: resolve('/work/mine'), files: [resolve('/work/a')] });
+    expect(read('--store', 'mine', 'a')).toEqual({ store: resolve('/folder/mine'), files: [resolve('/folder/a')] });
     expect(read('--store=/mine')).toEqual({ store: resolve('/mine'), files: [] });
     expect(read('a').store).toBeUndefined();
   });
