@@ -44,6 +44,7 @@ import { useDiagramKeys } from './useDiagramKeys.ts';
 import { useFit } from './useFit.ts';
 import { useShowLit } from './useLit.ts';
 import { useLongPress } from './useLongPress.ts';
+import { useUncrowded } from './useUncrowded.ts';
 import { useView } from './view.ts';
 import { Wires } from './Wires.tsx';
 
@@ -151,6 +152,7 @@ function DrawingFrame({
   readonly children: ReactElement;
 }): ReactElement {
   const frame = useRef<HTMLDivElement>(null);
+  useUncrowded(frame);
   const { volts, amps, labels } = useView();
   const isOld = useLive((now) => now.isOld);
   const zoom = useStore((flow) => flow.transform[2]);
