@@ -1,7 +1,7 @@
 /** What the answer of the shown case says about each part and junction, in words and figures for the drawing. */
 import { create } from 'zustand';
 import type { CheckedJob, JunctionId, OperatingPoint, Part, PartId, Severity } from '../../core/api.ts';
-import { formatQuantity, KIND_WORDS, ratingWords } from '../../core/api.ts';
+import { formatQuantity, KIND_WORDS, ratingWords, SEVERITIES } from '../../core/api.ts';
 import { type OpenJob, useOpenJob } from '../state/openJob.ts';
 
 export interface LiveCurrent {
@@ -62,7 +62,7 @@ function refresh({ job, answers, caseId, generation }: OpenJob): void {
   const point = answer?.outcome === 'collapse' ? undefined : answer;
   const asking = answer?.collapse?.load;
   const before = useLive.getState();
-  const severities = severitiesOf(answers?.report.findings ?? [], caseId);
+  const severities = severitiesOf(answers?.report.findings ?? []);
   const parts = new Map(
     (job.parts ?? []).map((part) => {
       const severity = severities.get(part.id) ?? null;
@@ -93,18 +93,16 @@ function largestOf(job: CheckedJob, point: OperatingPoint | undefined): number {
   return Math.max(0, ...amps);
 }
 
-const ORDER: readonly Severity[] = ['stop', 'fix', 'look', 'note'];
-/** The worst verdict on each part, in the shown case or in any. */
+/** The worst verdict on each part, in whatever case. */
 function severitiesOf(
   findings: readonly { readonly severity: Severity; readonly parts: readonly PartId[]; readonly case: string | null }[],
-  _caseId: string,
 ): ReadonlyMap<PartId, Severity> {
   const worst = new Map<PartId, Severity>();
   for (const { severity, parts } of findings) {
     for (const id of parts) {
       const part = id.replace(/\.(?:plus|minus)$/, '') as PartId;
       const now = worst.get(part);
-      if (now === undefined || ORDER.indexOf(severity) < ORDER.indexOf(now)) worst.set(part, severity);
+      if (now === undefined || SEVERITIES.indexOf(severity) < SEVERITIES.indexOf(now)) worst.set(part, severity);
     }
   }
   return worst;
