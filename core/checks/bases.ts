@@ -1,7 +1,7 @@
 /** What rules rest on where no table holds a figure: laws, the job's own figures, and clauses that give words, not numbers. */
 import { originOf } from '../job/part.ts';
+import type { SinglePart } from '../network/wiring.ts';
 import type { Basis } from '../tables/status.ts';
-import type { SinglePart } from './wiring.ts';
 import { field } from './wording.ts';
 
 /** Follows from Kirchhoff's rules and the drawing; recomputed by the tests. */

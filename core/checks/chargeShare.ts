@@ -1,9 +1,9 @@
 /** What charges what, and how much of it each string would get. */
 import type { ChargerPart, ControllerPart, ConverterPart, DiodePart, StringPart } from '../job/part.ts';
+import type { SinglePart } from '../network/wiring.ts';
+import { closedNets, polesOf, throughDiodes } from '../network/wiring.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { banksOf } from './systemVolts.ts';
-import type { SinglePart } from './wiring.ts';
-import { closedNets, polesOf, throughDiodes } from './wiring.ts';
 
 export type ChargingPart = ChargerPart | ControllerPart | ConverterPart;
 

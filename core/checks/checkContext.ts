@@ -9,12 +9,12 @@ import type { CablePart, JunctionId, Part, PartId } from '../job/part.ts';
 import type { BatteryModel, OperatingPoint, PartAnswer } from '../network/answer.ts';
 import { ambientOf } from '../network/circuit.ts';
 import { operatingPoint } from '../network/operatingPoint.ts';
+import { meetings, type Nets, netsOf, type PartEnd, type SinglePart, withoutPairs } from '../network/wiring.ts';
 import { Memory } from '../tables/memory.ts';
 import type { PracticeTable } from '../tables/practiceTable.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { Judge } from './rule.ts';
 import { SystemVolts } from './systemVolts.ts';
-import { meetings, type Nets, netsOf, type PartEnd, type SinglePart, withoutPairs } from './wiring.ts';
 import { field } from './wording.ts';
 
 /** One case with its answer. */

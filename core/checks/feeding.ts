@@ -1,8 +1,8 @@
 /** What feeds a part: the source terminals on the nets of its two poles. */
 import type { DiodePart, JunctionId, PartId } from '../job/part.ts';
+import type { Nets, PoledPart } from '../network/wiring.ts';
+import { closedNets, polesOf, throughDiodes } from '../network/wiring.ts';
 import type { SolvedCase } from './checkContext.ts';
-import type { Nets, PoledPart } from './wiring.ts';
-import { closedNets, polesOf, throughDiodes } from './wiring.ts';
 
 interface Feed {
   /** Volts between the source terminals that feed the part, at the sources. */

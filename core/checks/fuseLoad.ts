@@ -1,11 +1,12 @@
 /** Fuses and breakers against the current that they carry. */
+
+import type { Device } from '../network/wiring.ts';
+import { isDevice } from '../network/wiring.ts';
 import { PART_RATING } from './bases.ts';
 import type { CheckContext } from './checkContext.ts';
 import { demandsOf } from './continuousCurrent.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { ELSEWHERE, isOver, missing, PASS, Tally, type Verdict, wanted } from './tally.ts';
-import type { Device } from './wiring.ts';
-import { isDevice } from './wiring.ts';
 import { amps, apart, field, percent, shortList, titleOf, withEdition } from './wording.ts';
 
 export const fuseUnderCurrent: Rule = {

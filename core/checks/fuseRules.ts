@@ -1,5 +1,7 @@
 /** Fuses and breakers against the cables that they protect. */
 import type { CablePart } from '../job/part.ts';
+import type { Device } from '../network/wiring.ts';
+import { isDevice } from '../network/wiring.ts';
 import type { PracticeTable } from '../tables/practiceTable.ts';
 import type { Basis } from '../tables/status.ts';
 import type { Tables } from '../tables/tables.ts';
@@ -8,8 +10,6 @@ import type { CheckContext } from './checkContext.ts';
 import { protectedCablesOf } from './protectedCables.ts';
 import type { Judge, Rule } from './rule.ts';
 import { isOver, missing, NOMINAL_VOLTS, PASS, sizeWanted, Tally, type Verdict } from './tally.ts';
-import type { Device } from './wiring.ts';
-import { isDevice } from './wiring.ts';
 import { amps, apart, titleOf, together, withEdition } from './wording.ts';
 
 /** For a practice without caps: where caps come from, and that none apply. */

@@ -1,10 +1,10 @@
 /** Devices, switches, bars, shunts and diodes against the volts and the current that they are made for. */
 import type { BusbarPart, DiodePart, ShuntPart, SwitchPart } from '../job/part.ts';
+import { isOpen, joined } from '../network/wiring.ts';
 import { entered, PART_RATING, VOLTS_RATING } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { isOver, missing, missingField, PASS, Tally, type Verdict } from './tally.ts';
-import { isOpen, joined } from './wiring.ts';
 import { amps, apart, titleOf, together } from './wording.ts';
 
 export const voltsRatingLow: Rule = {

@@ -1,12 +1,12 @@
 /** Leads the wrong way round, told by the sign of the volts at rest and by the drawing. */
 import type { JunctionId, PartId } from '../job/part.ts';
 import { nameOf } from '../job/part.ts';
+import type { SinglePart } from '../network/wiring.ts';
 import { CIRCUIT_LAW } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { quietStates } from './quiet.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { PASS, Tally, type Verdict } from './tally.ts';
-import type { SinglePart } from './wiring.ts';
 import { list, titleOf, volts } from './wording.ts';
 
 export const polarityCrossed: Rule = {

@@ -12,10 +12,10 @@
  * Where no string reaches either side, chargers, arrays, controllers and converters take the part of the strings.
  */
 import type { CablePart, JunctionId, Part, PartId } from '../job/part.ts';
+import type { Device, Nets, PartEnd, Poles, SinglePart } from '../network/wiring.ts';
+import { isDevice, isWiring, joined, meetings, netsOf, polesOf, withoutPairs } from '../network/wiring.ts';
 import type { CheckContext } from './checkContext.ts';
 import { type LiveSides, liveSides } from './deviceSides.ts';
-import type { Device, Nets, PartEnd, Poles, SinglePart } from './wiring.ts';
-import { isDevice, isWiring, joined, meetings, netsOf, polesOf, withoutPairs } from './wiring.ts';
 
 export class ProtectedCables {
   private readonly meetings: ReadonlyMap<JunctionId, readonly PartEnd[]>;

@@ -1,7 +1,7 @@
 /** Cases with everything off that draws or drives: nothing but wiring and other strings can then take current from a string. */
 import type { StringPart } from '../job/part.ts';
+import { closedNets, isWiring } from '../network/wiring.ts';
 import { type CheckContext, SolvedCase } from './checkContext.ts';
-import { closedNets, isWiring } from './wiring.ts';
 
 export interface Quiet {
   /** The case with everything off but its switches as they stand. */

@@ -1,12 +1,12 @@
 /** What a rule is: one question about a job, what it compares, and how it answers. */
 import type { CheckedJob } from '../job/job.ts';
 import type { PartId } from '../job/part.ts';
+import type { SinglePart } from '../network/wiring.ts';
 import type { PracticeTable } from '../tables/practiceTable.ts';
 import type { Basis } from '../tables/status.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { CheckContext } from './checkContext.ts';
 import type { Finding, WantedField } from './finding.ts';
-import type { SinglePart } from './wiring.ts';
 
 /** What a rule is about; rules of one family stand in one file or a few. */
 export type RuleFamily = 'wiring' | 'cable' | 'fuse' | 'rating' | 'voltage' | 'battery' | 'charging';

@@ -1,11 +1,11 @@
 /** Strings side by side against the share of the bank's current that their capacity entitles them to. */
 import { originOf, type StringPart } from '../job/part.ts';
+import { closedNets } from '../network/wiring.ts';
 import { assumedSources } from './assumed.ts';
 import { COMMON_PRACTICE } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { isOver, isUnder, PASS, Tally, type Verdict } from './tally.ts';
-import { closedNets } from './wiring.ts';
 import { amps, apart, list, percent, titleOf } from './wording.ts';
 
 /**

@@ -3,13 +3,13 @@ import { currentLimits } from '../battery/limits.ts';
 import { stringSource } from '../battery/stringSource.ts';
 import type { StringPart } from '../job/part.ts';
 import { nameOf } from '../job/part.ts';
+import { isDevice, netsOf, polesOf } from '../network/wiring.ts';
 import { CIRCUIT_LAW, FUSE_AT_SOURCE } from './bases.ts';
 import type { CheckContext } from './checkContext.ts';
 import { type Quiet, quietStates } from './quiet.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { banksOf } from './systemVolts.ts';
 import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
-import { isDevice, netsOf, polesOf } from './wiring.ts';
 import { amps, apart, ohms, percent, shortList, titleOf } from './wording.ts';
 
 /**

@@ -2,9 +2,9 @@
 
 import type { Site } from '../job/job.ts';
 import type { ArrayPart, JunctionId, StringPart } from '../job/part.ts';
+import type { PoledPart, Poles, SinglePart } from '../network/wiring.ts';
+import { type Nets, polesOf } from '../network/wiring.ts';
 import type { WantedField } from './finding.ts';
-import type { PoledPart, Poles, SinglePart } from './wiring.ts';
-import { type Nets, polesOf } from './wiring.ts';
 
 /** Nominal volts of a whole string: blocks in series times the block's label. */
 function nominalOf(string: StringPart): number {

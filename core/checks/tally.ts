@@ -1,9 +1,9 @@
 /** Gathers a rule's verdicts: of all cases the worst is reported, a missing figure is never a pass. */
 import type { CablePart, PartId } from '../job/part.ts';
+import type { SinglePart } from '../network/wiring.ts';
 import type { Basis, Status } from '../tables/status.ts';
 import type { Measure, Severity, WantedField } from './finding.ts';
 import type { NotJudged, RankedFinding, Rule, RuleOutcome } from './rule.ts';
-import type { SinglePart } from './wiring.ts';
 import { field } from './wording.ts';
 
 /** Rounding slack of every comparison, as a fraction: a figure exactly at its limit passes, also after a solve. */

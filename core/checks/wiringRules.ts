@@ -1,12 +1,12 @@
 /** What the drawing itself says: what is not fed, not connected, never used, or asks for more than there is. */
 import type { JunctionId, PartId } from '../job/part.ts';
 import type { GraphRemark } from '../network/answer.ts';
+import { ANY_KIND, isOpen, type SinglePart } from '../network/wiring.ts';
 import { assumedSources } from './assumed.ts';
 import { CIRCUIT_LAW } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { ELSEWHERE, PASS, Tally, type Verdict } from './tally.ts';
-import { ANY_KIND, isOpen, type SinglePart } from './wiring.ts';
 import { shortList, titleOf } from './wording.ts';
 
 /** One part too many where none is allowed. */

@@ -1,10 +1,10 @@
 /** How findings name parts and print figures. */
 import { nameOf } from '../job/part.ts';
+import type { SinglePart } from '../network/wiring.ts';
 import type { Basis } from '../tables/status.ts';
 import { weakest } from '../tables/status.ts';
 import { formatQuantity } from '../units/formatQuantity.ts';
 import type { Judge } from './rule.ts';
-import type { SinglePart } from './wiring.ts';
 
 const KINDS: Readonly<Record<SinglePart['kind'], string>> = {
   string: 'string',

@@ -1,9 +1,10 @@
 /** Kirchhoff's current rule at one junction, part by part. */
-import { isOpen, type SinglePart, withoutPairs } from '../checks/wiring.ts';
+
 import type { CheckedJob, OperatingCase } from '../job/job.ts';
 import { partsInCase } from '../job/job.ts';
 import type { JunctionId, PartId } from '../job/part.ts';
 import type { OperatingPoint, PartAnswer } from '../network/answer.ts';
+import { isOpen, type SinglePart, withoutPairs } from '../network/wiring.ts';
 import { lowerHalfA } from './walkPorts.ts';
 
 /** One part's current at a junction. */

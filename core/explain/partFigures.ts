@@ -1,6 +1,5 @@
 /** Every figure of a part as the answer used it, with where it comes from: what the ledger lists. */
 import { stringSource } from '../battery/stringSource.ts';
-import { withoutPairs } from '../checks/wiring.ts';
 import type { Rule } from '../job/field.ts';
 import { partsInCase } from '../job/job.ts';
 import type { Origin, Part, PartId, PartKind } from '../job/part.ts';
@@ -8,6 +7,7 @@ import { originOf } from '../job/part.ts';
 import { partFields } from '../job/partFields.ts';
 import type { Assumption } from '../network/answer.ts';
 import { ambientOf } from '../network/circuit.ts';
+import { withoutPairs } from '../network/wiring.ts';
 import type { Basis } from '../tables/status.ts';
 import { sizeText } from '../units/conductorSize.ts';
 import type { PartRequest } from './workingLine.ts';

@@ -1,6 +1,7 @@
 /** How the answer about one part is worked out, line by line. */
-import { isWiring, type SinglePart } from '../checks/wiring.ts';
+
 import { cablesOfPair } from '../job/part.ts';
+import { isWiring, type SinglePart } from '../network/wiring.ts';
 import { Lines } from './lines.ts';
 import { controllerWorking, converterWorking, inverterWorking, loadWorking } from './loadWorking.ts';
 import { partAsked } from './partFigures.ts';

@@ -1,6 +1,7 @@
 /** Which source feeds a load, and by which way. */
-import type { SinglePart } from '../checks/wiring.ts';
+
 import type { OperatingPoint } from '../network/answer.ts';
+import type { SinglePart } from '../network/wiring.ts';
 import type { LoadPort, SourcePort } from './walkPorts.ts';
 import { sourcePorts } from './walkPorts.ts';
 import type { Stretch, Wires } from './wires.ts';

@@ -1,9 +1,9 @@
 /** The working of strings, arrays and chargers. */
 import { factsOf, stringSource } from '../battery/stringSource.ts';
-import { closedNets, withoutPairs } from '../checks/wiring.ts';
 import { partsInCase } from '../job/job.ts';
 import type { ArrayPart, ChargerPart, StringPart } from '../job/part.ts';
 import { ambientOf } from '../network/circuit.ts';
+import { closedNets, withoutPairs } from '../network/wiring.ts';
 import { arrayCurve, currentAt, maximumPower } from '../solar/arrayCurve.ts';
 import { figure, type Lines, product, signed } from './lines.ts';
 import { lowerHalfA } from './walkPorts.ts';

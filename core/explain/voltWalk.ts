@@ -1,9 +1,10 @@
 /** The potential along the way from a source through a load and back. */
-import { withoutPairs } from '../checks/wiring.ts';
+
 import type { CheckedJob, OperatingCase } from '../job/job.ts';
 import { partsInCase } from '../job/job.ts';
 import type { JunctionId, PartId } from '../job/part.ts';
 import type { OperatingPoint } from '../network/answer.ts';
+import { withoutPairs } from '../network/wiring.ts';
 import { alongA, type Route, routeFrom, routesTo } from './route.ts';
 import type { NoWalk, VoltWalk, WalkSide, WalkStep, WalkStepKind, WalkTotals } from './walk.ts';
 import { loadPort, sourcePorts } from './walkPorts.ts';

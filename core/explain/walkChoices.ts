@@ -1,8 +1,9 @@
 /** What a volt walk can be made for. */
-import { withoutPairs } from '../checks/wiring.ts';
+
 import type { CheckedJob, OperatingCase } from '../job/job.ts';
 import { caseById, partsInCase } from '../job/job.ts';
 import type { OperatingPoint } from '../network/answer.ts';
+import { withoutPairs } from '../network/wiring.ts';
 import { routesTo } from './route.ts';
 import type { WalkChoice } from './walk.ts';
 import { loadPort } from './walkPorts.ts';

@@ -1,7 +1,8 @@
 /** The terminals that a volt walk can start from and go through. */
-import { polesOf, type SinglePart } from '../checks/wiring.ts';
+
 import type { JunctionId, PartId, StringPart } from '../job/part.ts';
 import type { OperatingPoint, PartAnswer } from '../network/answer.ts';
+import { polesOf, type SinglePart } from '../network/wiring.ts';
 import { stringFigures } from './stringFigures.ts';
 
 /** A pair of terminals that gives current. */

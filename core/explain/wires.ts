@@ -3,10 +3,11 @@
  * whose thinnest current is largest. The widest ways between all pairs together are the tree that joins the junctions by
  * their largest currents first (a largest spanning tree, Kruskal 1956), so one tree serves every walk.
  */
-import { isOpen, isWiring, joined, type SinglePart } from '../checks/wiring.ts';
+
 import type { JunctionId, PartId } from '../job/part.ts';
 import type { OperatingPoint } from '../network/answer.ts';
 import { DisjointSets } from '../network/disjointSets.ts';
+import { isOpen, isWiring, joined, type SinglePart } from '../network/wiring.ts';
 import { sourcePorts } from './walkPorts.ts';
 
 /** A piece of wiring between two junctions, or a string that lies in series on the way. */

@@ -1,11 +1,11 @@
 /** The working of cables, devices, joints, bars and diodes. */
 
-import { isOpen, type WiringPart } from '../checks/wiring.ts';
 import { conductorResistance } from '../conductor/resistance.ts';
 import { heatingLaw } from '../conductor/temperature.ts';
 import type { BondPart, BusbarPart, CablePart, DiodePart } from '../job/part.ts';
 import { ambientOf } from '../network/circuit.ts';
 import { conductorModel } from '../network/conductorModel.ts';
+import { isOpen, type WiringPart } from '../network/wiring.ts';
 import { figure, type Lines, product, signed } from './lines.ts';
 import type { FigureOrigin, PartRequest } from './workingLine.ts';
 

@@ -1,5 +1,5 @@
 /** Leads swapped, links taken out, switches closed, parts brought into use. */
-import { isWiring, joined, withoutPairs } from '../checks/wiring.ts';
+
 import { changed } from '../draft/draft.ts';
 import type { Edit } from '../draft/edit.ts';
 import { removeParts } from '../draft/parts.ts';
@@ -7,6 +7,7 @@ import { junctionAt, pathsOf, putTerminal } from '../draft/terminals.ts';
 import { partsInCase } from '../job/job.ts';
 import type { JunctionId, Part, PartId } from '../job/part.ts';
 import { nameOf } from '../job/part.ts';
+import { isWiring, joined, withoutPairs } from '../network/wiring.ts';
 import { type Bench, type Candidate, type Ladder, stepped } from './candidate.ts';
 
 /** Parts that are tried one by one, at most. */

@@ -4,8 +4,8 @@ import { describe, expect, test } from 'vitest';
 import { liveSides } from '../../core/checks/deviceSides.ts';
 import { largestDevice } from '../../core/checks/fuseRules.ts';
 import { ProtectedCables } from '../../core/checks/protectedCables.ts';
-import { type Device, isDevice, meetings, withoutPairs } from '../../core/checks/wiring.ts';
 import type { PartId } from '../../core/job/part.ts';
+import { type Device, isDevice, meetings, withoutPairs } from '../../core/network/wiring.ts';
 import { tables } from '../../data/index.ts';
 import { battery, check, found, gaps, jobOf, oneCircuit, passes, type RawPart } from './checksJob.ts';
 

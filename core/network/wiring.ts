@@ -1,5 +1,5 @@
 /**
- * The drawing as a graph of junctions, for rules that ask what is joined to what. Wiring parts join junctions: cables, bars,
+ * The drawing as a graph of junctions, for whoever asks what is joined to what. Wiring parts join junctions: cables, bars,
  * joints, shunts, switches, fuses, breakers, diodes and bonds. Strings, loads, chargers and the like sit between groups of
  * joined junctions, which are called nets here.
  */
@@ -26,9 +26,9 @@ import type {
   SwitchPart,
 } from '../job/part.ts';
 import { cablesOfPair } from '../job/part.ts';
-import { DisjointSets } from '../network/disjointSets.ts';
+import { DisjointSets } from './disjointSets.ts';
 
-/** A part as the checks see it: an out-and-back run is its two cables. */
+/** A part as whoever reads the drawing sees it: an out-and-back run is its two cables. */
 export type SinglePart = Exclude<Part, PairPart>;
 export type Device = FusePart | BreakerPart;
 export type WiringPart =
