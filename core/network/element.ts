@@ -106,18 +106,22 @@ export function evaluate(element: Element, v: number): void {
   }
 }
 
-/** The one real root of v = a i + b i^3 (a > 0, b >= 0), by Newton from below, which rises monotonically to it. */
 function warmingCurrent(a: number, b: number, v: number): number {
   const target = Math.abs(v);
   // Both v/a and cbrt(v/b) bound the root from above; the smaller is within a factor 1.5 of it.
-  let i = b > 0 ? Math.min(target / a, Math.cbrt(target / b)) : target / a;
-  if (b > 0) {
-    for (let step = 0; step < 40; step++) {
-      const slope = a + 3 * b * i * i;
-      const change = ((a + b * i * i) * i - target) / slope;
-      i -= change;
-      if (Math.abs(change) <= 1e-16 * i) break;
-    }
+  return warmingCurrentNear(a, b, v, b > 0 ? Math.min(target / a, Math.cbrt(target / b)) : target / a);
+}
+
+/** The one real root of v = a i + b i^3 (a > 0, b >= 0), by Newton from |i| = `start` >= 0: after one step it falls to it monotonically. */
+export function warmingCurrentNear(a: number, b: number, v: number, start: number): number {
+  const target = Math.abs(v);
+  if (b === 0) return v / a;
+  let i = start;
+  for (let step = 0; step < 40; step++) {
+    const slope = a + 3 * b * i * i;
+    const change = ((a + b * i * i) * i - target) / slope;
+    i -= change;
+    if (Math.abs(change) <= 2 ** -52 * i) break;
   }
   return v < 0 ? -i : i;
 }

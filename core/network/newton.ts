@@ -53,6 +53,17 @@ export class Assembled {
     this.step = new Float64Array(reduction.size);
   }
 
+  /** Places in the matrix's values of each element, three apiece: from-from, to-to, from-to; -1 where it has none. */
+  slotsOf(elements: readonly Element[]): Int32Array {
+    const place = new Map(this.stamped.map((element, k) => [element, k]));
+    const slots = new Int32Array(3 * elements.length).fill(-1);
+    elements.forEach((element, e) => {
+      const k = place.get(element);
+      if (k !== undefined) slots.set(this.slots.subarray(3 * k, 3 * k + 3), 3 * e);
+    });
+    return slots;
+  }
+
   /** Volts without constant-power loads, the start of every solve. */
   solveUnloaded(): boolean {
     for (const element of this.active) evaluate(element, firstGuessV(element));

@@ -40,28 +40,38 @@ export function operatingPoint(request: CircuitRequest): OperatingPoint {
 
 /** `operatingPoint`, with the solved circuit kept. */
 export function solveCircuit(request: CircuitRequest): SolvedCircuit {
-  const circuit = buildCircuit(request);
+  return solveBuilt(buildCircuit(request));
+}
+
+/** The same for a circuit that is already built, and perhaps changed in a figure or two. */
+export function solveBuilt(circuit: Circuit): SolvedCircuit {
   const graph = readGraph(circuit);
   if (graph.reference.length === 0) {
     return { circuit, graph, assembled: null, point: answer(circuit, graph, null, 'unsupplied') };
   }
+  const ending = settledCircuit(circuit, graph);
+  if (!('assembled' in ending)) {
+    return { circuit, graph, assembled: null, point: answer(circuit, graph, null, 'collapse', ending) };
+  }
+  const { assembled } = ending;
+  return { circuit, graph, assembled, point: answer(circuit, graph, assembled, 'solved') };
+}
+
+/** The circuit with its valves settled and loads below their own minimum dropped out, or why there is no such point. */
+export function settledCircuit(circuit: Circuit, graph: GraphView): { readonly assembled: Assembled } | Collapse {
   // A load below its own minimum drops out for good; each pass drops one, so this ends.
   for (;;) {
     const outcome = settleOrCollapse(circuit, graph);
     if ('nose' in outcome && outcome.nose.assembled !== null && dropMostStarved(circuit, outcome.nose.assembled))
       continue;
     const ending = 'nose' in outcome ? withoutPoint(circuit, graph, outcome.nose) : outcome;
-    if (!('assembled' in ending)) {
-      return { circuit, graph, assembled: null, point: answer(circuit, graph, null, 'collapse', ending) };
-    }
-    const { assembled } = ending;
-    if (dropMostStarved(circuit, assembled)) continue;
-    return { circuit, graph, assembled, point: answer(circuit, graph, assembled, 'solved') };
+    if ('assembled' in ending && dropMostStarved(circuit, ending.assembled)) continue;
+    return ending;
   }
 }
 
 /** Drops out the sink furthest below its own minimum volts, in proportion; false when none is below. */
-function dropMostStarved(circuit: Circuit, assembled: Assembled): boolean {
+export function dropMostStarved(circuit: Circuit, assembled: Assembled): boolean {
   let worst: Sink | null = null;
   let least = 1;
   for (const sink of circuit.sinks) {

@@ -19,6 +19,8 @@ export interface SharedString {
   readonly share: number | null;
   /** Its part of the capacity of its bank. */
   readonly fairShare: number;
+  /** What it would carry at its fair share; null where `share` is. */
+  readonly fairA: number | null;
   /** share / fairShare - 1. */
   readonly deviation: number | null;
   /** |current| / capacity, 1/h. */
@@ -57,9 +59,15 @@ export interface CirculatingPair {
 export interface AtRest {
   readonly outcome: OperatingPoint['outcome'];
   readonly strings: readonly { readonly id: PartId; readonly currentA: number }[];
-  /** By superposition: what each string's difference in EMF from each other string drives. Sums to the strings' currents. */
+  /**
+   * By superposition: what each string's difference in EMF from each other string of its bank drives. Sums to the strings' currents.
+   * Strings in series go by the first of them.
+   */
   readonly pairs: readonly CirculatingPair[];
-  /** Largest amount by which the pairs miss a string's current: what flows to anything that is not a string. */
+  /**
+   * Largest amount by which the pairs miss a string's current: what flows to anything that is not a string, or is driven by strings
+   * that are not of its bank.
+   */
   readonly remainderA: number;
   /** Turned to heat in batteries and wiring by what circulates. */
   readonly lostW: number;
@@ -119,8 +127,8 @@ export interface Joining {
     readonly w: number;
     /** That it turns to heat in all. */
     readonly wh: number;
-    /** Time after which the two may be joined directly: the gap is then `safeGapV`. */
-    readonly untilS: number;
+    /** Time after which the two may be joined directly: the gap is then `safeGapV`; null where one side is empty before that. */
+    readonly untilS: number | null;
     readonly settleS: number;
   } | null;
   readonly curve: readonly JoiningMoment[];
@@ -193,18 +201,25 @@ export interface LeadStudy {
 
 /** One string or device gone. */
 export interface OneLoss {
+  /** Of strings in series, which are lost together, the first. */
   readonly lost: PartId;
   readonly kind: 'string' | 'device';
   /** Strings that give nothing any more. */
   readonly without: readonly PartId[];
   readonly outcome: OperatingPoint['outcome'];
+  /** Loads that ran before and now drop out for want of volts. */
+  readonly droppedOut: readonly PartId[];
+  /** Those that remain; currents are null where the loads can no longer be had. */
   readonly strings: readonly {
     readonly id: PartId;
     readonly currentA: number | null;
     readonly limit: CurrentLimit | null;
     readonly overLimit: boolean;
   }[];
-  /** Bank current at which the first remaining string reaches its limit; null where none has a limit or nothing remains. */
+  /**
+   * Bank current, in the direction of the case and signed like it, at which the first remaining string reaches its limit; 0 where one
+   * is beyond it at rest already; null where none has a limit or nothing remains.
+   */
   readonly largestA: number | null;
   /** What then cuts out, one wave after the other, where everything beyond its limit does; empty where all hold. */
   readonly cascade: readonly (readonly PartId[])[];
@@ -215,7 +230,7 @@ export interface OneOutStudy {
   readonly bank: number;
   /** Bank current in the case. */
   readonly bankA: number;
-  /** Largest bank current with all strings in. */
+  /** Largest bank current with all strings in, in the direction of the case and signed like it. */
   readonly largestA: number | null;
   /** Largest bank current that survives any one loss. */
   readonly survivesA: number | null;
@@ -241,6 +256,8 @@ export interface BandedString {
 /** What one assumed figure does to the answer, the others at their values. */
 export interface TornadoBar {
   readonly part: PartId;
+  /** In words: `resistance of C`, `rest curve of agm (A, B, C)`. */
+  readonly label: string;
   readonly quantity: 'emfV' | 'resistanceOhm' | 'currentA' | 'powerW';
   readonly origin: Origin;
   readonly low: number;
@@ -268,6 +285,8 @@ export interface BandStudy {
   readonly case: string;
   readonly model: BatteryModel;
   readonly draws: number;
+  /** Draws without an operating point; they count as outside every limit. */
+  readonly unsolved: number;
   readonly seed: number;
   readonly strings: readonly BandedString[];
   /** The string that the verdict, the tornado and the reading are about: furthest off at the figures' own values. */
@@ -301,6 +320,8 @@ export interface SeriesImbalance {
   /** Strings it is about, from minus to plus. */
   readonly strings: readonly PartId[];
   readonly case: string | null;
+  /** Of the readings. */
+  readonly set?: 'as-found' | 'as-left';
   readonly from: 'readings' | 'solved';
   readonly totalV: number;
   /** From minus to plus. */
@@ -326,9 +347,15 @@ export interface WithUncertainty {
 }
 export interface StringFromReadings {
   readonly string: PartId;
+  /** The strings in series with it that the figures are of as well; none where its own volts were read. */
+  readonly together?: readonly PartId[];
+  /** Of the readings. */
+  readonly set?: 'as-found' | 'as-left';
   /** The two cases. */
   readonly cases: readonly [string, string];
   readonly emfV: WithUncertainty;
+  /** True where the volts were read at the string's own terminals, so that its leads are not in the figures. */
+  readonly atTerminals?: boolean;
   /** From bank terminals: leads included. */
   readonly resistanceOhm: WithUncertainty;
   /** What the job expects between the same points. */
@@ -360,6 +387,8 @@ export interface FromReadings {
   readonly tieBreaks: readonly TieBreak[];
   /** At rest the strings' currents must add up to nothing: what they add up to, where they were read. */
   readonly restSumA: WithUncertainty | null;
+  /** What that sum says, where there is one. */
+  readonly restText?: string;
   /** Why nothing could be made of the readings, where nothing could. */
   readonly missing: readonly string[];
 }
@@ -379,6 +408,8 @@ export interface DriftRequest {
 
 export interface DriftedString {
   readonly id: PartId;
+  /** Which half of a string with a junction at its middle: each half has a charge of its own. */
+  readonly half: 'upper' | 'lower' | null;
   /** Throughput: given and taken, Ah. */
   readonly givenAh: number;
   readonly takenAh: number;
@@ -432,7 +463,13 @@ export interface BankMeasure {
   readonly worstA: number;
   readonly bankV: number;
   readonly lostW: number;
-  readonly strings: readonly { readonly id: PartId; readonly currentA: number; readonly deviation: number | null }[];
+  readonly strings: readonly {
+    readonly id: PartId;
+    readonly currentA: number;
+    /** What it would carry at its fair share. */
+    readonly fairA: number;
+    readonly deviation: number | null;
+  }[];
 }
 
 /** Where a bank is tapped, by its junctions. */

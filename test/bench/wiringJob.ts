@@ -2,10 +2,9 @@
 
 type RawPart = Record<string, unknown> & { id: string };
 
-export function wiringJob(parts: number): object {
+export function wiringJob(parts: number, strings = Math.max(2, Math.round(parts / 60))): object {
   const list: RawPart[] = [];
   const add = (part: RawPart) => list.push(part);
-  const strings = Math.max(2, Math.round(parts / 60));
   for (let k = 0; k < strings; k++) addString(add, k);
   add({ id: 'CHG', kind: 'charger', plus: 'bus+', minus: 'bus-', outputA: 40, setpointV: 28.4 });
   add({ id: 'INV', kind: 'inverter', plus: 'inv+', minus: 'bus-', ratedW: 2000, acPowerW: 900, cutoffV: 21 });
