@@ -184,6 +184,7 @@ export type { ResistanceChange, WhatIf } from './network/whatIf.ts';
 export { whatIf } from './network/whatIf.ts';
 export { withoutPairs } from './network/wiring.ts';
 export { type BankChange, type BankChangesRequest, bankChanges } from './remedy/bankChanges.ts';
+export { EFFORTS } from './remedy/candidate.ts';
 export type { MissingField } from './remedy/missingField.ts';
 export { missingField } from './remedy/missingField.ts';
 export type { RemedyTrial } from './remedy/remedyTrial.ts';
@@ -223,27 +224,13 @@ export {
 } from './report/wording.ts';
 export type { ArrayConditions, ArrayCurve } from './solar/arrayCurve.ts';
 export { arrayCurve, currentAt, maximumPower, openCircuitV, shortCircuitA } from './solar/arrayCurve.ts';
-export type { Bank, Branch } from './strings/banks.ts';
-export { bankOf, banksOf } from './strings/banks.ts';
-export { atRestOf } from './strings/circulating.ts';
-export type { FromReadingsRequest } from './strings/fromReadings.ts';
-export { fromReadings } from './strings/fromReadings.ts';
-export type { JoiningRequest } from './strings/joining.ts';
-export { joiningOf } from './strings/joining.ts';
-export type { JoinPair } from './strings/joinPairs.ts';
-export { joinPairs } from './strings/joinPairs.ts';
-export type { JoinBlock, JoinSideAsk } from './strings/joinSide.ts';
-export type { BandRequest } from './strings/band.ts';
-export { bandOf } from './strings/band.ts';
-export { type LayoutsRequest, layoutsOf } from './strings/layouts.ts';
-export { type LeadsRequest, leadToleranceOf } from './strings/leads.ts';
-export { heaviestCase, oneOutOf } from './strings/oneOut.ts';
 export type {
   AtRest,
   BandStudy,
   BankMeasure,
   CycleStep,
   DriftedString,
+  DriftMoment,
   DriftRequest,
   DriftStudy,
   FromReadings,
@@ -261,16 +248,32 @@ export type {
   TornadoBar,
   WithUncertainty,
 } from './strings/answer.ts';
-export { usualCycle } from './strings/cycle.ts';
-export { driftOf } from './strings/drift.ts';
-export type { SentenceTopic, StudySentence } from './strings/sentence.ts';
-export { studySentences } from './strings/sentences.ts';
-export type { SeriesRequest } from './strings/series.ts';
-export { seriesOf } from './strings/series.ts';
-export type { SharingRequest } from './strings/sharing.ts';
-export { sharingOf } from './strings/sharing.ts';
+export type { BandRequest } from './strings/band/band.ts';
+export { bandOf } from './strings/band/band.ts';
+export type { Bank, Branch } from './strings/banks.ts';
+export { bankOf, banksOf } from './strings/banks.ts';
+export { usualCycle } from './strings/drift/cycle.ts';
+export { driftOf } from './strings/drift/drift.ts';
+export type { JoiningRequest } from './strings/joining/joining.ts';
+export { joiningOf } from './strings/joining/joining.ts';
+export type { JoinPair } from './strings/joining/joinPairs.ts';
+export { joinPairs } from './strings/joining/joinPairs.ts';
+export type { JoinBlock, JoinSideAsk } from './strings/joining/joinSide.ts';
+export { type LayoutsRequest, layoutsOf } from './strings/layouts/layouts.ts';
+export { type LeadsRequest, leadToleranceOf } from './strings/layouts/leads.ts';
+export type { FromReadingsRequest } from './strings/readings/fromReadings.ts';
+export { fromReadings } from './strings/readings/fromReadings.ts';
+export type { SeriesRequest } from './strings/readings/series.ts';
+export { seriesOf } from './strings/readings/series.ts';
+export { atRestOf } from './strings/sharing/circulating.ts';
+export { heaviestCase, oneOutOf } from './strings/sharing/oneOut.ts';
+export type { SharingRequest } from './strings/sharing/sharing.ts';
+export { sharingOf } from './strings/sharing/sharing.ts';
 export type { JoinAsk, RestingString, StringsStudy, StudyRequest } from './strings/study.ts';
 export { isWorthStudying, studyStrings } from './strings/study.ts';
+export type { SentenceTopic, StudySentence } from './strings/words/sentence.ts';
+export { heaviest } from './strings/words/sentence.ts';
+export { studySentences } from './strings/words/sentences.ts';
 export type {
   CellResistance,
   ChemistryTables,

@@ -6,16 +6,32 @@ import { type CheckContext, SolvedCase } from './checkContext.ts';
 export interface Quiet {
   /** The case with everything off but its switches as they stand. */
   readonly rest: SolvedCase;
+  /** The cases that it is the quiet state of. */
+  readonly cases: readonly SolvedCase[];
   readonly joins: (a: StringPart['plus'], b: StringPart['plus']) => boolean;
 }
 
-const ofContext = new WeakMap<CheckContext, readonly Quiet[]>();
+interface QuietStates {
+  readonly states: readonly Quiet[];
+  readonly byCase: ReadonlyMap<SolvedCase, Quiet>;
+}
+
+const ofContext = new WeakMap<CheckContext, QuietStates>();
 
 /** The quiet state of each case, found once; cases that differ only in what is off in it share one. */
 export function quietStates(context: CheckContext): readonly Quiet[] {
-  const found = ofContext.get(context);
-  if (found !== undefined) return found;
-  const known = new Map<string, Quiet>();
+  return allStates(context).states;
+}
+
+/** The quiet state of one case of the context. */
+export function quietOf(context: CheckContext, one: SolvedCase): SolvedCase | undefined {
+  return allStates(context).byCase.get(one)?.rest;
+}
+
+function allStates(context: CheckContext): QuietStates {
+  const known = ofContext.get(context);
+  if (known !== undefined) return known;
+  const alike = new Map<string, SolvedCase[]>();
   for (const one of context.cases) {
     // What a case does not change is the same in all of them.
     const { changed } = one.operatingCase;
@@ -23,14 +39,17 @@ export function quietStates(context: CheckContext): readonly Quiet[] {
       (part) => part.kind === 'pair' || part.kind === 'string' || isWiring(part),
     );
     const key = JSON.stringify([one.ambientDegC, lasting]);
-    if (!known.has(key)) known.set(key, quiet(context, one));
+    alike.set(key, [...(alike.get(key) ?? []), one]);
   }
-  const states = [...known.values()];
-  ofContext.set(context, states);
-  return states;
+  const states = [...alike.values()].map((cases) => quiet(context, cases));
+  const byCase = new Map(states.flatMap((state) => state.cases.map((one) => [one, state] as const)));
+  const found = { states, byCase };
+  ofContext.set(context, found);
+  return found;
 }
 
-function quiet(context: CheckContext, one: SolvedCase): Quiet {
+function quiet(context: CheckContext, cases: readonly SolvedCase[]): Quiet {
+  const one = cases[0]!;
   const changed = new Map(one.operatingCase.changed);
   for (const part of context.job.parts) {
     const now = changed.get(part.id) ?? part;
@@ -39,5 +58,5 @@ function quiet(context: CheckContext, one: SolvedCase): Quiet {
   const operatingCase = { ...one.operatingCase, surge: undefined, irradianceWPerM2: 0, changed };
   const rest = new SolvedCase(context.job, operatingCase, context.solve(operatingCase, 'slow'));
   const nets = closedNets(rest.parts);
-  return { rest, joins: nets.same };
+  return { rest, cases, joins: nets.same };
 }

@@ -4,10 +4,17 @@ import { chargerVoltsOff, coldCharge } from './chargingRules.ts';
 import { chargeDropTooBig, dropTooBig } from './dropRules.ts';
 import { fuseUnderContinuous, fuseUnderCurrent } from './fuseLoad.ts';
 import { fuseOverCable, smallWireCap } from './fuseRules.ts';
+import { joiningSurge } from './joiningRule.ts';
+import { linkOverloaded, tapsApart } from './linkRules.ts';
 import { loadOverfed, loadStarved } from './loadVolts.ts';
+import { midpointOff } from './midpointRule.ts';
+import { parallelMix, tooManyStrings } from './mixRules.ts';
+import { oneOutOverload } from './oneOutRule.ts';
 import { ratingUnderCurrent, shuntSmall, voltsRatingLow } from './partRatings.ts';
 import { polarityCrossed } from './polarityRule.ts';
+import { circulatingAtRest } from './restRules.ts';
 import type { Rule } from './rule.ts';
+import { seriesMismatch } from './seriesRule.ts';
 import { shareUneven } from './sharingRule.ts';
 import { deadShort, noFuseOnSource } from './shortRules.ts';
 import { chargeTooStrong, stringChargeHigh, stringDischargeHigh } from './stringRules.ts';
@@ -41,6 +48,15 @@ export const rules: readonly Rule[] = [
   stringChargeHigh,
   chargeTooStrong,
   shareUneven,
+  circulatingAtRest,
+  joiningSurge,
+  oneOutOverload,
+  tooManyStrings,
+  parallelMix,
+  seriesMismatch,
+  midpointOff,
+  linkOverloaded,
+  tapsApart,
   chargerVoltsOff,
   coldCharge,
 ];

@@ -5,7 +5,7 @@ import type { StringPart } from '../job/part.ts';
 import { nameOf } from '../job/part.ts';
 import { isDevice, netsOf, polesOf } from '../network/wiring.ts';
 import { CIRCUIT_LAW, FUSE_AT_SOURCE } from './bases.ts';
-import type { CheckContext } from './checkContext.ts';
+import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { type Quiet, quietStates } from './quiet.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { banksOf } from './systemVolts.ts';
@@ -72,9 +72,23 @@ function runDeadShort(context: CheckContext): RuleOutcome {
   return tally.outcome();
 }
 
+/** E / R of a string, links included. */
+function boltedShortA(context: CheckContext, string: StringPart, ambientDegC: number): number {
+  const tables = context.tables.chemistry;
+  const { emfV, resistanceOhm } = stringSource(string, { model: 'slow', ambientDegC, tables });
+  return emfV.value / (resistanceOhm.value + string.linkOhm);
+}
+
+/** True where the current at rest of a string is that of a short circuit (2. above). */
+export function isShortAtRest(context: CheckContext, string: StringPart, rest: SolvedCase): boolean {
+  const { currentA } = rest.answer(string.id);
+  const shortA = boltedShortA(context, string, rest.ambientDegC);
+  return currentA !== null && isOver(Math.abs(currentA), SHORT_FRACTION * shortA);
+}
+
 function stringVerdict(
   context: CheckContext,
-  { string, rest, joins }: Quiet & { readonly string: StringPart },
+  { string, rest, joins }: Omit<Quiet, 'cases'> & { readonly string: StringPart },
 ): Verdict {
   const { currentA } = rest.answer(string.id);
   const isJoined = joins(string.plus, string.minus);
@@ -83,12 +97,7 @@ function stringVerdict(
       ? joinedOnly(string, rest.id)
       : missing(`current of string ${string.id} at rest in case ${rest.id}`);
   }
-  const { emfV, resistanceOhm } = stringSource(string, {
-    model: 'slow',
-    ambientDegC: rest.ambientDegC,
-    tables: context.tables.chemistry,
-  });
-  const shortA = emfV.value / (resistanceOhm.value + string.linkOhm);
+  const shortA = boltedShortA(context, string, rest.ambientDegC);
   const lastingA = string.maxDischargeA ?? currentLimits(string, context.tables.chemistry).dischargeA?.value ?? shortA;
   const restA = Math.abs(currentA);
   const limitA = isJoined ? Math.min(SHORT_FRACTION * shortA, lastingA) : SHORT_FRACTION * shortA;

@@ -12,7 +12,7 @@ import type { Rule, RuleOutcome } from './rule.ts';
 import { isOver, missing, missingField, PASS, Tally, type Verdict } from './tally.ts';
 import { amps, apart, titleOf } from './wording.ts';
 
-const CHEMISTRY_RATES: Basis = {
+export const CHEMISTRY_RATES: Basis = {
   source: 'SRC-BAT-LIMIT-PRACTICE',
   text: "the string's own limit where entered, else the usual rate of its chemistry",
   status: 'common-practice',
@@ -69,7 +69,7 @@ interface CurrentLimit {
   readonly basis: Basis;
 }
 
-function limitFor(
+export function limitFor(
   context: CheckContext,
   string: StringPart,
   direction: 'charge' | 'discharge',

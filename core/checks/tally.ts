@@ -132,6 +132,26 @@ export class Tally {
   }
 }
 
+/** Verdicts about groups of parts (the strings of a bank) as they come, case by case; each group is then judged once. */
+export class GroupVerdicts {
+  private readonly groups = new Map<string, { readonly ids: readonly PartId[]; readonly found: Verdict[] }>();
+
+  /** No verdict: the rule has nothing to say about the group in this case. */
+  add(ids: readonly PartId[], verdict: Verdict | undefined): void {
+    if (verdict === undefined) return;
+    const key = ids.join(' ');
+    const group = this.groups.get(key) ?? { ids, found: [] };
+    group.found.push(verdict);
+    this.groups.set(key, group);
+  }
+
+  outcome(rule: Pick<Rule, 'id' | 'remedy'>, basis: Basis): RuleOutcome {
+    const tally = new Tally(rule, basis);
+    for (const { ids, found } of this.groups.values()) tally.judge(ids, found);
+    return tally.outcome();
+  }
+}
+
 /** An excess to six figures: rounding in a solve must not decide an order. */
 function ranked(excess: number): number {
   return Number.isFinite(excess) ? Number(excess.toPrecision(6)) : excess;

@@ -28,7 +28,7 @@ const step = 160;
 
 export function smallParts(small: SmallJob, chosen: Chosen): readonly Fields[] {
   const isBank = small.blocksInParallel > 1;
-  const strings = Array.from({ length: small.blocksInParallel }, (_unused, index) => string(small, index));
+  const strings = Array.from({ length: small.blocksInParallel }, (_unused, index) => string(small, chosen, index));
   const bank = isBank ? bankParts(small, chosen) : [];
   const from = isBank ? 'bank plus out' : 'B1 plus';
   const x = isBank ? 460 : 140;
@@ -73,7 +73,7 @@ function blocksInSeries({ systemV, blockNominalV }: SmallJob): number {
   return Math.max(1, Math.round(systemV / blockNominalV));
 }
 
-function string(small: SmallJob, index: number): Fields {
+function string(small: SmallJob, { main, lead }: Chosen, index: number): Fields {
   const { chemistry, blockNominalV, capacityAh } = small;
   const blocks = blocksInSeries(small);
   const links = blocks - 1;
@@ -82,7 +82,9 @@ function string(small: SmallJob, index: number): Fields {
       ? {}
       : {
           linkOhm: tidy(linkOhm.usual * links),
-          origin: { linkOhm: 'default' },
+          // As thick as the string's own lead: it carries the same.
+          linkSize: fileSize(small.blocksInParallel > 1 ? lead : main),
+          origin: { linkOhm: 'default', linkSize: 'guess' },
           range: { linkOhm: linkOhm.range.map((ohm) => tidy(ohm * links)) },
         };
   const id = `B${String(index + 1)}`;
@@ -169,10 +171,14 @@ function fuse({ practice }: SmallJob, { ratingA }: ProtectedRun): Fields {
 
 const conductorOrigin = { size: 'guess', run: 'guess', endOhm: 'default' } as const;
 
-function conductor({ size }: ProtectedRun): Fields {
+/** A file keeps to plain letters. */
+function fileSize({ size }: ProtectedRun): string {
+  return sizeText(size).replace('²', '2');
+}
+
+function conductor(chosen: ProtectedRun): Fields {
   return {
-    // A file keeps to plain letters.
-    size: sizeText(size).replace('²', '2'),
+    size: fileSize(chosen),
     run: 'free-air',
     endOhm: endOhm.usual,
     origin: conductorOrigin,

@@ -72,6 +72,8 @@ export interface StringPart extends TwoPole {
   readonly resistanceOhm: number | undefined;
   /** All inter-block links of the string together; contract default 0. */
   readonly linkOhm: number;
+  /** Size of each inter-block link. */
+  readonly linkSize: ConductorSize | undefined;
   readonly maxChargeA: number | undefined;
   readonly maxDischargeA: number | undefined;
   readonly shortCircuitA: number | undefined;

@@ -73,6 +73,7 @@ const tables: AllPartFields = {
     emfV: volts,
     resistanceOhm: ohms,
     linkOhm: { ...ohms, standard: 0 },
+    linkSize: size,
     maxChargeA: amps,
     maxDischargeA: amps,
     shortCircuitA: ratingAmps,

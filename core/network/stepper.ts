@@ -33,6 +33,8 @@ export interface Marked {
 const PASSES = 60;
 /** Times that valves may change in one step before it is given up. */
 const ROUNDS = 24;
+/** Times that the way to the answer may lead nowhere before a step is given up. */
+const MOST_ASTRAY = 6;
 
 export class Stepper {
   readonly circuit: Circuit;
@@ -87,16 +89,17 @@ export class Stepper {
    */
   solve(aim: () => boolean, thorough: boolean): NoStep | null {
     if (!this.isSupplied) return null;
+    let astray = 0;
     for (let round = 0; round < ROUNDS; round++) {
-      const fresh = this.assembled === null;
       if (this.assembled === null) {
         const ending = this.start(thorough);
         if (!('assembled' in ending)) return ending;
         this.assembled = ending.assembled;
       }
       if (!this.follow(this.assembled, aim)) {
+        // Sources that have moved on the way may want other states of the valves than those they set out with.
         this.forget();
-        if (fresh) return { collapse: null };
+        if (++astray > MOST_ASTRAY) break;
         continue;
       }
       if (!this.revise(this.assembled)) return null;

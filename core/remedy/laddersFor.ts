@@ -1,5 +1,6 @@
 /** Which changes are worth trying for which rule. */
 import type { PartId } from '../job/part.ts';
+import { isolated, thickerLinks } from './bankLadders.ts';
 import { conductorOf, moreInParallel, thicker } from './cableLadders.ts';
 import type { Bench, Ladder } from './candidate.ts';
 import { lowerSetpoints, noColdCharge, offInCase, otherSetpoint, weakerCharge } from './chargeLadders.ts';
@@ -72,6 +73,12 @@ const byRule: Readonly<Record<string, LaddersOf>> = {
   'string-charge-high': (bench, [id]) => [...weakerCharge(bench), ...anotherString(bench, id)],
   'charge-too-strong': (bench, [id]) => [...weakerCharge(bench), ...anotherString(bench, id)],
   'share-uneven': (bench, ids) => evenLeads(bench, ids),
+  'circulating-at-rest': (bench, ids) => isolated(bench, ids),
+  'one-out-overload': (bench, [id]) => anotherString(bench, id),
+  'link-overloaded': (bench, [id]) => thickerLinks(bench, id),
+  // None for `joining-surge` and `midpoint-off`, which are about what is done to the blocks before they are joined or charged; nor for
+  // `too-many-strings`, `parallel-mix` and `series-mismatch`, which ask for other blocks; nor for `charge-and-load-share-links`,
+  // whose taps the study of the bank's layouts moves one by one.
   'charger-volts-off': (bench, ids) => otherSetpoint(bench, ids),
   'cold-charge': (bench, ids) => noColdCharge(bench, ids),
 };

@@ -198,9 +198,11 @@ class Tester {
   }
 }
 
-/** Rules in which a rating of a device, switch, bar or diode has a say; the others judge volts and amperes alone. */
+/** Rules in which a rating of a device, switch, bar or diode has a say (strings joined rush through their fuses); the others judge volts and amperes alone. */
 const READS_RATINGS: ReadonlySet<string> = new Set(
-  rules.filter(({ family }) => family === 'fuse' || family === 'rating').map(({ id }) => id),
+  rules
+    .filter(({ id, family }) => family === 'fuse' || family === 'rating' || id === 'joining-surge')
+    .map(({ id }) => id),
 );
 
 /** Rules that judge the drawing and the settings alone. */

@@ -8,13 +8,14 @@ import type { Block, ReportDocument } from './document.ts';
 import { findingSection } from './findingSection.ts';
 import type { ReportInput } from './input.ts';
 import { partSections } from './partSections.ts';
+import { stringsSection } from './stringsSection.ts';
 import { summarySection } from './summarySection.ts';
 
 const PAGE: Block = { kind: 'pageBreak', orientation: 'portrait' };
 
 /**
- * The whole paper of a job, in reading order: cover, summary, what was assumed, parts, operating cases, findings, proof of
- * balance, test record, sources, statement. It only arranges and words what the engine answered; a case without an answer is told in
+ * The whole paper of a job, in reading order: cover, summary, what was assumed, parts, operating cases, strings, findings,
+ * proof of balance, test record, sources, statement. It only arranges and words what the engine answered; a case without an answer is told in
  * words, and a case whose proof fails prints no figures.
  */
 export function buildReport(input: ReportInput): ReportDocument {
@@ -26,6 +27,7 @@ export function buildReport(input: ReportInput): ReportDocument {
     ...assumptionSection(input, citations),
     ...partSections(input, citations),
     ...caseSection(input),
+    ...stringsSection(input, citations),
     ...findingSection(input, citations),
     ...proofSection(input),
     ...testSection(input, citations),

@@ -11,6 +11,7 @@ import type { CautionBlock } from './document.ts';
 export type CautionPlace =
   | 'isolating'
   | 'batteries'
+  | 'joining'
   | 'conductors'
   | 'devices'
   | 'loads'
@@ -136,6 +137,16 @@ const CAUTIONS: readonly Caution[] = [
     appliesTo: withSeveralStrings,
     text: 'Never join strings of different voltage, chemistry or state of charge. Bring them level first: a gap of 0.8 V across 12 mΩ drives 67 A. Make the last connection away from the battery.',
   },
+  {
+    place: 'joining',
+    appliesTo: withSeveralStrings,
+    text: 'Measure both at rest with one meter, just before joining. Fuse in the lead of each string; eyes shielded; the last connection away from the batteries, where gas does not gather.',
+  },
+  {
+    place: 'joining',
+    appliesTo: withSeveralStrings,
+    text: 'A resistor that levels two strings gets hot enough to burn: stand it on something that does not, and stay with it.',
+  },
   { place: 'batteries', appliesTo: withKind('string'), text: 'Batteries are heavy and tip: lift with help.' },
   {
     place: 'conductors',
@@ -205,6 +216,7 @@ const CAUTIONS: readonly Caution[] = [
 const TITLES: Readonly<Record<CautionPlace, string>> = {
   isolating: 'Before a hand goes in',
   batteries: 'At the batteries',
+  joining: 'Before strings are joined',
   conductors: 'At cables and joints',
   devices: 'At fuses and switches',
   loads: 'At the loads',

@@ -1,6 +1,7 @@
 import type { CheckReport } from '../checks/finding.ts';
 import type { CheckedJob } from '../job/job.ts';
 import type { OperatingPoint } from '../network/answer.ts';
+import type { StringsStudy } from '../strings/study.ts';
 import type { Tables } from '../tables/tables.ts';
 import type { Paper } from './document.ts';
 
@@ -18,5 +19,7 @@ export interface ReportInput {
   readonly tables: Tables;
   readonly points: readonly OperatingPoint[];
   readonly checkReport: CheckReport;
+  /** Where the job has strings to speak of. */
+  readonly strings?: StringsStudy | undefined;
   readonly options: ReportOptions;
 }

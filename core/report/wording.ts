@@ -92,6 +92,7 @@ const FIELD_WORDS: Readonly<Record<string, string>> = {
   iscA: 'short-circuit current',
   iscPerDegC: 'change of short-circuit current',
   linkOhm: 'resistance of the links',
+  linkSize: 'size of the links',
   maxChargeA: 'highest charge current',
   maxDischargeA: 'highest discharge current',
   maxFuseA: 'largest fuse',

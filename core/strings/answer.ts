@@ -437,7 +437,7 @@ export interface DriftStudy {
   readonly hours: number;
   readonly steps: number;
   readonly strings: readonly DriftedString[];
-  /** Thinned for drawing: at most some hundreds. */
+  /** Thinned for drawing: at most some twelve hundred. */
   readonly moments: readonly DriftMoment[];
   /** At the end of each cycle: charge of each string. */
   readonly cycleEnds: readonly (readonly number[])[];

@@ -136,6 +136,8 @@ export interface ChemistryTables {
   readonly resistanceByAge: Readonly<Record<Chemistry, readonly FactorPoint[]>>;
   /** Activation energy of the resistance, J/mol. */
   readonly activationEnergy: Readonly<Record<Chemistry, Spread>>;
+  /** Part of a charge current that is kept, by state of charge; empty where the chemistry keeps the same part throughout. */
+  readonly chargeKept: Readonly<Record<Chemistry, readonly FactorPoint[]>>;
   readonly relaxation: Readonly<Record<Chemistry, readonly RelaxationElement[]>>;
   /** A quantity that is missing is not known, or does not exist for the chemistry. */
   readonly limits: Readonly<Record<Chemistry, ReadonlyMap<LimitQuantity, Spread>>>;

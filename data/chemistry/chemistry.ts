@@ -15,6 +15,7 @@ import { Defect } from '../../core/api.ts';
 import activationEnergyCsv from './activation_energy.csv?raw';
 import capacityTemperatureCsv from './capacity_temperature.csv?raw';
 import cellVoltsCsv from './cell_volts.csv?raw';
+import chargeKeptCsv from './charge_kept.csv?raw';
 import emfCsv from './emf.csv?raw';
 import emfTemperatureCsv from './emf_temperature.csv?raw';
 import freezingCsv from './freezing.csv?raw';
@@ -177,6 +178,9 @@ export const chemistryTables: ChemistryTables = {
   resistanceByAge: factors('age_years'),
   activationEnergy: byChemistry(readRows('activation_energy.csv', activationEnergyCsv), (rows, chemistry) =>
     spread(only(rows, `activation_energy.csv ${chemistry}`), ['low_j_per_mol', 'middle_j_per_mol', 'high_j_per_mol']),
+  ),
+  chargeKept: byChemistry(readRows('charge_kept.csv', chargeKeptCsv), (rows) =>
+    rows.map((row) => ({ at: row.number('at'), ...spread(row, LOW_MIDDLE_HIGH) })),
   ),
   relaxation: byChemistry(readRows('relaxation.csv', relaxationCsv), (rows) =>
     rows.map((row) => ({ share: row.number('share'), tauS: row.number('tau_s'), basis: basisOf(row) })),

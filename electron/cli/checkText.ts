@@ -18,7 +18,7 @@ const severityWords: Readonly<Record<Severity, string>> = {
   look: 'LOOK  a person has to judge this',
   note: 'NOTE  for information',
 };
-const caution =
+export const caution =
   'This is arithmetic on the figures of the job. It does not replace the local code, the makers’ instructions, the inspector or a ' +
   'licensed electrician; where they differ, they prevail. Isolate every source and prove the circuit dead before working on it: a ' +
   'battery cannot be switched off, and a spanner across it burns.';

@@ -89,7 +89,8 @@ export async function begin(path: string, options: CommandOptions, io: Io): Prom
   return { read, job, cases };
 }
 
-async function print(answer: string, read: JobRead, options: CommandOptions, io: Io): Promise<void> {
+/** To standard output, or to the file that `--out` names. */
+export async function print(answer: string, read: JobRead, options: CommandOptions, io: Io): Promise<void> {
   if (options.out === undefined) await io.out(answer);
   else writeOut({ path: options.out, content: answer, input: read.file });
 }

@@ -1,5 +1,5 @@
 /** The words of the command line. */
-import { Command } from 'commander';
+import { Command, type Option } from 'commander';
 import { check, report, solve } from './commands.ts';
 import type { Io } from './io.ts';
 import { lists } from './lists.ts';
@@ -14,6 +14,8 @@ import {
   quietOption,
 } from './options.ts';
 import { programVersion } from './programVersion.ts';
+import { strings } from './strings.ts';
+import { type StringsOptions, stringsOptions } from './stringsOptions.ts';
 
 const afterHelp = `
 A job file is read, "-" reads it from standard input. No command changes its input.
@@ -32,7 +34,7 @@ export interface ProgramSinks {
   readonly answered: (status: number) => void;
 }
 
-type JobCommand = (path: string, options: CommandOptions, io: Io) => Promise<number>;
+type JobCommand = (path: string, options: StringsOptions, io: Io) => Promise<number>;
 
 /** The program as commander has it; it throws instead of ending the process. */
 export function buildProgram(io: Io, { printed, complained, answered }: ProgramSinks): Command {
@@ -44,8 +46,8 @@ export function buildProgram(io: Io, { printed, complained, answered }: ProgramS
     .configureOutput({ writeOut: printed, writeErr: complained })
     .exitOverride()
     .addHelpText('after', afterHelp);
-  const onJob = (name: string, what: string, run: JobCommand): void => {
-    program
+  const onJob = (name: string, what: string, run: JobCommand, own: readonly Option[] = []): void => {
+    const command = program
       .command(name)
       .description(what)
       .argument('<job>', 'the job file, or - for standard input')
@@ -54,13 +56,15 @@ export function buildProgram(io: Io, { printed, complained, answered }: ProgramS
       .addOption(modelOption)
       .addOption(practiceOption)
       .addOption(outOption)
-      .addOption(quietOption)
-      .action(async (path: string, options: CommandOptions) => {
-        answered(await run(path, options, io));
-      });
+      .addOption(quietOption);
+    for (const option of own) command.addOption(option);
+    command.action(async (path: string, options: StringsOptions) => {
+      answered(await run(path, options, io));
+    });
   };
   onJob('solve', 'volts, amps and watts in every operating case, with the sums that prove them', solve);
   onJob('check', 'findings by the published tables of a practice, worst first', check);
+  onJob('strings', 'how parallel strings share, what flows at rest, joints, layouts, losses', strings, stringsOptions);
   onJob('report', 'the paper of a job as a PDF (--out file.pdf), or its document tree (--json)', report);
   onJob(
     'lists',

@@ -3,11 +3,13 @@ import {
   type BatteryModel,
   buildReport,
   type CheckedJob,
+  isWorthStudying,
   type OperatingCase,
   type OperatingPoint,
   type ReportDocument,
   type ReportOptions,
   runChecks,
+  studyStrings,
 } from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
 import { solveCases } from './solveCases.ts';
@@ -25,10 +27,17 @@ export interface MadeReport {
   readonly points: readonly OperatingPoint[];
 }
 
+const bothModels: readonly BatteryModel[] = ['slow', 'fast'];
+/** Enough for percentiles on paper, and still done at once. */
+const drawsOfReport = 400;
+
 export function makeReport({ job, cases, model, options }: ReportRequest): MadeReport {
   const points = solveCases(job, cases, model);
   const checkReport = runChecks({ job, tables, cases, points });
-  return { document: buildReport({ job, tables, points, checkReport, options }), points };
+  const strings = isWorthStudying(job)
+    ? studyStrings({ job, tables, cases, models: bothModels, draws: drawsOfReport, seed: 1 })
+    : undefined;
+  return { document: buildReport({ job, tables, points, checkReport, strings, options }), points };
 }
 
 /** The bytes of the PDF. Its writer takes longer to load than all the rest, so it is loaded when it is needed. */

@@ -27,12 +27,14 @@ export interface FoldedProps {
   /** How much is in it, in grey beside the title. */
   readonly aside?: ReactNode;
   readonly open?: boolean;
+  /** Told when it is opened or folded, by whoever it was. */
+  readonly onTurn?: (open: boolean) => void;
   readonly children: ReactNode;
 }
 
-export function Folded({ title, aside, open = false, children }: FoldedProps): ReactElement {
+export function Folded({ title, aside, open = false, onTurn, children }: FoldedProps): ReactElement {
   return (
-    <Details open={open}>
+    <Details open={open} onToggle={({ currentTarget }) => onTurn?.(currentTarget.open)}>
       <summary>
         <span>{title}</span>
         {aside !== undefined && (

@@ -22,6 +22,7 @@ const FindingsStage = lazy(async () => ({
 const HandoverStage = lazy(async () => ({
   default: (await import('../stages/handover/HandoverStage.tsx')).HandoverStage,
 }));
+const StringsStage = lazy(async () => ({ default: (await import('../stages/strings/StringsStage.tsx')).StringsStage }));
 
 export function Frame(): ReactElement {
   const stage = useSession((session) => session.stage);
@@ -98,6 +99,8 @@ function stageFor(stage: Stage): ReactElement {
       return <SiteStage />;
     case 'wiring':
       return <WiringStage />;
+    case 'strings':
+      return <StringsStage />;
     case 'findings':
       return <FindingsStage />;
     case 'handover':

@@ -11,6 +11,7 @@ import type { Room } from './useRoom.ts';
 export const stageWords: Readonly<Record<Stage, { readonly name: string; readonly purpose: string }>> = {
   site: { name: 'Site', purpose: 'where, how cold, which rule book' },
   wiring: { name: 'Wiring', purpose: 'draw it as it lies, see it live' },
+  strings: { name: 'Strings', purpose: 'does the bank work as one?' },
   findings: { name: 'Findings', purpose: 'the verdicts, worst first' },
   handover: { name: 'Handover', purpose: 'print and pass on' },
 };

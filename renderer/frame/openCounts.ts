@@ -1,5 +1,6 @@
 /** What is open in each stage, for the marks of the spine. */
-import type { OperatingPoint, Severity } from '../../core/api.ts';
+import type { Finding, OperatingPoint, RuleFamily, Severity } from '../../core/api.ts';
+import { checkRules, SEVERITIES } from '../../core/api.ts';
 import { useOpenJob } from '../state/openJob.ts';
 import type { Stage } from '../state/session.ts';
 import type { OpenCount } from './Spine.tsx';
@@ -12,6 +13,7 @@ export function useOpenCounts(): Readonly<Record<Stage, OpenCount | null>> {
   return {
     site: job.practiceAssumed === true ? { severity: 'look', count: 1, words: 'no rule book' } : null,
     wiring: wiringCount(answers),
+    strings: stringsCount(answers),
     findings: findingCount(answers),
     handover: null,
   };
@@ -22,13 +24,29 @@ type Answers = ReturnType<typeof useOpenJob.getState>['answers'];
 function findingCount(answers: Answers): OpenCount | null {
   if (answers === null) return null;
   const { findings, notChecked } = answers.report;
-  for (const severity of ['stop', 'fix', 'look', 'note'] as const) {
-    const count = findings.filter((finding) => finding.severity === severity).length;
-    if (count > 0) return { severity, count, words: `${String(count)} ${inWords[severity]}` };
-  }
+  const worst = worstCount(findings);
+  if (worst !== null) return worst;
   return notChecked.length === 0
     ? null
     : { severity: 'note', count: notChecked.length, words: `${String(notChecked.length)} not done` };
+}
+
+/** How many there are of the gravest kind. */
+function worstCount(findings: readonly Finding[]): OpenCount | null {
+  for (const severity of SEVERITIES) {
+    const count = findings.filter((finding) => finding.severity === severity).length;
+    if (count > 0) return { severity, count, words: `${String(count)} ${inWords[severity]}` };
+  }
+  return null;
+}
+
+const OF_STRINGS: ReadonlySet<RuleFamily> = new Set(['strings', 'battery']);
+const stringRules: ReadonlySet<string> = new Set(
+  checkRules.filter(({ family }) => OF_STRINGS.has(family)).map(({ id }) => id),
+);
+
+function stringsCount(answers: Answers): OpenCount | null {
+  return answers === null ? null : worstCount(answers.report.findings.filter(({ rule }) => stringRules.has(rule)));
 }
 
 /** Cases without a balance, and parts that nothing feeds. */

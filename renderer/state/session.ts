@@ -3,7 +3,7 @@ import { create } from 'zustand';
 import type { AboutHost, HostChannel, Trouble } from '../../core/host.ts';
 
 /** The stages that work, in the order in which the work is done. */
-export const stages = ['site', 'wiring', 'findings', 'handover'] as const;
+export const stages = ['site', 'wiring', 'strings', 'findings', 'handover'] as const;
 export type Stage = (typeof stages)[number];
 
 export interface Session {

@@ -1,6 +1,14 @@
 /** Words the answers into the paper's document tree, off the screen's thread. */
 /// <reference lib="webworker" />
-import { buildReport, checkJob } from '../../core/api.ts';
+import {
+  buildReport,
+  type CheckedJob,
+  caseById,
+  checkJob,
+  isWorthStudying,
+  type OperatingPoint,
+  studyStrings,
+} from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
 import type { ReportAsk, ReportReply } from './reportMessages.ts';
 
@@ -12,9 +20,19 @@ function answer({ ask, draft, points, report, options }: ReportAsk): ReportReply
   try {
     const read = checkJob(draft);
     if (!read.ok) return { ok: false, ask, message: read.issues.map(({ message }) => message).join(' ') };
-    const document = buildReport({ job: read.value, tables, points, checkReport: report, options });
+    const strings = stringsOf(read.value, points);
+    const document = buildReport({ job: read.value, tables, points, checkReport: report, strings, options });
     return { ok: true, ask, document };
   } catch (error) {
     return { ok: false, ask, message: error instanceof Error ? error.message : String(error) };
   }
+}
+
+/** Enough draws for percentiles on paper. */
+const drawsOfReport = 400;
+
+function stringsOf(job: CheckedJob, points: readonly OperatingPoint[]) {
+  if (!isWorthStudying(job)) return undefined;
+  const cases = [...new Set(points.map((point) => point.case))].flatMap((id) => caseById(job, id) ?? []);
+  return studyStrings({ job, tables, cases, models: ['slow', 'fast'], draws: drawsOfReport, seed: 1 });
 }

@@ -39,6 +39,7 @@ export function makeString(fields: Partial<StringPart> = {}, marks: Marks = {}):
     emfV: undefined,
     resistanceOhm: undefined,
     linkOhm: 0,
+    linkSize: undefined,
     maxChargeA: undefined,
     maxDischargeA: undefined,
     shortCircuitA: undefined,

@@ -45,6 +45,7 @@ describe('a job with every kind of part and every field', () => {
       ageYears: 1.5,
       resistanceOhm: 0.005,
       linkOhm: 0.0001,
+      linkSize: { system: 'awg', gauge: -1 },
       shortCircuitA: 2100,
     });
     expect(part(job, 'C1', 'cable')).toMatchObject({
@@ -118,7 +119,12 @@ describe('defaults', () => {
         { id: 'L', kind: 'load', plus: 'c', minus: 'B-', powerW: 1 },
       ],
     });
-    expect(part(job, 'S2', 'string')).toMatchObject({ stateOfCharge: 1, linkOhm: 0, resistanceOhm: undefined });
+    expect(part(job, 'S2', 'string')).toMatchObject({
+      stateOfCharge: 1,
+      linkOhm: 0,
+      linkSize: undefined,
+      resistanceOhm: undefined,
+    });
     expect(part(job, 'C', 'cable')).toMatchObject({ inParallel: 1, endOhm: 0, metal: undefined });
     expect(part(job, 'F', 'fuse')).toMatchObject({ state: 'closed', resistanceOhm: undefined });
     expect(part(job, 'B', 'busbar').segmentOhm).toBe(0);

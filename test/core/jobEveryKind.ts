@@ -59,6 +59,7 @@ function everyPart(): Record<string, unknown>[] {
       emfV: 12.8,
       resistanceOhm: '5 mOhm',
       linkOhm: '0.1 mOhm',
+      linkSize: '2/0 AWG',
       maxChargeA: 55,
       maxDischargeA: 200,
       shortCircuitA: '2.1 kA',

@@ -134,6 +134,37 @@ const troubles: Readonly<Record<string, readonly [job: RawJob, first: RegExp]>> 
     },
     /^All leads of the strings alike: /,
   ],
+  'circulating-at-rest': [
+    {
+      parts: [
+        battery('B1', { emfV: 13.2, plus: 'B1+' }),
+        battery('B2', { emfV: 10.9, plus: 'B2+' }),
+        { id: 'F1', kind: 'fuse', from: 'B1+', to: 'P', ratingA: 300, resistanceOhm: 0.02 },
+        { id: 'F2', kind: 'fuse', from: 'B2+', to: 'P', ratingA: 300, resistanceOhm: 0.02 },
+        { id: 'L1', kind: 'load', plus: 'P', minus: 'N', currentA: 1 },
+      ],
+    },
+    /^B2 isolated: F2 opened$/,
+  ],
+  'one-out-overload': [
+    {
+      parts: [
+        battery('B1', { maxDischargeA: 100 }),
+        battery('B2', { maxDischargeA: 100 }),
+        { id: 'L1', kind: 'load', plus: 'P', minus: 'N', currentA: 120 },
+      ],
+    },
+    /^Another string like B1 beside it/,
+  ],
+  'link-overloaded': [
+    {
+      parts: [
+        battery('B1', { blocksInSeries: 2, emfV: 26.4, linkSize: '10 mm2' }),
+        { id: 'L1', kind: 'load', plus: 'P', minus: 'N', currentA: 150 },
+      ],
+    },
+    /^Links of B1: \d+ mm² instead of 10 mm²$/,
+  ],
   'no-fuse-on-source': [
     {
       parts: [

@@ -4,6 +4,7 @@ import type { CheckedJob } from '../../core/job/job.ts';
 import { parseJob } from '../../core/job/parseJob.ts';
 import { operatingPoint } from '../../core/network/operatingPoint.ts';
 import type { ReportInput } from '../../core/report/input.ts';
+import { studyStrings } from '../../core/strings/study.ts';
 import { tables } from '../../data/index.ts';
 
 export function checked(file: object): CheckedJob {
@@ -22,4 +23,12 @@ export function solvedInput(file: object, options: Partial<ReportInput['options'
     checkReport: runChecks({ job, tables, points }),
     options: { programVersion: '0.1.0', preparedOn: '2025-03-31', ...options },
   };
+}
+
+/** The same with the study of its strings; few draws, since no test of the paper is about them. */
+export function studiedInput(file: object): ReportInput {
+  const input = solvedInput(file);
+  const { job } = input;
+  const strings = studyStrings({ job, tables, cases: job.cases, models: ['slow', 'fast'], draws: 50, seed: 1 });
+  return { ...input, strings };
 }

@@ -3,10 +3,20 @@ import { expect, test } from 'vitest';
 import { buildReport } from '../../core/report/buildReport.ts';
 import type { Block, ReportDocument } from '../../core/report/document.ts';
 import { cellText } from '../../core/report/document.ts';
+import { studiedInput } from '../core/reportInput.ts';
+import { cabin } from '../core/reportJobs.ts';
 import { cabinInput } from '../core/reportSample.ts';
 
 test('the cabin reads as it did', async () => {
   await expect(plainText(buildReport(cabinInput()))).toMatchFileSnapshot('report-cabin.txt');
+});
+
+test('its section on strings reads as it did', async () => {
+  const report = buildReport(studiedInput(cabin));
+  const start = report.blocks.findIndex((block) => block.kind === 'heading' && block.text === 'Strings');
+  const end = report.blocks.findIndex((block) => block.kind === 'heading' && block.text === 'Findings');
+  const lines = report.blocks.slice(start, end).flatMap(linesOf);
+  await expect(`${lines.join('\n').replaceAll('\u00a0', ' ').trim()}\n`).toMatchFileSnapshot('report-strings.txt');
 });
 
 function plainText({ title, subject, author, paper, preparedOn, program, footer, blocks }: ReportDocument): string {

@@ -160,6 +160,117 @@ describe('check', () => {
   });
 });
 
+describe('strings', () => {
+  /** Two blocks on 10 mΩ each, 12.6 V and 12.4 V, feed 1.25 Ω. */
+  const pair = {
+    ...tenAmps,
+    parts: [
+      ...(tenAmps['parts'] as Record<string, unknown>[]),
+      { ...(tenAmps['parts'] as Record<string, unknown>[])[0], id: 'S2', emfV: 12.4 },
+    ],
+  };
+  const asked = async (...words: string[]) =>
+    await runCli(['strings', '-', '--draws', '20', ...words], { input: JSON.stringify(pair) });
+
+  test('answers every key of the contract as one JSON document, status 0', async () => {
+    const run = await asked(
+      '--json',
+      '--join',
+      'S1,S2',
+      '--lead',
+      '2 mOhm',
+      '--drift',
+      '1',
+      '--cycle',
+      'on:1 h,off:1 h',
+    );
+    expect([run.status, run.stderr]).toEqual([0, '']);
+    const answer = JSON.parse(run.stdout) as Record<string, Record<string, unknown>[]> & {
+      atRest: Record<string, unknown>;
+      band: Record<string, Record<string, number>>;
+    };
+    const keysOf = (value: unknown): string[] => Object.keys(value as object);
+    expect(keysOf(answer)).toEqual(
+      expect.arrayContaining(['cases', 'atRest', 'joining', 'layouts', 'oneOut', 'band', 'drift']),
+    );
+    expect(answer['cases']?.map((each) => [each['case'], each['model']])).toEqual([
+      ['on', 'slow'],
+      ['on', 'fast'],
+      ['off', 'slow'],
+      ['off', 'fast'],
+    ]);
+    const [first] = answer['cases']![0]!['strings'] as unknown[];
+    expect(keysOf(first)).toEqual(
+      expect.arrayContaining(['id', 'currentA', 'share', 'fairShare', 'deviation', 'cRate']),
+    );
+    expect(answer['cases']![0]).toHaveProperty('spread');
+    // By hand: 0.2 V through 20 mΩ is 10 A.
+    expect(answer.atRest).toMatchObject({ pairs: [{ from: 'S1', to: 'S2' }] });
+    expect((answer.atRest['strings'] as { currentA: number }[])[0]?.currentA).toBeCloseTo(10, 9);
+    expect(answer.atRest['lostW']).toBeCloseTo(2, 9);
+    expect(keysOf(answer['joining']![0])).toEqual(
+      expect.arrayContaining(['a', 'b', 'gapV', 'inrushA', 'safeGapV', 'settleS', 'movedAh', 'lostWh', 'resistor']),
+    );
+    expect(answer['joining']![0]?.['gapV']).toBeCloseTo(0.2, 9);
+    expect(keysOf(answer['layouts']![0])).toEqual(
+      expect.arrayContaining(['name', 'plusAt', 'minusAt', 'strings', 'spread', 'lostW', 'cableM']),
+    );
+    expect(keysOf(answer['oneOut']![0])).toEqual(expect.arrayContaining(['lost', 'strings']));
+    expect(keysOf(answer.band['S1'])).toEqual(expect.arrayContaining(['p05A', 'p50A', 'p95A']));
+  });
+
+  test('for a person: the answer in sentences first, then the tables', async () => {
+    const run = await asked('--join', 'S1,S2', '--volts', '12.8 V,12.1 V', '--limit', '20 A', '--model', 'slow');
+    expect([run.status, run.stderr]).toEqual([0, '']);
+    const [answer, table] = [
+      run.stdout.indexOf('10 A flows between the strings'),
+      run.stdout.indexOf('Sharing, battery'),
+    ];
+    expect(answer).toBeGreaterThan(-1);
+    expect(table).toBeGreaterThan(answer);
+    expect(run.stdout).toMatch(/- Joining S1 and S2 now: 0\.7 V apart, S1 gives .* beyond the 20 A/);
+    expect(run.stdout).not.toContain('first second A');
+    expect(run.stdout).toContain('licensed');
+  });
+
+  test('the same seed draws the same, another seed something else', async () => {
+    const [one, again, other] = await Promise.all([asked('--json'), asked('--json'), asked('--json', '--seed', '2')]);
+    expect(again.stdout).toBe(one.stdout);
+    expect(other.stdout).not.toBe(one.stdout);
+  });
+
+  test('a collapse is status 1, and a single string is told that it shares with none', async () => {
+    const run = await runCli(['strings', at('tooMuch.job.json')]);
+    expect(run.status).toBe(1);
+    expect(run.stdout).toContain('No two strings of the job lie side by side');
+  });
+
+  test('words that say nothing are refused in one sentence each, status 2', async () => {
+    const wrong: readonly (readonly [readonly string[], RegExp])[] = [
+      [['--join', 'S1,S3'], /no string "S3" \(did you mean S1\?\)/],
+      [['--join', 'S1'], /two sides with a comma/],
+      [['--join', 'S1,S1'], /same string on both sides/],
+      [['--join', 'S1,S2', '--volts', '12.8,12.1'], /has no unit/],
+      [['--join', 'S1,S2', '--charge', '0.9,1.4'], /from 0 to 1, got "1\.4"/],
+      [['--join', 'S1,S2', '--join', 'S2,S1', '--volts', '12.8 V,12.1 V'], /once for each --join/],
+      [['--volts', '12.8 V,12.1 V'], /name its two sides with --join/],
+      [['--lead', '2 m'], /expected a resistance/],
+      [['--draws', 'many'], /whole number from 1 to 1000000/],
+      [['--draws', '1000001'], /whole number from 1 to 1000000/],
+      [['--seed', '-1'], /whole number from 0/],
+      [['--cycle', 'on:1 h'], /how many with --drift/],
+      [['--drift', '2', '--cycle', 'one:1 h'], /no case "one" \(did you mean on\?\)/],
+      [['--drift', '2', '--cycle', 'on'], /steps such as/],
+    ];
+    const runs = await Promise.all(wrong.map(async ([words]) => await asked(...words)));
+    for (const [index, run] of runs.entries()) {
+      expect([run.status, run.stdout]).toEqual([2, '']);
+      expect(run.stderr).toMatch(wrong[index]![1]);
+      expect(run.stderr).not.toMatch(traces);
+    }
+  });
+});
+
 describe('report', () => {
   test('writes a PDF, and the tree of the document as JSON', async () => {
     const run = await runCli(['report', at('tenAmps.job.json'), '--out', at('ten.pdf'), '--json']);

@@ -5,7 +5,7 @@ import { buildCli, runCli, traces } from './builtCli.ts';
 import { hostileJobs } from './hostileJobs.ts';
 
 const corpus = hostileJobs();
-const commands = ['solve', 'check', 'report'] as const;
+const commands = ['solve', 'check', 'report', 'strings'] as const;
 
 interface Recorded {
   readonly status: number;

@@ -12,6 +12,7 @@ import type { JunctionId, OperatingPoint, PartId } from '../../core/api.ts';
 import { caseById, operatingPoint, parseJob } from '../../core/api.ts';
 import { readRows } from '../../data/chemistry/rows.ts';
 import { tables } from '../../data/index.ts';
+import { diagonalShares, sameEndShares } from './ladderForms.ts';
 
 interface Branch {
   readonly emfV: number;
@@ -88,19 +89,6 @@ function voltsBetween(point: OperatingPoint, plus: string, minus: string): numbe
 function apart(found: readonly number[], expected: readonly number[]): number {
   expect(found.length).toBe(expected.length);
   return Math.max(...found.map((value, index) => Math.abs(value - expected[index]!)));
-}
-
-function sameEndShares(count: number, x: number): readonly number[] {
-  const th = Math.acosh(1 + x / 2);
-  const share = (k: number) => (2 * Math.sinh(th / 2) * Math.cosh((count - k + 0.5) * th)) / Math.sinh(count * th);
-  return Array.from({ length: count }, (_, index) => share(index + 1));
-}
-
-function diagonalShares(count: number, x: number): readonly number[] {
-  const th = Math.acosh(1 + x / 2);
-  const share = (k: number) =>
-    (Math.sinh(th / 2) * Math.cosh((k - (count + 1) / 2) * th)) / Math.sinh((count * th) / 2);
-  return Array.from({ length: count }, (_, index) => share(index + 1));
 }
 
 /** Shares by closed form; `undefined` where both taps are on a string in the middle. */

@@ -1,8 +1,8 @@
 /**
  * The acceptance scenarios: their inputs and expected values, and a tally of which values a test has held.
  *
- * A solve answers S01, S03, S05, S17, S19 and most of S07 and S11. Left to the tests of other capabilities: S09 (sizing a cable),
- * S13 (deviations of block readings), S15 (a winter's energy).
+ * A solve answers S01, S03, S05, S17, S19 and most of S07 and S11; the study of strings S01, S03, S13, S17, S19. Left to the tests of
+ * other capabilities: S09 (sizing a cable), S15 (a winter's energy).
  */
 import { expect, it } from 'vitest';
 import bookText from './data/scenarios.json?raw';

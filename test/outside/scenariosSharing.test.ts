@@ -5,10 +5,9 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { caseById, operatingPoint, type PartId, parseJob } from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
-import { closePage, inputsOf, lugOhm, plainCopperOhm, ScenarioPage } from './scenariosBook.ts';
+import { camper, hireBoat, ridgeCabin, saunaHut, saunaLimitA } from './scenarioBanks.ts';
+import { closePage, plainCopperOhm, ScenarioPage } from './scenariosBook.ts';
 import { jobText, type SolvedCase, solve } from './scenariosSolve.ts';
-
-const mOhm = 0.001;
 
 /** Currents of the case `now`, solved in this process. */
 function stringCurrents(text: string): (id: string) => number {
@@ -21,57 +20,10 @@ function stringCurrents(text: string): (id: string) => number {
 
 describe('S01, ridge cabin: three 24 V strings, string C replaced last year', () => {
   const page = new ScenarioPage('S01');
-  const { blocks } = inputsOf('S01') as { blocks: Record<'A,B' | 'C', { emf_V: number; r_mohm: number }> };
-  const [a, c] = [blocks['A,B'], blocks.C];
-
-  /** A string with its two leads: each 1.2 m of 35 mm2 and two lugs; the 0.3 m link and its two lugs are the string's. */
-  function stringWithLeads(id: string, block: { emf_V: number; r_mohm: number }) {
-    const lead = {
-      kind: 'cable',
-      lengthM: 1.2,
-      resistanceOhm: plainCopperOhm({ lengthM: 1.2, areaMm2: 35 }),
-      endOhm: 2 * lugOhm,
-    };
-    const linkOhm = plainCopperOhm({ lengthM: 0.3, areaMm2: 35 }) + 2 * lugOhm;
-    return [
-      {
-        id,
-        kind: 'string',
-        plus: `${id}+`,
-        minus: `${id}-`,
-        chemistry: 'agm',
-        blocksInSeries: 2,
-        blockNominalV: 12,
-        capacityAh: 150,
-        linkOhm,
-        emfV: 2 * block.emf_V,
-        resistanceOhm: 2 * block.r_mohm * mOhm,
-      },
-      { ...lead, id: `${id} plus lead`, from: `${id}+`, to: 'bus+' },
-      { ...lead, id: `${id} minus lead`, from: 'bus-', to: `${id}-` },
-    ];
-  }
-  const parts = [
-    ...stringWithLeads('A', a),
-    ...stringWithLeads('B', a),
-    ...stringWithLeads('C', c),
-    { id: 'house', kind: 'load', plus: 'bus+', minus: 'bus-', currentA: 80, on: false },
-    // 60 A of charge is a charger far below its set-point: it gives its limit and nothing else.
-    { id: 'charger', kind: 'charger', plus: 'bus+', minus: 'bus-', outputA: 60, setpointV: 60, on: false },
-  ];
-  const junctions = { 'bus-': { reference: true } };
+  const { parts, junctions } = ridgeCabin;
   let at: (caseId: string) => SolvedCase;
   beforeAll(async () => {
-    at = await solve({
-      parts,
-      junctions,
-      cases: [
-        { id: 'nothing on' },
-        { id: 'load', set: { house: { on: true } } },
-        { id: 'charge', set: { charger: { on: true } } },
-        { id: 'load with equal volts', set: { house: { on: true }, C: { emfV: 2 * a.emf_V } } },
-      ],
-    });
+    at = await solve(ridgeCabin);
   });
 
   it('string C feeds the other two with nothing switched on', () => {
@@ -144,42 +96,13 @@ describe('S01, ridge cabin: three 24 V strings, string C replaced last year', ()
 describe('S03, camper: two lithium blocks on leads of 0.5 m and 2.0 m', () => {
   const page = new ScenarioPage('S03');
 
-  function block(id: string, leadM: number) {
-    const lead = {
-      kind: 'cable',
-      lengthM: leadM,
-      resistanceOhm: plainCopperOhm({ lengthM: leadM, areaMm2: 35 }),
-      endOhm: 2 * lugOhm,
-    };
-    return [
-      {
-        id,
-        kind: 'string',
-        plus: `${id}+`,
-        minus: `${id}-`,
-        chemistry: 'lfp',
-        blocksInSeries: 1,
-        blockNominalV: 12.8,
-        capacityAh: 100,
-        emfV: 13.2,
-        resistanceOhm: 2.5 * mOhm,
-      },
-      { ...lead, id: `${id} plus lead`, from: `${id}+`, to: 'bus+' },
-      { ...lead, id: `${id} minus lead`, from: 'bus-', to: `${id}-` },
-    ];
-  }
   /** Near leads of 0.50, 0.51 … 2.00 m, each a case of its own; the far block keeps its 2.0 m. */
   const nearLeadsM = Array.from({ length: 151 }, (_, step) => (50 + step) / 100);
   const caseOf = (nearM: number) => `near ${nearM.toFixed(2)} m`;
   let withNearLead: (nearM: number) => SolvedCase;
   beforeAll(async () => {
     const at = await solve({
-      parts: [
-        ...block('near', 0.5),
-        ...block('far', 2),
-        { id: 'load', kind: 'load', plus: 'bus+', minus: 'bus-', currentA: 150 },
-      ],
-      junctions: { 'bus-': { reference: true } },
+      ...camper,
       cases: nearLeadsM.map((nearM) => {
         const lead = { resistanceOhm: plainCopperOhm({ lengthM: nearM, areaMm2: 35 }) };
         return { id: caseOf(nearM), set: { 'near plus lead': lead, 'near minus lead': lead } };
@@ -216,39 +139,11 @@ describe('S03, camper: two lithium blocks on leads of 0.5 m and 2.0 m', () => {
 
 describe('S17, sauna hut: three lithium blocks with limits of 100 A, a load of 240 A', () => {
   const page = new ScenarioPage('S17');
-  const inputs = inputsOf('S17') as { leads_m: readonly number[]; mm2: number; r_mohm: number };
-  const blockV = 13.2;
-  const limitA = 100;
-
-  /** A block behind its own disconnect (a switch without resistance), on two leads with two lugs each. */
-  function block(index: number) {
-    const id = `block ${index + 1}`;
-    const lengthM = inputs.leads_m[index]!;
-    const resistanceOhm = plainCopperOhm({ lengthM, areaMm2: inputs.mm2 });
-    const lead = { kind: 'cable', lengthM, resistanceOhm, endOhm: 2 * lugOhm };
-    return [
-      {
-        id,
-        kind: 'string',
-        plus: `${id} +`,
-        minus: `${id} -`,
-        chemistry: 'lfp',
-        blocksInSeries: 1,
-        blockNominalV: 12.8,
-        capacityAh: 200,
-        emfV: blockV,
-        resistanceOhm: inputs.r_mohm * mOhm,
-      },
-      { id: `limit ${index + 1}`, kind: 'switch', from: `${id} +`, to: `${id} out` },
-      { ...lead, id: `${id} plus lead`, from: `${id} out`, to: 'bus+' },
-      { ...lead, id: `${id} minus lead`, from: 'bus-', to: `${id} -` },
-    ];
-  }
   const off = (index: number) => ({ [`limit ${index}`]: { state: 'open' } });
   let at: (caseId: string) => SolvedCase;
   beforeAll(async () => {
     at = await solve({
-      parts: [...[0, 1, 2].flatMap(block), { id: 'load', kind: 'load', plus: 'bus+', minus: 'bus-', currentA: 240 }],
+      ...saunaHut,
       cases: [
         { id: 'all three' },
         { id: 'block 2 off', set: off(2) },
@@ -277,7 +172,7 @@ describe('S17, sauna hut: three lithium blocks with limits of 100 A, a load of 2
   });
 
   it('the largest loads follow from the shares of one ampere, equal blocks having no current of their own', () => {
-    const largest = (caseId: string) => limitA / Math.max(...currents(caseId));
+    const largest = (caseId: string) => saunaLimitA / Math.max(...currents(caseId));
     page.hold('largest load with all three', largest('one ampere'));
     const losses = [1, 2, 3].map((index) => largest(`one ampere block ${index} off`));
     page.hold('largest load that survives any one loss', Math.min(...losses));
@@ -288,27 +183,8 @@ describe('S17, sauna hut: three lithium blocks with limits of 100 A, a load of 2
 
 describe('S19, hire boat: one of three parallel blocks has a dead cell', () => {
   const page = new ScenarioPage('S19');
-  const { emf, r_mohm, branch_cable_mohm } = inputsOf('S19') as {
-    emf: readonly number[];
-    r_mohm: readonly number[];
-    branch_cable_mohm: number;
-  };
-  const blocks = emf.map((emfV, index) => ({
-    id: `block ${index + 1}`,
-    kind: 'string',
-    plus: 'bus+',
-    minus: 'bus-',
-    chemistry: 'flooded',
-    blocksInSeries: 1,
-    blockNominalV: 12,
-    capacityAh: 100,
-    emfV,
-    resistanceOhm: r_mohm[index]! * mOhm,
-    linkOhm: branch_cable_mohm * mOhm,
-  }));
-
   it('the good blocks pour into the bad one with nothing switched on', async () => {
-    const rest = (await solve({ parts: blocks }))('as-drawn');
+    const rest = (await solve(hireBoat))('as-drawn');
     page.hold('each good block gives', rest.amps('block 1'));
     page.hold('each good block gives', rest.amps('block 2'));
     page.hold('dead-cell block takes', -rest.amps('block 3'));

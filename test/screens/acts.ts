@@ -5,7 +5,10 @@ import type { HostAnswer, HostAsk, HostMethod, HostValue, KeptJob, RevisionSumma
 export const ledger = (page: Page): Locator => page.getByRole('complementary', { name: /Ledger/ });
 export const balance = (page: Page): Locator => page.getByRole('contentinfo', { name: 'Balance line' });
 
-export async function goStage(page: Page, name: 'Site' | 'Wiring' | 'Findings' | 'Handover'): Promise<void> {
+export async function goStage(
+  page: Page,
+  name: 'Site' | 'Wiring' | 'Strings' | 'Findings' | 'Handover',
+): Promise<void> {
   const stages = page.getByRole('navigation', { name: 'Stages of the job' });
   await stages.getByRole('button', { name: new RegExp(`^${name}`) }).click();
 }

@@ -14,7 +14,7 @@ afterAll(async () => {
   await endHost(host);
 });
 
-const stages = ['Site', 'Wiring', 'Findings', 'Handover'] as const;
+const stages = ['Site', 'Wiring', 'Strings', 'Findings', 'Handover'] as const;
 
 const looks: readonly {
   readonly name: string;

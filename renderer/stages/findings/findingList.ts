@@ -50,6 +50,7 @@ export const FAMILY_WORDS: Readonly<Record<RuleFamily, string>> = {
   rating: 'Ratings of parts',
   voltage: 'Volts at the loads',
   battery: 'Battery strings',
+  strings: 'Strings as one bank',
   charging: 'Charging',
 };
 
