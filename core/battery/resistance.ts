@@ -72,6 +72,21 @@ export function defaultResistance(query: ResistanceQuery, tables: ChemistryTable
   };
 }
 
+/** Two batteries of one make and lot differ by up to this. Source: SRC-BAT-LOT-SCATTER. */
+const LOT_SCATTER = 0.1;
+
+/**
+ * How far the resistance of one string may lie from that of another with the same label: each ages in its own way, and new ones of a lot
+ * differ too. As factors on its middle figure; what else `defaultResistance` leaves open (which tables fit the make) is the same for both.
+ */
+export function ownScatter(
+  { chemistry, ageYears }: Pick<ResistanceQuery, 'chemistry' | 'ageYears'>,
+  tables: ChemistryTables,
+): { readonly low: number; readonly high: number } {
+  const age = ageFactor(tables.resistanceByAge[chemistry], ageYears);
+  return { low: (age.low / age.value) * (1 - LOT_SCATTER), high: (age.high / age.value) * (1 + LOT_SCATTER) };
+}
+
 /**
  * Arrhenius factor on a resistance: exp[(Ea/R) (1/T - 1/298.15 K)], 1 at 25 degC, more in the cold. `activationJPerMol` >= 0.
  */

@@ -1,5 +1,6 @@
 /** The figures of a case that are not known exactly, each with its range and what it moves in the circuit. */
 import { emfOfCells } from '../../battery/emf.ts';
+import { ownScatter } from '../../battery/resistance.ts';
 import { factsOf, type StringContext, stringSource } from '../../battery/stringSource.ts';
 import type { CheckedJob, OperatingCase } from '../../job/job.ts';
 import { partsInCase } from '../../job/job.ts';
@@ -16,6 +17,8 @@ export interface Move {
   readonly shift: Shift;
   readonly toLow: number;
   readonly toHigh: number;
+  /** Where given, moves of the same quantity multiply as factors on this figure instead of adding up. */
+  readonly base?: number;
 }
 
 export interface AssumedFigure {
@@ -41,9 +44,11 @@ export interface FiguresRequest {
 
 /**
  * Every figure with a range: EMF and resistance of strings (entered ones by where they come from, defaults by their tables), and
- * whatever field the job gives a `range` for that is a resistance, a length, a current or a power. Each string's resistance is a
- * figure of its own. The rest curve is one figure for all strings of a chemistry: which of the published curves fits is not known,
- * but strings that hang together rest on the same one; what tells them apart is their state of charge.
+ * whatever field the job gives a `range` for that is a resistance, a length, a current or a power.
+ *
+ * What is not known about a make is the same for all strings of it, and is drawn once for them: which of the published rest curves fits
+ * their chemistry, and which resistance their label stands for. What tells such strings apart is drawn for each: its state of charge,
+ * how it has aged, and the scatter of a lot (`ownScatter`).
  */
 export function assumedFigures(request: FiguresRequest): readonly AssumedFigure[] {
   const parts = partsInCase(request.job, request.operatingCase);
@@ -56,18 +61,15 @@ export function assumedFigures(request: FiguresRequest): readonly AssumedFigure[
   return [
     ...strings.flatMap((string) => stringFigures(string, context)),
     ...curveFigures(strings, context),
+    ...makeFigures(strings, context),
     ...parts.flatMap((part) => rangedFigures(part, request)),
   ].filter(({ low, high }) => high > low);
 }
 
 function stringFigures(string: StringPart, context: StringContext): readonly AssumedFigure[] {
   const { emfV, resistanceOhm } = stringSource(string, context);
-  const figures = [
-    oneMove(string, 'resistanceOhm', resistanceOhm, {
-      label: `resistance of ${string.id}`,
-      reading: 'two-load-resistance',
-    }),
-  ];
+  const words = { label: `resistance of ${string.id}`, reading: 'two-load-resistance' } as const;
+  const figures = [oneMove(string, 'resistanceOhm', ownResistance(string, context) ?? resistanceOhm, words)];
   if (string.emfV !== undefined) {
     figures.push(oneMove(string, 'emfV', emfV, { label: `rest volts of ${string.id}`, reading: 'rest-volts' }));
   } else figures.push(...chargeFigure(string, context));
@@ -77,6 +79,46 @@ function stringFigures(string: StringPart, context: StringContext): readonly Ass
     figures.push(oneMove(string, 'resistanceOhm', banded, { label: `links of ${string.id}`, reading: null }));
   }
   return figures;
+}
+
+/** A resistance from the tables, as far as a string may differ from others with its label; nothing where the job gives the figure. */
+function ownResistance(string: StringPart, context: StringContext): (Ranged & { readonly base: number }) | undefined {
+  const { value, low, high, origin } = stringSource(string, context).resistanceOhm;
+  if (origin !== 'default') return undefined;
+  const own = ownScatter(string, context.tables);
+  return { low: Math.max(low, value * own.low), value, high: Math.min(high, value * own.high), origin, base: value };
+}
+
+/** One figure for all strings with the same label: which resistance it stands for. */
+function makeFigures(strings: readonly StringPart[], context: StringContext): readonly AssumedFigure[] {
+  const byLabel = new Map<string, StringPart[]>();
+  for (const string of strings) {
+    if (ownResistance(string, context) === undefined) continue;
+    const { chemistry, blocksInSeries, blockNominalV, capacityAh } = string;
+    const label = [chemistry, blocksInSeries, blockNominalV, capacityAh].join(' ');
+    byLabel.set(label, [...(byLabel.get(label) ?? []), string]);
+  }
+  return [...byLabel.values()].map((group) => {
+    const moves = group.map((string): Move => {
+      const { value, low, high } = stringSource(string, context).resistanceOhm;
+      const own = ownResistance(string, context)!;
+      const toLow = (value * low) / own.low - value;
+      const toHigh = (value * high) / own.high - value;
+      return { shift: { part: string.id, quantity: 'resistanceOhm' }, toLow, toHigh, base: value };
+    });
+    const { value } = stringSource(group[0]!, context).resistanceOhm;
+    return {
+      label: `resistance of ${group[0]!.chemistry} strings of ${String(group[0]!.capacityAh)} Ah (${group.map(({ id }) => id).join(', ')})`,
+      part: group[0]!.id,
+      quantity: 'resistanceOhm',
+      origin: 'default',
+      low: value + moves[0]!.toLow,
+      value,
+      high: value + moves[0]!.toHigh,
+      moves,
+      reading: null,
+    };
+  });
 }
 
 /** What the range of its state of charge makes of a string's rest volts, on one curve. */
@@ -120,6 +162,8 @@ function curveFigures(strings: readonly StringPart[], context: StringContext): r
 }
 
 interface Ranged {
+  /** See `Move.base`. */
+  readonly base?: number;
   readonly low: number;
   readonly value: number;
   readonly high: number;
@@ -129,10 +173,11 @@ interface Ranged {
 function oneMove(
   part: Part,
   quantity: Shift['quantity'],
-  { low, value, high, origin }: Ranged,
+  { low, value, high, origin, base }: Ranged,
   { label, reading }: Pick<AssumedFigure, 'label' | 'reading'>,
 ): AssumedFigure {
-  const moves = [{ shift: { part: part.id, quantity }, toLow: low - value, toHigh: high - value }];
+  const move = { shift: { part: part.id, quantity }, toLow: low - value, toHigh: high - value };
+  const moves = [base === undefined ? move : { ...move, base }];
   return { label, part: part.id, quantity, origin, low, value, high, moves, reading };
 }
 

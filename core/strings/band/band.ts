@@ -11,6 +11,7 @@ import { banksOf } from '../banks.ts';
 import { assumedFigures, type FiguresRequest } from './assumedFigures.ts';
 import { type Drawn, drawAll } from './bandDraws.ts';
 import { Deviations, judgedString } from './deviations.ts';
+import { FigureChanges } from './figureChanges.ts';
 import { percentiles } from './percentiles.ts';
 import { readingOf } from './settlingReading.ts';
 import { tornadoOf } from './tornado.ts';
@@ -37,16 +38,20 @@ export function bandOf(request: BandRequest): BandStudy | null {
   const ids = banks.flatMap(({ strings }) => strings.map(({ id }) => id));
   if (solved.point.outcome !== 'solved' || ids.length === 0) return null;
   const figures = assumedFigures(request);
-  const moves = figures.flatMap((figure) => figure.moves);
-  const sweep = new Sweep({ solved, tables, shifts: moves.map(({ shift }) => shift), watched: ids });
+  const figureChanges = new FigureChanges(figures);
+  const sweep = new Sweep({ solved, tables, shifts: figureChanges.shifts, watched: ids });
   const nominal = ids.map((id) => solved.point.parts.get(id)?.currentA ?? 0);
   const sharing = new Deviations(banks, ids);
   const judged = judgedString(sharing, nominal, ids);
   const at = ids.indexOf(judged);
   const { draws, seed, progress } = request;
   const limit = job.settings.shareLimit;
-  const drawn = drawAll({ draws, seed, limit, figures, sweep, sharing, strings: ids.length, progress });
-  const verdict = verdictOf(request, sharing.worst(nominal), drawn);
+  const drawn = drawAll({ draws, seed, limit, figures, figureChanges, sweep, sharing, strings: ids.length, progress });
+  const allGiven = figures.every(({ quantity, origin, part }) => {
+    const isOfString = quantity === 'emfV' || ids.includes(part);
+    return !isOfString || origin === 'measured' || origin === 'label';
+  });
+  const verdict = verdictOf(request, { worst: sharing.worst(nominal), drawn, allGiven });
   return {
     case: operatingCase.id,
     model,
@@ -56,12 +61,9 @@ export function bandOf(request: BandRequest): BandStudy | null {
     strings: ids.map((id, k) => banded(id, nominal[k]!, drawn, k)),
     judged,
     verdict,
-    tornado: tornadoOf(solved, figures, { sweep, judged, at }),
+    tornado: tornadoOf(solved, figures, { sweep, figureChanges, judged, at }),
     reading: readingOf(drawn, figures, { judged, at, caseId: operatingCase.id }),
-    allGiven: figures.every(({ quantity, origin, part }) => {
-      const isOfString = quantity === 'emfV' || ids.includes(part);
-      return !isOfString || origin === 'measured' || origin === 'label';
-    }),
+    allGiven,
   };
 }
 
@@ -75,7 +77,10 @@ function banded(id: PartId, nominalA: number, drawn: Drawn, place: number): Band
   };
 }
 
-function verdictOf({ job, draws }: BandRequest, worst: number, drawn: Drawn): BandStudy['verdict'] {
+function verdictOf(
+  { job, draws }: BandRequest,
+  { worst, drawn, allGiven }: { readonly worst: number; readonly drawn: Drawn; readonly allGiven: boolean },
+): BandStudy['verdict'] {
   const limit = job.settings.shareLimit;
   const percent = (value: number) => formatQuantity({ value, unit: '1', digits: 2 });
   if (Number.isNaN(worst)) {
@@ -90,7 +95,7 @@ function verdictOf({ job, draws }: BandRequest, worst: number, drawn: Drawn): Ba
     : `a string is more than ${percent(limit)} off`;
   const holds = bearOut >= NEARLY_ALL;
   const text = holds
-    ? `The verdict holds over the ranges of what was assumed: ${says} of its fair share in ${percent(bearOut)} of the draws.`
-    : `The verdict hangs on assumed figures: with their own values ${says} of its fair share, but only in ${percent(bearOut)} of the draws.`;
+    ? `The verdict holds over the ranges of the figures: ${says} of its fair share in ${percent(bearOut)} of the draws.`
+    : `The verdict hangs on ${allGiven ? 'how well the figures are known' : 'assumed figures'}: as they stand ${says} of its fair share; over their ranges that is so in ${percent(bearOut)} of the draws.`;
   return { limit, nominalWithin, within, holds, text };
 }

@@ -1,8 +1,9 @@
 /** Draws over the ranges of assumed figures, each solved. */
 import { seededUniform } from '../../linear/seededDraws.ts';
 import type { Sweep } from '../../network/sweep.ts';
-import type { AssumedFigure, Move } from './assumedFigures.ts';
+import type { AssumedFigure } from './assumedFigures.ts';
 import type { Deviations } from './deviations.ts';
+import { type FigureChanges, moved } from './figureChanges.ts';
 
 /** Draws between two words of progress. */
 const STRETCH = 512;
@@ -13,6 +14,7 @@ export interface DrawRequest {
   /** Largest |deviation| that is within. */
   readonly limit: number;
   readonly figures: readonly AssumedFigure[];
+  readonly figureChanges: FigureChanges;
   readonly sweep: Sweep;
   readonly sharing: Deviations;
   /** Number of strings that the sweep watches. */
@@ -32,12 +34,17 @@ export interface Drawn {
   readonly within: number;
 }
 
-/** The change that a draw makes: `t` from 0 (low) through 0.5 (the value) to 1 (high). */
-function moved({ toLow, toHigh }: Pick<Move, 'toLow' | 'toHigh'>, t: number): number {
-  return t < 0.5 ? (1 - 2 * t) * toLow : (2 * t - 1) * toHigh;
-}
-
-export function drawAll({ draws, seed, limit, figures, sweep, sharing, strings, progress }: DrawRequest): Drawn {
+export function drawAll({
+  draws,
+  seed,
+  limit,
+  figures,
+  figureChanges,
+  sweep,
+  sharing,
+  strings,
+  progress,
+}: DrawRequest): Drawn {
   const uniform = seededUniform(seed);
   const rows = (count: number) => Array.from({ length: count }, () => new Float64Array(draws));
   const [currentsA, deviations, drawnFigures] = [rows(strings), rows(strings), rows(figures.length)];
@@ -49,11 +56,10 @@ export function drawAll({ draws, seed, limit, figures, sweep, sharing, strings, 
     sweep.run({
       count,
       draw: (index, changes) => {
-        let place = 0;
-        figures.forEach((figure, f) => {
+        figureChanges.write(changes, (f) => {
           const t = uniform();
-          lot[index]![f] = moved(figure.moves[0]!, t);
-          for (const move of figure.moves) changes[place++] = moved(move, t);
+          lot[index]![f] = moved(figures[f]!.moves[0]!, t);
+          return t;
         });
       },
       take: (index, currents) => {

@@ -5,9 +5,11 @@ import { type Sensitivity, sensitivities } from '../../network/sensitivity.ts';
 import type { Sweep } from '../../network/sweep.ts';
 import type { TornadoBar } from '../answer.ts';
 import type { AssumedFigure, Move } from './assumedFigures.ts';
+import type { FigureChanges } from './figureChanges.ts';
 
 interface Judged {
   readonly sweep: Sweep;
+  readonly figureChanges: FigureChanges;
   readonly judged: PartId;
   /** Place among the watched strings. */
   readonly at: number;
@@ -17,19 +19,14 @@ interface Judged {
 export function tornadoOf(
   solved: SolvedCircuit,
   figures: readonly AssumedFigure[],
-  { sweep, judged, at }: Judged,
+  { sweep, figureChanges, judged, at }: Judged,
 ): readonly TornadoBar[] {
   const slopes = sensitivities(solved, { kind: 'current', part: judged }) ?? [];
   const ends = new Float64Array(2 * figures.length);
-  const starts = figures.map((_, f) => figures.slice(0, f).reduce((sum, { moves }) => sum + moves.length, 0));
   sweep.run({
     count: ends.length,
     draw: (index, changes) => {
-      changes.fill(0);
-      const f = Math.floor(index / 2);
-      figures[f]!.moves.forEach((move, k) => {
-        changes[starts[f]! + k] = index % 2 === 0 ? move.toLow : move.toHigh;
-      });
+      figureChanges.write(changes, (f) => (f === Math.floor(index / 2) ? index % 2 : 0.5));
     },
     take: (index, currents) => {
       ends[index] = currents?.[at] ?? Number.NaN;
