@@ -26,11 +26,14 @@ const BARS = { plus: 22, minus: 78 };
 const CHART = { middle: 136, half: 26 };
 const HEIGHT = 178;
 const EDGE = 26;
+/** Narrower strings have their tag under them, and only the worst has its figure. */
+const ROOM_FOR_WORDS = 28;
 
 export function LayoutThumb({ layout, strings, most }: LayoutThumbProps): ReactElement {
   const step = (WIDTH - 2 * EDGE) / strings.length;
   const x = (index: number): number => EDGE + (index + 0.5) * step;
   const width = Math.min(46, step * 0.66);
+  const hasRoom = step >= ROOM_FOR_WORDS;
   return (
     <svg
       viewBox={`0 0 ${String(WIDTH)} ${String(HEIGHT)}`}
@@ -49,8 +52,15 @@ export function LayoutThumb({ layout, strings, most }: LayoutThumbProps): ReactE
             fill={hatchFill(hatch)}
             stroke="var(--ink)"
           />
-          <rect x={x(index) - width / 2 + 4} y={41} width={width - 8} height={18} fill="var(--sheet)" />
-          <text x={x(index)} y={54.5} textAnchor="middle" fontSize="13" fontWeight="600" fill="var(--ink)">
+          {hasRoom && <rect x={x(index) - width / 2 + 4} y={41} width={width - 8} height={18} fill="var(--sheet)" />}
+          <text
+            x={x(index)}
+            y={hasRoom ? 54.5 : BLOCK.bottom + 10}
+            textAnchor="middle"
+            fontSize={hasRoom ? 13 : Math.min(12, step)}
+            fontWeight="600"
+            fill="var(--ink)"
+          >
             {tag}
           </text>
         </g>
@@ -195,6 +205,7 @@ interface DeviationsProps extends TapsProps {
 /** Bars up where a string carries more than its fair share, down where less; the line is the fair share. */
 function Deviations({ layout, strings, x, width, most }: DeviationsProps): ReactElement {
   const { middle, half } = CHART;
+  const hasRoom = (WIDTH - 2 * EDGE) / strings.length >= ROOM_FOR_WORDS;
   return (
     <g>
       {strings.map(({ id, hatch }, index) => {
@@ -212,16 +223,18 @@ function Deviations({ layout, strings, x, width, most }: DeviationsProps): React
               fill={hatchFill(hatch)}
               stroke="var(--ink)"
             />
-            <text
-              x={x(index)}
-              y={above ? middle - height - 4 : middle + height + 13}
-              textAnchor="middle"
-              fontSize="12"
-              fontWeight={id === layout.worst ? 600 : 400}
-              fill="var(--ink)"
-            >
-              {`${percent > 0 ? '+' : percent < 0 ? '−' : ''}${String(Math.abs(percent))}`}
-            </text>
+            {(hasRoom || id === layout.worst) && (
+              <text
+                x={x(index)}
+                y={above ? middle - height - 4 : middle + height + 13}
+                textAnchor="middle"
+                fontSize="12"
+                fontWeight={id === layout.worst ? 600 : 400}
+                fill="var(--ink)"
+              >
+                {`${percent > 0 ? '+' : percent < 0 ? '−' : ''}${String(Math.abs(percent))}`}
+              </text>
+            )}
           </g>
         );
       })}

@@ -139,8 +139,7 @@ function BarRows({
       </tr>
       {bar.remark !== null && (
         <tr data-remark>
-          <td />
-          <td colSpan={columns}>{bar.remark}</td>
+          <td colSpan={columns + 1}>{bar.remark}</td>
         </tr>
       )}
     </tbody>
@@ -207,15 +206,17 @@ const Bars = styled('table')({
   tableLayout: 'fixed',
   borderCollapse: 'collapse',
   fontSize: '0.9375rem',
-  '& th, & td': { textAlign: 'end', padding: '0 0.5rem', verticalAlign: 'middle', fontWeight: 400 },
+  '& th, & td': { textAlign: 'end', padding: '0 0.375rem', verticalAlign: 'middle', fontWeight: 400 },
   '& th:first-child': { textAlign: 'start', paddingInlineStart: 0 },
-  '& thead th': { width: '5.25rem' },
+  '& thead th': { width: '4.5rem' },
+  '& thead th:first-child': { width: '5rem' },
   '& th[data-bar], & td[data-bar]': { width: 'auto', textAlign: 'start' },
   '& thead th, & thead th[data-bar]': { color: 'var(--soft)', fontSize: '0.8125rem' },
   '& tbody': { borderTop: '1px solid var(--hair)' },
   '& [data-worst] td': { fontWeight: 600 },
   '& [data-remark] td': {
     textAlign: 'start',
+    paddingInlineStart: '5.375rem',
     fontSize: '0.8125rem',
     color: 'var(--soft)',
     paddingBottom: '0.125rem',

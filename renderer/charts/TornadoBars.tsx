@@ -52,24 +52,7 @@ export function TornadoBars({ caption, nominalA, rows }: TornadoBarsProps): Reac
               {lowText} – {highText} <span style={{ color: 'var(--soft)' }}>{origin}</span>
             </td>
             <td data-bar>
-              <svg aria-hidden style={{ display: 'block', width: '100%', height: '1.25rem', overflow: 'visible' }}>
-                <rect
-                  x={`${String(at(Math.min(lowA, highA)))}%`}
-                  width={`${String(Math.abs(at(highA) - at(lowA)))}%`}
-                  y="25%"
-                  height="50%"
-                  fill="var(--hair)"
-                  stroke="var(--edge)"
-                />
-                <line
-                  x1={`${String(at(nominalA))}%`}
-                  x2={`${String(at(nominalA))}%`}
-                  y1="0"
-                  y2="100%"
-                  stroke="var(--copper)"
-                  strokeWidth="2"
-                />
-              </svg>
+              <RangeBar from={at(lowA)} to={at(highA)} middle={at(nominalA)} />
             </td>
             <td>
               <Figure value={Math.min(lowA, highA)} unit="A" digits={3} prefix={false} /> –{' '}
@@ -79,6 +62,30 @@ export function TornadoBars({ caption, nominalA, rows }: TornadoBarsProps): Reac
         ))}
       </tbody>
     </Rows>
+  );
+}
+
+interface RangeBarProps {
+  /** Each in per cent of the width. */
+  readonly from: number;
+  readonly to: number;
+  readonly middle: number;
+}
+
+function RangeBar({ from, to, middle }: RangeBarProps): ReactElement {
+  const percent = (value: number): string => `${String(value)}%`;
+  return (
+    <svg aria-hidden style={{ display: 'block', width: '100%', height: '1.25rem', overflow: 'visible' }}>
+      <rect
+        x={percent(Math.min(from, to))}
+        width={percent(Math.abs(to - from))}
+        y="25%"
+        height="50%"
+        fill="var(--hair)"
+        stroke="var(--edge)"
+      />
+      <line x1={percent(middle)} x2={percent(middle)} y1="0" y2="100%" stroke="var(--copper)" strokeWidth="2" />
+    </svg>
   );
 }
 

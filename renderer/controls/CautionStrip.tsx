@@ -9,6 +9,7 @@ const Strip = styled('div')({
   fontSize: '0.875rem',
   lineHeight: 1.4,
   '& summary': { cursor: 'pointer', minHeight: '1.5rem', color: 'var(--soft)' },
+  '@media (pointer: coarse)': { '& summary': { minHeight: 44, lineHeight: '44px' } },
   '& ul': { margin: 0, paddingInlineStart: '1rem' },
   '& li': { paddingBlock: '0.125rem' },
 });

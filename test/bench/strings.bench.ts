@@ -1,6 +1,14 @@
 /** The study of a bank: draws over assumed figures, against re-solving each with a general library; how that grows. */
 import { lusolve, matrix } from 'mathjs';
-import { bandOf, type CheckedJob, checkJob, type OperatingCase, solveCircuit } from '../../core/api.ts';
+import {
+  bandOf,
+  type CheckedJob,
+  checkJob,
+  driftOf,
+  layoutsOf,
+  type OperatingCase,
+  solveCircuit,
+} from '../../core/api.ts';
 import { Law } from '../../core/network/element.ts';
 import { tables } from '../../data/index.ts';
 import { figure, type Report } from './report.ts';
@@ -9,6 +17,58 @@ import { wiringJob } from './wiringJob.ts';
 
 export function run(report: Report): void {
   bands(report);
+  layouts(report);
+  drift(report);
+}
+
+/** All pairs of taps of a row of strings, the star and the tree. */
+function layouts(report: Report): void {
+  const rows = [4, 8].map((strings) => {
+    const { job, operatingCase } = checkedJob(wiringJob(60, strings));
+    let count = 0;
+    const ours = seconds(report, () => {
+      count = layoutsOf({ job, tables, operatingCase, model: 'slow' })!.layouts.length;
+    });
+    const library = count * denseMicroseconds(report, 2 * strings - 1) * 1e-6;
+    return [String(strings), String(count), figure(1000 * ours), figure(1000 * library), `${figure(library / ours)} ×`];
+  });
+  report.table(
+    'Layouts of a row of strings (ms)',
+    ['strings', 'layouts', 'all', 'their nodal equations by mathjs lusolve', 'mathjs over ours'],
+    rows,
+  );
+}
+
+/** A day of evening and charging again and again, half an hour at most a step. */
+function drift(report: Report): void {
+  const { job, operatingCase } = checkedJob(wiringJob(60, 4));
+  const cycle = [
+    { case: 'evening', hours: 6 },
+    { case: 'charging', hours: 8 },
+    { case: 'at-rest', hours: 10 },
+  ];
+  const solveUs = libraryMicroseconds(report, job, operatingCase);
+  const rows = [30, 365].map((cycles) => {
+    let steps = 0;
+    const ours = seconds(report, () => {
+      steps = driftOf({ job, tables, request: { cycle, cycles, stepS: 1800 } }).steps;
+    });
+    const library = steps * solveUs * 1e-6;
+    return [String(cycles), String(steps), figure(ours), figure(library), `${figure(library / ours)} ×`];
+  });
+  report.table(
+    'Drift of 4 strings in a job of 60 parts',
+    ['days', 'steps', 'all, s', 'one mathjs lusolve a Newton step, s', 'mathjs over ours'],
+    rows,
+  );
+}
+
+function denseMicroseconds(report: Report, size: number): number {
+  const dense = Array.from({ length: size }, (_, row) =>
+    Array.from({ length: size }, (__, column) => (row === column ? 4 : 1 / (1 + Math.abs(row - column)))),
+  );
+  const right = Array.from({ length: size }, (_, row) => row + 1);
+  return microseconds(() => lusolve(matrix(dense), right), report.seconds);
 }
 
 function checkedJob(value: object): { readonly job: CheckedJob; readonly operatingCase: OperatingCase } {

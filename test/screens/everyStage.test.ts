@@ -35,6 +35,7 @@ async function goStage(page: Page, name: string): Promise<void> {
   await page.getByRole('main').waitFor();
   // Stages are loaded when first gone to, and figures come from the worker.
   await page.waitForTimeout(700);
+  await page.getByText('The bank is being solved').waitFor({ state: 'hidden' });
 }
 
 /** What sticks out of the page or hides behind its edge: the page itself must never scroll sideways. */

@@ -192,7 +192,7 @@ describe.sequential('a sitting with the keyboard alone', () => {
     expect((await here()).name).toBe('button History');
   });
 
-  test.each(['Site', 'Findings', 'Handover', 'Wiring'])(
+  test.each(['Site', 'Strings', 'Findings', 'Handover', 'Wiring'])(
     'in %s the stops go from the top bar over the stages and the stage to the ledger, and come to an end',
     async (stage) => {
       await find(`Go to ${stage}`);

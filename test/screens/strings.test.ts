@@ -113,8 +113,16 @@ test('a change that evens the bank out is made in the job and taken back by undo
   await openStrings(examples.find(({ name }) => name === 'ridge-cabin')?.text ?? '');
   await chooseCase(/^Kettle/);
   await titled(/String C carries/);
+  const layouts = fold('layouts').locator('summary').first();
+  await turn('layouts');
+  await layouts.filter({ hasText: /as drawn.*23.%/ }).waitFor();
   await main().getByRole('button', { name: 'Make this change' }).click();
   await titled(/works as one/);
+  // What was worked out for the job before the change is never shown as that of the job after it.
+  await layouts
+    .filter({ hasText: /best|as drawn/ })
+    .filter({ hasNotText: /23.%/ })
+    .waitFor();
   await page.getByRole('button', { name: /^Undo/ }).click();
   await titled(/String C carries/);
 });

@@ -91,11 +91,11 @@ function verdictOf(
   const within = drawn.within / draws;
   const bearOut = nominalWithin ? within : 1 - within;
   const says = nominalWithin
-    ? `every string is within ${percent(limit)}`
-    : `a string is more than ${percent(limit)} off`;
+    ? `every string is within ${percent(limit)} of its fair share`
+    : `a string is more than ${percent(limit)} off its fair share`;
   const holds = bearOut >= NEARLY_ALL;
   const text = holds
-    ? `The verdict holds over the ranges of the figures: ${says} of its fair share in ${percent(bearOut)} of the draws.`
-    : `The verdict hangs on ${allGiven ? 'how well the figures are known' : 'assumed figures'}: as they stand ${says} of its fair share; over their ranges that is so in ${percent(bearOut)} of the draws.`;
+    ? `The verdict holds over the ranges of the figures: ${says} in ${percent(bearOut)} of the draws.`
+    : `The verdict hangs on ${allGiven ? 'how well the figures are known' : 'assumed figures'}: as they stand ${says}; over their ranges that is so in ${percent(bearOut)} of the draws.`;
   return { limit, nominalWithin, within, holds, text };
 }

@@ -5,7 +5,7 @@ import { EFFORTS, plainFields, wholeFigureText } from '../../../core/api.ts';
 import type { TriedChange } from '../../workers/stringsMessages.ts';
 import { Fold } from './Fold.tsx';
 import { MakeChange } from './MakeChange.tsx';
-import { FigureTable, Quiet, Sideways } from './pieces.tsx';
+import { FigureTable, More, Quiet, Sideways } from './pieces.tsx';
 import { StudyPlace } from './Running.tsx';
 import { changeStringsView } from './stringsView.ts';
 import type { Study } from './studies.ts';
@@ -70,10 +70,10 @@ function ChangeTable({ changes, ...rest }: ChangeTableProps): ReactElement {
     <>
       {helping.length > 0 && <Rows label="Changes, best first" changes={helping} {...rest} />}
       {others.length > 0 && (
-        <details style={{ fontSize: '0.875rem' }}>
-          <summary style={{ cursor: 'pointer', minHeight: '1.75rem' }}>{others.length} tried that do not help</summary>
+        <More>
+          <summary>{others.length} tried that do not help</summary>
           <Rows label="Changes that do not help" changes={others} {...rest} />
-        </details>
+        </More>
       )}
     </>
   );
@@ -103,18 +103,7 @@ function Rows({ label, changes, proposed, tags }: ChangeTableProps & { readonly 
           {changes.map((change) => (
             <tr key={change.label}>
               <th scope="row" data-text>
-                <Pick>
-                  <input
-                    type="radio"
-                    name="proposed"
-                    checked={change.label === proposed?.label}
-                    onChange={() => changeStringsView({ picked: change.label })}
-                  />
-                  <span>
-                    {plainFields(change.label)}
-                    <span className="only-read">: show as proposed</span>
-                  </span>
-                </Pick>
+                <PickChange change={change} isShown={change.label === proposed?.label} />
               </th>
               <td style={{ whiteSpace: 'nowrap' }}>{changeEffect(change.before, change.after)}</td>
               <td style={{ whiteSpace: 'nowrap' }}>
@@ -135,12 +124,36 @@ function Rows({ label, changes, proposed, tags }: ChangeTableProps & { readonly 
   );
 }
 
+function PickChange({ change, isShown }: { readonly change: TriedChange; readonly isShown: boolean }): ReactElement {
+  return (
+    <Pick>
+      <input
+        type="radio"
+        name="proposed"
+        checked={isShown}
+        onChange={() => changeStringsView({ picked: change.label })}
+      />
+      <span>
+        {plainFields(change.label)}
+        <span className="only-read">: show as proposed</span>
+      </span>
+    </Pick>
+  );
+}
+
 const Pick = styled('label')({
   display: 'flex',
   alignItems: 'baseline',
   gap: '0.5rem',
   minHeight: '1.5rem',
   cursor: 'pointer',
-  '& input': { accentColor: 'var(--copper)', margin: 0, flex: 'none', alignSelf: 'center' },
+  '& input': {
+    accentColor: 'var(--copper)',
+    width: '0.875rem',
+    height: '0.875rem',
+    margin: 0,
+    flex: 'none',
+    alignSelf: 'center',
+  },
   '@media (pointer: coarse)': { minHeight: 44, alignItems: 'center' },
 });

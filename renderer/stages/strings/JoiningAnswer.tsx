@@ -48,6 +48,7 @@ function FlatSentence({ joining: { a, b, chargeBand } }: { readonly joining: Joi
 
 function rowsOf({
   giver,
+  inrushA,
   gapV,
   safeGapV,
   loopOhm,
@@ -87,12 +88,15 @@ function rowsOf({
     },
     {
       name: 'Moves',
-      value: (
-        <>
-          <Figure value={movedAh} unit="Ah" digits={2} /> from {giver}, most of it in {lasting(settleS)};{' '}
-          <Figure value={lostWh} unit="Wh" digits={2} /> to heat
-        </>
-      ),
+      value:
+        inrushA < NOTICED_A ? (
+          'nothing to speak of'
+        ) : (
+          <>
+            <Figure value={movedAh} unit="Ah" digits={2} /> from {giver}, most of it in {lasting(settleS)};{' '}
+            <Figure value={lostWh} unit="Wh" digits={2} /> to heat
+          </>
+        ),
     },
   ];
 }

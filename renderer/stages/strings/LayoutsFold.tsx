@@ -6,7 +6,7 @@ import { LayoutThumb, type ThumbString } from '../../charts/LayoutThumb.tsx';
 import { usePreferences } from '../../state/preferences.ts';
 import type { LayoutsAnswer } from '../../workers/stringsMessages.ts';
 import { Fold } from './Fold.tsx';
-import { Assumed, FigureTable, KeyOf, Quiet, Said, Sideways } from './pieces.tsx';
+import { Assumed, FigureTable, KeyOf, More, Quiet, Said, Sideways } from './pieces.tsx';
 import { StudyPlace } from './Running.tsx';
 import type { Study } from './studies.ts';
 import type { Tags } from './tags.ts';
@@ -125,8 +125,8 @@ function CableWords({ cableM }: { readonly cableM: number | null }): ReactElemen
 function RestOfLayouts({ layouts }: { readonly layouts: readonly Layout[] }): ReactElement {
   const first = usePreferences((preferences) => preferences.units);
   return (
-    <details style={{ fontSize: '0.875rem' }}>
-      <summary style={{ cursor: 'pointer', minHeight: '1.75rem' }}>{layouts.length} more ways to tap it</summary>
+    <More>
+      <summary>{layouts.length} more ways to tap it</summary>
       <FigureTable>
         <thead>
           <tr>
@@ -151,7 +151,7 @@ function RestOfLayouts({ layouts }: { readonly layouts: readonly Layout[] }): Re
           ))}
         </tbody>
       </FigureTable>
-    </details>
+    </More>
   );
 }
 

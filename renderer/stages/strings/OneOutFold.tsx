@@ -9,7 +9,7 @@ import { FigureTable, KeyOf, Quiet, Said, Sideways } from './pieces.tsx';
 import { StudyPlace } from './Running.tsx';
 import type { Study } from './studies.ts';
 import { type Tags, tagOf } from './tags.ts';
-import { amps, cascadeWords } from './words.ts';
+import { amps, cascadeWords, NOTICED_A } from './words.ts';
 
 export function OneOutFold({
   study,
@@ -41,6 +41,7 @@ function inShort(banks: readonly OneOutStudy[]): string {
 }
 
 function lossTitle({ bankA, largestA, survivesA, losses }: OneOutStudy): string {
+  if (Math.abs(bankA) < NOTICED_A) return 'the bank rests in this case: choose one with load or charge';
   if (survivesA === null) return 'no limit is known for these strings';
   if (largestA !== null && Math.abs(bankA) > Math.abs(largestA)) {
     return `over a limit even with all in: ${amps(bankA)} against ${amps(largestA)}`;

@@ -12,7 +12,7 @@ import {
 } from '../../../core/api.ts';
 import { SeverityMark } from '../../controls/SeverityMark.tsx';
 import { Fold } from './Fold.tsx';
-import { FigureTable, KeyOf, Quiet, Said, Sideways } from './pieces.tsx';
+import { FigureTable, KeyOf, More, Quiet, Said, Sideways } from './pieces.tsx';
 import { type Tags, tagList, tagOf } from './tags.ts';
 
 export interface ReadingsFoldProps {
@@ -42,12 +42,12 @@ export function ReadingsFold({ read, series, caseId, tags }: ReadingsFoldProps):
         <SeriesTable key={seriesName(one)} imbalance={one} tags={tags} />
       ))}
       {elsewhere.length > 0 && (
-        <details style={{ fontSize: '0.875rem' }}>
-          <summary style={{ cursor: 'pointer', minHeight: '1.75rem' }}>Along the strings in other cases</summary>
+        <More>
+          <summary>Along the strings in other cases</summary>
           {elsewhere.map((one) => (
             <SeriesTable key={seriesName(one)} imbalance={one} tags={tags} />
           ))}
-        </details>
+        </More>
       )}
     </Fold>
   );

@@ -31,6 +31,7 @@ export function Shares({ sharing, banks, tags, band, proposed, instead }: Shares
       <Box sx={{ flex: '3 1 30rem', minWidth: 0 }}>
         {banks.map((bank, index) => {
           const own = found.filter(({ bank: place }) => place === index);
+          const isLarge = own.length > REMARKS_IN_ROWS;
           return (
             <Box
               component="section"
@@ -43,10 +44,11 @@ export function Shares({ sharing, banks, tags, band, proposed, instead }: Shares
               </Head>
               <ShareBars
                 caption="What each string carries, as found"
-                bars={own}
+                bars={isLarge ? own.map((bar) => ({ ...bar, remark: null })) : own}
                 scale={scale}
                 heads={['Rate', 'Limit']}
               />
+              {isLarge && <Remarks bars={own} />}
             </Box>
           );
         })}
@@ -72,6 +74,25 @@ export function Shares({ sharing, banks, tags, band, proposed, instead }: Shares
         )}
       </Box>
     </Box>
+  );
+}
+
+/** In a larger bank what is to be said of several strings is said once, under the table. */
+const REMARKS_IN_ROWS = 4;
+
+function Remarks({ bars }: { readonly bars: readonly FoundBar[] }): ReactElement {
+  const tagsBy = new Map<string, string[]>();
+  for (const { tag, told } of bars) {
+    if (told !== '') tagsBy.set(told, [...(tagsBy.get(told) ?? []), tag]);
+  }
+  return (
+    <>
+      {[...tagsBy].map(([told, tags]) => (
+        <Quiet key={told}>
+          <strong>{tags.join(', ')}.</strong> {told}
+        </Quiet>
+      ))}
+    </>
   );
 }
 
@@ -110,7 +131,11 @@ function BankCurrent({
   );
 }
 
-type FoundBar = ShareBar & { readonly bank: number };
+interface FoundBar extends ShareBar {
+  readonly bank: number;
+  /** The remark as text; empty where there is none. */
+  readonly told: string;
+}
 
 function foundBars({
   sharing,
@@ -135,6 +160,7 @@ function foundBars({
       band: banded === undefined ? null : { lowA: banded.p05, highA: banded.p95 },
       isWorst: one.id === worst?.id && sharing.strings.length > 1,
       more: [<Rate key="rate" cRate={one.cRate} />, <Limit key="limit" string={one} />],
+      told: remark,
       remark: remark === '' ? null : remark,
     };
   });

@@ -45,7 +45,16 @@ export function StringsStage(): ReactElement {
           )}
         </>
       )}
-      {hasStrings && now.last !== null && <BankStudies now={now.last} isOld={now.answer === null} />}
+      {hasStrings && now.last !== null && (
+        <>
+          {now.state?.status === 'failed' && (
+            <Box role="alert" sx={{ color: 'var(--stop)', mb: '0.5rem' }}>
+              There are no new answers: {now.state.message}
+            </Box>
+          )}
+          <BankStudies now={now.last} isOld={now.answer === null} />
+        </>
+      )}
     </Box>
   );
 }
@@ -199,8 +208,9 @@ function Instead({ hasSeveral, isJudged, isUneven, isWaiting }: InsteadProps): R
   if (!isJudged) {
     return (
       <Quiet>
-        In this case the bank carries less than a fiftieth of its capacity an hour: what each string carries of so
-        little says nothing about the bank. Choose a case with more load or charge to see how they share.
+        In this case the bank as a whole carries less than a fiftieth of its capacity an hour, so there is nothing to
+        judge its sharing by. What its strings push into each other is told under “At rest”; choose a case with more
+        load or charge to see how they share.
       </Quiet>
     );
   }

@@ -1,6 +1,7 @@
 /** Small pieces that the folds of the stage are made of. */
+import Box from '@mui/material/Box';
 import { styled } from '@mui/material/styles';
-import type { ReactElement, ReactNode } from 'react';
+import { type ReactElement, type ReactNode, useEffect, useRef, useState } from 'react';
 import { StringKey } from '../../charts/Hatches.tsx';
 import type { Tags } from './tags.ts';
 
@@ -17,13 +18,26 @@ export const FigureTable = styled('table')({
   '& tbody tr': { borderTop: '1px solid var(--hair)' },
 });
 
-/** Wide tables move in a place of their own, never the page; it can be reached and moved by keys. */
+/** Wide tables move in a place of their own, never the page; where one does not fit, it can be reached and moved by keys. */
 export function Sideways({ label, children }: { readonly label: string; readonly children: ReactNode }): ReactElement {
+  const place = useRef<HTMLElement>(null);
+  const [isWide, setWide] = useState(false);
+  useEffect(() => {
+    const { current } = place;
+    if (current === null) return undefined;
+    const observer = new ResizeObserver(() => setWide(current.scrollWidth > current.clientWidth));
+    observer.observe(current);
+    for (const inner of current.children) observer.observe(inner);
+    return () => observer.disconnect();
+  }, []);
   return (
-    // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls has to be reached without a mouse
-    <section aria-label={label} tabIndex={0} style={{ overflowX: 'auto', maxWidth: '100%' }}>
+    <Box
+      ref={place}
+      {...(isWide ? { role: 'region', 'aria-label': label, tabIndex: 0 } : {})}
+      sx={{ overflowX: 'auto', maxWidth: '100%' }}
+    >
       {children}
-    </section>
+    </Box>
   );
 }
 
@@ -56,11 +70,12 @@ export function Assumed({ texts }: { readonly texts: readonly string[] }): React
   );
 }
 
-const More = styled('details')({
+/** What is there for who wants to know it all. */
+export const More = styled('details')({
   fontSize: '0.8125rem',
   color: 'var(--soft)',
   marginBlock: '0.25rem',
-  '& summary': { cursor: 'pointer', minHeight: '1.5rem' },
+  '& > summary': { cursor: 'pointer', minHeight: '1.75rem' },
   '& ul': { margin: 0, paddingInlineStart: '1.25rem', maxWidth: '60rem' },
-  '@media (pointer: coarse)': { '& summary': { minHeight: 44, lineHeight: '44px' } },
+  '@media (pointer: coarse)': { '& > summary': { minHeight: 44, lineHeight: '44px' } },
 });

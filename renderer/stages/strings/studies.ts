@@ -22,7 +22,15 @@ interface Kept {
   readonly before: { readonly job: string | null; readonly answer: Studies[StudyName]['answers'] } | null;
 }
 
-const useKept = create<Partial<Readonly<Record<StudyName, Kept>>>>()(() => ({}));
+const useKept = create<Readonly<Record<StudyName, Kept | null>>>()(() => ({
+  now: null,
+  oneOut: null,
+  joining: null,
+  layouts: null,
+  changes: null,
+  band: null,
+  drift: null,
+}));
 
 const QUICK: ReadonlySet<StudyName> = new Set(['now', 'oneOut', 'joining']);
 const quick = new StringsDesk(false);
@@ -53,7 +61,7 @@ export function useStudy<Name extends StudyName>(
   const isSolved = useOpenJob((open) => open.answers?.generation === open.generation);
   const key = asks === null ? '' : `${String(job)} ${String(generation)} ${JSON.stringify(asks)}`;
   const kept = useKept((all) => all[name]);
-  const isHere = kept !== undefined && kept.key === key;
+  const isHere = kept?.key === key;
   const begin = (): void => {
     if (asks !== null) ask(key, { name, asks } as unknown as StudyQuestion);
   };
@@ -62,7 +70,10 @@ export function useStudy<Name extends StudyName>(
     if (known?.key === key) return;
     if (wanted && isSolved && key !== '') begin();
     // What runs for a state of the job that has been left is of no use any more.
-    else if (known?.state.status === 'waiting') stops.get(name)?.();
+    else if (known?.state.status === 'waiting') {
+      stops.get(name)?.();
+      useKept.setState({ [name]: null });
+    }
   });
   type Answer = Studies[Name]['answers'];
   const state = isHere ? (kept.state as StudyState<Answer>) : null;
@@ -70,7 +81,7 @@ export function useStudy<Name extends StudyName>(
   return {
     state,
     answer,
-    last: answer ?? (lastOf(kept, job) as Answer | null),
+    last: answer ?? lastOf(kept, job),
     ask: begin,
     stop: () => {
       stops.get(name)?.();
@@ -79,8 +90,8 @@ export function useStudy<Name extends StudyName>(
   };
 }
 
-function lastOf(kept: Kept | undefined, job: string | null): Studies[StudyName]['answers'] | null {
-  if (kept === undefined) return null;
+function lastOf(kept: Kept | null, job: string | null): Studies[StudyName]['answers'] | null {
+  if (kept === null) return null;
   if (kept.state.status === 'answered') return kept.key.startsWith(`${String(job)} `) ? kept.state.answer : null;
   return kept.before?.job === job ? kept.before.answer : null;
 }

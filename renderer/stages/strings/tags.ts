@@ -21,13 +21,24 @@ const HATCHES = 8;
 export function tagsOf(job: CheckedJob, banks: readonly Bank[]): Tags {
   const strings = banks.flatMap((bank) => bank.strings);
   const areShort = strings.every(({ id }) => id.length <= (strings.length <= FEW ? LONGEST_OF_FEW : LONGEST_TAG));
+  const endings = endingsOf(strings.map(({ id }) => id));
   return new Map(
     strings.map(({ id }, index) => {
       const label = job.parts.find((part) => part.id === id)?.label;
-      const tag = areShort ? id : letter(index);
+      const tag = areShort ? id : (endings?.[index] ?? letter(index));
       return [id, { id, tag, name: label ?? `String ${id}`, hatch: (index % HATCHES) as HatchNumber }];
     }),
   );
+}
+
+/** `B3` for `BANK-3` and `B` for `house B`, where these tell the strings apart; null where they do not. */
+function endingsOf(ids: readonly string[]): readonly string[] | null {
+  const endings = ids.flatMap((id) => {
+    const ending = /(?:[A-Z]?\d{1,2}|[A-Z])$/.exec(id)?.[0] ?? [];
+    // A bare number would run into the figures beside it.
+    return typeof ending === 'string' && /^\d/.test(ending) ? `${id.charAt(0).toUpperCase()}${ending}` : ending;
+  });
+  return endings.length === ids.length && new Set(endings).size === ids.length ? endings : null;
 }
 
 /** A … Z, then A2 … */
