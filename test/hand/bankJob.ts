@@ -1,5 +1,5 @@
 /** Small jobs about banks: strings on leads of their own to common bars, and what is asked of them. */
-import type { CheckedJob, OperatingCase, PartId, SharedString, SharingCase } from '../../core/api.ts';
+import type { CheckedJob, OperatingCase, SharedString, SharingCase } from '../../core/api.ts';
 import { caseById, parseJob } from '../../core/api.ts';
 
 export type RawPart = Readonly<Record<string, unknown>> & { readonly id: string };
@@ -69,8 +69,6 @@ export function caseOf(job: CheckedJob, id = 'as-drawn'): OperatingCase {
   if (found === undefined) throw new Error(`no case ${id}`);
   return found;
 }
-
-export const idOf = (id: string) => id as PartId;
 
 export function sharedOf(sharing: SharingCase, id: string): SharedString {
   const found = sharing.strings.find((string) => string.id === id);
