@@ -91,9 +91,8 @@ describe.sequential('with the keyboard alone', () => {
     await tabTo('H1');
     for (let step = 0; step < 12; step++) {
       await press('Tab');
-      const place = await middleOf(page.locator(':focus'));
-      expect(place.x > (drawing?.x ?? 0) && place.x < (drawing?.x ?? 0) + (drawing?.width ?? 0)).toBe(true);
-      expect(place.y > (drawing?.y ?? 0) && place.y < (drawing?.y ?? 0) + (drawing?.height ?? 0)).toBe(true);
+      // It is brought there in the next frames.
+      await expect.poll(async () => isWithin(drawing, await middleOf(page.locator(':focus')))).toBe(true);
     }
     expect(await panOf(page)).not.toEqual(first);
   });
@@ -252,3 +251,10 @@ describe.sequential('with the keyboard alone', () => {
 test('nothing went wrong on the way', () => {
   expect(opened.wrongs).toEqual([]);
 });
+
+function isWithin(
+  box: { readonly x: number; readonly y: number; readonly width: number; readonly height: number } | null,
+  { x, y }: { readonly x: number; readonly y: number },
+): boolean {
+  return box !== null && x > box.x && x < box.x + box.width && y > box.y && y < box.y + box.height;
+}
