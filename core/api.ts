@@ -36,6 +36,8 @@ export { factsOf, stringEmf, stringEmfAtCharge, stringSource } from './battery/s
 export type { GassingCells, Ventilation } from './battery/ventilation.ts';
 export { ventilation } from './battery/ventilation.ts';
 export type { CheckReport, Finding, Measure, NotChecked, Passed, Severity } from './checks/finding.ts';
+export type { ProtectionFigures } from './checks/protectionFigures.ts';
+export { protectionFigures } from './checks/protectionFigures.ts';
 export type { Rule as CheckRule, RuleFamily } from './checks/rule.ts';
 export { rules as checkRules } from './checks/rules.ts';
 export type { CheckRequest } from './checks/runChecks.ts';
@@ -183,17 +185,68 @@ export { theveninAt } from './network/thevenin.ts';
 export type { ResistanceChange, WhatIf } from './network/whatIf.ts';
 export { whatIf } from './network/whatIf.ts';
 export { withoutPairs } from './network/wiring.ts';
+export type {
+  BandPoint,
+  Clearing,
+  DeviceBand,
+  DeviceFault,
+  FaultCurrent,
+  FaultMethod,
+  FaultShare,
+  FaultStudy,
+  JunctionFault,
+} from './protection/answer.ts';
+export { ARC_BASIS, ARC_TIME_S, arcEnergy, BURN_CAL_PER_CM2 } from './protection/arcFlash.ts';
+export { clearingOf, provenance, timeText } from './protection/clearing.ts';
+export { deviceBandOf } from './protection/deviceBand.ts';
+export { faultLevel } from './protection/faultLevel.ts';
+export type { FaultFigures, FaultRequest } from './protection/faultSources.ts';
+export type { DeviceFaultRow, FaultSummary, JunctionFaultRow } from './protection/faultSummary.ts';
+export { faultSummary } from './protection/faultSummary.ts';
+export type { IsolatingDevice, Isolation } from './protection/isolation.ts';
+export { partsThatIsolate } from './protection/isolation.ts';
+export { pulseShare, type SurgeAnswer, surgeAgainstMelt } from './protection/pulse.ts';
+export { type Selectivity, type SelectivityRequest, selectivityOf } from './protection/selectivity.ts';
+export {
+  adiabaticTimeS,
+  smallestAreaMm2,
+  type Withstand,
+  type WithstandRequest,
+  withstandFactorK,
+  withstandOf,
+} from './protection/withstand.ts';
 export { type BankChange, type BankChangesRequest, bankChanges } from './remedy/bankChanges.ts';
 export { EFFORTS } from './remedy/candidate.ts';
 export type { MissingField } from './remedy/missingField.ts';
 export { missingField } from './remedy/missingField.ts';
+export { costWords, type ProtectionCost, weightOf } from './remedy/protect/cost.ts';
+export type { DeviceBeside, DeviceStudy, ProtectionStudy, SurgePoint } from './remedy/protect/deviceStudy.ts';
+export { protectionStudy } from './remedy/protect/deviceStudy.ts';
+export {
+  type FuseWindow,
+  type FuseWindowRequest,
+  fuseWindowOf,
+  type WindowFigures,
+  windowFrom,
+} from './remedy/protect/fuseWindow.ts';
+export type {
+  Alternative as ProtectionAlternative,
+  ProposedCable,
+  ProposedDevice,
+  ProtectionProposal,
+  ProtectionRequest,
+  RunProposal,
+  RunVerdict,
+} from './remedy/protect/proposal.ts';
+export { PROTECTION_RULES, proposeProtection } from './remedy/protect/proposeProtection.ts';
+export type { RunRole } from './remedy/protect/runs.ts';
 export type { RemedyTrial } from './remedy/remedyTrial.ts';
 export type { RemedyRequest } from './remedy/tryRemedy.ts';
 export { remedyTrials } from './remedy/tryRemedy.ts';
 export { buildReport } from './report/buildReport.ts';
 export { answerLine, partName, partNames } from './report/caseWords.ts';
 export type { Caution } from './report/cautions.ts';
-export { cautionsForPart } from './report/cautions.ts';
+export { cautionsForPart, cautionTexts } from './report/cautions.ts';
 export type {
   Block,
   CautionBlock,
@@ -297,14 +350,33 @@ export type {
   MetricResistanceRow,
   UsLandAmpacity,
   UsResistanceRow,
+  WithstandRow,
+  WithstandTables,
 } from './tables/conductorTables.ts';
-export type { BreakerInterruptRow, DeviceTables, RatingSeries, TypicalInterrupt } from './tables/deviceTables.ts';
-export type { Figure, PracticeTable, SmallestConductor, UnfusedLength } from './tables/practiceTable.ts';
+export type {
+  BandRow,
+  BreakerInterruptRow,
+  DeviceTables,
+  PulseShare,
+  RatingSeries,
+  SelectivityRatios,
+  TypicalInterrupt,
+} from './tables/deviceTables.ts';
+export type {
+  ColdVoltsFactor,
+  Figure,
+  PracticeTable,
+  SmallestConductor,
+  SolarPractice,
+  UnfusedLength,
+} from './tables/practiceTable.ts';
 export type { Basis, Status } from './tables/status.ts';
 export type { Tables } from './tables/tables.ts';
 export type { ConductorSize } from './units/conductorSize.ts';
 export { parseSize, sizeText } from './units/conductorSize.ts';
 export { readCount } from './units/countFieldText.ts';
+export type { Curve } from './units/curveFieldText.ts';
+export { curveText, readCurve } from './units/curveFieldText.ts';
 export type { EchoRequest } from './units/fieldEcho.ts';
 export { echoOf } from './units/fieldEcho.ts';
 export type { FieldChoice, FieldReading, Way } from './units/fieldReading.ts';

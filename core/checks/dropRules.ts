@@ -79,6 +79,20 @@ function dropVerdict(
   ];
 }
 
+/** Volts lost on the way to a load that takes current, as a fraction of nominal volts, with the limit for its class. */
+export function dropOf(
+  context: CheckContext,
+  { part, one }: { readonly part: LoadPart | InverterPart; readonly one: SolvedCase },
+): { readonly fraction: number; readonly limit: number } | undefined {
+  const { voltageV, currentA } = one.answer(part.id);
+  if (!part.on || voltageV === null || voltageV <= 0 || currentA === null || currentA <= 0) return undefined;
+  const feed = feedersOf(one).of(part);
+  const nominalV = context.volts.nominalBetween(part.plus, part.minus);
+  if (feed === undefined || nominalV === undefined) return undefined;
+  const dropClass = part.kind === 'inverter' ? 'ordinary' : (part.dropClass ?? 'ordinary');
+  return { fraction: (feed.volts - voltageV) / nominalV, limit: limitOf(context, dropClass).value };
+}
+
 interface DropLimit {
   readonly value: number;
   readonly basis: Basis;

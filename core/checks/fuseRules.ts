@@ -65,10 +65,7 @@ interface Place {
 function eachProtectedCable(context: CheckContext, rule: Rule, judgement: Judgement) {
   const tally = new Tally(rule, rule.basisFor(context));
   const cables = protectedCablesOf(context);
-  const hottest = context.cases.reduce<Place>(
-    (most, { id, ambientDegC }) => (ambientDegC > most.ambientDegC ? { id, ambientDegC } : most),
-    { id: '', ambientDegC: Number.NEGATIVE_INFINITY },
-  );
+  const hottest = hottestOf(context);
   for (const device of context.drawn) {
     if (!isDevice(device)) continue;
     const verdicts = cables.of(device).flatMap((cable) => judgement(context, { device, cable, hottest }));
@@ -77,11 +74,17 @@ function eachProtectedCable(context: CheckContext, rule: Rule, judgement: Judgem
   return tally.outcome();
 }
 
+function hottestOf(context: CheckContext): Place {
+  return context.cases.reduce<Place>(
+    (most, { id, ambientDegC }) => (ambientDegC > most.ambientDegC ? { id, ambientDegC } : most),
+    { id: '', ambientDegC: Number.NEGATIVE_INFINITY },
+  );
+}
+
 const overCable: Judgement = (context, { device, cable, hottest }) => {
   const ampacity = context.ampacityOf(cable, hottest.ambientDegC);
   if ('missing' in ampacity) return [missing(ampacity.missing, ...sizeWanted(cable))];
-  const nominalV = context.volts.nominalAt(device.from) ?? context.volts.nominalAt(device.to);
-  const allowed = largestDevice({ ampacityA: ampacity.finalA, nominalV }, context);
+  const allowed = largestDevice({ ampacityA: ampacity.finalA, nominalV: nominalOf(context, device) }, context);
   if ('missing' in allowed) return [missing(`${allowed.missing} (${device.kind} ${device.id})`, NOMINAL_VOLTS)];
   if (!isOver(device.ratingA, allowed.ratingA)) return [PASS];
   const [rated, most] = apart(device.ratingA, allowed.ratingA, 'A');
@@ -99,6 +102,29 @@ const overCable: Judgement = (context, { device, cable, hottest }) => {
     },
   ];
 };
+
+function nominalOf({ volts }: CheckContext, { from, to }: Pick<Device, 'from' | 'to'>): number | undefined {
+  return volts.nominalAt(from) ?? volts.nominalAt(to);
+}
+
+/** What a cable admits over it: its ampacity in the warmest case, the largest device, and the cap for its gauge where there is one. */
+export interface Allowance {
+  readonly ampacityA: number;
+  readonly largest: LargestDevice;
+  readonly capA: number | undefined;
+}
+
+/** The allowance of a cable for a device between two junctions. */
+export function allowanceOver(
+  context: CheckContext,
+  { cable, between }: { readonly cable: CablePart; readonly between: Pick<Device, 'from' | 'to'> },
+): Allowance | { readonly missing: string } {
+  const ampacity = context.ampacityOf(cable, hottestOf(context).ambientDegC);
+  if ('missing' in ampacity) return ampacity;
+  const ampacityA = ampacity.finalA;
+  const largest = largestDevice({ ampacityA, nominalV: nominalOf(context, between) }, context);
+  return 'missing' in largest ? largest : { ampacityA, largest, capA: capOver(context.practice, cable) };
+}
 
 export interface LargestDevice {
   readonly ratingA: number;
@@ -149,11 +175,10 @@ function nextStandardRating(
 }
 
 const overCap: Judgement = ({ practice, ...context }, { device, cable, hottest }) => {
-  const metal = cable.metal === 'aluminium' ? 'aluminium' : 'copper';
+  const metal = metalOf(cable);
   const caps = capsOf(practice, metal);
-  if (caps === undefined || cable.size?.system !== 'awg') return [];
-  const capA = caps.capsA.get(cable.size.gauge);
-  if (capA === undefined) return [];
+  const capA = capOver(practice, cable);
+  if (caps === undefined || capA === undefined) return [];
   if (!isOver(device.ratingA, capA)) return [PASS];
   const [rated, most] = apart(device.ratingA, capA, 'A');
   return [
@@ -170,6 +195,14 @@ const overCap: Judgement = ({ practice, ...context }, { device, cable, hottest }
     },
   ];
 };
+
+function metalOf({ metal }: CablePart): 'copper' | 'aluminium' {
+  return metal === 'aluminium' ? 'aluminium' : 'copper';
+}
+
+function capOver(practice: PracticeTable, cable: CablePart): number | undefined {
+  return cable.size?.system === 'awg' ? capsOf(practice, metalOf(cable))?.capsA.get(cable.size.gauge) : undefined;
+}
 
 function capsOf(practice: PracticeTable, metal: 'copper' | 'aluminium') {
   return metal === 'copper' ? practice.smallWireCaps : practice.smallAluminiumCaps;

@@ -9,7 +9,16 @@ import type { CheckContext } from './checkContext.ts';
 import type { Finding, WantedField } from './finding.ts';
 
 /** What a rule is about; rules of one family stand in one file or a few. */
-export type RuleFamily = 'wiring' | 'cable' | 'fuse' | 'rating' | 'voltage' | 'battery' | 'strings' | 'charging';
+export type RuleFamily =
+  | 'wiring'
+  | 'cable'
+  | 'fuse'
+  | 'rating'
+  | 'voltage'
+  | 'battery'
+  | 'strings'
+  | 'charging'
+  | 'solar';
 
 /** Which book judges: a practice's own table, the tables it stands in, and the job's settings. */
 export interface Judge {

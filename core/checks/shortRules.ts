@@ -8,6 +8,7 @@ import { CIRCUIT_LAW, FUSE_AT_SOURCE } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { type Quiet, quietStates } from './quiet.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
+import { mayGoUnfused } from './starterRules.ts';
 import { banksOf } from './systemVolts.ts';
 import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
 import { amps, apart, ohms, percent, shortList, titleOf } from './wording.ts';
@@ -147,7 +148,8 @@ function joinedOnly(string: StringPart, caseId: string): Verdict {
 
 /**
  * With every fuse and breaker taken out, no string may feed anything any more: whatever still lies between nets of its plus and
- * of its minus has no device in either conductor. How far the device is from the string is another question.
+ * of its minus has no device in either conductor. How far the device is from the string is another question. A starter motor alone on
+ * its cable is excepted by most books, up to the volts that the practice names.
  */
 export const noFuseOnSource: Rule = {
   id: 'no-fuse-on-source',
@@ -155,7 +157,7 @@ export const noFuseOnSource: Rule = {
   kinds: ['string'],
   title: 'String feeds or is fed without a fuse or breaker in between',
   compares:
-    'for each string: with every fuse and breaker taken out, is any load, inverter, charger, controller or converter still joined to both its poles?',
+    'for each string: with every fuse and breaker taken out, is any load, inverter, charger, controller or converter still joined to both its poles? A starter motor (cranking) alone on its cable may be, as far as the practice lets it',
   remedy:
     'Put a fuse or a breaker with manual reset in the ungrounded conductor right at the string; most books except only the cable of a starter motor.',
   byPractice: false,
@@ -187,7 +189,10 @@ function runNoFuse(context: CheckContext): RuleOutcome {
     const span = spanOf(string)!;
     // A tap is fed by the strings whose stretch of volts it shares.
     const own = users.filter(
-      (user) => user.bank === span.bank && Math.min(user.highV, span.highV) > Math.max(user.lowV, span.lowV),
+      (user) =>
+        user.bank === span.bank &&
+        Math.min(user.highV, span.highV) > Math.max(user.lowV, span.lowV) &&
+        !mayGoUnfused(context, user.part, string),
     );
     const ids = [...new Set(own.map(({ part }) => part.id))];
     if (ids.length === 0) {

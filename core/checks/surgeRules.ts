@@ -65,9 +65,27 @@ function started(
   return context.solve({ ...one.operatingCase, surge: part.id, changed }, 'fast');
 }
 
+const ofContext = new WeakMap<CheckContext, Map<string, OperatingPoint>>();
+
+/** The same with the strings as they are, solved once for all rules that ask about a start with the part's own surge. */
+export function startedPoint(context: CheckContext, start: Start): OperatingPoint {
+  let known = ofContext.get(context);
+  if (known === undefined) {
+    known = new Map();
+    ofContext.set(context, known);
+  }
+  const key = JSON.stringify([start.one.id, start.part.id]);
+  let point = known.get(key);
+  if (point === undefined) {
+    point = started(context, start);
+    known.set(key, point);
+  }
+  return point;
+}
+
 function startVerdict(context: CheckContext, start: Start): Verdict {
   const { part, one, surgeW } = start;
-  const point = started(context, start);
+  const point = startedPoint(context, start);
   if (point.outcome === 'unsupplied') return missing(`a source that feeds ${part.kind} ${part.id} in case ${one.id}`);
   const answer = point.parts.get(part.id);
   const leastV = leastVoltsOf(part);

@@ -19,6 +19,8 @@ const unitTails: ReadonlyMap<UnitName, string> = new Map(
     s: 'S',
     year: 'Years',
     deg: 'Deg',
+    cm2: 'Cm2',
+    'm3/h': 'M3PerH',
   }) as [UnitName, string][],
 );
 

@@ -23,6 +23,8 @@ export type Rule =
   | { readonly holds: 'size' }
   | { readonly holds: 'point' }
   | { readonly holds: 'efficiency' }
+  /** Points `[currentA, meltS, clearS]` of a fuse or breaker, by rising current. */
+  | { readonly holds: 'curve' }
   /** One number for each of `length` steps; with `orSame` a single number stands for all of them. */
   | ({ readonly holds: 'numbers'; readonly length: number; readonly orSame?: true; readonly unit: UnitName } & Bounds)
   /** Left to whoever reads the object around it. */
@@ -85,6 +87,8 @@ export function expectation(rule: Rule): string {
       return `a list of ${String(rule.length)} numbers${rule.orSame === true ? ' or one number' : ''}`;
     case 'efficiency':
       return 'a number from 0 to 1, or a list of points [fraction of rated output, efficiency]';
+    case 'curve':
+      return 'a list of points [current in A, melting time in s, clearing time in s]';
     case 'flag':
       return 'true or false';
     case 'choice':

@@ -12,6 +12,12 @@ export interface Site {
   /** Twelve daily means on the horizontal, January first. */
   readonly irradiationKWhPerM2Day: readonly number[] | undefined;
   readonly albedo: number | undefined;
+  /** The engine or the tanks share a closed space with petrol (gasoline). */
+  readonly gasolineSpace?: boolean | undefined;
+  /** Wet or salty air. */
+  readonly dampSpace?: boolean | undefined;
+  /** Signs that name every source are fitted. */
+  readonly sourceSign?: boolean | undefined;
 }
 
 export interface JunctionNote {
@@ -107,6 +113,8 @@ export interface Settings {
   /** Half-string volts off centre, as fractions of total volts: watch, act. Defaults 0.005, 0.01. */
   readonly midpointWatch: number;
   readonly midpointAct: number;
+  /** A fault at its weakest is to open its device within this many seconds. Default 5. */
+  readonly faultClearS: number;
 }
 
 declare const checked: unique symbol;

@@ -36,13 +36,18 @@ export const junctionFields: Fields = {
   reference: { rule: { holds: 'flag' }, standard: false },
 };
 
-export const siteFields: { readonly [F in keyof Site]: Field } = {
+const flag: Field = { rule: { holds: 'flag' } };
+
+export const siteFields: { readonly [F in keyof Site]-?: Field } = {
   latitudeDeg: { rule: { holds: 'quantity', unit: 'deg', atLeast: -90, atMost: 90 } },
   ambientMinDegC: airTemperature,
   ambientDesignDegC: airTemperature,
   ambientMaxDegC: airTemperature,
   irradiationKWhPerM2Day: { rule: { holds: 'numbers', length: 12, unit: 'kWh/m2/day', atLeast: 0, atMost: 15 } },
   albedo: fraction,
+  gasolineSpace: flag,
+  dampSpace: flag,
+  sourceSign: flag,
 };
 
 export function checkSite(raw: unknown, issues: IssueList): Site {
@@ -97,6 +102,7 @@ export const settingFields: { readonly [F in keyof Settings]: Field } = {
   ageGapYears: { rule: { holds: 'quantity', unit: 'year', atLeast: 0, atMost: 100 }, standard: 1 },
   midpointWatch: { rule: { holds: 'quantity', unit: '1', above: 0, below: 1 }, standard: 0.005 },
   midpointAct: { rule: { holds: 'quantity', unit: '1', above: 0, below: 1 }, standard: 0.01 },
+  faultClearS: { rule: { holds: 'quantity', unit: 's', above: 0, atMost: 60 }, standard: 5 },
 };
 
 export function checkSettings(raw: unknown, issues: IssueList): Settings {

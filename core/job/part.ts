@@ -38,6 +38,8 @@ interface PartBase {
   readonly range: ReadonlyMap<string, readonly [number, number]>;
   /** Names of the fields that the job itself gave (before defaults). */
   readonly given: ReadonlySet<string>;
+  /** The box, locker or cabinet that the part sits in: parts of one enclosure name it alike. */
+  readonly enclosure?: string | undefined;
   /** `x-…` fields of the part, carried along untouched. */
   readonly extra?: ReadonlyMap<string, unknown>;
 }
@@ -79,6 +81,26 @@ export interface StringPart extends TwoPole {
   readonly shortCircuitA: number | undefined;
   /** Junction between the two halves of the string. */
   readonly midpoint: JunctionId | undefined;
+  /** Cold-cranking current printed on the battery, of the whole string. */
+  readonly crankingA?: number | undefined;
+  /** Largest fuse that the battery's papers allow. */
+  readonly maxFuseA?: number | undefined;
+  /** Something disconnects the loads below this voltage of the whole string. */
+  readonly lowCutoffV?: number | undefined;
+  /** Strapped or boxed so that it cannot move. */
+  readonly heldDown?: boolean | undefined;
+  /** Right above, below or beside a tank, filter or fitting of fuel. */
+  readonly besideFuel?: boolean | undefined;
+  /** Its posts are held by clips that rely on a spring. */
+  readonly springClip?: boolean | undefined;
+  /** Its live posts are covered. */
+  readonly covered?: boolean | undefined;
+  /** Opening of the battery space to outside air, of the inlet and of the outlet each. */
+  readonly ventOpeningCm2?: number | undefined;
+  /** Air that a fan moves through the battery space. */
+  readonly ventAirM3PerH?: number | undefined;
+  /** Something blocks charging of the cold battery. */
+  readonly lowTemperatureCutoff?: boolean | undefined;
 }
 
 /** What a conductor is made of and how it lies; shared by `cable` and `pair`. */
@@ -125,9 +147,24 @@ export interface BusbarPart extends PartBase {
   readonly ratingV: number | undefined;
   /** Between neighbours; contract default 0. */
   readonly segmentOhm: number;
+  /** Short-time withstand current, held for `withstandS`. */
+  readonly withstandA?: number | undefined;
+  readonly withstandS?: number | undefined;
+  /** Temperature that its terminals are marked for. */
+  readonly terminalDegC?: number | undefined;
+  readonly covered?: boolean | undefined;
 }
 
-interface ProtectiveFields extends TwoEnded {
+/** `[currentA, meltS, clearS]`: from `meltS` the element may have melted, by `clearS` it has surely opened. */
+export type CurvePoint = readonly [currentA: number, meltS: number, clearS: number];
+
+/** Where a part that may make a spark sits. */
+interface SparkFields {
+  readonly inBatterySpace?: boolean | undefined;
+  readonly ignitionProtected?: boolean | undefined;
+}
+
+interface ProtectiveFields extends TwoEnded, SparkFields {
   readonly ratingA: number;
   readonly type: string | undefined;
   readonly ratingV: number | undefined;
@@ -137,6 +174,22 @@ interface ProtectiveFields extends TwoEnded {
   readonly resistanceOhm: number | undefined;
   readonly distanceFromSourceM: number | undefined;
   readonly sheathed: boolean | undefined;
+  /** Of the place that it sits in. */
+  readonly ambientDegC?: number | undefined;
+  /** Temperature that its terminals are marked for. */
+  readonly terminalDegC?: number | undefined;
+  /** It is marked for direct current. */
+  readonly dcRated?: boolean | undefined;
+  /** The maker's curve, by rising current; overrides the generic band of its type. */
+  readonly curvePoints?: readonly CurvePoint[] | undefined;
+  /** Least I²t that melts it, A²s. */
+  readonly preArcI2t?: number | undefined;
+  /** Most I²t that it lets through until it has opened, A²s. */
+  readonly totalI2t?: number | undefined;
+  /** A hand reaches it at once. */
+  readonly accessible?: boolean | undefined;
+  /** Its live studs are covered. */
+  readonly covered?: boolean | undefined;
 }
 export interface FusePart extends ProtectiveFields {
   readonly kind: 'fuse';
@@ -145,13 +198,23 @@ export interface BreakerPart extends ProtectiveFields {
   readonly kind: 'breaker';
   readonly manualReset: boolean | undefined;
 }
-export interface SwitchPart extends TwoEnded {
+export interface SwitchPart extends TwoEnded, SparkFields {
   readonly kind: 'switch';
   readonly ratingA: number | undefined;
   readonly ratingV: number | undefined;
   readonly state: SwitchState;
   readonly loadBreak: boolean | undefined;
   readonly resistanceOhm: number | undefined;
+  readonly dcRated?: boolean | undefined;
+  readonly terminalDegC?: number | undefined;
+  /** Largest current that it carries for a few seconds. */
+  readonly shortTimeA?: number | undefined;
+  readonly accessible?: boolean | undefined;
+  readonly distanceFromSourceM?: number | undefined;
+  /** It can be locked open. */
+  readonly lockable?: boolean | undefined;
+  /** It is marked with what it switches. */
+  readonly marked?: boolean | undefined;
 }
 export interface ShuntPart extends TwoEnded {
   readonly kind: 'shunt';
@@ -161,6 +224,16 @@ export interface ShuntPart extends TwoEnded {
 export interface JointPart extends TwoEnded {
   readonly kind: 'joint';
   readonly resistanceOhm: number;
+  readonly springClip?: boolean | undefined;
+  readonly covered?: boolean | undefined;
+}
+/** What the papers of a consumer or charger say of its wiring. */
+interface DeviceFields {
+  /** Rated volts of the system that it is made for (of its input). */
+  readonly nominalV?: number | undefined;
+  readonly maxFuseA?: number | undefined;
+  /** Temperature that its terminals are marked for. */
+  readonly terminalDegC?: number | undefined;
 }
 export interface DiodePart extends TwoEnded {
   readonly kind: 'diode';
@@ -169,7 +242,7 @@ export interface DiodePart extends TwoEnded {
   readonly ratingA: number | undefined;
 }
 
-export interface LoadPart extends TwoPole {
+export interface LoadPart extends TwoPole, DeviceFields {
   readonly kind: 'load';
   /** Exactly one of `powerW`, `currentA`, `resistanceOhm` is given. */
   readonly powerW: number | undefined;
@@ -184,8 +257,10 @@ export interface LoadPart extends TwoPole {
   /** Runs 3 h or more. */
   readonly continuous: boolean | undefined;
   readonly dropClass: 'critical' | 'ordinary' | undefined;
+  /** A starter motor. */
+  readonly cranking?: boolean | undefined;
 }
-export interface InverterPart extends TwoPole {
+export interface InverterPart extends TwoPole, DeviceFields {
   readonly kind: 'inverter';
   /** Present output. */
   readonly acPowerW: number | undefined;
@@ -196,6 +271,9 @@ export interface InverterPart extends TwoPole {
   readonly standbyW: number | undefined;
   readonly cutoffV: number | undefined;
   readonly on: boolean;
+  readonly surgeS?: number | undefined;
+  /** Fraction of the volts lost in the wiring of its AC side. */
+  readonly acDrop?: number | undefined;
 }
 export interface ArrayPart extends TwoPole {
   readonly kind: 'array';
@@ -214,7 +292,7 @@ export interface ArrayPart extends TwoPole {
   readonly azimuthDeg: number | undefined;
   readonly maxFuseA: number | undefined;
 }
-export interface ControllerPart extends TwoPort {
+export interface ControllerPart extends TwoPort, Omit<DeviceFields, 'nominalV'> {
   readonly kind: 'controller';
   readonly type: 'mppt' | 'pwm';
   /** Limit. */
@@ -222,16 +300,22 @@ export interface ControllerPart extends TwoPort {
   readonly maxInputV: number;
   readonly setpointV: number;
   readonly efficiency: number | undefined;
+  /** Most short-circuit current of an array that it takes. */
+  readonly maxInputA?: number | undefined;
+  /** It lets nothing back to the array in the dark. */
+  readonly blocksAtNight?: boolean | undefined;
 }
-export interface ChargerPart extends TwoPole {
+export interface ChargerPart extends TwoPole, DeviceFields, SparkFields {
   readonly kind: 'charger';
   readonly source: string | undefined;
   /** Limit. */
   readonly outputA: number;
   readonly setpointV: number;
   readonly on: boolean;
+  /** It cannot give more than its limit, whatever stands behind it. */
+  readonly selfLimiting?: boolean | undefined;
 }
-export interface ConverterPart extends TwoPort {
+export interface ConverterPart extends TwoPort, DeviceFields {
   readonly kind: 'converter';
   readonly outputV: number;
   /** Limit. */

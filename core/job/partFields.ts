@@ -3,7 +3,18 @@ import type { Field, Fields } from './field.ts';
 import type { ConductorFields, Part, PartKind } from './part.ts';
 
 /** Fields that are read alike for all kinds. */
-type Common = 'kind' | 'id' | 'label' | 'note' | 'locationTag' | 'at' | 'origin' | 'range' | 'given' | 'extra';
+type Common =
+  | 'kind'
+  | 'id'
+  | 'label'
+  | 'note'
+  | 'locationTag'
+  | 'enclosure'
+  | 'at'
+  | 'origin'
+  | 'range'
+  | 'given'
+  | 'extra';
 type FieldsOf<T> = { readonly [F in Exclude<keyof T, Common>]-?: Field };
 
 const required = { required: true } as const;
@@ -18,6 +29,10 @@ const metres: Field = { rule: { holds: 'quantity', unit: 'm', atLeast: 0, atMost
 const airTemperature: Field = { rule: { holds: 'quantity', unit: 'degC', atLeast: -90, atMost: 150 } };
 const conductorTemperature: Field = { rule: { holds: 'quantity', unit: 'degC', atLeast: -90, atMost: 400 } };
 const efficiency: Field = { rule: { holds: 'quantity', unit: '1', above: 0, atMost: 1 } };
+const seconds: Field = { rule: { holds: 'quantity', unit: 's', above: 0, atMost: 3600 } };
+const surgeTime: Field = { rule: { holds: 'quantity', unit: 's', atLeast: 0, atMost: 3600 } };
+const fuseEnergy: Field = { rule: { holds: 'quantity', unit: 'A2s', above: 0, atMost: 1e12 } };
+const ratedTemperature: Field = { rule: { holds: 'quantity', unit: 'degC', above: 0, atMost: 400 } };
 const perDegree: Field = { rule: { holds: 'quantity', unit: '1/K', atLeast: -0.02, atMost: 0.02 } };
 const flag: Field = { rule: { holds: 'flag' } };
 const flagOn: Field = { rule: { holds: 'flag' }, standard: true };
@@ -36,7 +51,7 @@ const conductor: FieldsOf<ConductorFields> = {
   inParallel: { ...howMany, standard: 1 },
   metal: { rule: { holds: 'choice', of: ['copper', 'tinned-copper', 'aluminium'] } },
   stranding: { rule: { holds: 'choice', of: ['solid', 'stranded', 'flexible'] } },
-  insulationDegC: { rule: { holds: 'quantity', unit: 'degC', above: 0, atMost: 400 } },
+  insulationDegC: ratedTemperature,
   run: { rule: { holds: 'choice', of: ['free-air', 'conduit', 'bundle', 'engine-space', 'buried'] } },
   loadedConductors: howMany,
   ambientDegC: airTemperature,
@@ -45,6 +60,11 @@ const conductor: FieldsOf<ConductorFields> = {
   sheathed: flag,
   resistanceOhm: ohms,
 };
+
+/** What may stand by a spark. */
+const spark = { inBatterySpace: flag, ignitionProtected: flag };
+/** What the papers of a consumer or charger say of its wiring. */
+const device = { nominalV: volts, maxFuseA: ratingAmps, terminalDegC: ratedTemperature };
 
 const protective = {
   ...twoEnds,
@@ -56,7 +76,16 @@ const protective = {
   resistanceOhm: ohms,
   distanceFromSourceM: metres,
   sheathed: flag,
-};
+  ambientDegC: airTemperature,
+  terminalDegC: ratedTemperature,
+  dcRated: flag,
+  curvePoints: { rule: { holds: 'curve' } },
+  preArcI2t: fuseEnergy,
+  totalI2t: fuseEnergy,
+  accessible: flag,
+  covered: flag,
+  ...spark,
+} as const;
 
 type AllPartFields = { readonly [K in PartKind]: FieldsOf<Extract<Part, { kind: K }>> };
 
@@ -78,6 +107,16 @@ const tables: AllPartFields = {
     maxDischargeA: amps,
     shortCircuitA: ratingAmps,
     midpoint: { rule: { holds: 'junction' } },
+    crankingA: ratingAmps,
+    maxFuseA: ratingAmps,
+    lowCutoffV: volts,
+    heldDown: flag,
+    besideFuel: flag,
+    springClip: flag,
+    covered: flag,
+    ventOpeningCm2: { rule: { holds: 'quantity', unit: 'cm2', atLeast: 0, atMost: 1e6 } },
+    ventAirM3PerH: { rule: { holds: 'quantity', unit: 'm3/h', atLeast: 0, atMost: 1e6 } },
+    lowTemperatureCutoff: flag,
   },
   cable: { ...twoEnds, ...conductor, lengthM: { ...metres, ...required }, size },
   pair: {
@@ -93,16 +132,35 @@ const tables: AllPartFields = {
     ratingA: ratingAmps,
     ratingV: volts,
     segmentOhm: { ...ohms, standard: 0 },
+    withstandA: ratingAmps,
+    withstandS: seconds,
+    terminalDegC: ratedTemperature,
+    covered: flag,
   },
   fuse: protective,
   breaker: { ...protective, manualReset: flag },
-  switch: { ...twoEnds, ratingA: ratingAmps, ratingV: volts, state, loadBreak: flag, resistanceOhm: ohms },
+  switch: {
+    ...twoEnds,
+    ratingA: ratingAmps,
+    ratingV: volts,
+    state,
+    loadBreak: flag,
+    resistanceOhm: ohms,
+    dcRated: flag,
+    terminalDegC: ratedTemperature,
+    shortTimeA: ratingAmps,
+    accessible: flag,
+    distanceFromSourceM: metres,
+    lockable: flag,
+    marked: flag,
+    ...spark,
+  },
   shunt: {
     ...twoEnds,
     ratingA: { ...ratingAmps, ...required },
     ratingMv: { rule: { holds: 'quantity', unit: 'mV', above: 0, atMost: 10_000 }, ...required },
   },
-  joint: { ...twoEnds, resistanceOhm: { ...ohms, ...required } },
+  joint: { ...twoEnds, resistanceOhm: { ...ohms, ...required }, springClip: flag, covered: flag },
   diode: {
     ...twoEnds,
     forwardV: { rule: { holds: 'quantity', unit: 'V', atLeast: 0, atMost: 100 } },
@@ -118,9 +176,11 @@ const tables: AllPartFields = {
     minimumV: volts,
     maximumV: volts,
     surgeW: watts,
-    surgeS: { rule: { holds: 'quantity', unit: 's', atLeast: 0, atMost: 3600 } },
+    surgeS: surgeTime,
     continuous: flag,
     dropClass: { rule: { holds: 'choice', of: ['critical', 'ordinary'] } },
+    cranking: flag,
+    ...device,
   },
   inverter: {
     ...twoPoles,
@@ -131,6 +191,9 @@ const tables: AllPartFields = {
     standbyW: watts,
     cutoffV: volts,
     on: flagOn,
+    surgeS: surgeTime,
+    acDrop: { rule: { holds: 'quantity', unit: '1', atLeast: 0, below: 1 } },
+    ...device,
   },
   array: {
     ...twoPoles,
@@ -155,6 +218,10 @@ const tables: AllPartFields = {
     maxInputV: { ...volts, ...required },
     setpointV: { ...volts, ...required },
     efficiency,
+    maxInputA: ratingAmps,
+    maxFuseA: ratingAmps,
+    terminalDegC: ratedTemperature,
+    blocksAtNight: flag,
   },
   charger: {
     ...twoPoles,
@@ -162,6 +229,9 @@ const tables: AllPartFields = {
     outputA: { ...ratingAmps, ...required },
     setpointV: { ...volts, ...required },
     on: flagOn,
+    selfLimiting: flag,
+    ...device,
+    ...spark,
   },
   converter: {
     ...twoPorts,
@@ -170,6 +240,7 @@ const tables: AllPartFields = {
     efficiency,
     standbyW: watts,
     on: flagOn,
+    ...device,
   },
   bond: { ...twoEnds, size, lengthM: metres },
 };
@@ -184,6 +255,7 @@ export const commonFields: Fields = {
   label: text,
   note: { rule: { holds: 'text', longest: 10_000 } },
   locationTag: text,
+  enclosure: text,
   at: { rule: { holds: 'point' } },
   origin: { rule: { holds: 'anything' } },
   range: { rule: { holds: 'anything' } },

@@ -18,6 +18,7 @@ import {
 import type { IssueCode } from './issue.ts';
 import { troubleWithJunction, troubleWithText } from './names.ts';
 import { nearestNameHint } from './nearestName.ts';
+import type { CurvePoint } from './part.ts';
 import { fieldPath, itemPath } from './path.ts';
 
 /** Numbers beyond this are slips of the keyboard in every unit of a job. */
@@ -80,6 +81,8 @@ export function readValue(value: unknown, rule: Rule, place: FieldPlace): unknow
       return readNumbers(value, rule, place);
     case 'efficiency':
       return Array.isArray(value) ? readCurve(value, place) : readQuantity(value, efficiencyBounds, place);
+    case 'curve':
+      return readTimeCurve(value, rule, place);
     case 'flag':
       return typeof value === 'boolean' ? value : wrongType(value, rule, place);
     case 'choice':
@@ -226,6 +229,51 @@ function readCurvePoint(item: unknown, place: FieldPlace): readonly [number, num
     place,
   );
   return x === undefined || y === undefined ? undefined : [x, y];
+}
+
+/** Points of a fuse's curve: currents rise, times never do, and no fuse clears before it has melted. */
+function readTimeCurve(value: unknown, rule: Rule, place: FieldPlace): readonly CurvePoint[] | undefined {
+  if (!Array.isArray(value)) return wrongType(value, rule, place);
+  if (value.length === 0 || value.length > mostCurvePoints) {
+    return trouble(
+      place,
+      'out-of-range',
+      () => `expected 1 to ${String(mostCurvePoints)} points, got ${String(value.length)}`,
+    );
+  }
+  const points: CurvePoint[] = [];
+  for (const [index, item] of value.entries()) {
+    const at = itemPlace(place, index);
+    const point = readTimePoint(item, at);
+    if (point === undefined) return undefined;
+    const wrong = troubleAfter(points.at(-1), point);
+    if (wrong !== undefined) return trouble(at, 'contradiction', () => wrong);
+    points.push(point);
+  }
+  return points;
+}
+
+function readTimePoint(item: unknown, place: FieldPlace): CurvePoint | undefined {
+  if (!Array.isArray(item) || item.length !== 3) {
+    return trouble(place, 'wrong-type', () => {
+      return `expected [current in A, melting time in s, clearing time in s], got ${described(item)}`;
+    });
+  }
+  const raw: readonly unknown[] = item;
+  const currentA = readQuantity(raw[0], { holds: 'quantity', unit: 'A', above: 0, atMost: 1e6 }, place);
+  const meltS = readQuantity(raw[1], { holds: 'quantity', unit: 's', above: 0, atMost: 1e7 }, place);
+  const clearS = readQuantity(raw[2], { holds: 'quantity', unit: 's', above: 0, atMost: 1e7 }, place);
+  return currentA === undefined || meltS === undefined || clearS === undefined ? undefined : [currentA, meltS, clearS];
+}
+
+function troubleAfter(before: CurvePoint | undefined, [currentA, meltS, clearS]: CurvePoint): string | undefined {
+  if (clearS < meltS) return `it cannot clear (${String(clearS)} s) before it has melted (${String(meltS)} s)`;
+  if (before === undefined) return undefined;
+  if (currentA <= before[0]) {
+    return `the currents must rise from point to point, got ${String(currentA)} A after ${String(before[0])} A`;
+  }
+  if (meltS > before[1] || clearS > before[2]) return 'a larger current must not take longer than a smaller one';
+  return undefined;
 }
 
 function readChoice(value: unknown, of: readonly string[], place: FieldPlace): string | undefined {

@@ -16,8 +16,7 @@ function standardRatings({ job, tables }: Bench): readonly number[] {
 }
 
 /** Smaller standard ratings, the largest that the limit admits first. */
-export function smallerRating(bench: Bench, device: Part): Ladder {
-  const limitA = bench.finding.limit.value;
+export function smallerRating(bench: Bench, device: Part, limitA = bench.finding.limit.value): Ladder {
   const fitting = standardRatings(bench).filter((ratingA) => ratingA <= limitA * (1 + ROUNDING));
   const largestFirst = fitting.slice(-MOST_RATINGS);
   largestFirst.reverse();

@@ -198,10 +198,26 @@ class Tester {
   }
 }
 
-/** Rules in which a rating of a device, switch, bar or diode has a say (strings joined rush through their fuses); the others judge volts and amperes alone. */
+/**
+ * Strings joined rush through their fuses; the fuse of an inverter and of an array string; how long a bond carries a fault; and what is
+ * fitted where batteries stand, which changes no volt and no ampere.
+ */
+const ALSO_READ_RATINGS: ReadonlySet<string> = new Set([
+  'joining-surge',
+  'inverter-cable',
+  'pv-string-fuse',
+  'bond-too-small',
+  'gas-no-vent',
+  'spark-near-gas',
+  'battery-loose',
+  'spring-or-crocodile-clip',
+  'bare-live-stud',
+]);
+
+/** Rules in which a rating of a device, switch, bar or diode has a say; the others judge volts and amperes alone. */
 const READS_RATINGS: ReadonlySet<string> = new Set(
   rules
-    .filter(({ id, family }) => family === 'fuse' || family === 'rating' || id === 'joining-surge')
+    .filter(({ id, family }) => family === 'fuse' || family === 'rating' || ALSO_READ_RATINGS.has(id))
     .map(({ id }) => id),
 );
 
@@ -213,6 +229,17 @@ const READS_NO_ANSWERS: ReadonlySet<string> = new Set([
   'cold-charge',
   'charge-too-strong',
   'no-fuse-on-source',
+  'fuse-over-device-limit',
+  'wrong-metal-or-solid',
+  'bond-too-small',
+  'big-bank-needs-more',
+  'pv-volts-cold',
+  'pv-volts-hot',
+  'controller-amps',
+  'pv-cable-156',
+  'pv-string-fuse',
+  'pv-wrong-way',
+  'inverter-cable',
 ]);
 
 /** A change of less than this is not worth showing. */

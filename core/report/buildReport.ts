@@ -8,14 +8,15 @@ import type { Block, ReportDocument } from './document.ts';
 import { findingSection } from './findingSection.ts';
 import type { ReportInput } from './input.ts';
 import { partSections } from './partSections.ts';
+import { protectionSection } from './protectionSection.ts';
 import { stringsSection } from './stringsSection.ts';
 import { summarySection } from './summarySection.ts';
 
 const PAGE: Block = { kind: 'pageBreak', orientation: 'portrait' };
 
 /**
- * The whole paper of a job, in reading order: cover, summary, what was assumed, parts, operating cases, strings, findings,
- * proof of balance, test record, sources, statement. It only arranges and words what the engine answered; a case without an answer is told in
+ * The whole paper of a job, in reading order: cover, summary, what was assumed, parts, operating cases, strings, protection,
+ * findings, proof of balance, test record, sources, statement. It only arranges and words what the engine answered; a case without an answer is told in
  * words, and a case whose proof fails prints no figures.
  */
 export function buildReport(input: ReportInput): ReportDocument {
@@ -28,6 +29,7 @@ export function buildReport(input: ReportInput): ReportDocument {
     ...partSections(input, citations),
     ...caseSection(input),
     ...stringsSection(input, citations),
+    ...protectionSection(input, citations),
     ...findingSection(input, citations),
     ...proofSection(input),
     ...testSection(input, citations),

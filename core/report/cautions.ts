@@ -16,6 +16,7 @@ export type CautionPlace =
   | 'devices'
   | 'loads'
   | 'sources'
+  | 'faults'
   | 'findings'
   | 'measuring';
 
@@ -160,6 +161,16 @@ const CAUTIONS: readonly Caution[] = [
   },
   {
     place: 'devices',
+    appliesTo: withKind('fuse', 'breaker'),
+    text: 'Before a fuse or its holder is touched: loads and chargers off, main switch open, then prove both ends dead with a meter. One fed from both ends stays live with either side open.',
+  },
+  {
+    place: 'devices',
+    appliesTo: withKind('fuse', 'breaker'),
+    text: 'A fuse or breaker must interrupt the highest fault current of its place at direct current. One that cannot may burst or weld shut: never close it onto a fault to try.',
+  },
+  {
+    place: 'devices',
     appliesTo: withKind('fuse', 'breaker', 'switch'),
     text: 'Use parts marked for DC at the highest voltage of the system. A part marked for AC alone may not put out a DC arc.',
   },
@@ -189,6 +200,11 @@ const CAUTIONS: readonly Caution[] = [
     place: 'sources',
     appliesTo: withKind('charger', 'controller'),
     text: 'A wire from a charger is fed from both ends: from the charger and from the battery. Isolate both.',
+  },
+  {
+    place: 'faults',
+    appliesTo: withKind('string'),
+    text: 'These are sums, not to be tried: never make a short to test a fuse or to read its current. With every switch and fuse open the battery itself is still live.',
   },
   {
     place: 'findings',
@@ -221,6 +237,7 @@ const TITLES: Readonly<Record<CautionPlace, string>> = {
   devices: 'At fuses and switches',
   loads: 'At the loads',
   sources: 'At the sources of charge',
+  faults: 'Short circuits',
   findings: 'Reading the findings',
   measuring: 'Measuring',
 };
@@ -250,6 +267,11 @@ export function cautionsForPart(part: Part, job: CheckedJob): readonly Pick<Caut
   );
   const tools = CAUTIONS.filter(({ place, basis }) => place === 'isolating' && basis === ACID_AND_TOOLS);
   return part.kind === 'string' ? [...tools, ...own] : own;
+}
+
+/** The cautions of a place that concern the job, for a screen. */
+export function cautionTexts(place: CautionPlace, job: CheckedJob): readonly string[] {
+  return CAUTIONS.filter((caution) => caution.place === place && caution.appliesTo(job)).map(({ text }) => text);
 }
 
 /** The caution block of a place, or nothing where none of its cautions concerns this job. */

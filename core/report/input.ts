@@ -1,4 +1,5 @@
 import type { CheckReport } from '../checks/finding.ts';
+import type { ProtectionFigures } from '../checks/protectionFigures.ts';
 import type { CheckedJob } from '../job/job.ts';
 import type { OperatingPoint } from '../network/answer.ts';
 import type { StringsStudy } from '../strings/study.ts';
@@ -21,5 +22,7 @@ export interface ReportInput {
   readonly checkReport: CheckReport;
   /** Where the job has strings to speak of. */
   readonly strings?: StringsStudy | undefined;
+  /** Where the job has something that a short circuit could come from. */
+  readonly protection?: ProtectionFigures | undefined;
   readonly options: ReportOptions;
 }

@@ -7,6 +7,7 @@ import type { Citations } from './citations.ts';
 import { conductorSchedule, jointSchedule } from './conductorSchedule.ts';
 import { deviceSchedule, inlineSchedule } from './deviceSchedule.ts';
 import type { Block, TableBlock } from './document.ts';
+import { cableFaultSchedule, deviceFaultSchedule } from './faultSchedules.ts';
 import type { ReportInput } from './input.ts';
 import { demandSchedule, inverterSchedule, loadSchedule } from './loadSchedule.ts';
 import { sourceSchedules } from './sourceSchedule.ts';
@@ -25,13 +26,14 @@ export function partSections(input: ReportInput, citations: Citations): readonly
       schedules: [
         ...conductorSchedule(job, tables.conductors),
         ...ampacitySchedule(input, citations),
+        ...cableFaultSchedule(input, citations),
         ...jointSchedule(job),
       ],
     },
     {
       title: 'Protective and switching devices',
       place: 'devices',
-      schedules: [...deviceSchedule(job), ...inlineSchedule(job)],
+      schedules: [...deviceSchedule(job), ...deviceFaultSchedule(input, citations), ...inlineSchedule(job)],
     },
     {
       title: 'Loads',

@@ -114,6 +114,35 @@ export interface IecAmpacity {
   readonly grouping: readonly FactorBand[];
 }
 
+/** A printed factor k of the adiabatic short-circuit withstand, A √s/mm², for conductors of an area above `fromMm2` up to `toMm2`. */
+export interface WithstandRow {
+  readonly metal: BareMetal;
+  readonly insulation: 'thermoplastic' | 'thermosetting' | 'rubber' | 'silicone';
+  /** Conductor at the beginning and at the end of the short. */
+  readonly insulationDegC: number;
+  readonly finalDegC: number;
+  readonly fromMm2: number;
+  readonly toMm2: number;
+  readonly k: Figure;
+}
+
+/** Constants of k = c √ln((θf + z)/(θi + z)). */
+export interface WithstandConstants {
+  readonly c: Figure;
+  readonly zeroDegC: Figure;
+}
+
+export interface WithstandTables {
+  readonly rows: readonly WithstandRow[];
+  readonly constants: Readonly<Record<BareMetal, WithstandConstants>>;
+  /** Hottest end of a short for thermoplastic or soldered ends, and for large thermoplastic conductors. */
+  readonly plainFinalDegC: Figure;
+  readonly largeFinalDegC: Figure;
+  readonly largeFromMm2: Figure;
+  /** The form holds for shorts no longer than this. */
+  readonly longestS: Figure;
+}
+
 export interface ConductorTables {
   readonly metals: Readonly<Record<BareMetal, MetalConstants>>;
   /** Resistance of a twisted conductor over that of its straight wires. */
@@ -141,4 +170,5 @@ export interface ConductorTables {
   readonly defaultInsulationDegC: Readonly<Record<'us-land' | 'us-marine' | 'iso-marine' | 'iec-land', Figure>>;
   /** Temperature of an engine space for practices whose books give no figure. */
   readonly engineSpaceDegC: Figure;
+  readonly withstand: WithstandTables;
 }

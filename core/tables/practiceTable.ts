@@ -19,7 +19,33 @@ export interface UnfusedLength {
 
 export interface SmallestConductor {
   readonly size: ConductorSize;
+  /** The book asks for it below these nominal volts only; `undefined`: everywhere. */
+  readonly belowV: number | undefined;
   readonly basis: Basis;
+}
+
+/** Factor on open-circuit volts for the coldest air, where a module's own coefficient is not known (crystalline silicon). */
+export interface ColdVoltsFactor {
+  /** The factor holds down to this temperature and above the next warmer row's. */
+  readonly downToDegC: number;
+  readonly factor: Figure;
+}
+
+/** What a book asks of array circuits. Factors are on the short-circuit current of the label. */
+export interface SolarPractice {
+  /** Bright days and cold modules: what a string gives at most. */
+  readonly currentFactor: Figure;
+  /** Ampacity of array cables before correction; `undefined`: the book has no such figure. */
+  readonly cableFactor: Figure | undefined;
+  /** Reverse current that a module stands without a fuse of its own, as a multiple of its largest fuse. */
+  readonly moduleFuseFactor: Figure;
+  /** Fuses are asked for from this many strings side by side; `undefined`: the reverse current alone decides. */
+  readonly fuseFromStrings: Figure | undefined;
+  /** A string fuse is rated at least and at most so many times; `undefined`: the module's largest fuse alone. */
+  readonly fuseLowFactor: Figure;
+  readonly fuseHighFactor: Figure | undefined;
+  /** Falling temperatures. */
+  readonly coldFactors: readonly ColdVoltsFactor[];
 }
 
 export interface PracticeTable {
@@ -52,11 +78,29 @@ export interface PracticeTable {
   /** From a battery, and from any other source. */
   readonly unfusedFromBattery: UnfusedLength;
   readonly unfusedElsewhere: UnfusedLength;
+  /** From a charger, alternator, controller or converter to a device at its own end. */
+  readonly chargingSource: UnfusedLength;
+  /** Up to which nominal volts the cable of a starter motor alone may go unfused; `undefined`: the book names no such volts. */
+  readonly crankingUnfusedUpToV: Figure | undefined;
+  /** Most ring terminals on one stud. */
+  readonly ringTerminals: Figure;
+  /** Most volts lost from the battery to an AC outlet, as a fraction, the inverter between left out. */
+  readonly dropWithAc: Figure;
+  /** How far from its source a switch may stand; `undefined`: the book gives words, no distance. */
+  readonly isolatorWithinM: Figure | undefined;
+  /** Largest device over a generator as a multiple of its rated output; `undefined` where the book does not say. */
+  readonly generatorFuseFactor: Figure | undefined;
   /** Smallest conductor laid on its own, and inside a sheath. */
   readonly smallestSingle: SmallestConductor | undefined;
   readonly smallestSheathed: SmallestConductor | undefined;
   /** Smallest conductor that may be paralleled with others of its pole. */
   readonly smallestParalleled: SmallestConductor | undefined;
+  /** Clauses that give words rather than figures, by the id of the rule that rests on them. */
+  readonly clauses: ReadonlyMap<string, Basis>;
   /** The book asks for stranded copper. */
   readonly strandedCopperOnly: Basis | undefined;
+  /** Smallest bond, and (where the book says so) one no smaller than the lead of the battery whose pole it bonds. */
+  readonly smallestBond: SmallestConductor | undefined;
+  readonly bondAtLeastLead: Basis | undefined;
+  readonly solar: SolarPractice;
 }

@@ -33,6 +33,9 @@ const own: Readonly<Record<Exclude<UnitName, 'm'>, FieldUnit>> = {
   '1/K': { word: '%/degC', sign: '%/°C', worth: 0.01 },
   'W/m2': plain('W/m2', 'W/m²'),
   'kWh/m2/day': plain('kWh/m2/day', 'kWh/m² a day'),
+  cm2: plain('cm2', 'cm²'),
+  'm3/h': plain('m3/h', 'm³/h'),
+  A2s: plain('A2s', 'A²s'),
 };
 
 /** Resistances of wiring are spoken of in milliohms. */

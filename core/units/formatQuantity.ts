@@ -65,6 +65,8 @@ const signs: ReadonlyMap<string, string> = new Map(
     day: 'd',
     year: 'years',
     mm2: 'mm²',
+    cm2: 'cm²',
+    'm3/h': 'm³/h',
     A2s: 'A²s',
     degC: '°C',
     degF: '°F',
@@ -90,10 +92,20 @@ export interface QuantityText {
 export function formatQuantity({ value, unit, digits = 4, prefix = true }: QuantityText): string {
   if (unit === '1') return `${numberText({ value: value * 100, digits })} %`;
   if (unit === 'degC' || unit === 'degF') return `${fixedText({ value, decimals: 1 })} ${signs.get(unit) ?? unit}`;
+  if (unit === 'A2s' && Math.abs(value) >= GROUPED_FROM && Number.isFinite(value))
+    return `${grouped(value, digits)} A²s`;
   if (unit === 'deg') return `${fixedText({ value, decimals: 1 })}°`;
   const step = prefix ? stepFor({ value, unit, digits }) : undefined;
-  if (step === undefined) return `${numberText({ value, digits })} ${signs.get(unit) ?? unit}`;
+  if (step === undefined) return `${numberText({ value, digits })} ${signs.get(unit) ?? unit}`.trimEnd();
   return `${numberText({ value: value / step.by, digits })} ${step.sign}`;
+}
+
+/** Melting heats run into millions and have no prefix that everybody reads alike: thousands stand apart instead. */
+const GROUPED_FROM = 10_000;
+
+function grouped(value: number, digits: number): string {
+  const whole = fixedText({ value: Number(value.toPrecision(digits)), decimals: 0 });
+  return whole.replaceAll(/\B(?=(?:\d{3})+$)/g, '\u00a0');
 }
 
 /** The step is chosen by the rounded figure, so that 999.96 W to 4 digits is `1 kW` and not `1000 W`. */

@@ -93,6 +93,7 @@ function plain(text: string): string {
     .replace(/[”“″]/g, '"')
     .replace(/⁄/g, '/')
     .replace(/(?<=[A-Za-z])²/g, '2')
+    .replace(/(?<=[A-Za-z])³/g, '3')
     .replace(/[¼½¾⅛⅜⅝⅞]/g, (sign) => vulgarFractions.get(sign) ?? sign)
     .replace(/℃|°\s*C/g, 'degC')
     .replace(/℉|°\s*F/g, 'degF')
@@ -101,7 +102,9 @@ function plain(text: string): string {
 }
 
 const amountPattern = /(?:(\d+)\s+)?(\d+)\/(\d+)|(?:\d+(?:\.\d*)?|\.\d+)(?:[eE][+-]?\d+)?/y;
-const wordPattern = /''|['"°]|[%A-Za-z]*(?:\/(?:m\^?2(?!\d)|[A-Za-z]+))*/y;
+// Powers stand in a word only where no figure of a next term is meant: `10ft2in` is a length.
+const wordPattern =
+  /''|['"°]|(?:[cm]?m|in)\^?2(?=\s*(?:$|[+-]))|A\^?2\.?s|(?:m|ft)\^?3\/[a-z]+|[%A-Za-z]*(?:\/(?:m\^?2(?!\d)|[A-Za-z]+))*/y;
 
 /** The signed terms of a text, or `undefined` where it is not a row of terms. */
 function termsOf(text: string): readonly Term[] | undefined {

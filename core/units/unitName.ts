@@ -19,7 +19,10 @@ export type UnitName =
   | '1'
   | '1/K'
   | 'W/m2'
-  | 'kWh/m2/day';
+  | 'kWh/m2/day'
+  | 'cm2'
+  | 'm3/h'
+  | 'A2s';
 
 interface UnitKind {
   /** What the quantity is called in a sentence, with its article. */
@@ -49,6 +52,9 @@ export const unitKinds: Readonly<Record<UnitName, UnitKind>> = {
   '1/K': { noun: 'a fraction per degree', example: '-0.0029 or -0.29 %/degC', library: undefined },
   'W/m2': { noun: 'an irradiance', example: '850 W/m2', library: 'W/m^2' },
   'kWh/m2/day': { noun: 'a daily irradiation', example: '3.4 kWh/m2/day', library: undefined },
+  cm2: { noun: 'an area', example: '150 cm2 or 20 in2', library: undefined },
+  'm3/h': { noun: 'a flow of air', example: '12 m3/h or 7 cfm', library: undefined },
+  A2s: { noun: 'a let-through I²t', example: '20000 A2s', library: undefined },
 };
 
 /** What a quantity of this unit is, in words: `a length such as 3.2 m or 10 ft`. */

@@ -98,6 +98,31 @@ const closedLists: Readonly<Partial<Record<UnitName, ReadonlyMap<string, number>
     ['Wh/m2/day', 0.001],
     ['Wh/m2', 0.001],
   ]),
+  cm2: new Map([
+    ['cm2', 1],
+    ['cm^2', 1],
+    ['mm2', 0.01],
+    ['mm^2', 0.01],
+    ['m2', 1e4],
+    ['m^2', 1e4],
+    ['in2', 6.4516],
+    ['in^2', 6.4516],
+  ]),
+  'm3/h': new Map([
+    ['m3/h', 1],
+    ['m^3/h', 1],
+    ['l/s', 3.6],
+    ['L/s', 3.6],
+    // A cubic foot is 0.3048³ m³ exactly, an hour 60 minutes.
+    ['cfm', 60 * 0.3048 ** 3],
+    ['ft3/min', 60 * 0.3048 ** 3],
+  ]),
+  // No prefix: kA²s is written for thousands of A²s by some and for the square of kA by others.
+  A2s: new Map([
+    ['A2s', 1],
+    ['A^2s', 1],
+    ['A2.s', 1],
+  ]),
 };
 
 const remembered = new Map<string, number>();

@@ -17,6 +17,7 @@ import iec60228Csv from './iec60228-resistance.csv?raw';
 import usResistanceCsv from './nec-ch9-table8.csv?raw';
 import saeCsv from './sae-areas.csv?raw';
 import tinnedCsv from './tinned-conductivity.csv?raw';
+import { withstand } from './withstand.ts';
 
 const metricResistance: readonly MetricResistanceRow[] = readRows('iec60228-resistance.csv', iec60228Csv).map(
   (row) => ({
@@ -79,6 +80,7 @@ export const conductors: ConductorTables = {
     'iec-land': constant('iec-land-insulation'),
   },
   engineSpaceDegC: constant('engine-space'),
+  withstand,
 };
 
 function saeAreas(): ReadonlyMap<number, Figure> {

@@ -1,11 +1,14 @@
 /** The device tables, parsed once from the rows beside this file. */
-import type { DeviceTables, Figure, RatingSeries } from '../../core/api.ts';
+import type { BandRow, DeviceTables, Figure, RatingSeries } from '../../core/api.ts';
 import { Defect } from '../../core/api.ts';
 import { readRows } from '../chemistry/rows.ts';
 import { basisOf, clauseFigure, figureOf } from '../conductors/figures.ts';
+import bandsCsv from './bands.csv?raw';
 import breakerCsv from './breaker-interrupt.csv?raw';
 import largeBankCsv from './large-bank.csv?raw';
+import pulsesCsv from './pulses.csv?raw';
 import ratingsCsv from './ratings.csv?raw';
+import selectivityCsv from './selectivity.csv?raw';
 import interruptCsv from './typical-interrupt.csv?raw';
 
 const STATUSES = ['published', 'common-practice', 'from-memory'] as const;
@@ -27,6 +30,38 @@ function ratingSeries(): ReadonlyMap<string, RatingSeries> {
     });
   }
   return series;
+}
+
+/** Rows by type in lower case; an empty limit of the ratings is no limit. */
+function bandRows(): ReadonlyMap<string, readonly BandRow[]> {
+  const byType = new Map<string, BandRow[]>();
+  for (const row of readRows('bands.csv', bandsCsv)) {
+    const type = row.text('type');
+    const rows = byType.get(type.toLowerCase()) ?? [];
+    rows.push({
+      type,
+      fromA: row.optionalNumber('fromA') ?? 0,
+      toA: row.optionalNumber('toA') ?? Number.POSITIVE_INFINITY,
+      per: row.oneOf('per', ['rating', 'amperes']),
+      at: row.number('at'),
+      holdsS: row.optionalNumber('holdsS'),
+      opensS: row.optionalNumber('opensS'),
+      basis: basisOf(row),
+      note: row.text('note'),
+    });
+    byType.set(type.toLowerCase(), rows);
+  }
+  return byType;
+}
+
+const ratios: ReadonlyMap<string, Figure> = new Map(
+  readRows('selectivity.csv', selectivityCsv).map((row) => [row.text('name'), clauseFigure(row, 'value')]),
+);
+
+function ratio(name: string): Figure {
+  const figure = ratios.get(name);
+  if (figure === undefined) throw new Defect(`selectivity.csv has ${name}`);
+  return figure;
 }
 
 const largeBank: ReadonlyMap<string, Figure> = new Map(
@@ -55,9 +90,17 @@ export const devices: DeviceTables = {
     mainA: clauseFigure(row, 'mainA'),
     branchA: clauseFigure(row, 'branchA'),
   })),
+  bands: bandRows(),
+  pulses: readRows('pulses.csv', pulsesCsv).map((row) => ({
+    pulses: row.number('pulses'),
+    share: figureOf(row, 'share'),
+  })),
+  selectivity: { sameGg: ratio('sameGg'), sameGgStep: ratio('sameGgStep'), others: ratio('others') },
   largeBank: {
     crankingA: largeBankFigure('crankingA'),
     capacityAh: largeBankFigure('capacityAh'),
     mainA: largeBankFigure('mainA'),
+    fromShortA: largeBankFigure('fromShortA'),
+    mainV: largeBankFigure('mainV'),
   },
 };

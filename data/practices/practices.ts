@@ -1,8 +1,19 @@
 /** What the rule books ask for, by practice, parsed once from the rows beside this file. */
-import type { Basis, Figure, Practice, PracticeTable, SmallestConductor, UnfusedLength } from '../../core/api.ts';
+import type {
+  Basis,
+  ColdVoltsFactor,
+  Figure,
+  Practice,
+  PracticeTable,
+  SmallestConductor,
+  SolarPractice,
+  UnfusedLength,
+} from '../../core/api.ts';
 import { Defect } from '../../core/api.ts';
 import { readRows } from '../chemistry/rows.ts';
 import { basisOf, clauseFigure, sizeOf } from '../conductors/figures.ts';
+import clausesCsv from './clauses.csv?raw';
+import coldVoltsCsv from './cold-volts.csv?raw';
 import figuresCsv from './figures.csv?raw';
 import sizesCsv from './sizes.csv?raw';
 import capsCsv from './small-wire-caps.csv?raw';
@@ -19,9 +30,15 @@ const figures: ReadonlyMap<string, Figure> = new Map(
 const sizes: ReadonlyMap<string, SmallestConductor> = new Map(
   readRows('sizes.csv', sizesCsv).map((row) => [
     `${row.oneOf('practice', PRACTICES)} ${row.text('figure')}`,
-    { size: sizeOf(row), basis: basisOf(row, row.text('clause')) },
+    { size: sizeOf(row), belowV: row.optionalNumber('belowV'), basis: basisOf(row, row.text('clause')) },
   ]),
 );
+
+/** Of one practice, by the id of the rule. */
+function clausesOf(practice: Practice): ReadonlyMap<string, Basis> {
+  const rows = readRows('clauses.csv', clausesCsv).filter((row) => row.oneOf('practice', PRACTICES) === practice);
+  return new Map(rows.map((row) => [row.text('rule'), basisOf(row, row.text('clause'))]));
+}
 
 function optional(practice: Practice, name: string): Figure | undefined {
   return figures.get(`${practice} ${name}`);
@@ -61,8 +78,34 @@ function caps(practice: Practice, metal: 'copper' | 'aluminium'): Caps {
   return basis === undefined ? undefined : { capsA, basis };
 }
 
-function unfused(practice: Practice, from: 'unfusedFromBattery' | 'unfusedElsewhere', words: string): UnfusedLength {
+type From = 'unfusedFromBattery' | 'unfusedElsewhere' | 'chargingSource';
+
+function unfused(practice: Practice, from: From, words: string): UnfusedLength {
   return { openM: optional(practice, `${from}.openM`), sheathedM: optional(practice, `${from}.sheathedM`), words };
+}
+
+/** Falling temperatures, each row reaching down from the one above it. */
+const coldFactors: readonly ColdVoltsFactor[] = readRows('cold-volts.csv', coldVoltsCsv).map((row) => ({
+  downToDegC: row.number('downToDegC'),
+  factor: clauseFigure(row, 'factor'),
+}));
+
+function solar(practice: Practice): SolarPractice {
+  return {
+    currentFactor: required(practice, 'solar.currentFactor'),
+    cableFactor: optional(practice, 'solar.cableFactor'),
+    moduleFuseFactor: required(practice, 'solar.moduleFuseFactor'),
+    fuseFromStrings: optional(practice, 'solar.fuseFromStrings'),
+    fuseLowFactor: required(practice, 'solar.fuseLowFactor'),
+    fuseHighFactor: optional(practice, 'solar.fuseHighFactor'),
+    coldFactors,
+  };
+}
+
+/** A book that says nothing else of charging sources treats them as any other. */
+function chargingSource(practice: Practice, words: string): UnfusedLength {
+  const own = unfused(practice, 'chargingSource', words);
+  return own.openM === undefined ? unfused(practice, 'unfusedElsewhere', words) : own;
 }
 
 interface Words {
@@ -88,10 +131,20 @@ function practiceTable(practice: Practice, words: Words): PracticeTable {
     continuousFactor: required(practice, 'continuousFactor'),
     unfusedFromBattery: unfused(practice, 'unfusedFromBattery', words.fromBattery),
     unfusedElsewhere: unfused(practice, 'unfusedElsewhere', words.elsewhere),
+    chargingSource: chargingSource(practice, words.elsewhere),
+    crankingUnfusedUpToV: optional(practice, 'crankingUnfusedUpToV'),
+    ringTerminals: required(practice, 'ringTerminals'),
+    dropWithAc: required(practice, 'dropWithAc'),
+    isolatorWithinM: optional(practice, 'isolatorWithinM'),
+    generatorFuseFactor: optional(practice, 'generatorFuseFactor'),
+    clauses: clausesOf(practice),
     smallestSingle: sizes.get(`${practice} smallestSingle`),
     smallestSheathed: sizes.get(`${practice} smallestSheathed`),
     smallestParalleled: sizes.get(`${practice} smallestParalleled`),
     strandedCopperOnly: optional(practice, 'strandedCopperOnly')?.basis,
+    smallestBond: sizes.get(`${practice} smallestBond`),
+    bondAtLeastLead: optional(practice, 'bondAtLeastLead')?.basis,
+    solar: solar(practice),
   };
 }
 

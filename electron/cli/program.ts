@@ -1,6 +1,8 @@
 /** The words of the command line. */
 import { Command, type Option } from 'commander';
 import { check, report, solve } from './commands.ts';
+import { faultLevel } from './faultLevel.ts';
+import { type FaultLevelOptions, faultLevelOptions } from './faultLevelOptions.ts';
 import type { Io } from './io.ts';
 import { lists } from './lists.ts';
 import { newJob } from './newJob.ts';
@@ -34,7 +36,8 @@ export interface ProgramSinks {
   readonly answered: (status: number) => void;
 }
 
-type JobCommand = (path: string, options: StringsOptions, io: Io) => Promise<number>;
+type JobOptions = StringsOptions & FaultLevelOptions;
+type JobCommand = (path: string, options: JobOptions, io: Io) => Promise<number>;
 
 /** The program as commander has it; it throws instead of ending the process. */
 export function buildProgram(io: Io, { printed, complained, answered }: ProgramSinks): Command {
@@ -58,13 +61,19 @@ export function buildProgram(io: Io, { printed, complained, answered }: ProgramS
       .addOption(outOption)
       .addOption(quietOption);
     for (const option of own) command.addOption(option);
-    command.action(async (path: string, options: StringsOptions) => {
+    command.action(async (path: string, options: JobOptions) => {
       answered(await run(path, options, io));
     });
   };
   onJob('solve', 'volts, amps and watts in every operating case, with the sums that prove them', solve);
   onJob('check', 'findings by the published tables of a practice, worst first', check);
   onJob('strings', 'how parallel strings share, what flows at rest, joints, layouts, losses', strings, stringsOptions);
+  onJob(
+    'faultlevel',
+    'what a short circuit sends at every junction and through every fuse and breaker',
+    faultLevel,
+    faultLevelOptions,
+  );
   onJob('report', 'the paper of a job as a PDF (--out file.pdf), or its document tree (--json)', report);
   onJob(
     'lists',

@@ -6,6 +6,7 @@ import {
   isWorthStudying,
   type OperatingCase,
   type OperatingPoint,
+  protectionFigures,
   type ReportDocument,
   type ReportOptions,
   runChecks,
@@ -37,7 +38,8 @@ export function makeReport({ job, cases, model, options }: ReportRequest): MadeR
   const strings = isWorthStudying(job)
     ? studyStrings({ job, tables, cases, models: bothModels, draws: drawsOfReport, seed: 1 })
     : undefined;
-  return { document: buildReport({ job, tables, points, checkReport, strings, options }), points };
+  const protection = protectionFigures({ job, tables, cases, points });
+  return { document: buildReport({ job, tables, points, checkReport, strings, protection, options }), points };
 }
 
 /** The bytes of the PDF. Its writer takes longer to load than all the rest, so it is loaded when it is needed. */

@@ -2,25 +2,11 @@
 import Box from '@mui/material/Box';
 import type { ReactElement } from 'react';
 import { formatQuantity, type Joining } from '../../core/api.ts';
-import { type Mark, markText, type Plot, PlotFrame, pathOf, roundMarks } from './lineFrame.tsx';
+import { type Mark, markText, type Plot, PlotFrame, pathOf, roundMarks, TIME_MARKS } from './lineFrame.tsx';
 
 const WIDTH = 400;
 const HEIGHT = 190;
 const PLOT: Plot = { left: 44, right: WIDTH - 12, top: 22, bottom: HEIGHT - 30 };
-
-/** Marks of time that people count in. */
-const TIMES: readonly (readonly [seconds: number, text: string])[] = [
-  [0.001, '1 ms'],
-  [0.01, '10 ms'],
-  [0.1, '0.1 s'],
-  [1, '1 s'],
-  [10, '10 s'],
-  [60, '1 min'],
-  [600, '10 min'],
-  [3600, '1 h'],
-  [36_000, '10 h'],
-  [360_000, '100 h'],
-];
 
 export function SettlingCurve({
   joining,
@@ -38,7 +24,7 @@ export function SettlingCurve({
   const x = (seconds: number): number =>
     PLOT.left + (Math.log(seconds / first.seconds) / Math.log(last.seconds / first.seconds)) * (PLOT.right - PLOT.left);
   const y = (currentA: number): number => PLOT.bottom - (currentA / mostA) * (PLOT.bottom - PLOT.top);
-  const across = TIMES.filter(([seconds]) => seconds >= first.seconds && seconds <= last.seconds).map(
+  const across = TIME_MARKS.filter(([seconds]) => seconds >= first.seconds && seconds <= last.seconds).map(
     ([seconds, text]): Mark => ({ at: x(seconds), text }),
   );
   const up = roundMarks(0, mostA).map((value): Mark => ({ at: y(value), text: markText(value) }));

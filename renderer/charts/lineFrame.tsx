@@ -28,6 +28,20 @@ export function roundMarks(from: number, to: number): readonly number[] {
   return Array.from({ length: last - first + 1 }, (_, index) => (first + index) * step);
 }
 
+/** Marks of time that people count in. */
+export const TIME_MARKS: readonly (readonly [seconds: number, text: string])[] = [
+  [0.001, '1 ms'],
+  [0.01, '10 ms'],
+  [0.1, '0.1 s'],
+  [1, '1 s'],
+  [10, '10 s'],
+  [60, '1 min'],
+  [600, '10 min'],
+  [3600, '1 h'],
+  [36_000, '10 h'],
+  [360_000, '100 h'],
+];
+
 export function markText(value: number): string {
   return numberText({ value, digits: 4 });
 }

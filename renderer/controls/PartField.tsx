@@ -25,6 +25,7 @@ import { usePreferences } from '../state/preferences.ts';
 import { LinkButton } from './AskRow.tsx';
 import { ChoiceField } from './ChoiceField.tsx';
 import { CountField } from './CountField.tsx';
+import { CurveField } from './CurveField.tsx';
 import { FlagField } from './FlagField.tsx';
 import { figuresOf } from './figuresOf.ts';
 import { LengthField } from './LengthField.tsx';
@@ -54,6 +55,7 @@ const common: Readonly<Record<string, Field>> = {
   label: { rule: { holds: 'text', longest: 200 } },
   note: { rule: { holds: 'text', longest: 10_000 } },
   locationTag: { rule: { holds: 'text', longest: 200 } },
+  enclosure: { rule: { holds: 'text', longest: 200 } },
 };
 
 export function PartField(props: PartFieldProps): ReactElement | null {
@@ -151,6 +153,8 @@ function Control(props: ControlProps): ReactElement | null {
     }
     case 'efficiency':
       return <PointsField {...common} given={given} onCommit={commit} />;
+    case 'curve':
+      return <CurveField {...common} given={given} onCommit={commit} />;
     case 'text':
       return (
         <TextField
@@ -177,7 +181,7 @@ function editOf({ partId: part, field, inCase, drawn }: ControlProps, value: unk
 }
 
 function hasOrigin({ rule }: Field): boolean {
-  return ['quantity', 'count', 'size', 'efficiency'].includes(rule.holds);
+  return ['quantity', 'count', 'size', 'efficiency', 'curve'].includes(rule.holds);
 }
 
 /** Wiring is spoken of in milliohms; a share that may exceed 1 is a factor. */

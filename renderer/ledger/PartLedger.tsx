@@ -44,6 +44,7 @@ export function PartLedger({ part }: { readonly part: Part }): ReactElement {
         <PartField partId={part.id} field="label" label="Label" />
         <KindChoice part={part} />
         <PartField partId={part.id} field="locationTag" />
+        <PartField partId={part.id} field="enclosure" />
         <PartField partId={part.id} field="note" label="Note" />
       </Section>
     </article>

@@ -6,7 +6,9 @@ import {
   caseById,
   checkJob,
   isWorthStudying,
+  type OperatingCase,
   type OperatingPoint,
+  protectionFigures,
   studyStrings,
 } from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
@@ -20,8 +22,17 @@ function answer({ ask, draft, points, report, options }: ReportAsk): ReportReply
   try {
     const read = checkJob(draft);
     if (!read.ok) return { ok: false, ask, message: read.issues.map(({ message }) => message).join(' ') };
-    const strings = stringsOf(read.value, points);
-    const document = buildReport({ job: read.value, tables, points, checkReport: report, strings, options });
+    const job = read.value;
+    const cases = casesOf(job, points);
+    const document = buildReport({
+      job,
+      tables,
+      points,
+      checkReport: report,
+      strings: stringsOf(job, cases),
+      protection: protectionFigures({ job, tables, cases, points }),
+      options,
+    });
     return { ok: true, ask, document };
   } catch (error) {
     return { ok: false, ask, message: error instanceof Error ? error.message : String(error) };
@@ -31,8 +42,11 @@ function answer({ ask, draft, points, report, options }: ReportAsk): ReportReply
 /** Enough draws for percentiles on paper. */
 const drawsOfReport = 400;
 
-function stringsOf(job: CheckedJob, points: readonly OperatingPoint[]) {
+function casesOf(job: CheckedJob, points: readonly OperatingPoint[]): readonly OperatingCase[] {
+  return [...new Set(points.map((point) => point.case))].flatMap((id) => caseById(job, id) ?? []);
+}
+
+function stringsOf(job: CheckedJob, cases: readonly OperatingCase[]) {
   if (!isWorthStudying(job)) return undefined;
-  const cases = [...new Set(points.map((point) => point.case))].flatMap((id) => caseById(job, id) ?? []);
   return studyStrings({ job, tables, cases, models: ['slow', 'fast'], draws: drawsOfReport, seed: 1 });
 }

@@ -1,9 +1,10 @@
 /** Solves every operating case of a job and runs the checks, off the screen's thread. */
 /// <reference lib="webworker" />
 import type { CheckedJob, Draft, OperatingCase, OperatingPoint } from '../../core/api.ts';
-import { caseById, checkJob, operatingPoint, runChecks } from '../../core/api.ts';
+import { checkJob, operatingPoint, runChecks } from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
 import { starters } from '../../data/starters.ts';
+import { casesOf } from './cases.ts';
 import { SameParts } from './sameParts.ts';
 import type { SolveAsk, SolveReply } from './solveMessages.ts';
 
@@ -43,12 +44,6 @@ function answer({ generation, draft }: SolveAsk): SolveReply {
   } catch (error) {
     return { ok: false, generation, message: error instanceof Error ? error.message : String(error) };
   }
-}
-
-/** The job's own cases, and the one that every job has. */
-function casesOf(job: CheckedJob): readonly OperatingCase[] {
-  const rest = caseById(job, 'at-rest');
-  return rest === undefined || job.cases.some(({ id }) => id === rest.id) ? job.cases : [...job.cases, rest];
 }
 
 /** A start by the battery's first second, all else over minutes; as the command line does. */

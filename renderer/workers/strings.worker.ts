@@ -7,7 +7,6 @@ import {
   bankChanges,
   banksOf,
   caseById,
-  checkJob,
   driftOf,
   fromReadings,
   joiningOf,
@@ -22,56 +21,25 @@ import {
   withoutPairs,
 } from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
-import { SameParts } from './sameParts.ts';
-import type {
-  BankNow,
-  InCase,
-  LayoutsAnswer,
-  StringsAsk,
-  StringsReply,
-  Studies,
-  StudyName,
-  TriedChange,
-} from './stringsMessages.ts';
+import { casesOf } from './cases.ts';
+import { type Asked, serveStudies } from './serveStudies.ts';
+import type { BankNow, InCase, LayoutsAnswer, Studies, TriedChange } from './stringsMessages.ts';
+import type { AnswerOf, QuestionOf } from './studyMessages.ts';
 
-const sameParts = new SameParts();
-
-self.addEventListener('message', ({ data }: MessageEvent<StringsAsk>) => {
-  reply(answered(data));
-});
-
-function reply(said: StringsReply): void {
-  self.postMessage(said);
-}
-
-function answered({ ask, draft, question }: StringsAsk): StringsReply {
-  try {
-    const kept = sameParts.in(draft);
-    const read = checkJob(kept);
-    if (!read.ok) return { kind: 'failed', ask, message: read.issues.map(({ message }) => message).join(' ') };
-    const study = new Study(ask, kept, read.value);
-    return { kind: 'answer', ask, answer: study.answer(question) };
-  } catch (error) {
-    return { kind: 'failed', ask, message: error instanceof Error ? error.message : String(error) };
-  }
-}
-
-/** No more than this often a word about progress, ms: each is painted. */
-const BETWEEN_WORDS_MS = 60;
+serveStudies<Studies>((question, asked) => new Study(asked).answer(question));
 
 class Study {
-  private readonly ask: number;
   private readonly draft: Draft;
   private readonly job: CheckedJob;
-  private said = 0;
+  private readonly progress: Asked['progress'];
 
-  constructor(ask: number, draft: Draft, job: CheckedJob) {
-    this.ask = ask;
+  constructor({ draft, job, progress }: Asked) {
     this.draft = draft;
     this.job = job;
+    this.progress = progress;
   }
 
-  answer(question: StringsAsk['question']): Studies[StudyName]['answers'] {
+  answer(question: QuestionOf<Studies>): AnswerOf<Studies> {
     const { job } = this;
     switch (question.name) {
       case 'now':
@@ -135,22 +103,9 @@ class Study {
     if (operatingCase === undefined) throw new Error(`the job has no case ${caseId}`);
     return { job: this.job, tables, operatingCase, model };
   }
-
-  private readonly progress = (done: number, of: number): void => {
-    const now = performance.now();
-    if (now - this.said < BETWEEN_WORDS_MS) return;
-    this.said = now;
-    reply({ kind: 'progress', ask: this.ask, done, of });
-  };
 }
 
 const MODELS: readonly BatteryModel[] = ['slow', 'fast'];
-
-/** The job's own cases, and the one that every job has. */
-function casesOf(job: CheckedJob): readonly OperatingCase[] {
-  const rest = caseById(job, 'at-rest');
-  return rest === undefined || job.cases.some(({ id }) => id === rest.id) ? job.cases : [...job.cases, rest];
-}
 
 function solved(request: {
   readonly job: CheckedJob;

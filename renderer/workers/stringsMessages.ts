@@ -1,4 +1,4 @@
-/** What the page and a worker of the stage Strings say to each other: one question at a time, each about one study of the bank. */
+/** What can be asked of a worker of the stage Strings, each about one study of the bank. */
 import type {
   AtRest,
   BandStudy,
@@ -68,19 +68,3 @@ export interface Studies {
   readonly drift: { readonly asks: DriftRequest; readonly answers: DriftStudy };
 }
 export type StudyName = keyof Studies;
-
-/** A question of one name, told apart by it. */
-export type StudyQuestion = {
-  readonly [Name in StudyName]: { readonly name: Name; readonly asks: Studies[Name]['asks'] };
-}[StudyName];
-
-export interface StringsAsk {
-  readonly ask: number;
-  readonly draft: Draft;
-  readonly question: StudyQuestion;
-}
-
-export type StringsReply =
-  | { readonly kind: 'progress'; readonly ask: number; readonly done: number; readonly of: number }
-  | { readonly kind: 'answer'; readonly ask: number; readonly answer: Studies[StudyName]['answers'] }
-  | { readonly kind: 'failed'; readonly ask: number; readonly message: string };

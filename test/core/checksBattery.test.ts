@@ -71,7 +71,7 @@ describe('string-discharge-high', () => {
 });
 
 describe('string-charge-high', () => {
-  test('current into a string counts, current out of it does not', () => {
+  test('current into a string counts, exactly its limit passes; current out of it does not count', () => {
     const parts = [battery('B1', { maxChargeA: 40 }), charger({ outputA: 45 })];
     expect(found(check({ parts }), 'string-charge-high')[0]).toMatchObject({
       severity: 'fix',
@@ -99,7 +99,7 @@ describe('string-charge-high', () => {
 });
 
 describe('charge-too-strong', () => {
-  test('the limits of all chargers add up, shared by capacity', () => {
+  test('the limits of all chargers add up, shared by capacity; exactly what the strings may take passes', () => {
     const strings = [
       battery('B1', { capacityAh: 100, maxChargeA: 30 }),
       battery('B2', { capacityAh: 200, maxChargeA: 60 }),
@@ -163,7 +163,7 @@ describe('charger-volts-off', () => {
     check({ parts: [battery('B1', fields), charger({ setpointV })], ...more });
   const agm = { chemistry: 'agm', blockNominalV: 12, emfV: 12.6 };
 
-  test('the window of four iron phosphate cells is 13.4 to 14.6 V, its ends included', () => {
+  test('the window of four iron phosphate cells is 13.4 to 14.6 V, exactly its ends included', () => {
     expect(passes(set(13.4), 'charger-volts-off')).toBe(1);
     expect(passes(set(14.6), 'charger-volts-off')).toBe(1);
     expect(found(set(14.7), 'charger-volts-off')[0]).toMatchObject({ severity: 'fix', parts: ['C1', 'B1'] });

@@ -276,7 +276,7 @@ describe('small-wire-cap', () => {
     ['14 AWG', 15],
     ['12 AWG', 20],
     ['10 AWG', 30],
-  ])('copper %s may have %d A and no more', (size, capA) => {
+  ])('copper %s may have exactly %d A and no more', (size, capA) => {
     expect(passes(capped(size, capA), 'small-wire-cap')).toBe(1);
     expect(found(capped(size, capA + 1), 'small-wire-cap')[0]).toMatchObject({
       severity: 'fix',

@@ -16,7 +16,7 @@ describe('too-many-strings', () => {
   const many = (count: number, settings: Record<string, unknown> = {}) =>
     check({ parts: Array.from({ length: count }, (_, k) => lead(`B${k + 1}`)), settings });
 
-  test('four pass, five are worth a look, and the setting is the job’s own', () => {
+  test('exactly four pass, five are worth a look, and the setting is the job’s own', () => {
     expect(passes(many(4), 'too-many-strings')).toBe(1);
     const [finding] = found(many(5), 'too-many-strings');
     expect(finding).toMatchObject({ severity: 'look', measured: { value: 5 }, limit: { value: 4 } });
@@ -57,7 +57,7 @@ describe('parallel-mix', () => {
     expect(found(cells, 'parallel-mix')[0]!.message).toContain('(4 cells in series) and B of 16 V (5 cells)');
   });
 
-  test('ages a year apart pass, further apart are worth a look, and the sources are said to disagree', () => {
+  test('ages exactly a year apart pass, further apart are worth a look, and the sources are said to disagree', () => {
     expect(passes(beside({ ageYears: 2 }, { ageYears: 3 }), 'parallel-mix')).toBe(1);
     const [finding] = found(beside({ ageYears: 2 }, { ageYears: 3.5 }), 'parallel-mix');
     expect(finding).toMatchObject({ severity: 'look', measured: { value: 1.5, unit: 'year' } });
@@ -82,7 +82,7 @@ describe('series-mismatch', () => {
     expect(passes(check({ parts: [lead('A'), lead('B', { capacityAh: 50 })] }), 'series-mismatch')).toBe(0);
   });
 
-  test('capacities a tenth apart are worth a look, further apart to be put right', () => {
+  test('capacities exactly a tenth apart are worth a look, further apart to be put right', () => {
     expect(found(series({}, { capacityAh: 90 }), 'series-mismatch')[0]!.severity).toBe('look');
     const [finding] = found(series({}, { capacityAh: 89 }), 'series-mismatch');
     expect(finding!.severity).toBe('fix');
@@ -116,7 +116,7 @@ describe('midpoint-off', () => {
   const halves = (lower: number, upper: number) =>
     check({ parts: [string24], readings: [reading('r1', 'MID', 'N', lower), reading('r2', 'P', 'MID', upper)] });
 
-  test('half a per cent of the total off centre passes, more is looked at, beyond one per cent it is acted on', () => {
+  test('exactly half a per cent of the total off centre passes, more is looked at, beyond one per cent it is acted on', () => {
     // 28 V: 140 mV and 280 mV off centre, so halves 280 mV and 560 mV apart.
     expect(passes(halves(13.86, 14.14), 'midpoint-off')).toBe(1);
     expect(found(halves(13.85, 14.15), 'midpoint-off')[0]!.severity).toBe('look');

@@ -167,7 +167,7 @@ describe('shunt-small', () => {
       ],
     });
 
-  test('two thirds of the rating for long, the rating at most', () => {
+  test('exactly two thirds of the rating for long pass, and exactly the rating is a look, more a thing to fix', () => {
     expect(passes(shunted(200), 'shunt-small')).toBe(1);
     expect(found(shunted(201), 'shunt-small')[0]).toMatchObject({ severity: 'look', basisStatus: 'common-practice' });
     expect(found(shunted(300), 'shunt-small')[0]!.severity).toBe('look');

@@ -281,7 +281,7 @@ describe('link-overloaded', () => {
     check({ parts: [lead('A', { blocksInSeries: 2, emfV: 25, linkSize: '16 mm2', ...fields }), load(currentA)] });
   const ampacityA = found(linked(500), 'link-overloaded')[0]!.limit.value;
 
-  test('at the ampacity of its link a string passes, a little above it is to be put right, far above it stops', () => {
+  test('at exactly the ampacity of its link a string passes, a little above it is to be put right, far above it stops', () => {
     expect(passes(linked(ampacityA), 'link-overloaded')).toBe(1);
     expect(found(linked(1.1 * ampacityA), 'link-overloaded')[0]!.severity).toBe('fix');
     const [finding] = found(linked(1.3 * ampacityA), 'link-overloaded');

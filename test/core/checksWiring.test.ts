@@ -32,7 +32,7 @@ describe('dead-short', () => {
     expect(found(check({ parts, cases }), 'dead-short')[0]).toMatchObject({ severity: 'stop', case: 'oops' });
   });
 
-  test('a fifth of the short-circuit current is the line: at it a leak to be fixed, above it a stop', () => {
+  test('a fifth of the short-circuit current is the line: exactly at it a leak to be fixed, above it a stop', () => {
     // R of the path = 4 R of the string gives exactly a fifth: 13.2 V / 10 mohm = 1320 A.
     const at = (milliohm: number) =>
       found(

@@ -105,6 +105,14 @@ const slips: readonly Slip[] = [
   slip('INV1', 'efficiency', 1.2, 'out-of-range', 'must be 1 or less'),
   slip('INV1', 'efficiency', 0, 'out-of-range', 'must be more than 0'),
   slip('INV1', 'efficiency', [], 'out-of-range', 'expected 1 to 100 points'),
+  slip('F1', 'curvePoints', [], 'out-of-range', 'expected 1 to 100 points'),
+  slip(
+    'F1',
+    'curvePoints',
+    400,
+    'wrong-type',
+    'a list of points [current in A, melting time in s, clearing time in s]',
+  ),
   slip(
     'INV1',
     'efficiency',
@@ -408,6 +416,36 @@ const slips: readonly Slip[] = [
     'site.irradiationKWhPerM2Day',
     'out-of-range',
     'expected 12 numbers, got 11',
+  ),
+  ...(
+    [
+      [
+        'currents that fall',
+        [
+          [400, 2, 10],
+          [300, 1, 2],
+        ],
+        'the currents must rise',
+      ],
+      ['a fuse that clears before it melts', [[400, 2, 1]], 'it cannot clear (1 s) before it has melted (2 s)'],
+      [
+        'a larger current that takes longer',
+        [
+          [400, 2, 10],
+          [800, 3, 4],
+        ],
+        'must not take longer',
+      ],
+      ['a point of two figures', [[400, 2]], 'expected [current in A, melting time in s, clearing time in s]'],
+    ] as const
+  ).map(([name, points, words]) =>
+    jobSlip(
+      name,
+      (job) => (rawPart(job, 'F1')['curvePoints'] = points),
+      `parts[6].curvePoints[${String(points.length - 1)}]`,
+      name === 'a point of two figures' ? 'wrong-type' : 'contradiction',
+      words,
+    ),
   ),
   jobSlip(
     'a bad month',

@@ -145,6 +145,7 @@ describe('defaults', () => {
       ageGapYears: 1,
       midpointWatch: 0.005,
       midpointAct: 0.01,
+      faultClearS: 5,
     });
   });
   test('a job that names no practice is said to have an assumed one', () => {

@@ -1,4 +1,5 @@
 /** From a job file to what a report is made of, through the real engine. */
+import { protectionFigures } from '../../core/checks/protectionFigures.ts';
 import { runChecks } from '../../core/checks/runChecks.ts';
 import type { CheckedJob } from '../../core/job/job.ts';
 import { parseJob } from '../../core/job/parseJob.ts';
@@ -31,4 +32,11 @@ export function studiedInput(file: object): ReportInput {
   const { job } = input;
   const strings = studyStrings({ job, tables, cases: job.cases, models: ['slow', 'fast'], draws: 50, seed: 1 });
   return { ...input, strings };
+}
+
+/** The same with the study of its short circuits. */
+export function protectedInput(file: object): ReportInput {
+  const input = solvedInput(file);
+  const { job, points } = input;
+  return { ...input, protection: protectionFigures({ job, tables, cases: job.cases, points }) };
 }

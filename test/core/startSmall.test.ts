@@ -47,10 +47,33 @@ const loads = [
   { loadW: 1000, supply: 'ac', capacityAh: 300 },
 ] as const;
 
+/** Questions about the place and the makers' sheets, which five answers do not hold. */
+const ABOUT_THE_PLACE: ReadonlySet<string> = new Set([
+  'ac-part-on-dc',
+  'backfeed-into-bad-string',
+  'bare-live-stud',
+  'battery-by-fuel',
+  'battery-loose',
+  'big-bank-needs-more',
+  'busbar-fault',
+  'cable-cooks',
+  'cable-too-thin',
+  'drop-added-up',
+  'fault-too-weak',
+  'fuse-over-device-limit',
+  'gas-no-vent',
+  'hot-place',
+  'isolator-out-of-reach',
+  'no-low-cutoff',
+  'spark-near-gas',
+  'spring-or-crocodile-clip',
+  'wrong-metal-or-solid',
+]);
+
 describe('starting small', () => {
   for (const practice of ['us-land', 'us-marine', 'iso-marine', 'iec-land'] as const) {
     for (const [chemistry, blockNominalV, systems] of blocks) {
-      it(`leaves nothing to stop, to fix or unchecked: ${practice}, blocks of ${blockNominalV} V ${chemistry}`, () => {
+      it(`leaves nothing to stop or to fix, and asks only what nobody told it: ${practice}, blocks of ${blockNominalV} V ${chemistry}`, () => {
         for (const systemV of systems) {
           for (const blocksInParallel of [1, 3]) {
             for (const load of loads) {
@@ -58,7 +81,8 @@ describe('starting small', () => {
               const { job } = made(small);
               const { findings, notChecked } = runChecks({ job, tables });
               const serious = findings.filter(({ severity }) => severity === 'stop' || severity === 'fix');
-              expect([small, serious, notChecked]).toStrictEqual([small, [], []]);
+              const asked = new Set(notChecked.map(({ rule }) => rule).filter((rule) => !ABOUT_THE_PLACE.has(rule)));
+              expect([small, serious, [...asked]]).toStrictEqual([small, [], []]);
             }
           }
         }

@@ -1,6 +1,7 @@
 import { array, assert, constantFrom, integer, oneof, property, tuple } from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import {
+  curveText,
   echoOf,
   type FieldReading,
   factor,
@@ -14,6 +15,7 @@ import {
   parseSize,
   pointsText,
   readCount,
+  readCurve,
   readField,
   readLength,
   readPoints,
@@ -277,6 +279,30 @@ describe('The unit beside a field', () => {
   test('an echo of a bare number follows the switch', () => {
     expect(echoOf({ value: 3.2, unit: 'm', first: 'metric' })).toBe('10 ft 6 in');
     expect(echoOf({ value: 3.2, unit: 'm', first: 'us' })).toBe('3.2 m');
+  });
+});
+
+describe('A field for the curve of a fuse', () => {
+  test('reads points of amps, seconds to melt and seconds to clear, with units or without', () => {
+    expect(value(readCurve('400: 2: 10; 800 A: 200 ms: 1')).value).toEqual([
+      [400, 2, 10],
+      ['800 A', '200 ms', 1],
+    ]);
+  });
+
+  test('says which point it cannot read', () => {
+    expect(readCurve('400: 2: 10; 800: 1')).toEqual({
+      reading: 'trouble',
+      message: 'Expected amps, seconds to melt and seconds to clear such as 400: 2: 10, got "800: 1".',
+    });
+  });
+
+  test('shows what the job file holds in a form that it reads again', () => {
+    const curve = [
+      [400, '2 min', 600],
+      [800, 0.2, 1],
+    ];
+    expect(value(readCurve(curveText(curve))).value).toEqual(curve);
   });
 });
 

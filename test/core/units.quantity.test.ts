@@ -75,6 +75,14 @@ describe('what people write is read in the unit of the field', () => {
     ['850 W/m²', 'W/m2', 850],
     ['0.85 kW/m2', 'W/m2', 850],
     ['3.4 kWh/m2/day', 'kWh/m2/day', 3.4],
+    ['150 cm2', 'cm2', 150],
+    ['1100 mm²', 'cm2', 11],
+    ['2 in2', 'cm2', 12.9032],
+    ['4.8 m³/h', 'm3/h', 4.8],
+    ['2 l/s', 'm3/h', 7.2],
+    ['20000 A²s', 'A2s', 20_000],
+    ['400 A2s', 'A2s', 400],
+    ['10ft2in', 'm', 3.0988],
   ])('%s as %s is %d', (text, unit, value) => {
     expect(read(text, unit)).toBe(value);
   });
@@ -124,6 +132,8 @@ describe('what cannot be read is refused in words', () => {
     ['3 valueOf', 'm'],
     ['3 mOhm', 'm'],
     ['10%', 'm'],
+    ['20 kA2s', 'A2s'],
+    ['3 m2', 'm'],
     [`${'1 m + '.repeat(12)}1 m`, 'm'],
     [' '.repeat(100), 'm'],
     [`${'9'.repeat(79)} m`, 'm'],

@@ -166,6 +166,8 @@ describe('the sloop with seeded trouble', () => {
       ['fuse-over-cable', 'F-INV', 'W-INV.minus'],
       ['cable-overloaded', 'W-INV.minus'],
       ['surge-sag', 'INV'],
+      ['return-smaller', 'INV', 'W-INV.minus', 'W-INV.plus'],
+      ['inverter-cable', 'W-INV.minus', 'INV'],
     ],
   };
   const text = examples.find(({ name }) => name === SEEDED)!.text;

@@ -3,7 +3,7 @@ import { expect, test } from 'vitest';
 import { buildReport } from '../../core/report/buildReport.ts';
 import type { Block, ReportDocument } from '../../core/report/document.ts';
 import { cellText } from '../../core/report/document.ts';
-import { studiedInput } from '../core/reportInput.ts';
+import { protectedInput, studiedInput } from '../core/reportInput.ts';
 import { cabin } from '../core/reportJobs.ts';
 import { cabinInput } from '../core/reportSample.ts';
 
@@ -17,6 +17,15 @@ test('its section on strings reads as it did', async () => {
   const end = report.blocks.findIndex((block) => block.kind === 'heading' && block.text === 'Findings');
   const lines = report.blocks.slice(start, end).flatMap(linesOf);
   await expect(`${lines.join('\n').replaceAll('\u00a0', ' ').trim()}\n`).toMatchFileSnapshot('report-strings.txt');
+});
+
+test('its section on short circuits, and the tables beside its devices and cables, read as they did', async () => {
+  const { blocks } = buildReport(protectedInput(cabin));
+  const start = blocks.findIndex((block) => block.kind === 'heading' && block.text === 'Short circuits and protection');
+  const end = blocks.findIndex((block) => block.kind === 'heading' && block.text === 'Findings');
+  const beside = blocks.filter((block) => block.kind === 'table' && block.caption.endsWith('in a short circuit'));
+  const lines = [...beside, ...blocks.slice(start, end)].flatMap(linesOf);
+  await expect(`${lines.join('\n').replaceAll('\u00a0', ' ').trim()}\n`).toMatchFileSnapshot('report-protection.txt');
 });
 
 function plainText({ title, subject, author, paper, preparedOn, program, footer, blocks }: ReportDocument): string {

@@ -271,6 +271,41 @@ describe('strings', () => {
   });
 });
 
+describe('faultlevel', () => {
+  const keyed = (stdout: string) => JSON.parse(stdout) as Record<'junctions' | 'devices', Record<string, unknown>[]>;
+
+  test('answers every key of the contract as one JSON document, status 0', async () => {
+    const run = await runCli(['faultlevel', at('thinCable.job.json'), '--json']);
+    expect([run.status, run.stderr]).toEqual([0, '']);
+    const { junctions, devices } = keyed(run.stdout);
+    // By hand: 12.6 V / 10 mΩ = 1260 A; behind 5 m of flexible 1.5 mm2 (13.3 mΩ/m, IEC 60228) 12.6 V / 76.5 mΩ = 164.7 A.
+    const bank = junctions.find(({ junction }) => junction === 'B+')!;
+    expect(bank['prospectiveMaxA']).toBeCloseTo(1260, 6);
+    expect(bank['sourceResistanceOhm']).toBeCloseTo(0.01, 9);
+    const end = junctions.find(({ junction }) => junction === 'L+')!;
+    expect(end['prospectiveMaxA']).toBeCloseTo(164.7, 1);
+    expect(end['prospectiveMinA']).toBeLessThan(end['prospectiveMaxA'] as number);
+    expect(devices).toHaveLength(1);
+    expect(devices[0]).toMatchObject({ id: 'F1', interruptA: 20_000, ok: true });
+    expect(devices[0]!['maxA']).toBeCloseTo(1260, 6);
+    expect(Object.keys(devices[0]!)).toEqual(expect.arrayContaining(['clearS', 'clears']));
+  });
+
+  test('takes its method and the junction to short to, and says so to a person', async () => {
+    const iec = await runCli(['faultlevel', at('thinCable.job.json'), '--json', '--method', 'iec-61660', '--to', 'L-']);
+    const bank = keyed(iec.stdout).junctions.find(({ junction }) => junction === 'B-')!;
+    // The return of the load has no volts against the bank's minus.
+    expect([bank['to'], bank['prospectiveMaxA']]).toEqual(['L-', 0]);
+    const text = await runCli(['faultlevel', at('thinCable.job.json'), '--method', 'iec-61660']);
+    expect(text.status).toBe(0);
+    expect(text.stdout).toContain('Method: iec-61660');
+    expect(text.stdout).toMatch(/B\+ +B- +1400 +1197/);
+    const lost = await runCli(['faultlevel', at('thinCable.job.json'), '--to', 'L+x']);
+    expect([lost.status, lost.stdout]).toEqual([2, '']);
+    expect(lost.stderr).toContain('L+');
+  });
+});
+
 describe('report', () => {
   test('writes a PDF, and the tree of the document as JSON', async () => {
     const run = await runCli(['report', at('tenAmps.job.json'), '--out', at('ten.pdf'), '--json']);

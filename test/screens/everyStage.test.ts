@@ -63,6 +63,11 @@ describe.each(looks)('$name', ({ name, options, textPercent }) => {
     for (const stage of stages) {
       await goStage(page, stage);
       await look(stage.toLowerCase());
+      if (stage !== 'Findings') continue;
+      await page.getByRole('tab', { name: 'Protection' }).click();
+      await page.locator('[data-device]').first().click();
+      await page.getByRole('img', { name: /at the lowest fault/ }).waitFor();
+      await look('protection');
     }
     await page.getByRole('button', { name: 'History' }).click();
     await page.getByRole('heading', { name: 'History' }).waitFor();

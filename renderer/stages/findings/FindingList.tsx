@@ -5,6 +5,7 @@ import { type KeyboardEvent, type ReactElement, useEffect, useRef, useState } fr
 import { useOpenJob } from '../../state/openJob.ts';
 import { FindingItem } from './FindingItem.tsx';
 import { drawnParts, type ListedFinding } from './findingList.ts';
+import { stepIn } from './walkRows.ts';
 
 /** How many are told in full on the first screen. */
 const IN_FULL = 5;
@@ -29,15 +30,7 @@ export function FindingList({ shown, openKey, onOpen, onMade }: FindingListProps
     list.current?.querySelector('[data-finding][aria-expanded="true"]')?.scrollIntoView({ block: 'nearest' });
   }, []);
 
-  const walk = (event: KeyboardEvent): void => {
-    const step = STEPS[event.key];
-    const headers = [...(list.current?.querySelectorAll<HTMLElement>('[data-finding]') ?? [])];
-    const at = headers.indexOf(event.target as HTMLElement);
-    if (step === undefined || at < 0) return;
-    event.preventDefault();
-    const to = Number.isFinite(step) ? at + step : step > 0 ? headers.length - 1 : 0;
-    headers[Math.max(0, Math.min(headers.length - 1, to))]?.focus();
-  };
+  const walk = (event: KeyboardEvent): void => stepIn(event, list.current, '[data-finding]');
 
   const toggle = ({ key, finding }: ListedFinding): void => {
     const { job, light } = useOpenJob.getState();
@@ -72,10 +65,3 @@ export function FindingList({ shown, openKey, onOpen, onMade }: FindingListProps
     </>
   );
 }
-
-const STEPS: Readonly<Record<string, number>> = {
-  ArrowDown: 1,
-  ArrowUp: -1,
-  Home: Number.NEGATIVE_INFINITY,
-  End: Number.POSITIVE_INFINITY,
-};

@@ -9,10 +9,13 @@ import { PracticeChoice } from '../site/PracticeChoice.tsx';
 import { CaseTrouble } from './CaseTrouble.tsx';
 import { FindingFilters } from './FindingFilters.tsx';
 import { FindingList } from './FindingList.tsx';
+import { FindingsTabs } from './FindingsTabs.tsx';
 import { filtered, listed, severityCounts } from './findingList.ts';
 import { changeView, useFindingsView } from './findingsView.ts';
 import { NotDone } from './NotDone.tsx';
 import { PassedList } from './PassedList.tsx';
+import { PracticesPanel } from './PracticesPanel.tsx';
+import { ProtectionPanel } from './ProtectionPanel.tsx';
 
 export function FindingsStage(): ReactElement {
   const answers = useOpenJob(({ answers }) => answers);
@@ -45,7 +48,13 @@ export function FindingsStage(): ReactElement {
       )}
       {assumed && <NoPractice />}
       <CaseTrouble points={points} />
-      {answers !== null && <Verdicts report={answers.report} onMade={() => count.current?.focus()} />}
+      {answers !== null && (
+        <FindingsTabs
+          verdicts={<Verdicts report={answers.report} onMade={() => count.current?.focus()} />}
+          protection={<ProtectionPanel findings={answers.report.findings} />}
+          practices={<PracticesPanel own={answers.report} />}
+        />
+      )}
     </Box>
   );
 }

@@ -5,7 +5,22 @@ import type { Finding } from '../../../core/api.ts';
 import { formatQuantity } from '../../../core/api.ts';
 
 /** Units that begin at nought; of a temperature a bar would say nothing. */
-const FROM_NOUGHT: ReadonlySet<string> = new Set(['A', 'V', 'W', 'ohm', '1', 'm', 'mm2', 'Ah', 'Wh', 's', 'A2s']);
+const FROM_NOUGHT: ReadonlySet<string> = new Set([
+  'A',
+  'V',
+  'W',
+  'ohm',
+  '1',
+  'm',
+  'Ah',
+  'Wh',
+  's',
+  'A2s',
+  'mm2',
+  'cm2',
+  'm3/h',
+  'h',
+]);
 /** The longer of the two takes this part of the width, so that one sees that nothing is cut off. */
 const LONGEST = 0.92;
 
@@ -32,29 +47,20 @@ export function LimitBar({ finding }: { readonly finding: Finding }): ReactEleme
         Measured <strong>{formatQuantity(finding.measured)}</strong> · limit{' '}
         <strong>{formatQuantity(finding.limit)}</strong>
       </Box>
-      {shares !== null && (
-        <svg width="100%" height="14" aria-hidden="true" focusable="false">
-          <line x1="0" y1="7" x2="100%" y2="7" stroke="var(--hair)" strokeWidth="1" />
-          <rect x="0" y="3" width={percent(shares.measured)} height="8" fill={`var(--${severity})`} />
-          <line
-            x1={percent(shares.limit)}
-            y1="0"
-            x2={percent(shares.limit)}
-            y2="14"
-            stroke="var(--ground)"
-            strokeWidth="6"
-          />
-          <line
-            x1={percent(shares.limit)}
-            y1="0"
-            x2={percent(shares.limit)}
-            y2="14"
-            stroke="var(--ink)"
-            strokeWidth="2"
-          />
-        </svg>
-      )}
+      {shares !== null && <MeasuredBar {...shares} fill={`var(--${severity})`} />}
     </Box>
+  );
+}
+
+/** A bar from nought with its limit as a line across it, both as shares of the width. */
+export function MeasuredBar({ measured, limit, fill }: BarShares & { readonly fill: string }): ReactElement {
+  return (
+    <svg width="100%" height="14" aria-hidden="true" focusable="false">
+      <line x1="0" y1="7" x2="100%" y2="7" stroke="var(--hair)" strokeWidth="1" />
+      <rect x="0" y="3" width={percent(measured)} height="8" fill={fill} />
+      <line x1={percent(limit)} y1="0" x2={percent(limit)} y2="14" stroke="var(--ground)" strokeWidth="6" />
+      <line x1={percent(limit)} y1="0" x2={percent(limit)} y2="14" stroke="var(--ink)" strokeWidth="2" />
+    </svg>
   );
 }
 

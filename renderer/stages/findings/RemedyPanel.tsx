@@ -5,10 +5,9 @@ import LinearProgress from '@mui/material/LinearProgress';
 import { type ReactElement, useEffect, useState } from 'react';
 import type { Finding } from '../../../core/api.ts';
 import { formatQuantity, plainFields } from '../../../core/api.ts';
-import { SeverityMark } from '../../controls/SeverityMark.tsx';
 import { useOpenJob } from '../../state/openJob.ts';
 import type { TriedRemedy } from '../../workers/remedyMessages.ts';
-import { findingName } from './findingList.ts';
+import { FindingsMoved } from './FindingsMoved.tsx';
 import { useRemedy } from './useRemedy.ts';
 
 export interface RemedyPanelProps {
@@ -119,38 +118,4 @@ function beforeAndAfter({ before, after, stillThere }: TriedRemedy): string {
   if (after.measured === null) return `${was} → within the limit of ${formatQuantity(after.limit)}`;
   const now = `${formatQuantity(after.measured)} (limit ${formatQuantity(after.limit)})`;
   return `${was} → ${now}${stillThere ? ': better, not enough' : ''}`;
-}
-
-interface FindingsMovedProps {
-  readonly title: string;
-  readonly findings: readonly Finding[];
-  readonly itself: Finding;
-  readonly none: string;
-}
-
-function FindingsMoved({ title, findings, itself, none }: FindingsMovedProps): ReactElement {
-  if (findings.length === 0) return <Box sx={{ color: 'var(--soft)' }}>{none}</Box>;
-  return (
-    <Box>
-      <Box component="span" sx={{ color: 'var(--soft)' }}>
-        {title}:
-      </Box>
-      <Box component="ul" sx={{ m: 0, p: 0, listStyle: 'none' }}>
-        {findings.map((finding) => (
-          <Box
-            component="li"
-            key={`${finding.rule} ${finding.parts.join(' ')}`}
-            sx={{ display: 'flex', gap: '0.5rem', alignItems: 'baseline' }}
-          >
-            <SeverityMark severity={finding.severity} />
-            <span>{isSame(finding, itself) ? 'this finding' : plainFields(finding.message)}</span>
-          </Box>
-        ))}
-      </Box>
-    </Box>
-  );
-}
-
-function isSame(one: Finding, other: Finding): boolean {
-  return findingName(one) === findingName(other);
 }

@@ -52,6 +52,7 @@ export const FAMILY_WORDS: Readonly<Record<RuleFamily, string>> = {
   battery: 'Battery strings',
   strings: 'Strings as one bank',
   charging: 'Charging',
+  solar: 'Solar',
 };
 
 export function familyOf(rule: string): RuleFamily | undefined {

@@ -4,6 +4,7 @@ import type { ReactElement } from 'react';
 import { type Draft, setTop } from '../../../core/api.ts';
 import { ChoiceField } from '../../controls/ChoiceField.tsx';
 import { CountField } from '../../controls/CountField.tsx';
+import { FlagField } from '../../controls/FlagField.tsx';
 import { QuantityField } from '../../controls/QuantityField.tsx';
 import { takeEdit } from '../../controls/taken.ts';
 import { choiceWord } from '../../controls/words.ts';
@@ -34,16 +35,23 @@ export function JobField({ path, assumed, below }: JobFieldProps): ReactElement 
   };
   return (
     <Box sx={{ containerType: 'inline-size' }}>
-      {figure.unit === 'count' ? (
+      {figure.unit === 'flag' ? (
+        <FlagField {...common} value={typeof given === 'boolean' ? given : undefined} onCommit={commit} />
+      ) : figure.unit === 'count' ? (
         <CountField {...common} value={typeof given === 'number' ? given : undefined} onCommit={commit} />
       ) : (
-        <QuantityField {...common} unit={figure.unit} given={given} onCommit={commit} />
+        <QuantityField
+          {...common}
+          unit={figure.unit}
+          given={typeof given === 'boolean' ? undefined : given}
+          onCommit={commit}
+        />
       )}
     </Box>
   );
 }
 
-type Given = number | string | undefined;
+type Given = number | string | boolean | undefined;
 
 function Practices({
   given,
@@ -78,7 +86,7 @@ function givenAt(draft: Draft, path: string): Given {
   const [group = '', field] = path.split('.');
   const holder = draft[group];
   const value: unknown = field === undefined ? holder : isHolder(holder) ? holder[field] : undefined;
-  return typeof value === 'number' || typeof value === 'string' ? value : undefined;
+  return typeof value === 'number' || typeof value === 'string' || typeof value === 'boolean' ? value : undefined;
 }
 
 function isHolder(value: unknown): value is Readonly<Record<string, unknown>> {

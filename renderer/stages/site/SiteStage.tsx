@@ -8,7 +8,7 @@ import { useOpenJob } from '../../state/openJob.ts';
 import { useSession } from '../../state/session.ts';
 import { JobField } from './JobField.tsx';
 import { JobText } from './JobText.tsx';
-import { airFigures, siteFigures, thresholds } from './jobFigures.ts';
+import { airFigures, placeFlags, siteFigures, thresholds } from './jobFigures.ts';
 import { PracticeChoice } from './PracticeChoice.tsx';
 import { SunTable } from './SunTable.tsx';
 import { Thresholds } from './Thresholds.tsx';
@@ -47,7 +47,7 @@ export function SiteStage(): ReactElement {
       </Part>
       <Part title="Place and air">
         <Box sx={GRID}>
-          {[...airFigures, ...siteFigures].map(({ path }) => (
+          {[...airFigures, ...siteFigures, ...placeFlags].map(({ path }) => (
             <JobField key={path} path={path} />
           ))}
         </Box>

@@ -7,7 +7,7 @@ export interface JobFigure {
   readonly label: string;
   /** What it is used for, in a line. */
   readonly use: string;
-  readonly unit: UnitName | 'count';
+  readonly unit: UnitName | 'count' | 'flag';
   /** What is taken where it is not given; absent where then nothing is assumed, or the practice says. */
   readonly standard?: number;
 }
@@ -24,6 +24,28 @@ export const siteFigures: readonly JobFigure[] = [
     label: 'Light thrown back by the ground',
     use: 'From 0 to 1: grass about 0.2, fresh snow up to 0.8 (common practice, no source). For tilted arrays.',
     unit: '1',
+  },
+];
+
+/** What the place is like, beyond its air: yes or no. */
+export const placeFlags: readonly JobFigure[] = [
+  {
+    path: 'site.gasolineSpace',
+    label: 'Petrol (gasoline) engine or tank',
+    use: 'Is there one in a closed space of the vessel or vehicle? Sparks there are a matter of life.',
+    unit: 'flag',
+  },
+  {
+    path: 'site.dampSpace',
+    label: 'Damp or salty air',
+    use: 'Asks for tinned copper.',
+    unit: 'flag',
+  },
+  {
+    path: 'site.sourceSign',
+    label: 'Signs that name every source',
+    use: 'Are they fitted where more than one source feeds a box?',
+    unit: 'flag',
   },
 ];
 
@@ -117,9 +139,18 @@ export const thresholds: readonly JobFigure[] = [
     unit: '1',
     standard: 0.01,
   },
+  {
+    path: 'settings.faultClearS',
+    label: 'A weak fault is off after',
+    use: 'The weakest fault is to open its fuse or breaker by then.',
+    unit: 's',
+    standard: 5,
+  },
 ];
 
-const byPath = new Map([...siteFigures, ...airFigures, ...thresholds].map((figure) => [figure.path, figure]));
+const byPath = new Map(
+  [...siteFigures, ...placeFlags, ...airFigures, ...thresholds].map((figure) => [figure.path, figure]),
+);
 
 export function jobFigure(path: string): JobFigure | undefined {
   return byPath.get(path);

@@ -3,8 +3,9 @@ import { styled } from '@mui/material/styles';
 import type { ReactElement } from 'react';
 import { type AtRest, formatQuantity } from '../../../core/api.ts';
 import { Figure } from '../../controls/Figure.tsx';
+import { Quiet } from '../../controls/Prose.tsx';
 import { Fold } from './Fold.tsx';
-import { KeyOf, Quiet } from './pieces.tsx';
+import { KeyOf } from './KeyOf.tsx';
 import { type Tags, tagOf } from './tags.ts';
 import { amps, NOTICED_A } from './words.ts';
 

@@ -3,11 +3,13 @@ import type { ReactElement } from 'react';
 import { type BandStudy, formatQuantity, plainFields, type TornadoBar } from '../../../core/api.ts';
 import { TornadoBars } from '../../charts/TornadoBars.tsx';
 import { Figure } from '../../controls/Figure.tsx';
+import { FigureTable, Sideways } from '../../controls/FigureTable.tsx';
+import { Quiet, Said } from '../../controls/Prose.tsx';
+import { StudyPlace } from '../../controls/StudyPlace.tsx';
 import { ORIGIN_MEANING } from '../../controls/words.ts';
+import type { Study } from '../../state/studies.ts';
 import { Fold } from './Fold.tsx';
-import { FigureTable, KeyOf, Quiet, Said, Sideways } from './pieces.tsx';
-import { StudyPlace } from './Running.tsx';
-import type { Study } from './studies.ts';
+import { KeyOf } from './KeyOf.tsx';
 import { type Tags, tagOf } from './tags.ts';
 import { amps, percent } from './words.ts';
 

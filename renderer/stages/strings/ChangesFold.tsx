@@ -2,13 +2,14 @@
 import { styled } from '@mui/material/styles';
 import type { ReactElement } from 'react';
 import { EFFORTS, plainFields, wholeFigureText } from '../../../core/api.ts';
+import { FigureTable, Sideways } from '../../controls/FigureTable.tsx';
+import { More, Quiet } from '../../controls/Prose.tsx';
+import { StudyPlace } from '../../controls/StudyPlace.tsx';
+import type { Study } from '../../state/studies.ts';
 import type { TriedChange } from '../../workers/stringsMessages.ts';
 import { Fold } from './Fold.tsx';
 import { MakeChange } from './MakeChange.tsx';
-import { FigureTable, More, Quiet, Sideways } from './pieces.tsx';
-import { StudyPlace } from './Running.tsx';
 import { changeStringsView } from './stringsView.ts';
-import type { Study } from './studies.ts';
 import { type Tags, tagOf } from './tags.ts';
 import { amps, changeEffect } from './words.ts';
 

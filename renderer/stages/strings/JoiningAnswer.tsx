@@ -4,9 +4,10 @@ import type { ReactElement } from 'react';
 import { formatQuantity, type Joining, plainFields } from '../../../core/api.ts';
 import { SettlingCurve } from '../../charts/SettlingCurve.tsx';
 import { Figure } from '../../controls/Figure.tsx';
+import { FigureTable } from '../../controls/FigureTable.tsx';
+import { Assumed, Said } from '../../controls/Prose.tsx';
 import { SeverityMark } from '../../controls/SeverityMark.tsx';
 import { type Row, RowList } from '../../ledger/parts.tsx';
-import { Assumed, FigureTable, Said } from './pieces.tsx';
 import { amps, joiningTitle, NOTICED_A, percent } from './words.ts';
 
 export function JoiningAnswer({ joining }: { readonly joining: Joining }): ReactElement {

@@ -6,7 +6,9 @@ import type { CheckedJob, Joining } from '../../../core/api.ts';
 import { CautionStrip } from '../../controls/CautionStrip.tsx';
 import { ChoiceField } from '../../controls/ChoiceField.tsx';
 import { CountField } from '../../controls/CountField.tsx';
+import { Quiet } from '../../controls/Prose.tsx';
 import { QuantityField } from '../../controls/QuantityField.tsx';
+import { StudyPlace } from '../../controls/StudyPlace.tsx';
 import { choiceWord } from '../../controls/words.ts';
 import type { BankNow, JoiningQuestion } from '../../workers/stringsMessages.ts';
 import { Fold } from './Fold.tsx';
@@ -21,8 +23,6 @@ import {
   type SideForm,
   sideChoices,
 } from './joinForm.ts';
-import { Quiet } from './pieces.tsx';
-import { StudyPlace } from './Running.tsx';
 import { changeStringsView, useStringsView } from './stringsView.ts';
 import { useStudy } from './studies.ts';
 import type { Tags } from './tags.ts';

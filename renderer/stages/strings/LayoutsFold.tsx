@@ -3,12 +3,14 @@ import { styled } from '@mui/material/styles';
 import type { ReactElement } from 'react';
 import { firstText, formatQuantity, type Layout, type LayoutStudy, type LeadStudy } from '../../../core/api.ts';
 import { LayoutThumb, type ThumbString } from '../../charts/LayoutThumb.tsx';
+import { FigureTable, Sideways } from '../../controls/FigureTable.tsx';
+import { Assumed, More, Quiet, Said } from '../../controls/Prose.tsx';
+import { StudyPlace } from '../../controls/StudyPlace.tsx';
 import { usePreferences } from '../../state/preferences.ts';
+import type { Study } from '../../state/studies.ts';
 import type { LayoutsAnswer } from '../../workers/stringsMessages.ts';
 import { Fold } from './Fold.tsx';
-import { Assumed, FigureTable, KeyOf, More, Quiet, Said, Sideways } from './pieces.tsx';
-import { StudyPlace } from './Running.tsx';
-import type { Study } from './studies.ts';
+import { KeyOf } from './KeyOf.tsx';
 import type { Tags } from './tags.ts';
 import { percent } from './words.ts';
 

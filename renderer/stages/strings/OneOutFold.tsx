@@ -3,11 +3,13 @@ import { styled } from '@mui/material/styles';
 import type { ReactElement } from 'react';
 import type { OneLoss, OneOutStudy, PartId } from '../../../core/api.ts';
 import { Figure } from '../../controls/Figure.tsx';
+import { FigureTable, Sideways } from '../../controls/FigureTable.tsx';
+import { Quiet, Said } from '../../controls/Prose.tsx';
 import { SeverityMark } from '../../controls/SeverityMark.tsx';
+import { StudyPlace } from '../../controls/StudyPlace.tsx';
+import type { Study } from '../../state/studies.ts';
 import { Fold } from './Fold.tsx';
-import { FigureTable, KeyOf, Quiet, Said, Sideways } from './pieces.tsx';
-import { StudyPlace } from './Running.tsx';
-import type { Study } from './studies.ts';
+import { KeyOf } from './KeyOf.tsx';
 import { type Tags, tagOf } from './tags.ts';
 import { amps, cascadeWords, NOTICED_A } from './words.ts';
 

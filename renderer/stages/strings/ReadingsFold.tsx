@@ -10,9 +10,11 @@ import {
   type TieBreakRow,
   type WithUncertainty,
 } from '../../../core/api.ts';
+import { FigureTable, Sideways } from '../../controls/FigureTable.tsx';
+import { More, Quiet, Said } from '../../controls/Prose.tsx';
 import { SeverityMark } from '../../controls/SeverityMark.tsx';
 import { Fold } from './Fold.tsx';
-import { FigureTable, KeyOf, More, Quiet, Said, Sideways } from './pieces.tsx';
+import { KeyOf } from './KeyOf.tsx';
 import { type Tags, tagList, tagOf } from './tags.ts';
 
 export interface ReadingsFoldProps {

@@ -4,10 +4,10 @@ import type { ReactElement } from 'react';
 import type { BandStudy, Bank, BankMeasure, SharedString, SharingCase } from '../../../core/api.ts';
 import { barScale, type ShareBar, ShareBars } from '../../charts/ShareBars.tsx';
 import { Figure } from '../../controls/Figure.tsx';
+import { Quiet } from '../../controls/Prose.tsx';
 import { SeverityMark } from '../../controls/SeverityMark.tsx';
 import type { TriedChange } from '../../workers/stringsMessages.ts';
 import { MakeChange } from './MakeChange.tsx';
-import { Quiet } from './pieces.tsx';
 import type { Tags } from './tags.ts';
 import { amps, changeEffect, isLone, NOTICED_A, sharedRemark, worstOf } from './words.ts';
 

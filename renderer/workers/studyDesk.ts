@@ -1,34 +1,30 @@
-/** The page's end of a worker of the stage Strings: questions wait their turn, and each can be stopped. */
-import type { StringsAsk, StringsReply } from './stringsMessages.ts';
-
-export type StudyReply = StringsReply extends infer Reply
-  ? Reply extends unknown
-    ? Omit<Reply, 'ask'>
-    : never
-  : never;
+/** The page's end of a worker of studies: questions wait their turn, and each can be stopped. */
+import type { StudyAsk, StudyReply, StudySaid } from './studyMessages.ts';
 
 interface Waiting {
-  readonly ask: StringsAsk;
-  readonly onReply: (reply: StudyReply) => void;
+  readonly ask: StudyAsk;
+  readonly onReply: (reply: StudySaid) => void;
 }
 
-export class StringsDesk {
+export class StudyDesk {
   private worker: Worker | null = null;
   private running: Waiting | null = null;
   private waiting: readonly Waiting[] = [];
   private asked = 0;
+  private readonly start: () => Worker;
   private readonly ends: boolean;
 
   /**
    * With `ends`, stopping a study that runs ends its worker with it, since it cannot be interrupted from inside. Without, a study is
    * short: it is let run out and its answer dropped.
    */
-  constructor(ends: boolean) {
+  constructor(start: () => Worker, ends: boolean) {
+    this.start = start;
     this.ends = ends;
   }
 
   /** Asks; the returned function stops it, and then nothing more is heard of it. */
-  ask(ask: Omit<StringsAsk, 'ask'>, onReply: (reply: StudyReply) => void): () => void {
+  ask(ask: Omit<StudyAsk, 'ask'>, onReply: (reply: StudySaid) => void): () => void {
     this.asked += 1;
     const number = this.asked;
     this.waiting = [...this.waiting, { ask: { ...ask, ask: number }, onReply }];
@@ -59,8 +55,8 @@ export class StringsDesk {
   }
 
   private begin(): Worker {
-    const worker = new Worker(new URL('./strings.worker.ts', import.meta.url), { type: 'module' });
-    worker.addEventListener('message', ({ data }: MessageEvent<StringsReply>) => this.receive(data));
+    const worker = this.start();
+    worker.addEventListener('message', ({ data }: MessageEvent<StudyReply>) => this.receive(data));
     worker.addEventListener('error', (event) => {
       event.preventDefault();
       const ask = this.running?.ask.ask ?? 0;
@@ -69,8 +65,8 @@ export class StringsDesk {
     return worker;
   }
 
-  private receive({ ask, ...reply }: StringsReply): void {
-    if (this.running?.ask.ask !== ask) return;
+  private receive(reply: StudyReply): void {
+    if (this.running?.ask.ask !== reply.ask) return;
     const { onReply } = this.running;
     if (reply.kind !== 'progress') this.running = null;
     onReply(reply);

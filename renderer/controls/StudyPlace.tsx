@@ -3,7 +3,7 @@ import Box from '@mui/material/Box';
 import Button from '@mui/material/Button';
 import LinearProgress from '@mui/material/LinearProgress';
 import { type ReactElement, type ReactNode, useEffect, useState } from 'react';
-import type { Study } from './studies.ts';
+import type { Study } from '../state/studies.ts';
 
 /** A study shorter than this needs no bar. */
 const WORTH_A_BAR_MS = 300;

@@ -1,9 +1,7 @@
-/** Small pieces that the folds of the stage are made of. */
+/** Tables of figures, and the place in which a wide one moves sideways. */
 import Box from '@mui/material/Box';
 import { styled } from '@mui/material/styles';
 import { type ReactElement, type ReactNode, useEffect, useRef, useState } from 'react';
-import { StringKey } from '../../charts/Hatches.tsx';
-import type { Tags } from './tags.ts';
 
 /** A table of figures: names at the start, figures at the end of their cells. */
 export const FigureTable = styled('table')({
@@ -40,42 +38,3 @@ export function Sideways({ label, children }: { readonly label: string; readonly
     </Box>
   );
 }
-
-export const Said = styled('p')({ margin: '0 0 0.375rem', fontSize: '0.9375rem', lineHeight: 1.4, maxWidth: '60rem' });
-export const Quiet = styled('p')({
-  margin: '0.25rem 0',
-  color: 'var(--soft)',
-  fontSize: '0.8125rem',
-  lineHeight: 1.4,
-  maxWidth: '60rem',
-});
-
-export function KeyOf({ tags, id }: { readonly tags: Tags; readonly id: string }): ReactElement {
-  const known = tags.get(id);
-  return known === undefined ? <strong>{id}</strong> : <StringKey tag={known.tag} hatch={known.hatch} />;
-}
-
-/** What was assumed, folded away but counted. */
-export function Assumed({ texts }: { readonly texts: readonly string[] }): ReactElement | null {
-  if (texts.length === 0) return null;
-  return (
-    <More>
-      <summary>{texts.length === 1 ? 'One thing was assumed' : `${String(texts.length)} things were assumed`}</summary>
-      <ul>
-        {texts.map((text) => (
-          <li key={text}>{text}</li>
-        ))}
-      </ul>
-    </More>
-  );
-}
-
-/** What is there for who wants to know it all. */
-export const More = styled('details')({
-  fontSize: '0.8125rem',
-  color: 'var(--soft)',
-  marginBlock: '0.25rem',
-  '& > summary': { cursor: 'pointer', minHeight: '1.75rem' },
-  '& ul': { margin: 0, paddingInlineStart: '1.25rem', maxWidth: '60rem' },
-  '@media (pointer: coarse)': { '& > summary': { minHeight: 44, lineHeight: '44px' } },
-});
