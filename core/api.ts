@@ -217,6 +217,8 @@ export {
 } from './protection/withstand.ts';
 export { type BankChange, type BankChangesRequest, bankChanges } from './remedy/bankChanges.ts';
 export { EFFORTS } from './remedy/candidate.ts';
+export type { FindingPair } from './remedy/comparePractices.ts';
+export { comparePractices } from './remedy/comparePractices.ts';
 export type { MissingField } from './remedy/missingField.ts';
 export { missingField } from './remedy/missingField.ts';
 export { costWords, type ProtectionCost, weightOf } from './remedy/protect/cost.ts';

@@ -2,10 +2,12 @@
 import {
   type CheckedJob,
   type CheckReport,
+  comparePractices,
   type Finding,
   formatQuantity,
   type Measure,
   numberText,
+  type Practice,
   type Severity,
 } from '../../core/api.ts';
 import { statusWords } from './statusWords.ts';
@@ -23,7 +25,14 @@ export const caution =
   'licensed electrician; where they differ, they prevail. Isolate every source and prove the circuit dead before working on it: a ' +
   'battery cannot be switched off, and a spanner across it burns.';
 
-export function checkText(job: CheckedJob, { findings, notChecked, passed }: CheckReport): string {
+/** The same job judged by another practice. */
+export interface Beside {
+  readonly practice: Practice;
+  readonly report: CheckReport;
+}
+
+export function checkText(job: CheckedJob, report: CheckReport, beside?: Beside): string {
+  const { findings, notChecked, passed } = report;
   const assumed = job.practiceAssumed === true ? ', assumed; the job names none' : '';
   const counts = severities.map((severity) => `${String(countOf(findings, severity))} ${severity}`).join(', ');
   const passedCount = passed.reduce((sum, { count }) => sum + count, 0);
@@ -46,10 +55,28 @@ export function checkText(job: CheckedJob, { findings, notChecked, passed }: Che
           ],
           passed.map(({ rule, count }) => [rule, String(count)]),
         )}`,
+    beside === undefined ? '' : besideText(job.practice, report, beside),
     wrapped(caution),
   ]
     .filter((text) => text !== '')
     .join('\n');
+}
+
+/** What two books say of one job, where they differ. */
+function besideText(practice: Practice, own: CheckReport, { practice: other, report }: Beside): string {
+  const { apart, alike } = comparePractices(own, report);
+  const alikeText = `${String(alike.length)} ${alike.length === 1 ? 'finding is' : 'findings are'} the same in both.\n`;
+  if (apart.length === 0) return `Beside it by ${other}: no finding differs; ${alikeText}`;
+  const cell = (finding: Finding | null) =>
+    finding === null
+      ? 'no finding'
+      : `${finding.severity}: ${measureText(finding.measured)}, limit ${measureText(finding.limit)}`;
+  const rows = apart.map(({ own: here, other: there }) => {
+    const either = here ?? there;
+    return [either?.rule ?? '', (either?.parts ?? []).join(', '), cell(here), cell(there)];
+  });
+  const heads = ['rule', 'parts', practice, other].map((head) => ({ head, align: 'left' as const }));
+  return `Where ${practice} and ${other} differ:\n${textTable(heads, rows)}${alikeText}`;
 }
 
 function countOf(findings: readonly Finding[], severity: Severity): number {

@@ -6,12 +6,14 @@ import {
   type OperatingCase,
   type OperatingPoint,
   operatingPoint,
+  type Practice,
   runChecks,
+  withPractice,
 } from '../../core/api.ts';
 import { tables } from '../../data/index.ts';
 import { makeReport, pdfOf } from '../services/makeReport.ts';
 import { solveCases } from '../services/solveCases.ts';
-import { checkText } from './checkText.ts';
+import { type Beside, checkText } from './checkText.ts';
 import type { Io } from './io.ts';
 import { jsonText } from './jsonText.ts';
 import { type CommandOptions, chosenCases, judgedJob } from './options.ts';
@@ -41,9 +43,22 @@ export async function check(path: string, options: CommandOptions, io: Io): Prom
   const { read, job, cases } = await begin(path, options, io);
   const points = solveCases(job, cases, options.model);
   const report = runChecks({ job, tables, cases, points });
-  const answer = options.json === true ? jsonText(checkAnswer(job, cases, report)) : checkText(job, report);
+  const beside = options.beside === undefined ? undefined : judgedBeside(job, cases, options.beside);
+  const answer =
+    options.json === true
+      ? jsonText({
+          ...checkAnswer(job, cases, report),
+          ...(beside === undefined ? {} : { beside: { practice: beside.practice, ...beside.report } }),
+        })
+      : checkText(job, report, beside);
   await print(answer, read, options, io);
   return collapsed(points) || hasWork(report) ? exitStatus.found : exitStatus.done;
+}
+
+/** The same job by another book, whose tables of conductors may be others: solved anew. The job's edition is of its own book. */
+function judgedBeside(job: CheckedJob, cases: readonly OperatingCase[], practice: Practice): Beside {
+  const other = withPractice({ ...job, practiceEdition: undefined }, practice);
+  return { practice, report: runChecks({ job: other, tables, cases }) };
 }
 
 /** `report`: the paper of a job as a PDF, or its document tree. */
@@ -107,7 +122,7 @@ function checkAnswer(
   job: CheckedJob,
   cases: readonly OperatingCase[],
   { findings, notChecked, passed }: CheckReport,
-): unknown {
+): object {
   return {
     practice: job.practice,
     practiceAssumed: job.practiceAssumed === true,

@@ -18,6 +18,8 @@ export interface CommandOptions {
   readonly model?: BatteryModel;
   readonly out?: string;
   readonly practice?: Practice;
+  /** `check` only. */
+  readonly beside?: Practice;
   readonly quiet?: boolean;
 }
 
@@ -37,6 +39,11 @@ export const modelOption = new Option(
 export const practiceOption = new Option(
   '--practice <which>',
   'judge by this practice instead of the one in the job',
+).choices(practices);
+
+export const besideOption = new Option(
+  '--beside <which>',
+  'judge by this practice as well, and tell what differs',
 ).choices(practices);
 
 /** The job as the options want it judged. */

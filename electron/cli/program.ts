@@ -7,6 +7,7 @@ import type { Io } from './io.ts';
 import { lists } from './lists.ts';
 import { newJob } from './newJob.ts';
 import {
+  besideOption,
   type CommandOptions,
   caseOption,
   jsonOption,
@@ -66,7 +67,7 @@ export function buildProgram(io: Io, { printed, complained, answered }: ProgramS
     });
   };
   onJob('solve', 'volts, amps and watts in every operating case, with the sums that prove them', solve);
-  onJob('check', 'findings by the published tables of a practice, worst first', check);
+  onJob('check', 'findings by the published tables of a practice, worst first', check, [besideOption]);
   onJob('strings', 'how parallel strings share, what flows at rest, joints, layouts, losses', strings, stringsOptions);
   onJob(
     'faultlevel',

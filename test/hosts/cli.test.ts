@@ -146,6 +146,22 @@ describe('check', () => {
     expect(await books('us-marine')).toContain('Practice: us-marine');
     expect(await books('us-marine')).not.toBe(await books('iec-land'));
   });
+  test('two practices may judge side by side, and what differs is told', async () => {
+    const asked = ['check', at('thinCable.job.json'), '--practice', 'us-marine', '--beside', 'iso-marine'];
+    const [text, json] = await Promise.all([runCli(asked), runCli([...asked, '--json'])]);
+    expect(text.stdout).toContain('Where us-marine and iso-marine differ:');
+    const answer = JSON.parse(json.stdout) as {
+      practice: string;
+      findings: { rule: string; limit: { value: number } }[];
+      beside: { practice: string; findings: { rule: string; limit: { value: number } }[] };
+    };
+    expect([answer.practice, answer.beside.practice]).toEqual(['us-marine', 'iso-marine']);
+    const limitOf = ({ findings }: Pick<typeof answer, 'findings'>) =>
+      findings.find(({ rule }) => rule === 'fuse-over-cable')?.limit.value ?? 0;
+    // 33 CFR 183 lets a fuse stand at half as much again as its cable below 50 V, the ISO book at its ampacity.
+    expect(limitOf(answer)).toBeGreaterThan(limitOf(answer.beside));
+    expect(limitOf(answer.beside)).toBeGreaterThan(0);
+  });
   test('a job that names no practice is told so, and its book is not checked rather than passed', async () => {
     const input = JSON.stringify({ ...thinCable, practice: undefined });
     const run = await runCli(['check', '-', '--json'], { input });

@@ -1,6 +1,7 @@
 /** What the tab Protection works out for itself: places on its bars and pictures, words, and which findings two rule books share. */
 import { describe, expect, test } from 'vitest';
 import type { CheckReport, DeviceBand, DeviceStudy, Finding, FuseWindow, PartId } from '../../core/api.ts';
+import { comparePractices } from '../../core/api.ts';
 import { windowShares } from '../../renderer/charts/FuseWindowBar.tsx';
 import {
   axesOf,
@@ -11,7 +12,6 @@ import {
   xOf,
   yOf,
 } from '../../renderer/charts/timeCurrentShape.ts';
-import { comparePractices } from '../../renderer/stages/findings/comparePractices.ts';
 import { sortedProposals } from '../../renderer/stages/findings/proposalOrder.ts';
 import {
   protectionTitle,
@@ -213,10 +213,10 @@ describe('the same job under two rule books', () => {
     const other = report([finding({ limit: { value: 60, unit: 'A' } }), { ...same, basis: 'another clause' }]);
     const { apart, alike } = comparePractices(own, other);
     expect(apart.map(({ key, other: has }) => [key, has === null])).toEqual([
-      ['fuse-over-cable F1', false],
-      ['cable-too-thin F1', true],
+      ['["fuse-over-cable","F1"]', false],
+      ['["cable-too-thin","F1"]', true],
     ]);
-    expect(alike.map(({ key }) => key)).toEqual(['load-unfed F1']);
+    expect(alike.map(({ key }) => key)).toEqual(['["load-unfed","F1"]']);
   });
 
   test('what only the other book finds is among them, the worst first', () => {

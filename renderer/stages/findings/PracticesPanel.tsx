@@ -1,8 +1,8 @@
 /** The same job under two rule books: what each finds, side by side; only what differs is marked, what is alike is folded. */
 import Box from '@mui/material/Box';
 import { type ReactElement, type ReactNode, useMemo } from 'react';
-import type { CheckReport, Finding, Practice } from '../../../core/api.ts';
-import { formatQuantity, partNames, plainFields } from '../../../core/api.ts';
+import type { CheckReport, Finding, FindingPair, Practice } from '../../../core/api.ts';
+import { comparePractices, formatQuantity, partNames, plainFields } from '../../../core/api.ts';
 import { BasisText } from '../../controls/BasisText.tsx';
 import { Chip, ChipRow } from '../../controls/Chips.tsx';
 import { Folded } from '../../controls/Folded.tsx';
@@ -11,7 +11,6 @@ import { SeverityMark } from '../../controls/SeverityMark.tsx';
 import { StudyPlace } from '../../controls/StudyPlace.tsx';
 import { useOpenJob } from '../../state/openJob.ts';
 import { practiceWords } from '../site/practiceWords.ts';
-import { comparePractices, type FindingPair } from './comparePractices.ts';
 import { ruleTitle } from './findingList.ts';
 import { changeView, useFindingsView } from './findingsView.ts';
 import { useProtectionStudy } from './protectionStudies.ts';

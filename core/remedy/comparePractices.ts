@@ -1,7 +1,7 @@
 /** The findings of one job under two rule books, side by side. */
-import type { CheckReport, Finding } from '../../../core/api.ts';
-import { SEVERITIES } from '../../../core/api.ts';
-import { listed } from './findingList.ts';
+import type { CheckReport, Finding } from '../checks/finding.ts';
+import { SEVERITY_ORDER } from '../checks/tally.ts';
+import { identityOf } from './identity.ts';
 
 export interface FindingPair {
   readonly key: string;
@@ -16,7 +16,7 @@ export interface ComparedPractices {
   readonly alike: readonly FindingPair[];
 }
 
-/** Pairs by what is judged and of which parts; clauses always differ between books and tell nothing apart. */
+/** Pairs by `identityOf`: by what is judged and of which parts; clauses always differ between books and tell nothing apart. */
 export function comparePractices(own: CheckReport, other: CheckReport): ComparedPractices {
   const others = new Map(listed(other.findings).map(({ key, finding }) => [key, finding]));
   const owns = listed(own.findings);
@@ -25,13 +25,25 @@ export function comparePractices(own: CheckReport, other: CheckReport): Compared
     ...owns.map(({ key, finding }) => ({ key, own: finding, other: others.get(key) ?? null })),
     ...[...others].flatMap(([key, finding]) => (known.has(key) ? [] : [{ key, own: null, other: finding }])),
   ];
-  const sorted = pairs.toSorted((a, b) => rank(a) - rank(b));
+  const sorted = [...pairs];
+  sorted.sort((a, b) => rank(a) - rank(b));
   return { apart: sorted.filter(isApart), alike: sorted.filter((pair) => !isApart(pair)) };
+}
+
+/** Findings with names of their own: a second of the same identity gets a number. */
+function listed(findings: readonly Finding[]): readonly { readonly key: string; readonly finding: Finding }[] {
+  const seen = new Map<string, number>();
+  return findings.map((finding) => {
+    const identity = identityOf(finding);
+    const count = (seen.get(identity) ?? 0) + 1;
+    seen.set(identity, count);
+    return { key: count === 1 ? identity : `${identity} #${String(count)}`, finding };
+  });
 }
 
 function rank({ own, other }: FindingPair): number {
   const of = (finding: Finding | null): number =>
-    finding === null ? SEVERITIES.length : SEVERITIES.indexOf(finding.severity);
+    finding === null ? SEVERITY_ORDER.length : SEVERITY_ORDER.indexOf(finding.severity);
   return Math.min(of(own), of(other));
 }
 
