@@ -71,7 +71,7 @@ function faults(report: Report): void {
     const shorted = {
       ...job,
       parts: [
-        ...job.parts.map((part) => ('on' in part ? ({ ...part, on: false } as Part) : part)),
+        ...job.parts.map((part) => ('on' in part ? { ...part, on: false } : part)),
         { ...template, ...short, kind: 'joint', resistanceOhm: 0.001 } as Part,
       ],
     };

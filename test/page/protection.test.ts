@@ -119,6 +119,8 @@ describe('the bar of a window', () => {
   test('the figures stand between their signs, with the margin only where there is one', () => {
     expect(windowFigures(window)).toBe('load 20 A (25 A with margin) ≤ fuse 30 A ≤ wire 40 A');
     expect(windowFigures({ ...window, continuousA: 20, fuseA: null })).toBe('load 20 A ≤ fuse ? ≤ wire 40 A');
+    expect(windowFigures({ ...window, fuseA: 60 })).toBe('load 20 A (25 A with margin) ≤ fuse 60 A > wire 40 A');
+    expect(windowFigures({ ...window, continuousA: 20, fuseA: 15 })).toBe('load 20 A > fuse 15 A ≤ wire 40 A');
   });
 });
 

@@ -113,7 +113,10 @@ export function interruptWords({ fault, interruptA, ok }: Pick<DeviceStudy, 'fau
 export function windowFigures({ loadA, continuousA, fuseA, allowedA, capA }: FuseWindow): string {
   const mostA = Math.min(allowedA, capA ?? Number.POSITIVE_INFINITY);
   const margin = continuousA > loadA * 1.005 ? ` (${amps(continuousA)} with margin)` : '';
-  return `load ${amps(loadA)}${margin} ≤ fuse ${fuseA === null ? '?' : amps(fuseA)} ≤ wire ${amps(mostA)}`;
+  // Where the fuse lies outside its window the line says so, rather than a sum that is not true.
+  const below = fuseA !== null && fuseA < loadA ? '>' : '≤';
+  const above = fuseA !== null && fuseA > mostA ? '>' : '≤';
+  return `load ${amps(loadA)}${margin} ${below} fuse ${fuseA === null ? '?' : amps(fuseA)} ${above} wire ${amps(mostA)}`;
 }
 
 /** The worst finding about each device goes first; otherwise as drawn. */
