@@ -1,4 +1,5 @@
 /** Sources joined pole to pole, and sources that feed something with no device in between. */
+
 import { currentLimits } from '../battery/limits.ts';
 import { stringSource } from '../battery/stringSource.ts';
 import type { StringPart } from '../job/part.ts';
@@ -9,6 +10,7 @@ import type { CheckContext, SolvedCase } from './checkContext.ts';
 import { type Quiet, quietStates } from './quiet.ts';
 import type { Rule, RuleOutcome } from './rule.ts';
 import { mayGoUnfused } from './starterRules.ts';
+import { stringsBetween } from './stringsBetween.ts';
 import { banksOf } from './systemVolts.ts';
 import { isOver, missing, PASS, Tally, type Verdict } from './tally.ts';
 import { amps, apart, ohms, percent, shortList, titleOf } from './wording.ts';
@@ -182,7 +184,9 @@ function runNoFuse(context: CheckContext): RuleOutcome {
     .flatMap((part) => (part.kind === 'string' || part.kind === 'array' ? [] : polesOf(part)))
     .flatMap((poles) => {
       const span = spanOf(poles);
-      return span === undefined ? [] : [{ ...poles, ...span }];
+      if (span === undefined) return [];
+      const nets = { plus: bare.of(poles.plus)!, minus: bare.of(poles.minus)! };
+      return [{ ...poles, ...span, strings: stringsBetween(context.drawn, bare, nets) }];
     });
   for (const string of context.drawn) {
     if (string.kind !== 'string') continue;
@@ -191,6 +195,7 @@ function runNoFuse(context: CheckContext): RuleOutcome {
     const own = users.filter(
       (user) =>
         user.bank === span.bank &&
+        user.strings.has(string) &&
         Math.min(user.highV, span.highV) > Math.max(user.lowV, span.lowV) &&
         !mayGoUnfused(context, user.part, string),
     );

@@ -286,6 +286,19 @@ describe('no-fuse-on-source', () => {
     expect(found(check({ parts: series }), 'no-fuse-on-source').map(({ parts }) => parts)).toEqual([['LOW', 'TAP']]);
   });
 
+  test('a string behind a fuse of its own is not joined to what hangs bare on another with the same minus', () => {
+    const parts = [
+      battery('B1'),
+      { id: 'F1', kind: 'fuse', from: 'P', to: 'Q', ratingA: 10 },
+      { ...lamp, plus: 'Q' },
+      battery('B2', { plus: 'P2' }),
+      { ...lamp, id: 'BARE', plus: 'P2' },
+    ];
+    const report = check({ parts });
+    expect(found(report, 'no-fuse-on-source').map(({ parts: ids }) => ids)).toEqual([['B2', 'BARE']]);
+    expect(passes(report, 'no-fuse-on-source')).toBe(1);
+  });
+
   test('two strings joined before a common fuse feed nothing without it', () => {
     const parts = [
       battery('B1'),
