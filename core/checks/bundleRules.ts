@@ -1,27 +1,13 @@
 /** Cables that lie together and warm each other, where no factor of the book has been applied. */
+
 import { ratingOf } from '../conductor/ampacity.ts';
 import type { CablePart } from '../job/part.ts';
-import type { Basis } from '../tables/status.ts';
 import { sizeText } from '../units/conductorSize.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
-import type { Judge, Rule } from './rule.ts';
+import { clauseOf } from './clauses.ts';
+import type { Rule } from './rule.ts';
 import { ELSEWHERE, isOver, missing, missingField, PASS, sizeWanted, Tally, type Verdict } from './tally.ts';
-import { amps, apart, titleOf, together, withEdition } from './wording.ts';
-
-/** Where each book speaks of cables lying together. */
-function groupingBasis({ job: { practice } }: Judge): Basis {
-  const texts: Readonly<Record<typeof practice, Basis>> = {
-    'us-land': { source: 'SRC-NEC-BUNDLING', text: 'NEC (NFPA 70) 310.15(C)', status: 'published' },
-    'us-marine': {
-      source: 'SRC-CFR33-183-435',
-      text: '33 CFR 183.435(b), binding from 50 V; below it industry boat practice',
-      status: 'published',
-    },
-    'iso-marine': { source: 'SRC-ISO-13297-A', text: 'ISO 13297:2020 annex A', status: 'from-memory' },
-    'iec-land': { source: 'SRC-IEC60364-GROUPING', text: 'IEC 60364-5-52 table B.52.17', status: 'published' },
-  };
-  return texts[practice];
-}
+import { amps, apart, titleOf, together } from './wording.ts';
 
 /**
  * Where the book's grouping factor binds, it is in the ampacity already and the rule for overloaded cables judges it. Left are
@@ -37,7 +23,7 @@ export const tightBundle: Rule = {
   remedy: 'Apply the grouping factor (a larger cable), or spread the cables.',
   byPractice: true,
   reads: 'steady-cases',
-  basisFor: (judge) => withEdition(groupingBasis(judge), judge),
+  basisFor: (judge) => clauseOf('tight-bundle', judge),
   run: (context) => {
     const tally = new Tally(tightBundle, tightBundle.basisFor(context));
     for (const cable of context.drawn) {

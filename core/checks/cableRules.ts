@@ -1,9 +1,11 @@
 /** Cables against the current that they carry. */
+
 import type { Ampacity } from '../conductor/ampacity.ts';
 import type { CablePart } from '../job/part.ts';
 import type { Basis } from '../tables/status.ts';
 import { sizeText } from '../units/conductorSize.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
+import { clauseOf } from './clauses.ts';
 import { demandsOf } from './continuousCurrent.ts';
 import type { Judge, Rule, RuleOutcome } from './rule.ts';
 import { ELSEWHERE, isOver, missing, PASS, sizeWanted, Tally, type Verdict, wanted } from './tally.ts';
@@ -19,7 +21,7 @@ export const cableOverloaded: Rule = {
   remedy: 'Use a larger cable, or let it carry less.',
   byPractice: true,
   reads: 'steady-cases',
-  basisFor: (judge) => withEdition(ampacityBasis(judge), judge),
+  basisFor: (judge) => clauseOf('cable-overloaded', judge),
   run: (context) => eachCable(context, cableOverloaded, overloaded),
 };
 
@@ -36,17 +38,6 @@ export const cableUnderContinuous: Rule = {
   basisFor: (judge) => withEdition(cableMarginBasis(judge), judge),
   run: (context) => eachCable(context, cableUnderContinuous, withoutMargin),
 };
-
-/** Where the ampacities of a practice come from; each finding adds the table's own row. */
-function ampacityBasis({ job: { practice } }: Judge): Basis {
-  const texts: Readonly<Record<typeof practice, Basis>> = {
-    'us-land': { source: 'SRC-NEC-310-16', text: 'NEC (NFPA 70) 310.15 and table 310.16', status: 'published' },
-    'us-marine': { source: 'SRC-CFR33-183-425', text: '33 CFR 183.425(b)', status: 'published' },
-    'iso-marine': { source: 'SRC-ISO-13297-A', text: 'ISO 13297:2020 annex A', status: 'from-memory' },
-    'iec-land': { source: 'SRC-IEC60364-PVC', text: 'IEC 60364-5-52 clause 523', status: 'published' },
-  };
-  return texts[practice];
-}
 
 /** NEC 690.8(B) asks for both: 125 % before correction, 100 % after; elsewhere the same sum is trade practice. */
 function cableMarginBasis({ job, practice }: Judge): Basis {

@@ -1,26 +1,17 @@
 /** Heat around cables and fuses that the cases of the job do not reach. */
+
 import type { CablePart, FusePart } from '../job/part.ts';
 import type { Basis } from '../tables/status.ts';
 import { sizeText } from '../units/conductorSize.ts';
 import { COMMON_PRACTICE } from './bases.ts';
 import type { CheckContext, SolvedCase } from './checkContext.ts';
+import { clauseOf } from './clauses.ts';
 import type { WantedField } from './finding.ts';
-import type { Judge, Rule } from './rule.ts';
+import type { Rule } from './rule.ts';
 import { ELSEWHERE, isOver, isUnder, missing, PASS, sizeWanted, Tally, type Verdict, wanted } from './tally.ts';
-import { amps, apart, degrees, shortList, titleOf, together, withEdition } from './wording.ts';
+import { amps, apart, degrees, shortList, titleOf, together } from './wording.ts';
 
 const AMBIENT_MAX: WantedField = { part: null, field: 'site.ambientMaxDegC' };
-
-/** The clause that asks for the correction; each finding adds the row of the table. */
-function correctionBasis({ job: { practice } }: Judge): Basis {
-  const texts: Readonly<Record<typeof practice, Basis>> = {
-    'us-land': { source: 'SRC-NEC-AMBIENT', text: 'NEC (NFPA 70) 310.15(B)', status: 'published' },
-    'us-marine': { source: 'SRC-CFR33-183-425', text: '33 CFR 183.425(c)', status: 'published' },
-    'iso-marine': { source: 'SRC-ISO-13297-A', text: 'ISO 13297:2020 annex A', status: 'from-memory' },
-    'iec-land': { source: 'SRC-IEC60364-AMBIENT', text: 'IEC 60364-5-52 table B.52.14', status: 'published' },
-  };
-  return texts[practice];
-}
 
 /**
  * The other rules rate a cable in the air of each case. Where the site grows hotter than any case says, and the cable has no air
@@ -37,7 +28,7 @@ export const hotPlace: Rule = {
     'Allow for the heat (a case with the hottest air, or a larger cable), or lead the cable around the hot space.',
   byPractice: true,
   reads: 'steady-cases',
-  basisFor: (judge) => withEdition(correctionBasis(judge), judge),
+  basisFor: (judge) => clauseOf('hot-place', judge),
   run: (context) => {
     const tally = new Tally(hotPlace, hotPlace.basisFor(context));
     const hottest = context.job.site.ambientMaxDegC;

@@ -36,7 +36,7 @@ describe('hot-place', () => {
 
   test.each([
     ['us-land', '310.15(B)'],
-    ['us-marine', '183.425(c)'],
+    ['us-marine', '183.425, (c)'],
     ['iso-marine', 'ISO 13297'],
   ])('rests on the clause of %s', (practice, clause) => {
     const job = oneCircuit({ practice, cable: { size: '10 mm2', insulationDegC: 60 }, load: { currentA: 39 } });
