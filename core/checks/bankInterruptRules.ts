@@ -5,6 +5,7 @@ import { type Device, isDevice } from '../network/wiring.ts';
 import type { Basis } from '../tables/status.ts';
 import { entered } from './bases.ts';
 import type { CheckContext } from './checkContext.ts';
+import { clauseOf } from './clauses.ts';
 import { type MainDevice, mainDevices } from './mainDevices.ts';
 import type { Judge, Rule } from './rule.ts';
 import { ELSEWHERE, isOver, isUnder, missing, PASS, Tally, type Verdict, wanted } from './tally.ts';
@@ -114,7 +115,7 @@ function bankVerdict(context: CheckContext, main: MainDevice): Verdict {
   const enough = isOver(shortA, fromShortA.value) ? ` (${amps(mainA.value)} at ${volts(mainV.value)} would do)` : '';
   return {
     kind: 'fail',
-    severity: context.job.practice === 'us-marine' ? 'fix' : 'look',
+    severity: clauseOf('big-bank-needs-more', context).status === 'common-practice' ? 'look' : 'fix',
     case: context.cases[0]?.id ?? '',
     measured: { value: shortA, unit: 'A' },
     limit: { value: interruptA, unit: 'A' },

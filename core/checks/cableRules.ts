@@ -40,10 +40,10 @@ export const cableUnderContinuous: Rule = {
 };
 
 /** NEC 690.8(B) asks for both: 125 % before correction, 100 % after; elsewhere the same sum is trade practice. */
-function cableMarginBasis({ job, practice }: Judge): Basis {
-  if (job.practice !== 'us-land') return practice.continuousFactor.basis;
-  const clause = { text: 'NEC (NFPA 70) 690.8(B), 125 % before correction, 100 % after', status: 'published' as const };
-  return together(practice.continuousFactor.basis, clause);
+function cableMarginBasis({ practice }: Judge): Basis {
+  const clause = practice.clauses.get('cable-under-continuous');
+  const { basis } = practice.continuousFactor;
+  return clause === undefined ? basis : together(basis, clause);
 }
 
 type Judgement = (context: CheckContext, at: { cable: CablePart; one: SolvedCase; ampacity: Ampacity }) => Verdict;

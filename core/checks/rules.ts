@@ -6,6 +6,7 @@ import { batteryByFuel, batteryLoose, noLowCutoff } from './batteryPlaceRules.ts
 import { gasNoVent, sparkNearGas } from './batterySpaceRules.ts';
 import { bondTooSmall } from './bondRules.ts';
 import { isolatorOutOfReach, twoSourceBox } from './boxRules.ts';
+import { breakerUnderTable } from './breakerTableRule.ts';
 import { tightBundle } from './bundleRules.ts';
 import { busbarFault } from './busbarFaultRule.ts';
 import { cableOverloaded, cableUnderContinuous } from './cableRules.ts';
@@ -121,6 +122,7 @@ export const rules: readonly Rule[] = [
   interruptUnknown,
   interruptTooLow,
   bigBankNeedsMore,
+  breakerUnderTable,
   faultTooWeak,
   cableCooks,
   tripsTogether,

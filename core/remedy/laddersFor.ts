@@ -183,6 +183,10 @@ const byRule: Readonly<Record<string, LaddersOf>> = {
     const part = bench.drawn(id);
     return part === undefined ? [] : highInterrupt(bench, part);
   },
+  'breaker-under-table': (bench, [id]) => {
+    const part = bench.drawn(id);
+    return part === undefined ? [] : highInterrupt(bench, part);
+  },
   'ac-part-on-dc': (bench, [id]) => {
     const part = bench.drawn(id);
     return part === undefined ? [] : forDirectCurrent(part);

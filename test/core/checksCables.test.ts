@@ -132,7 +132,7 @@ describe('cable-under-continuous', () => {
     const [finding] = found(lasting(161), 'cable-under-continuous');
     expect(finding).toMatchObject({ severity: 'fix', limit: { value: 200, unit: 'A' }, basisStatus: 'published' });
     expect(finding!.measured.value).toBeCloseTo(201.25, 9);
-    expect(finding!.basis).toContain('690.8(B)');
+    expect(finding!.basis).toContain('690.8, numbering of 2023, (B)');
   });
 
   test('a load that runs briefly needs no margin', () => {
