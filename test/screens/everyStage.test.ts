@@ -34,7 +34,7 @@ async function goStage(page: Page, name: string): Promise<void> {
     .click();
   await page.getByRole('main').waitFor();
   // Stages are loaded when first gone to, and figures come from the worker.
-  await page.waitForTimeout(700);
+  await page.waitForTimeout(500);
   await page.getByText('The bank is being solved').waitFor({ state: 'hidden' });
 }
 

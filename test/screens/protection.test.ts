@@ -42,7 +42,7 @@ describe.sequential('a sloop with seeded troubles', () => {
 
   test('the breaker that is too large stands outside its window, before those without a finding', async () => {
     const said = spaced(await row('B-4').textContent());
-    expect(said).toContain('load 3 A (3.75 A with margin) ≤ fuse 60 A ≤ wire 52.5 A');
+    expect(said).toContain('load 3 A (3.75 A with margin) ≤ fuse 60 A > wire 52.5 A');
     expect(said).toContain('60 A does not protect a cable of 35 A');
     const order = await page.locator('[data-device]').evaluateAll((all) => all.map((one) => one.dataset['device']));
     expect(order.indexOf('B-4')).toBeLessThan(order.indexOf('F-START'));

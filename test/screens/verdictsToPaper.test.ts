@@ -41,7 +41,7 @@ describe.sequential('findings', () => {
   test('the worst stands first, each with its figures, its basis and how far that may be trusted', async () => {
     await goStage('Findings');
     await count()
-      .getByText(/^8 findings, worst first: 2 stop, 5 fix, 1 look/)
+      .getByText(/^15 findings, worst first: 2 stop, 7 fix, 6 look/)
       .waitFor();
     const first = findings().getByRole('listitem').first();
     const told = await first.textContent();
@@ -66,10 +66,12 @@ describe.sequential('findings', () => {
     await page.getByRole('button', { name: 'Make this change' }).first().click();
     await count()
       .getByText(/1 stop/)
+      .first()
       .waitFor();
     await page.keyboard.press('Control+z');
     await count()
       .getByText(/2 stop/)
+      .first()
       .waitFor();
     await allKept(page);
   });
