@@ -1,9 +1,8 @@
 /** How far each string of a bank is from its fair share, for whatever currents. */
 import type { PartId } from '../../job/part.ts';
 import type { Bank } from '../banks.ts';
+import { LEAST_RATE_PER_H } from '../sharing/bankCurrents.ts';
 
-/** Below this rate, 1/h, a bank is taken to rest; common practice, no source. */
-export const LEAST_RATE_PER_H = 0.02;
 /** Deviations of the strings of banks with two branches or more; null for the others and for banks that rest. */
 export class Deviations {
   private readonly banks: readonly {
@@ -41,14 +40,11 @@ export class Deviations {
   /** Largest |deviation|; NaN where no bank gives enough to tell. */
   worst(currentsA: ArrayLike<number>): number {
     let worst = Number.NaN;
-    for (const deviation of this.of(currentsA))
-      if (!(Math.abs(deviation) <= worst)) worst = keepNumber(deviation, worst);
+    for (const deviation of this.of(currentsA)) {
+      if (!Number.isNaN(deviation) && !(Math.abs(deviation) <= worst)) worst = Math.abs(deviation);
+    }
     return worst;
   }
-}
-
-function keepNumber(deviation: number, worst: number): number {
-  return Number.isNaN(deviation) ? worst : Math.abs(deviation);
 }
 
 /** The string furthest off its share; where nothing is shared, the one that carries most. */

@@ -8,10 +8,8 @@ import type { SinglePart } from '../../network/wiring.ts';
 import { isWiring, joined, polesOf } from '../../network/wiring.ts';
 import type { Tables } from '../../tables/tables.ts';
 import type { BankMeasure, BankTerminals } from '../answer.ts';
+import { LEAST_RATE_PER_H } from '../sharing/bankCurrents.ts';
 import type { Pole, Row } from './row.ts';
-
-/** Below this, as amps per amp-hour of the bank (C/50), sharing is not judged. Common practice, no source. */
-const LEAST_RATE_PER_H = 0.02;
 
 export interface SolvedBank {
   readonly job: CheckedJob;

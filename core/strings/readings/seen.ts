@@ -1,4 +1,5 @@
 /** What the readings show of one string: at rest, on load, on charge, across its joints, inside. */
+
 import { factsOf } from '../../battery/stringSource.ts';
 import type { CheckedJob } from '../../job/job.ts';
 import type { JunctionId, PartId, StringPart } from '../../job/part.ts';
@@ -6,6 +7,7 @@ import { ambientOf } from '../../network/circuit.ts';
 import type { Tables } from '../../tables/tables.ts';
 import type { StringFromReadings } from '../answer.ts';
 import type { Bank } from '../banks.ts';
+import { LEAST_RATE_PER_H } from '../sharing/bankCurrents.ts';
 import type { Expectation } from './expectation.ts';
 import { meterError, standardOf } from './meter.ts';
 import type { OwnRun } from './ownRun.ts';
@@ -36,8 +38,6 @@ export interface SeenRequest {
   readonly expectation: Expectation;
 }
 
-/** Below C/50 shares say nothing. Common practice, no source. */
-const restPerH = 0.02;
 /** +20 % over the baseline is worth notice (published vendor guide for testing sealed blocks). */
 const highOhm = 1.2;
 /** A joint drop over three times its like is the joint: ranking hint, derived. */
@@ -96,7 +96,7 @@ export function shareInState(state: ReadState, string: PartId, limit: number): R
   if (currents.some((one) => one === undefined)) return null;
   const read = currents.map((one) => one!);
   const totalA = read.reduce((sum, { value }) => sum + value, 0);
-  if (Math.abs(totalA) < restPerH * bank.capacityAh) return null;
+  if (Math.abs(totalA) < LEAST_RATE_PER_H * bank.capacityAh) return null;
   const place = bank.branches.findIndex(({ strings }) => strings.some(({ id }) => id === string));
   const fair = bank.branches[place]!.capacityAh / bank.capacityAh;
   const terms = read.map((one, index) => ({ ...one, slope: (index === place ? 1 : 0) - fair }));

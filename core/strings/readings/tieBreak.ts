@@ -1,4 +1,5 @@
 /** "It takes less charge than the others: fuller, or sick?" What each cause would show, and what the readings say of it. */
+
 import type { CheckedJob } from '../../job/job.ts';
 import type { PartId } from '../../job/part.ts';
 import type { OperatingPoint } from '../../network/answer.ts';
@@ -6,6 +7,7 @@ import { withoutPairs } from '../../network/wiring.ts';
 import type { Tables } from '../../tables/tables.ts';
 import type { StringFromReadings, TieBreak, TieBreakRow } from '../answer.ts';
 import { type Bank, banksOf } from '../banks.ts';
+import { LEAST_RATE_PER_H } from '../sharing/bankCurrents.ts';
 import { listed } from '../words/sentence.ts';
 import type { Expectation } from './expectation.ts';
 import { ownRunOf } from './ownRun.ts';
@@ -21,9 +23,6 @@ export interface TieBreakRequest {
   /** Slow solves, for banks whose strings' amps were not read. */
   readonly points?: readonly OperatingPoint[];
 }
-
-/** A bank that carries less than C/50 is at rest: its shares say nothing. Common practice, no source. */
-const restPerH = 0.02;
 
 /** A table for each string that is further below its fair share, on charge or on load, than the share limit. */
 export function tieBreaksOf(request: TieBreakRequest): readonly TieBreak[] {
@@ -50,7 +49,7 @@ function laggardBySolve({ branches, capacityAh }: Bank, { job, points = [] }: Ti
   for (const point of points) {
     const currents = branches.map(({ strings }) => point.parts.get(strings[0]!.id)?.currentA ?? 0);
     const totalA = currents.reduce((sum, one) => sum + one, 0);
-    if (Math.abs(totalA) < restPerH * capacityAh) continue;
+    if (Math.abs(totalA) < LEAST_RATE_PER_H * capacityAh) continue;
     for (const [index, branch] of branches.entries()) {
       const deviation = currents[index]! / totalA / (branch.capacityAh / capacityAh) - 1;
       if (deviation >= -job.settings.shareLimit || deviation >= (worst?.deviation ?? 0)) continue;
